@@ -1,0 +1,282 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- Cases as Lua sees them: making them, what-if, and what can be asked about them besides their quantities.
+local core = ...
+local text = core.part "lacuna.text"
+
+local case = {} -- what the module offers
+local methods = core.case_methods
+
+local function sorted_keys(t)
+  local keys = {}
+  for key in pairs(t) do keys[#keys + 1] = key end
+  table.sort(keys, function(a, b) return tostring(a) < tostring(b) end)
+  return keys
+end
+case.sorted_keys = sorted_keys
+
+-- The error for a word that is no name, with what it may have meant.
+local function unknown_name(word, where)
+  local name, synonym = core.find(word)
+  if synonym then return ("%sunknown name '%s'; it is called %s here"):format(where, word, name) end
+  local near = core.nearest(word)
+  if #near == 0 then return ("%sunknown name '%s'; help() lists the names"):format(where, word) end
+  return ("%sunknown name '%s'; did you mean %s?"):format(where, word, table.concat(near, ", ", 1, math.min(3, #near)))
+end
+case.unknown_name = unknown_name
+
+-- The name behind a word, or an error.
+local function name_of(word, where)
+  if type(word) ~= "string" then core.raise(("%sa name is wanted; got %s"):format(where, type(word))) end
+  local name, synonym = core.find(word)
+  if name and not synonym then return name end
+  core.raise(unknown_name(word, where))
+end
+case.name_of = name_of
+
+-- Definitions by which a given could be had from the other givens, for one set of given names: where both are given they must agree.
+local pairs_by_names = {}
+local function definitions_to_check(givens)
+  local names = sorted_keys(givens)
+  local key = table.concat(names, " ")
+  local known = pairs_by_names[key]
+  if known then return known end
+  known = {}
+  for _, name in ipairs(names) do
+    for _, number in ipairs(core.entry(name).rows) do
+      local row = core.row(number)
+      local all_given = row.kind == "definition" and #row.from > 0
+      for _, input in ipairs(row.from) do all_given = all_given and givens[input] ~= nil end
+      if all_given then known[#known + 1] = row end
+    end
+  end
+  pairs_by_names[key] = known
+  return known
+end
+
+local function single(quantity)
+  local _, _, _, number, size = core.facts(quantity)
+  return size == 1 and number or nil
+end
+
+local function differ(a, b) return math.abs(a - b) > 0.01 * math.max(math.abs(a), math.abs(b)) end
+
+-- Definitions are exact: givens that contradict one are an error. (What recipes give instead is for check.)
+local function refuse_contradictions(givens)
+  for _, row in ipairs(definitions_to_check(givens)) do
+    local others = {}
+    for _, input in ipairs(row.from) do others[input] = givens[input] end
+    local by_definition = core.raw(core.new_case(others, { [row.gives] = row.by }, {}), row.gives)
+    local given, derived = single(givens[row.gives]), by_definition and single(by_definition)
+    if given and derived and differ(given, derived) then
+      local inputs = {}
+      for _, input in ipairs(row.from) do inputs[#inputs + 1] = input .. " = " .. text.quantity(givens[input]) end
+      core.raise(("contradictory givens: %s = %s, but %s gives %s (by %s)"):format(row.gives, text.quantity(givens[row.gives]),
+        table.concat(inputs, " and "), text.quantity(by_definition), row.by:gsub("_", " ")), 0)
+    end
+  end
+end
+
+-- Makes a case of raw givens. `checked`: those that are checked already.
+local function make(givens, checked, using, info)
+  local all, labels, written = {}, {}, {}
+  for name, quantity in pairs(checked) do all[name] = quantity end
+  for name, words in pairs(info.written or {}) do written[name] = words end
+  for _, word in ipairs(sorted_keys(givens)) do
+    local value = givens[word]
+    local name = type(word) == "string" and core.find(word)
+    if not name or select(2, core.find(word)) then core.raise(type(word) == "string" and unknown_name(word, "") or
+      ("a case wants name = value; got the value %s without a name"):format(tostring(value)), 0) end
+    if core.entry(name).kind == "label" then labels[name] = value and tostring(value)
+    elseif value == false then all[name], written[name] = nil, nil
+    else
+      written[name] = text.as_written(name, value)
+      all[name] = core.given(name, value, info.target)
+    end
+  end
+  for name, label in pairs(info.labels or {}) do if labels[name] == nil then labels[name] = label end end
+  refuse_contradictions(all)
+  return core.new_case(all, using, { givens = all, using = using, target = info.target, labels = labels, written = written, changed = info.changed })
+end
+
+case.make = make -- for studies, which check their givens themselves
+
+function case.new(givens, options)
+  if type(givens) ~= "table" then core.raise("case wants a table of givens, like case{distance = \"156 pc\"}; got " .. type(givens)) end
+  return make(givens, {}, {}, options or {})
+end
+
+-- The recipes of b that differ from a's, for names that both have.
+local function changed_recipes(a, b)
+  local changed = {}
+  for _, name in ipairs(core.names()) do
+    local before, after = core.row_of(a, name), core.row_of(b, name)
+    if before and after and before ~= after then
+      changed[#changed + 1] = { name = name, before = core.row(before).by, after = core.row(after).by }
+    end
+  end
+  return changed
+end
+
+local function derive(self, changes, using)
+  local info = core.info(self)
+  local other = make(changes, info.givens, using, info)
+  core.info(other).changed = changed_recipes(self, other)
+  return other
+end
+
+-- c:with{name = value, ...}: the case with these givens instead; false takes one away.
+function methods.with(self, changes)
+  if type(changes) ~= "table" then core.raise("with wants a table of givens; got " .. type(changes)) end
+  return derive(self, changes, core.info(self).using)
+end
+
+-- c:using{name = "recipe", ...}: the case with these recipes.
+function methods.using(self, recipes)
+  if type(recipes) ~= "table" then core.raise("using wants a table like {array_resolution = \"fringe\"}; got " .. type(recipes)) end
+  local using = {}
+  for name, by in pairs(core.info(self).using) do using[name] = by end
+  for word, by in pairs(recipes) do
+    if type(by) ~= "string" then core.raise(("using: %s wants the name of a recipe; got %s"):format(tostring(word), type(by))) end
+    using[name_of(word, "using: ")] = by
+  end
+  return derive(self, {}, using)
+end
+
+-- The rows by which this case could have a name, the one it takes first.
+local function live_rows(self, name)
+  local taken, rows = core.row_of(self, name), {}
+  if taken then rows[1] = core.row(taken) end
+  for _, number in ipairs(core.entry(name).rows) do
+    local row = core.row(number)
+    local live = number ~= taken
+    for _, input in ipairs(row.from) do live = live and core.row_of(self, input) ~= nil end
+    if live and core.row_of(self, name) ~= false then rows[#rows + 1] = row end
+  end
+  return rows
+end
+case.live_rows = live_rows
+
+-- The case with one name by another recipe, or nil where that can't be had.
+local function by_recipe(self, name, by)
+  local using = {}
+  for other, recipe in pairs(core.info(self).using) do using[other] = recipe end
+  using[name] = by
+  return core.new_case(core.info(self).givens, using, core.info(self), true)
+end
+case.by_recipe = by_recipe
+
+-- What other recipes along the chain of a name would give: a list of {name, by, value}, one recipe changed at a time.
+function case.over_recipes(self, name)
+  local others = {}
+  for _, step in ipairs(core.steps(self, name)) do
+    if step.row then
+      local rows = live_rows(self, step.name)
+      for i = 2, #rows do
+        local row = rows[i]
+        if row.kind ~= "definition" and row.kind ~= "assumed" then
+          local other = by_recipe(self, step.name, row.by)
+          local value = other and core.raw(other, name)
+          if value then others[#others + 1] = { name = step.name, by = row.by, value = value, instead_of = rows[1].by } end
+        end
+      end
+    end
+  end
+  return others
+end
+
+-- Assumptions on which a name rests: rows of assumed values.
+function case.assumptions(self, name)
+  local assumed = {}
+  for _, step in ipairs(core.steps(self, name)) do
+    local row = step.row and core.row(step.row)
+    if row and row.kind == "assumed" then assumed[#assumed + 1] = row end
+  end
+  return assumed
+end
+
+-- c:missing(name): what would have to be given; prints itself.
+function methods.missing(self, word)
+  local name = name_of(word, "missing: ")
+  local sets = core.missing_sets(self, name)
+  return setmetatable({ name = name, sets = sets, had = core.row_of(self, name) ~= nil }, text.missing_metatable)
+end
+
+-- Single numbers agree within 1 %; ensembles where zero lies inside the 95 % interval of the difference.
+local function agree(given, derived)
+  local a, b = single(given), single(derived)
+  if a and b then return not differ(a, b) end
+  local difference = given - derived
+  local low, high = core.interval(difference, 0.95)
+  if not text.has_draws(core.axes(difference)) then
+    local allowed = 0.01 * core.greatest(core.abs(given), core.abs(derived))
+    low, high = difference - allowed, difference + allowed
+  end
+  low, high = core.elements(low), core.elements(high)
+  for i = 1, #low do if low[i] > 0 or high[i] < 0 then return false end end
+  return true
+end
+
+-- c:check(): for each given, what the other givens make of it; prints itself. `agree` is false where something disagrees.
+function methods.check(self)
+  local info, found, seen = core.info(self), {}, {}
+  local all_agree = true
+  for _, name in ipairs(sorted_keys(info.givens)) do
+    local others = {}
+    for other, quantity in pairs(info.givens) do if other ~= name then others[other] = quantity end end
+    for _, number in ipairs(core.entry(name).rows) do
+      local row = core.row(number)
+      local equation = row.inverse_of or (row.gives .. "/" .. row.by)
+      if row.kind ~= "assumed" and not seen[equation] then
+        local using = { [name] = row.by }
+        for other, by in pairs(info.using) do using[other] = using[other] or by end
+        local without = core.new_case(others, using, info, true)
+        local value = without and core.raw(without, name)
+        if value then
+          seen[equation] = true
+          local entry = { name = name, by = row.by, given = info.givens[name], written = text.given(self, name), derived = value }
+          entry.agrees = agree(entry.given, value)
+          all_agree = all_agree and entry.agrees
+          found[#found + 1] = entry
+        end
+      end
+    end
+  end
+  return setmetatable({ entries = found, agree = all_agree }, text.check_metatable)
+end
+
+-- c:why(name): the derivation; prints itself.
+function methods.why(self, word)
+  local name = name_of(word, "why: ")
+  if core.row_of(self, name) == nil then return methods.missing(self, name) end
+  return setmetatable({ case = self, name = name }, text.why_metatable)
+end
+
+-- c:givens(): the givens' names in glossary order.
+function methods.givens(self)
+  local names, givens = {}, core.info(self).givens
+  for _, name in ipairs(core.names()) do if givens[name] then names[#names + 1] = name end end
+  return names
+end
+
+-- The solver is loaded when it is first asked for; it takes this method's place.
+function methods.solve(self, ...)
+  core.part "lacuna.solve"
+  return methods.solve(self, ...)
+end
+
+core.set_handlers {
+  not_had = function(self, name)
+    core.raise(text.not_had(methods.missing(self, name)))
+  end,
+  undefined = function(self, name)
+    core.raise(text.undefined(self, name))
+  end,
+  unknown = function(self, word)
+    local label = core.info(self).labels[word]
+    if label then return label end
+    if type(word) == "string" and core.find(word) == word then core.raise(("%s is not given; give %s = \"...\""):format(word, word)) end
+    core.raise(unknown_name(tostring(word), ""))
+  end,
+}
+
+return case

@@ -1,0 +1,172 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- help(): a map by subject. help "gap_width": one name. help "word": one word of the language, a unit, or a search. All from the tables.
+local core = ...
+local text = core.part "lacuna.text"
+local equation = core.part "lacuna.equation"
+local format = core.part "lacuna.format"
+local words = core.part "lacuna.words"
+
+local help = {}
+
+-- Prints itself at the prompt, and under print.
+local page = { __name = "help", __tostring = function(self) return table.concat(self, "\n") end }
+local function new_page(...) return setmetatable({ ... }, page) end
+
+local function wrap(list, indent, width)
+  local lines, line = {}, (" "):rep(indent)
+  for _, word in ipairs(list) do
+    if #line + #word + 2 > width and line:find "%S" then
+      lines[#lines + 1] = line
+      line = (" "):rep(indent)
+    end
+    line = line .. word .. "  "
+  end
+  lines[#lines + 1] = line
+  return lines
+end
+
+local function is_angle_of_another(name) return name:find "_angle$" and core.find(name:sub(1, -7)) ~= nil end
+local function at_other_place(name)
+  local plain = name:match "^planet_(.+)$" or name:match "^ring_(.+)$"
+  return plain and core.find(plain) == plain and core.entry(name).subject == "disc"
+end
+
+local subjects = {
+  { "star", "the star" }, { "radiation", "radiation" }, { "disc", "the disc, at radius (also as planet_..., ring_...)" }, { "rim", "rim and cavity" },
+  { "orbit", "orbits, planets, companions" }, { "gap", "gaps and rings" }, { "instrument", "instruments" },
+  { "structure", "structures: rim, cavity, gap, ring" }, { "visibility", "visibilities" }, { "yours", "your own" },
+}
+
+local function map()
+  local lines = new_page("help \"name\" explains a name, a word or a unit; help \"some words\" searches.", "")
+  local by_subject = {}
+  for _, name in ipairs(core.names()) do
+    local list = by_subject[core.entry(name).subject] or {}
+    by_subject[core.entry(name).subject] = list
+    if not is_angle_of_another(name) and not at_other_place(name) then list[#list + 1] = name end
+  end
+  for _, subject in ipairs(subjects) do
+    if by_subject[subject[1]] then
+      lines[#lines + 1] = subject[2]
+      for _, line in ipairs(wrap(by_subject[subject[1]], 2, 118)) do lines[#lines + 1] = line end
+    end
+  end
+  lines[#lines + 1] = "words of the language"
+  for _, line in ipairs(wrap(words.names, 2, 118)) do lines[#lines + 1] = line end
+  lines[#lines + 1] = ""
+  lines[#lines + 1] = "Lengths on the sky have <name>_angle besides."
+  return lines
+end
+
+local function unit_text(entry)
+  local _, _, written = core.unit_facts(entry.unit)
+  return entry.unit == "1" and "a plain number" or written
+end
+
+local function add_row(lines, row)
+  local function add(s) lines[#lines + 1] = "      " .. s end
+  if row.kind == "assumed" then
+    lines[#lines + 1] = ("  assumed %s: %s"):format(row.assumes, text.source(row))
+  else
+    lines[#lines + 1] = ("  %s, from %s"):format(row.by, table.concat(row.from, ", "))
+    if row.equation and row.equation ~= "" then add(equation.plain(row.equation, text.symbol)) end
+    add(row.source == "definition" and "definition" or text.source(row))
+  end
+  if row.supposes then add("supposes " .. row.supposes) end
+  if row.unchecked then add("not checked: " .. row.unchecked) end
+  for _, bound in ipairs(row.holds) do
+    local entry = core.entry(bound.name)
+    local _, _, unit = core.unit_facts(entry.unit)
+    add(("holds for %s from %s to %s%s"):format(bound.name, format.number(bound.low / entry.factor), format.number(bound.high / entry.factor),
+      entry.unit == "1" and "" or " " .. unit))
+  end
+  if row.inverse_of then add("the inverse of " .. row.inverse_of) end
+end
+
+local function about_name(name)
+  local entry = core.entry(name)
+  local lines = new_page(("%s  %s"):format(name, text.symbol(name)), "  " .. entry.meaning)
+  if entry.kind == "verdict" then lines[#lines + 1] = "  a verdict: yes, no, or in so many per cent of the draws"
+  elseif entry.kind == "label" then lines[#lines + 1] = "  a text"
+  else lines[#lines + 1] = ("  in %s%s"):format(unit_text(entry), entry.range ~= "any" and ", " .. entry.range or "") end
+  if entry.synonyms then lines[#lines + 1] = "  also called " .. entry.synonyms:gsub(" ", ", ") end
+  if entry.on_sky then lines[#lines + 1] = ("  on the sky: %s_angle"):format(name) end
+  lines[#lines + 1] = ""
+  if #entry.rows == 0 then lines[#lines + 1] = "  It must be given: no relation gives it." end
+  for _, number in ipairs(entry.rows) do add_row(lines, core.row(number)) end
+  if entry.hint then lines[#lines + 1] = "  " .. entry.hint end
+  return lines
+end
+
+local function about_unit(word)
+  local factor, _, written, si = core.unit_facts(word)
+  return new_page(("%s  a unit: %s %s"):format(written, format.number(factor, 10), si == "1" and "" or si))
+end
+
+-- How well an entry answers the words searched for: every word must be found somewhere.
+local function score(entry, wanted)
+  local total = 0
+  local places = { { entry.name:gsub("_", " "), 5 }, { (entry.synonyms or ""):lower(), 4 }, { entry.meaning:lower(), 2 } }
+  for _, word in ipairs(wanted) do
+    local best = 0
+    for _, place in ipairs(places) do
+      local at = place[1]:find(word, 1, true)
+      if at then best = math.max(best, place[2] + ((at == 1 or place[1]:sub(at - 1, at - 1) == " ") and 1 or 0)) end
+    end
+    if best == 0 then return 0 end
+    total = total + best
+  end
+  return total / #wanted - #entry.name / 1000
+end
+
+local function search(query)
+  local wanted, found = {}, {}
+  for word in query:lower():gmatch "%w+" do wanted[#wanted + 1] = word end
+  for order, name in ipairs(core.names()) do
+    local entry = core.entry(name)
+    local points = #wanted > 0 and score(entry, wanted) or 0
+    if points > 0 then found[#found + 1] = { points = points, order = order, name = name, meaning = entry.meaning } end
+  end
+  table.sort(found, function(a, b) return a.points > b.points or a.points == b.points and a.order < b.order end)
+  if #found == 0 then
+    local near = core.nearest((query:gsub("%s+", "_")))
+    return new_page(("nothing about '%s'%s"):format(query, #near > 0 and "; nearest are " .. table.concat(near, ", ") or ""))
+  end
+  local lines = new_page(("about '%s':"):format(query))
+  for i = 1, math.min(#found, 12) do lines[#lines + 1] = ("  %-34s %s"):format(found[i].name, found[i].meaning) end
+  return lines
+end
+
+function help.help(word)
+  if word == nil then return map() end
+  if type(word) ~= "string" then
+    local name = core.facts(word)
+    if not name then core.raise("help wants a name, a word or a unit as a text, like help \"gap_width\"") end
+    word = name
+  end
+  local name = core.find(word)
+  if name then return about_name(name) end
+  if words.about[word] then return new_page(table.unpack(words.about[word])) end
+  if core.unit_facts(word) then return about_unit(word) end
+  return search(word)
+end
+
+-- recipes "gap_width": all recipes of a name. recipes("gap_width", case): with what each gives in a case.
+function help.recipes(word, self)
+  local name = core.find(word)
+  if not name then core.raise(core.part "lacuna.case".unknown_name(word, "recipes: ")) end
+  local lines = new_page()
+  for _, number in ipairs(core.entry(name).rows) do
+    local row = core.row(number)
+    add_row(lines, row)
+    if self then
+      local other = core.part "lacuna.case".by_recipe(self, name, row.by)
+      local value = other and core.raw(other, name)
+      lines[#lines + 1] = "      " .. (value and "= " .. text.quantity(value) or "not to be had from what is given")
+    end
+  end
+  if #lines == 0 then lines[1] = name .. " has no recipe: it must be given" end
+  return lines
+end
+
+return help

@@ -1,0 +1,108 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- The module's table: the words of the language. Units (lacuna.au) and the glossary's names as functions (lacuna.hill_radius{...})
+-- are made when they are first asked for.
+local core = ...
+local text = core.part "lacuna.text"
+local case = core.part "lacuna.case"
+
+local lacuna = {
+  settings = core.settings,
+  mean = core.mean, deviation = core.deviation, median = core.median, interval = core.interval, quantile = core.quantile,
+  chance = core.chance, undefined = core.undefined, lowest = core.lowest, highest = core.highest,
+  above = core.above, below = core.below, both = core.both, either = core.either, least = core.least, greatest = core.greatest,
+  sqrt = core.sqrt, abs = core.abs, exp = core.exp, log = core.log, log10 = core.log10, sin = core.sin, cos = core.cos, tan = core.tan,
+  along = core.along, show = text.show,
+}
+
+-- Methods of quantities, with every summary among them.
+local methods = {
+  as = core.as, value = core.value, axes = core.axes, stored = core.stored, mean = core.mean, deviation = core.deviation, median = core.median,
+  interval = core.interval, quantile = core.quantile, chance = core.chance, undefined = core.undefined, lowest = core.lowest,
+  highest = core.highest, sqrt = core.sqrt, abs = core.abs,
+}
+-- q:at{axis = point}; core.at lets axes pass that the quantity doesn't have.
+function methods.at(quantity, points)
+  local known = {}
+  for i, axis in ipairs(core.axes(quantity)) do known[i], known[axis.name] = axis.name, true end
+  for axis in pairs(type(points) == "table" and points or {}) do
+    if not known[axis] then core.raise(("at: the quantity has no axis '%s'; it has %s"):format(tostring(axis), #known > 0 and table.concat(known, ", ") or "none")) end
+  end
+  return core.at(quantity, points)
+end
+
+for _, metatable in ipairs { core.number_metatable, core.value_metatable } do
+  metatable.__index = function(quantity, word)
+    local method = methods[word]
+    if method == nil then core.raise(("a quantity has no '%s'; it has %s"):format(tostring(word), table.concat(case.sorted_keys(methods), ", "))) end
+    return method
+  end
+  metatable.__tostring = text.quantity
+  metatable.__concat = function(a, b) return tostring(a) .. tostring(b) end
+end
+core.case_metatable.__tostring = text.case
+core.case_metatable.__newindex = function() core.raise("a case doesn't change; c:with{name = value} makes another") end
+
+function lacuna.case(givens) return case.new(givens) end
+
+-- quantity "156 ± 3 pc", quantity(5, "au"): a quantity. quantity{name =, unit =, meaning =, ...}: a new name for the glossary.
+function lacuna.quantity(first, unit)
+  if type(first) == "table" then return core.add_name(first) end
+  if unit ~= nil then return core.quantity(first, unit) end
+  return core.quantity(first)
+end
+
+-- relation{gives =, by =, from = {...}, function(a, b) ... end, source =, equation =, supposes =}: a row of the user's.
+function lacuna.relation(row)
+  if type(row) ~= "table" then core.raise("relation wants a table; got " .. type(row)) end
+  local copy = {}
+  for key, value in pairs(row) do copy[key] = value end
+  copy.call = row[1] or row.call
+  return core.add_relation(copy)
+end
+
+lacuna.spread = {
+  normal = core.spread_normal, lopsided = core.spread_lopsided, uniform = core.spread_uniform, log_uniform = core.spread_log_uniform,
+  log_normal = core.spread_log_normal, samples = core.spread_samples,
+}
+lacuna.sweep = setmetatable({ log = core.sweep_log }, { __call = function(_, ...) return core.sweep(...) end })
+
+-- Parts that many runs don't need are loaded when they are first asked for.
+local later = { help = "lacuna.help", recipes = "lacuna.help", study = "lacuna.study" }
+
+local function look_up(_, word)
+  if type(word) ~= "string" then return nil end
+  if later[word] then
+    local value = core.part(later[word])[word]
+    rawset(lacuna, word, value)
+    return value
+  end
+  local unit = word:find "^%a+$" and core.unit(word)
+  if unit then
+    rawset(lacuna, word, unit)
+    return unit
+  end
+  local name, synonym = core.find(word)
+  if not name or synonym then return nil end
+  local function derive(givens)
+    if type(givens) ~= "table" then core.raise(("%s wants a table of givens; got %s"):format(word, type(givens))) end
+    return case.new(givens)[name]
+  end
+  rawset(lacuna, word, derive)
+  return derive
+end
+setmetatable(lacuna, { __index = look_up })
+
+-- globals(environment): makes the words, units and names readable as globals there. A unit's global can't be assigned to.
+function lacuna.globals(environment)
+  return setmetatable(environment, {
+    __index = lacuna,
+    __newindex = function(t, word, value)
+      if type(word) == "string" and word:find "^%a+$" and core.unit(word) then
+        core.raise(("%s is a unit: its global can't be assigned to; choose another name, or write local %s = ..."):format(word, word))
+      end
+      rawset(t, word, value)
+    end,
+  })
+end
+
+return lacuna

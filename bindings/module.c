@@ -1,0 +1,48 @@
+/* SPDX-License-Identifier: GPL-3.0-or-later */
+/* require "lacuna": the functions in C go into one private table, the sources in Lua are loaded from the binary on demand, and
+   bindings/lacuna.lua builds the module's table from both. No global is written. */
+#include <string.h>
+
+#include "binding.h"
+
+static const char loaded_key = 0; /* registry key: the module's own sources by name */
+
+/* load_part(name): what the embedded source of that name returns, run once for each Lua state with the private table as its argument. */
+static int load_part(lua_State *L) {
+  const char *name = luaL_checkstring(L, 1);
+  lua_rawgetp(L, LUA_REGISTRYINDEX, &loaded_key);
+  if (lua_getfield(L, -1, name) != LUA_TNIL) return 1;
+  for (const lac_embedded *part = lac_embedded_modules; part->name != NULL; part++) {
+    if (strcmp(part->name, name) != 0) continue;
+    if (luaL_loadbufferx(L, (const char *)part->code, part->size, part->name, NULL) != LUA_OK) return lua_error(L);
+    lua_pushvalue(L, lua_upvalueindex(1));
+    lua_call(L, 1, 1);
+    lua_pushvalue(L, -1);
+    lua_setfield(L, 2, name);
+    return 1;
+  }
+  return lac_error(L, "no part '%s'", name);
+}
+
+int luaopen_lacuna(lua_State *L) {
+  lac_state_of(L);
+  lua_newtable(L);
+  lua_rawsetp(L, LUA_REGISTRYINDEX, &loaded_key);
+  lua_newtable(L);
+  lac_open_state(L);
+  lac_open_quantity(L);
+  lac_open_spread(L);
+  lac_open_summary(L);
+  lac_open_catalogue(L);
+  lac_open_case(L);
+  lac_open_solve(L);
+  lac_open_csv(L);
+  lac_open_output(L);
+  lua_pushvalue(L, -1);
+  lua_pushcclosure(L, load_part, 1);
+  lua_pushvalue(L, -1);
+  lua_setfield(L, -3, "part");
+  lua_pushliteral(L, "lacuna.lacuna");
+  lua_call(L, 1, 1);
+  return 1;
+}

@@ -1,0 +1,69 @@
+/* SPDX-License-Identifier: GPL-3.0-or-later */
+/* Where output goes: files that are whole or absent, and the width of the terminal. */
+#include <errno.h>
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+#include <sys/ioctl.h>
+#include <sys/stat.h>
+#include <unistd.h>
+
+#include "binding.h"
+
+static bool write_all(int file, const char *text, size_t length) {
+  while (length > 0) {
+    const ssize_t written = write(file, text, length);
+    if (written < 0 && errno == EINTR) continue;
+    if (written < 0) return false;
+    text += written;
+    length -= (size_t)written;
+  }
+  return true;
+}
+
+/* The rights a new file would have: mkstemp is stricter. */
+static mode_t usual_rights(void) {
+  const mode_t mask = umask(0);
+  umask(mask);
+  return 0666 & ~mask;
+}
+
+/* Writes under the name in `temporary` (ending in XXXXXX), then gives the file its own. No call in here can raise. */
+static bool write_and_rename(const char *path, char *temporary, const char *text, size_t length) {
+  const int file = mkstemp(temporary);
+  if (file < 0) return false;
+  bool good = write_all(file, text, length) && fchmod(file, usual_rights()) == 0;
+  int trouble = good ? 0 : errno;
+  if (close(file) != 0 && good) good = false, trouble = errno;
+  if (good && rename(temporary, path) != 0) good = false, trouble = errno;
+  if (!good) unlink(temporary), errno = trouble;
+  return good;
+}
+
+/* write_file(path, text): the file holds the whole text, or what it held before. */
+static int write_file(lua_State *L) {
+  static const char ending[] = ".XXXXXX";
+  size_t path_length, length;
+  const char *path = luaL_checklstring(L, 1, &path_length), *text = luaL_checklstring(L, 2, &length);
+  char *temporary = lua_newuserdatauv(L, path_length + sizeof ending, 0);
+  memcpy(temporary, path, path_length);
+  memcpy(temporary + path_length, ending, sizeof ending);
+  if (!write_and_rename(path, temporary, text, length)) return lac_error(L, "cannot write %s: %s", path, strerror(errno));
+  return 0;
+}
+
+/* terminal_width(): COLUMNS where it is set, else the width of the terminal on standard output, else nil. */
+static int terminal_width(lua_State *L) {
+  const char *columns = getenv("COLUMNS");
+  const long wanted = columns == NULL ? 0 : strtol(columns, NULL, 10);
+  struct winsize size;
+  if (wanted > 0 && wanted < 10000) lua_pushinteger(L, wanted);
+  else if (isatty(STDOUT_FILENO) && ioctl(STDOUT_FILENO, TIOCGWINSZ, &size) == 0 && size.ws_col > 0) lua_pushinteger(L, size.ws_col);
+  else lua_pushnil(L);
+  return 1;
+}
+
+void lac_open_output(lua_State *L) {
+  static const luaL_Reg functions[] = {{"write_file", write_file}, {"terminal_width", terminal_width}, {NULL, NULL}};
+  luaL_setfuncs(L, functions, 0);
+}

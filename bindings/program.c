@@ -1,0 +1,249 @@
+/* SPDX-License-Identifier: GPL-3.0-or-later */
+/* The program: a script, a line of code, or a conversation at a terminal. Exit status 0, 1 for a failed script, 2 for wrong usage. */
+#include <errno.h>
+#include <lauxlib.h>
+#include <lualib.h>
+#include <signal.h>
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+#include <unistd.h>
+
+#include "binding.h"
+#include "nearest.h"
+#include "program.h"
+
+enum { FAILED = 1, WRONG_USAGE = 2 };
+
+/* The options that are settings of the module, with its names for them. */
+enum { SETTINGS = 3 };
+static const char *const settings[SETTINGS] = {"seed", "draws", "threads"};
+
+typedef struct {
+  const char *setting[SETTINGS]; /* the texts given; NULL where none is */
+  const char *code;              /* of -e */
+  char **rest;                   /* the script and its arguments; or the arguments alone, after -e */
+  int count;
+} command_line;
+
+static const char *const words[] = {"--help", "--version", "--seed", "--draws", "--threads"};
+
+static const char help[] = "Usage: lacuna [OPTION...] [FILE.lua [ARGUMENT...]]\n"
+                           "       lacuna [OPTION...] -e CODE [ARGUMENT...]\n"
+                           "What can be resolved around a young star: runs a script, a line of code, or,\n"
+                           "alone at a terminal, a conversation (help() tells more there).\n"
+                           "\n"
+                           "  -               read the script from standard input\n"
+                           "  -e CODE         run CODE; if it is an expression, print its value\n"
+                           "  --seed N        key of the random draws\n"
+                           "  --draws N       how many draws stand for an error bar\n"
+                           "  --threads N     how many processor cores to use\n"
+                           "  --help          print this and leave\n"
+                           "  --version       print the version and leave\n"
+                           "\n"
+                           "Exit status: 0, 1 if the script failed, 2 for wrong usage.\n";
+
+static int unknown_option(const char *option) {
+  int length = (int)strcspn(option, "="), least = 3; /* two slips of the finger, no more */
+  const char *nearest = NULL;
+  char name[66];
+  snprintf(name, sizeof name, "%.*s", length, option);
+  for (size_t i = 0; i < sizeof words / sizeof *words; i++) {
+    int edits = lac_edits(name, words[i]);
+    if (edits < least) least = edits, nearest = words[i];
+  }
+  if (nearest) fprintf(stderr, "lacuna: unknown option '%s'; the nearest known one is %s\n", name, nearest);
+  else fprintf(stderr, "lacuna: unknown option '%.*s'; lacuna --help lists them\n", length, option);
+  return WRONG_USAGE;
+}
+
+/* Which setting an argument like "--draws" or "--draws=5" names, with the text after "=" or NULL. Returned: -1 if none. */
+static int find_setting(const char *argument, const char **text) {
+  for (int i = 0; i < SETTINGS; i++) {
+    size_t length = strlen(settings[i]);
+    if (strncmp(argument, "--", 2) != 0 || strncmp(argument + 2, settings[i], length) != 0) continue;
+    const char *after = argument + 2 + length;
+    if (*after != 0 && *after != '=') continue;
+    *text = *after ? after + 1 : NULL;
+    return i;
+  }
+  return -1;
+}
+
+/* Reads the options up to the first word that is none. Returned: -1 to go on, else the exit status. */
+static int read_options(command_line *line, char **argument) {
+  for (; *argument && **argument == '-' && strcmp(*argument, "-") != 0; argument++) {
+    const char *text;
+    int setting = find_setting(*argument, &text);
+    if (setting >= 0) {
+      if (text == NULL && argument[1]) text = *++argument;
+      line->setting[setting] = text ? text : "nothing";
+    } else if (strcmp(*argument, "--") == 0) {
+      argument++;
+      break;
+    } else if (strcmp(*argument, "-e") == 0) {
+      if (argument[1] == NULL) return fputs("lacuna: -e wants code after it; got nothing\n", stderr), WRONG_USAGE;
+      line->code = argument[1];
+      argument += 2;
+      break;
+    } else if (strcmp(*argument, "--help") == 0) {
+      return fputs(help, stdout), 0;
+    } else if (strcmp(*argument, "--version") == 0) {
+      return puts("lacuna " LAC_VERSION "\nLicence GPL-3.0-or-later; there is no warranty."), 0;
+    } else {
+      return unknown_option(*argument);
+    }
+  }
+  line->rest = argument;
+  for (line->count = 0; argument[line->count];) line->count++;
+  return -1;
+}
+
+void program_report(lua_State *L, const char *prefix) {
+  const char *message = program_was_interrupted() ? "interrupted" : lua_tostring(L, -1);
+  fflush(stdout);
+  fprintf(stderr, "%s%s\n", prefix, message ? message : "an error without words");
+  lua_pop(L, 1);
+}
+
+bool program_is_beginning(lua_State *L) {
+  static const char mark[] = "<eof>";
+  size_t length;
+  const char *message = lua_tolstring(L, -1, &length);
+  return message && length >= sizeof mark - 1 && strcmp(message + length - (sizeof mark - 1), mark) == 0;
+}
+
+int program_load(lua_State *L, const char *text, const char *chunk_name) {
+  const char *expression = lua_pushfstring(L, "return %s", text);
+  int status = luaL_loadbufferx(L, expression, strlen(expression), chunk_name, "t");
+  if (status != LUA_OK && !program_is_beginning(L)) {
+    lua_pop(L, 1);
+    status = luaL_loadbufferx(L, text, strlen(text), chunk_name, "t");
+  }
+  lua_remove(L, -2);
+  return status;
+}
+
+static int show_values(lua_State *L) {
+  int count = lua_gettop(L);
+  lua_getfield(L, LUA_REGISTRYINDEX, LUA_LOADED_TABLE);
+  lua_getfield(L, -1, "lacuna");
+  for (int i = 1; i <= count; i++) {
+    lua_getfield(L, -1, "show");
+    lua_pushvalue(L, i);
+    lua_call(L, 1, 1);
+    puts(luaL_tolstring(L, -1, NULL));
+    lua_pop(L, 2);
+  }
+  return 0;
+}
+
+int program_show(lua_State *L, int from) {
+  int count = lua_gettop(L) - from + 1;
+  luaL_checkstack(L, 8, "too many results");
+  lua_pushcfunction(L, show_values);
+  lua_insert(L, from);
+  return program_call(L, count, 0);
+}
+
+/* What a script finds under _G: the standard libraries, and the module's words, units and names. */
+static int open_libraries(lua_State *L) {
+  lua_gc(L, LUA_GCSTOP);
+  luaL_openlibs(L);
+  luaL_requiref(L, "lacuna", luaopen_lacuna, 0);
+  lua_getfield(L, -1, "globals");
+  lua_pushglobaltable(L);
+  lua_call(L, 1, 0);
+  lua_gc(L, LUA_GCRESTART);
+  return 0;
+}
+
+/* Makes one setting, as the module's settings{name = text} does, which also says what is right. */
+static int make_setting(lua_State *L) {
+  lua_getfield(L, LUA_REGISTRYINDEX, LUA_LOADED_TABLE);
+  lua_getfield(L, -1, "lacuna");
+  lua_getfield(L, -1, "settings");
+  lua_createtable(L, 0, 1);
+  lua_pushvalue(L, 2);
+  lua_setfield(L, -2, lua_tostring(L, 1));
+  lua_call(L, 1, 0);
+  return 0;
+}
+
+static int make_settings(lua_State *L, const command_line *line) {
+  static const char subject[] = "settings: ";
+  for (int i = 0; i < SETTINGS; i++) {
+    if (line->setting[i] == NULL) continue;
+    lua_pushcfunction(L, make_setting);
+    lua_pushstring(L, settings[i]);
+    lua_pushstring(L, line->setting[i]);
+    if (lua_pcall(L, 2, 0, 0) == LUA_OK) continue;
+    const char *message = lua_tostring(L, -1), *found = message ? strstr(message, subject) : NULL;
+    if (found) fprintf(stderr, "lacuna: --%s\n", found + strlen(subject));
+    else fprintf(stderr, "lacuna: --%s: %s\n", settings[i], message ? message : "refused");
+    return WRONG_USAGE;
+  }
+  return 0;
+}
+
+/* The table `arg`: the script's name at 0, its arguments from 1. */
+static void set_arguments(lua_State *L, const command_line *line) {
+  int shift = line->code ? 1 : 0;
+  lua_createtable(L, line->count, 1);
+  if (line->code) {
+    lua_pushliteral(L, "-e");
+    lua_rawseti(L, -2, 0);
+  }
+  for (int i = 0; i < line->count; i++) {
+    lua_pushstring(L, line->rest[i]);
+    lua_rawseti(L, -2, i + shift);
+  }
+  lua_setglobal(L, "arg");
+}
+
+/* Loads what the command line names and calls it. Returned: a status of Lua's. */
+static int run(lua_State *L, const command_line *line) {
+  int status, first = line->code ? 0 : 1;
+  if (line->code) status = program_load(L, line->code, "=-e");
+  else status = luaL_loadfile(L, line->count && strcmp(line->rest[0], "-") != 0 ? line->rest[0] : NULL);
+  if (status != LUA_OK) return status;
+  int base = lua_gettop(L);
+  luaL_checkstack(L, line->count, "too many arguments");
+  for (int i = first; i < line->count; i++) lua_pushstring(L, line->rest[i]);
+  status = program_call(L, lua_gettop(L) - base, line->code ? LUA_MULTRET : 0);
+  return status == LUA_OK && line->code ? program_show(L, base) : status;
+}
+
+/* A failed script's exit status. One stopped by Ctrl-C ends by that signal, so that a loop of the shell's around it ends too. */
+static int failed(lua_State *L) {
+  program_report(L, "lacuna: ");
+  if (program_was_interrupted()) {
+    lua_close(L);
+    signal(SIGINT, SIG_DFL);
+    raise(SIGINT);
+  }
+  return FAILED;
+}
+
+int main(int count, char **arguments) {
+  command_line line = {.code = NULL};
+  int status = count > 0 ? read_options(&line, arguments + 1) : WRONG_USAGE;
+  if (status >= 0) return status;
+  lua_State *L = luaL_newstate();
+  if (L == NULL) return fputs("lacuna: out of memory\n", stderr), FAILED;
+  lua_pushcfunction(L, open_libraries);
+  if (lua_pcall(L, 0, 0, 0) != LUA_OK) return failed(L);
+  status = make_settings(L, &line);
+  if (status != 0) return lua_close(L), status;
+  bool conversation = line.code == NULL && line.count == 0 && isatty(STDIN_FILENO);
+  program_catch_interrupts(L, conversation);
+  set_arguments(L, &line);
+  if (conversation) program_repl(L);
+  else if (run(L, &line) != LUA_OK) status = failed(L);
+  lua_close(L);
+  if (fflush(stdout) != 0 || ferror(stdout)) {
+    fprintf(stderr, "lacuna: cannot write to standard output: %s\n", strerror(errno));
+    status = FAILED;
+  }
+  return status;
+}

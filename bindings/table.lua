@@ -1,0 +1,322 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- Tables of results as aligned text, CSV and LaTeX (booktabs). A table is
+--
+--   { title = text or nil, texts = { headers of the texts carried along }, columns = {...}, rows = {...}, notes = {...} }
+--
+-- with columns { name, entry = row of the glossary, verdict, group = heading over it or nil, unit (VOUnits), unit_text, unit_tex },
+-- rows { name, texts, cells }, cells { share } of a verdict or { value, upper, lower } in the column's unit (no errors: a single
+-- number) or { missing = true }, and notes { heading, lines (texts, or lists whose first text heads the others) }. A column belongs to the group of its left neighbour where the name is the same.
+local core = ...
+local format = core.part "lacuna.format"
+
+local tables = {}
+local GAP, MISSING = "  ", "—"
+local NO_BREAK = "\u{a0}"
+
+-- Lines of text -------------------------------------------------------------------------------------------------------------------
+
+-- Breaks a text at its spaces into lines of at most so many columns (longer words stand alone).
+local function wrapped(text, columns)
+  local lines, line = {}, nil
+  for word in text:gmatch "%S+" do
+    if line and format.width(line) + 1 + format.width(word) <= columns then line = line .. " " .. word
+    else
+      lines[#lines + 1] = line
+      line = word
+    end
+  end
+  lines[#lines + 1] = line
+  return lines
+end
+
+local function cell_text(cell)
+  if cell.missing then return MISSING end
+  if cell.share then return cell.share == 1 and "yes" or cell.share == 0 and "no" or format.percent(cell.share) end
+  return cell.upper and format.with_error(cell.value, cell.upper, cell.lower) or format.number(cell.value)
+end
+tables.cell_text = cell_text
+
+-- A cell's text in two parts, which meet where the error bar begins: so the values of a column stand below each other.
+local function parts(text)
+  local at = text:find " [±+]"
+  if at then return text:sub(1, at - 1), text:sub(at) end
+  return text, ""
+end
+
+-- The texts of a column's cells, all of one width.
+local function aligned(cells)
+  local left, right, lefts, rights = 0, 0, {}, {}
+  for i, cell in ipairs(cells) do
+    lefts[i], rights[i] = parts(cell_text(cell))
+    left, right = math.max(left, format.width(lefts[i])), math.max(right, format.width(rights[i]))
+  end
+  for i = 1, #cells do lefts[i] = format.pad_left(lefts[i], left) .. format.pad_right(rights[i], right) end
+  return lefts, left + right
+end
+
+-- A column laid out: its heading's lines, its cells' texts, its width.
+local function laid_out(column, cells)
+  local texts, width = aligned(cells)
+  local name = column.name:gsub("_", " "):gsub(" by ", " by" .. NO_BREAK)
+  for word in name:gmatch "%S+" do width = math.max(width, format.width(word)) end
+  width = math.max(width, format.width(column.unit_text))
+  local heading = wrapped(name, width)
+  for i, line in ipairs(heading) do heading[i] = line:gsub(NO_BREAK, " ") end
+  return { heading = heading, unit = column.unit_text, texts = texts, width = width }
+end
+
+-- Neighbouring columns of one group, each laid out.
+local function blocks_of(whole)
+  local blocks = {}
+  for i, column in ipairs(whole.columns) do
+    local block = blocks[#blocks]
+    if not block or block.group ~= column.group then
+      block = { group = column.group, width = 0 }
+      blocks[#blocks + 1] = block
+    end
+    local cells = {}
+    for j, row in ipairs(whole.rows) do cells[j] = row.cells[i] end
+    local column_laid_out = laid_out(column, cells)
+    block[#block + 1] = column_laid_out
+    block.width = block.width + #GAP + column_laid_out.width
+  end
+  return blocks
+end
+
+-- Blocks side by side while they fit; a block too wide for one table is cut between its columns.
+local function pages_of(blocks, names_width, columns)
+  local pages, page, room = {}, nil, 0
+  local function put(block)
+    if not page or block.width > room then
+      page, room = {}, columns - names_width
+      pages[#pages + 1] = page
+    end
+    page[#page + 1] = block
+    room = room - block.width
+  end
+  for _, block in ipairs(blocks) do
+    if block.width <= columns - names_width then put(block)
+    else
+      local piece
+      for _, column in ipairs(block) do
+        if piece and piece.width + #GAP + column.width > columns - names_width then
+          put(piece)
+          piece = nil
+        end
+        piece = piece or { group = block.group, width = 0 }
+        piece[#piece + 1] = column
+        piece.width = piece.width + #GAP + column.width
+      end
+      put(piece)
+    end
+  end
+  return pages
+end
+
+-- "─── 5 au ───" over a block's columns.
+local function ruled(text, columns)
+  local space = columns - format.width(text) - 2
+  if space < 2 then return format.pad_right(text, columns) end
+  return ("─"):rep(space // 2) .. " " .. text .. " " .. ("─"):rep(space - space // 2)
+end
+
+local function trimmed(line) return (line:gsub("%s+$", "")) end
+
+local function add_page(lines, page, rows, names_width)
+  local deepest, grouped = 0, false
+  for _, block in ipairs(page) do
+    grouped = grouped or block.group
+    for _, column in ipairs(block) do deepest = math.max(deepest, #column.heading) end
+  end
+  local blank = (" "):rep(names_width)
+  if grouped then
+    local line = blank
+    for _, block in ipairs(page) do
+      local columns = block.width - #GAP
+      line = line .. GAP .. (block.group and ruled(block.group, columns) or (" "):rep(columns))
+    end
+    lines[#lines + 1] = trimmed(line)
+  end
+  local function add(first, text_of)
+    local line = format.pad_right(first, names_width)
+    for _, block in ipairs(page) do
+      for _, column in ipairs(block) do line = line .. GAP .. format.pad_left(text_of(column), column.width) end
+    end
+    lines[#lines + 1] = trimmed(line)
+    return format.width(line)
+  end
+  for i = 1, deepest do add("", function(column) return column.heading[i - deepest + #column.heading] or "" end) end
+  local width = add("", function(column) return column.unit end)
+  lines[#lines + 1] = ("─"):rep(width)
+  for i, row in ipairs(rows) do add(row.name, function(column) return column.texts[i] end) end
+end
+
+-- Notes: each with its heading, wrapped, the lines' further parts set in. A line may be a list: what its first text heads.
+local function add_notes(lines, notes, columns)
+  local function add(text, indent)
+    for i, line in ipairs(wrapped(text, columns - indent - 2)) do lines[#lines + 1] = (" "):rep(i == 1 and indent or indent + 2) .. line end
+  end
+  for _, note in ipairs(notes) do
+    lines[#lines + 1] = ""
+    add(note.heading, 0)
+    for _, text in ipairs(note.lines) do
+      if type(text) == "string" then add(text, 2)
+      else
+        for i, part in ipairs(text) do add(part, i == 1 and 2 or 4) end
+      end
+    end
+  end
+end
+
+-- The table as text, no wider than so many columns where that can be.
+function tables.text(whole, columns)
+  local names_width, lines = 0, {}
+  for _, row in ipairs(whole.rows) do names_width = math.max(names_width, format.width(row.name)) end
+  if whole.title then lines = wrapped(whole.title, columns) end
+  for _, page in ipairs(pages_of(blocks_of(whole), names_width, columns)) do
+    if #lines > 0 then lines[#lines + 1] = "" end
+    add_page(lines, page, whole.rows, names_width)
+  end
+  add_notes(lines, whole.notes, columns)
+  return table.concat(lines, "\n")
+end
+
+-- CSV -----------------------------------------------------------------------------------------------------------------------------
+
+local function quoted(field)
+  if field:find '[",\r\n]' or field:find "^%s" or field:find "%s$" then return '"' .. field:gsub('"', '""') .. '"' end
+  return field
+end
+
+local function csv_line(fields)
+  for i, field in ipairs(fields) do fields[i] = quoted(field) end
+  return table.concat(fields, ",")
+end
+
+local function digits(value) return value and value == value and ("%.7g"):format(value) or "" end
+
+-- One line a target: its texts, then a value, an upper and a lower error a column, or the share of a verdict.
+function tables.csv(whole)
+  local header = { "name", table.unpack(whole.texts) }
+  for _, column in ipairs(whole.columns) do
+    local name = (column.group and column.group .. " " or "") .. column.name
+    local unit = column.unit == "1" and "" or " [" .. column.unit .. "]"
+    if column.verdict then header[#header + 1] = name .. " share"
+    else
+      for _, what in ipairs { "", " upper error", " lower error" } do header[#header + 1] = name .. what .. unit end
+    end
+  end
+  local lines = { csv_line(header) }
+  for _, row in ipairs(whole.rows) do
+    local fields = { row.name }
+    for _, text in ipairs(whole.texts) do fields[#fields + 1] = row.texts[text] or "" end
+    for i, column in ipairs(whole.columns) do
+      local cell = row.cells[i]
+      if column.verdict then fields[#fields + 1] = digits(cell.share)
+      else
+        for _, part in ipairs { "value", "upper", "lower" } do fields[#fields + 1] = digits(cell[part]) end
+      end
+    end
+    lines[#lines + 1] = csv_line(fields)
+  end
+  return table.concat(lines, "\n") .. "\n"
+end
+
+-- LaTeX ---------------------------------------------------------------------------------------------------------------------------
+
+local special = {
+  ["\\"] = "\\textbackslash{}", ["{"] = "\\{", ["}"] = "\\}", ["$"] = "\\$", ["&"] = "\\&", ["#"] = "\\#", ["%"] = "\\%", ["_"] = "\\_",
+  ["~"] = "\\textasciitilde{}", ["^"] = "\\textasciicircum{}", ["<"] = "$<$", [">"] = "$>$",
+}
+-- What stands in symbols, equations and units; letters with accents are understood as they are.
+local beyond_ascii = {
+  ["±"] = "$\\pm$", ["≥"] = "$\\ge$", ["≤"] = "$\\le$", ["×"] = "$\\times$", ["·"] = "$\\cdot$", ["—"] = "---", ["–"] = "--", ["…"] = "\\dots{}",
+  ["√"] = "$\\sqrt{\\ }$", ["≈"] = "$\\approx$", ["∝"] = "$\\propto$", ["−"] = "$-$", ["⊙"] = "$\\odot$", ["☉"] = "$\\odot$", ["°"] = "$^\\circ$", ["µ"] = "$\\mu$",
+  ["α"] = "$\\alpha$", ["β"] = "$\\beta$", ["γ"] = "$\\gamma$", ["δ"] = "$\\delta$", ["ϵ"] = "$\\epsilon$", ["ε"] = "$\\varepsilon$",
+  ["θ"] = "$\\theta$", ["κ"] = "$\\kappa$", ["λ"] = "$\\lambda$", ["μ"] = "$\\mu$", ["ν"] = "$\\nu$", ["π"] = "$\\pi$", ["ρ"] = "$\\rho$",
+  ["σ"] = "$\\sigma$", ["τ"] = "$\\tau$", ["ϕ"] = "$\\phi$", ["Δ"] = "$\\Delta$", ["Σ"] = "$\\Sigma$", ["Ω"] = "$\\Omega$", ["ϖ"] = "$\\varpi$",
+  ["ω"] = "$\\omega$", ["ℓ"] = "$\\ell$", ["⁻"] = "$^{-}$", ["⁰"] = "$^{0}$", ["¹"] = "$^{1}$", ["²"] = "$^{2}$", ["³"] = "$^{3}$", ["⁴"] = "$^{4}$",
+  ["⁵"] = "$^{5}$", ["⁶"] = "$^{6}$", ["⁷"] = "$^{7}$", ["⁸"] = "$^{8}$", ["⁹"] = "$^{9}$",
+}
+
+local function escaped(text)
+  text = text:gsub("[\\{}$&#%%_~^<>]", special)
+  return (text:gsub(utf8.charpattern, function(character) return #character > 1 and beyond_ascii[character] or nil end))
+end
+
+local function cell_tex(cell)
+  if cell.missing then return "---" end
+  if cell.share then return cell.share == 1 and "yes" or cell.share == 0 and "no" or format.percent_tex(cell.share) end
+  return cell.upper and format.with_error_tex(cell.value, cell.upper, cell.lower) or format.number_tex(cell.value)
+end
+
+local function heading_tex(column)
+  if not column.verdict then return "$" .. column.entry.symbol .. "$" end
+  return "\\shortstack{" .. escaped((column.name:gsub("_", " "):gsub(" by ", "\0by "))):gsub("\0", "\\\\") .. "}"
+end
+
+-- The row of group headings over the columns, with its rules; nil where there is no group.
+local function groups_tex(whole, before)
+  local cells, rules, i = {}, {}, 1
+  while i <= #whole.columns do
+    local last = i
+    while last < #whole.columns and whole.columns[last + 1].group == whole.columns[i].group do last = last + 1 end
+    local group = whole.columns[i].group
+    cells[#cells + 1] = ("\\multicolumn{%d}{c}{%s}"):format(last - i + 1, group and escaped(group) or "")
+    if group then rules[#rules + 1] = ("\\cmidrule(lr){%d-%d}"):format(before + i, before + last) end
+    i = last + 1
+  end
+  if #rules == 0 then return nil end
+  return ("& "):rep(before) .. table.concat(cells, " & ") .. " \\\\ " .. table.concat(rules, " ")
+end
+
+local function notes_tex(notes)
+  local lines = {}
+  for _, note in ipairs(notes) do
+    local sentences = {}
+    for i, line in ipairs(note.lines) do
+      sentences[i] = escaped(type(line) == "string" and line or line[1] .. ": " .. table.concat(line, "; ", 2)):gsub("%.$", "")
+    end
+    lines[#lines + 1] = ("\\par\\textit{%s:} %s."):format(escaped(note.heading), table.concat(sentences, "; "))
+  end
+  return lines
+end
+
+-- A table environment, for a document that loads booktabs.
+function tables.latex(whole)
+  local texts = whole.texts
+  local before = 1 + #texts
+  local lines = {
+    "% needs \\usepackage{booktabs}", "\\begin{table*}", "\\centering\\small",
+    whole.title and "\\caption{" .. escaped(whole.title) .. "}" or "% \\caption{...}",
+    "\\begin{tabular}{" .. ("l"):rep(before) .. ("r"):rep(#whole.columns) .. "}", "\\toprule",
+  }
+  local function add(line) lines[#lines + 1] = line end
+  local function add_row(fields) add(table.concat(fields, " & ") .. " \\\\") end
+  local groups = groups_tex(whole, before)
+  if groups then add(groups) end
+  local headings, units = { "Star" }, { "" }
+  for _, text in ipairs(texts) do headings[#headings + 1], units[#units + 1] = escaped(text), "" end
+  for _, column in ipairs(whole.columns) do
+    headings[#headings + 1] = heading_tex(column)
+    units[#units + 1] = column.unit == "1" and "" or "($" .. column.unit_tex .. "$)"
+  end
+  add_row(headings)
+  add_row(units)
+  add "\\midrule"
+  for _, row in ipairs(whole.rows) do
+    local fields = { escaped(row.name) }
+    for _, text in ipairs(texts) do fields[#fields + 1] = escaped(row.texts[text] or "") end
+    for _, cell in ipairs(row.cells) do fields[#fields + 1] = cell_tex(cell) end
+    add_row(fields)
+  end
+  add "\\bottomrule"
+  add "\\end{tabular}"
+  add "\\par\\medskip\\begin{minipage}{\\textwidth}\\footnotesize"
+  for _, line in ipairs(notes_tex(whole.notes)) do add(line) end
+  add "\\end{minipage}"
+  add "\\end{table*}"
+  return table.concat(lines, "\n") .. "\n"
+end
+
+return tables

@@ -1,0 +1,460 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- How quantities, cases and derivations are written out: the words on the screen.
+local core = ...
+local format = core.part "lacuna.format"
+local equation = core.part "lacuna.equation"
+
+local text = {}
+
+-- Units ---------------------------------------------------------------------------------------------------------------------------
+
+local preferred = { length = "au", mass = "Msun", angle = "mas", time = "yr" } -- of results of arithmetic, by dimension in words
+
+-- The display unit of a quantity: its string, its factor, its plain text ("" for a plain number).
+local function display_unit(quantity)
+  local _, unit, factor = core.facts(quantity)
+  if not unit then
+    local words, si, plain = core.dimension(quantity)
+    if plain then return nil, 1, "" end
+    unit = preferred[words] or si
+    factor = core.unit_facts(unit)
+  end
+  local _, _, written = core.unit_facts(unit)
+  return unit, factor, unit == "1" and "" or written or unit
+end
+text.display_unit = display_unit
+
+-- Quantities ----------------------------------------------------------------------------------------------------------------------
+
+local function is_verdict(name) return name and core.entry(name).kind == "verdict" end
+
+local function has_draws(axes)
+  for _, axis in ipairs(axes) do if axis.name == "draw" then return true end end
+  return false
+end
+text.has_draws = has_draws
+
+-- The share of all elements of a quantity that are neither 0 nor undefined; nothing is stored for it.
+local function share(quantity)
+  for i, axis in ipairs(core.axes(quantity)) do
+    quantity = i == 1 and core.chance(quantity, axis.name) or core.mean(quantity, axis.name)
+  end
+  return core.elements(quantity)[1] ~= 0 and core.elements(quantity)[1] or 0
+end
+
+local function undefined_note(quantity)
+  local axes, count = core.axes(quantity), quantity
+  for i, axis in ipairs(axes) do
+    count = i == 1 and core.undefined(quantity, axis.name) or core.mean(count, axis.name) * axis.length
+  end
+  count = math.floor(core.elements(count)[1] + 0.5)
+  if count == 0 then return "" end
+  local _, _, _, _, size = core.facts(quantity)
+  if has_draws(axes) then return (" (%s of draws undefined)"):format(format.percent(count / size)) end
+  return (" (%d of %d points undefined)"):format(count, size)
+end
+
+-- Median, upper and lower error of an ensemble in its display unit. Sides that differ by less than a tenth are taken as equal: with some
+-- thousands of draws each is known to a few per cent only.
+function text.median_and_errors(quantity, factor)
+  local low, median, high = core.spread_of(quantity)
+  low, median, high = core.elements(low)[1] / factor, core.elements(median)[1] / factor, core.elements(high)[1] / factor
+  local upper, lower = high - median, median - low
+  if math.abs(upper - lower) < 0.1 * math.max(upper, lower) then upper, lower = (upper + lower) / 2, (upper + lower) / 2 end
+  return median, upper, lower
+end
+
+-- An ensemble along the axis draw alone: "0.46 ± 0.03".
+local function ensemble(quantity, factor) return format.with_error(text.median_and_errors(quantity, factor)) end
+
+local function verdict_ensemble(quantity)
+  local share = core.elements(core.chance(quantity))[1]
+  return "in " .. format.percent(share) .. " of draws" .. undefined_note(quantity)
+end
+
+-- The points of an axis as text: "20 … 330 m, 100 points".
+local function axis_text(axis)
+  local name = core.find(axis.name)
+  if not axis.values then return ("%s, %d points"):format(axis.name, axis.length) end
+  local first, last = axis.values[1], axis.values[#axis.values]
+  local unit, factor = "", 1
+  if name then
+    local entry = core.entry(name)
+    local _, _, written = core.unit_facts(entry.unit)
+    unit, factor = entry.unit == "1" and "" or " " .. written, entry.factor
+  end
+  return ("%s %s … %s%s, %d points"):format(axis.name, format.number(first / factor), format.number(last / factor), unit, axis.length)
+end
+
+-- Some points along the one axis of a quantity: all where they are few, else nine evenly from end to end.
+local function along_one(quantity, axis, factor, verdict)
+  local function at(i)
+    local value = core.elements(core.at(quantity, { [axis.name] = i }))[1] / factor
+    if verdict then return value ~= value and "undefined" or value == 0 and "no" or value == 1 and "yes" or format.percent(value) end
+    return format.number(value)
+  end
+  local shown, count = {}, axis.length
+  if count <= 9 then
+    for i = 1, count do shown[i] = at(i) end
+    return table.concat(shown, "  ")
+  end
+  for i = 0, 8 do shown[i + 1] = at(1 + math.floor(i * (count - 1) / 8 + 0.5)) end
+  return table.concat(shown, "  ", 1, 8) .. "  …  " .. shown[9]
+end
+
+-- A quantity with axes besides draw: along each point its median or chance.
+local function grid(quantity, axes, verdict, factor, unit)
+  local over = {}
+  for _, axis in ipairs(axes) do if axis.name ~= "draw" then over[#over + 1] = axis end end
+  local reduced = quantity
+  if has_draws(axes) then reduced = verdict and core.chance(quantity) or core.median(quantity) end
+  if #over > 1 then
+    local names = {}
+    for i, axis in ipairs(over) do names[i] = axis_text(axis) end
+    local low, high = reduced, reduced
+    for _, axis in ipairs(over) do low, high = core.lowest(low, axis.name), core.highest(high, axis.name) end
+    low, high = core.elements(low)[1] / factor, core.elements(high)[1] / factor
+    local range = ("from %s to %s"):format(verdict and format.percent(low) or format.number(low), verdict and format.percent(high) or format.number(high))
+    return format.with_unit(range, unit) .. (has_draws(axes) and (verdict and " of draws" or " (medians)") or "") .. " over " ..
+      table.concat(names, " and ") .. undefined_note(quantity)
+  end
+  return format.with_unit(along_one(reduced, over[1], factor, verdict), unit) .. "\n  " ..
+    (has_draws(axes) and (verdict and "of draws, " or "medians, ") or "") .. "along " .. axis_text(over[1]) .. undefined_note(quantity)
+end
+
+local verdict_reason -- defined with the derivations
+
+-- The text of a quantity: "156 ± 3 pc", "no", "in 83 % of draws".
+function text.quantity(quantity)
+  local name, _, _, number, _, unbound = core.facts(quantity)
+  local verdict = is_verdict(name)
+  local _, factor, unit = display_unit(quantity)
+  if unbound then return text.unbound(quantity, factor, unit) end
+  local axes = core.axes(quantity)
+  if #axes == 0 then
+    if verdict then return text.with_reason(number ~= number and "undefined" or number == 0 and "no" or "yes", quantity, name) end
+    return format.with_unit(format.number(number / factor), unit)
+  end
+  if #axes == 1 and axes[1].name == "draw" then
+    if verdict then return text.with_reason(verdict_ensemble(quantity), quantity, name) end
+    local written = ensemble(quantity, factor)
+    return format.with_unit(written, unit) .. undefined_note(quantity)
+  end
+  return grid(quantity, axes, verdict, factor, unit)
+end
+
+function text.unbound(quantity, factor, unit)
+  if not factor then
+    local _
+    _, factor, unit = display_unit(quantity)
+  end
+  local kind, a, b, c, d = core.unbound_facts(quantity)
+  if kind == "sweep" then return ("a sweep of %d points"):format(a) end
+  if kind == "normal" or kind == "lopsided" then return format.with_unit(format.with_error(b / factor, c / factor, (kind == "normal" and c or d) / factor), unit) end
+  if kind == "uniform" or kind == "log_uniform" then
+    return format.with_unit(("from %s to %s"):format(format.number(b / factor), format.number(c / factor)), unit) .. (kind == "uniform" and ", uniform" or ", log-uniform")
+  end
+  return format.with_unit(("a spread about %s"):format(format.number(a / factor)), unit)
+end
+
+-- How a spread was given, before it is bound to draws: "156 ± 3 pc"; nil for what is no spread.
+function text.as_written(name, value)
+  if type(value) == "string" then value = core.reading(value, name) end
+  local kind = core.unbound_facts(value)
+  if kind and kind ~= "sweep" then return text.quantity(value) end
+end
+
+-- A given as it was given: what its draws make of an error bar is no news.
+function text.given(self, name)
+  local info = core.info(self)
+  return info.written[name] or text.quantity(info.givens[name])
+end
+
+-- Sources -------------------------------------------------------------------------------------------------------------------------
+
+-- "Kanagawa et al. 2016, PASJ 68, 43, Eq. 5"
+function text.source(row)
+  local source = core.source(row.source)
+  if not source then return row.source .. (row.place and ", " .. row.place or "") end
+  if not source.year then return source.authors .. (row.place and ", " .. row.place or "") end
+  local parts = { source.authors .. " " .. source.year }
+  if source.journal then parts[#parts + 1] = source.journal .. (source.volume and " " .. source.volume or "") end
+  if source.page then parts[#parts + 1] = source.page end
+  if row.place then parts[#parts + 1] = row.place end
+  return table.concat(parts, ", ") .. (row.from_memory and " (formula from memory)" or "")
+end
+
+-- "by definition", "assumed", "kanagawa_2016: Kanagawa et al. ..."
+function text.recipe(row)
+  if row.source == "definition" then return "by definition" .. (row.by == "definition" and "" or " (" .. row.by .. ")") end
+  return row.by .. ": " .. text.source(row)
+end
+
+-- Equations -----------------------------------------------------------------------------------------------------------------------
+
+-- The symbol of a name in plain text; that of an angle is θ of the length.
+function text.symbol(name)
+  local length = name:match "^(.+)_angle$"
+  if length and core.find(length) == length and core.entry(length).on_sky then return "θ(" .. text.symbol(length) .. ")" end
+  return equation.plain_symbol(core.entry(name).symbol)
+end
+local symbol_of = text.symbol
+
+-- One representative number of a quantity, for putting into an equation.
+local function representative(quantity)
+  local _, factor, unit = display_unit(quantity)
+  local reduced = quantity
+  for _, axis in ipairs(core.axes(quantity)) do reduced = axis.name == "draw" and core.median(reduced) or core.at(reduced, { [axis.name] = 1 }) end
+  return format.with_unit(format.number(core.elements(reduced)[1] / factor), unit)
+end
+
+-- The equation of a row, and again with the case's numbers in it.
+local function equation_lines(self, row)
+  if not row.equation or row.equation == "" then return {} end
+  local lines = { equation.plain(row.equation, symbol_of) }
+  local with_numbers = row.equation:match "^.-=(.*)$"
+  if with_numbers and #row.from > 0 and #row.conditions == 0 then -- conditions are listed with their numbers by themselves
+    lines[2] = "= " .. equation.plain(with_numbers, function(name)
+      local value = core.raw(self, name)
+      return value and representative(value) or symbol_of(name)
+    end)
+  end
+  return lines
+end
+
+-- Derivations ---------------------------------------------------------------------------------------------------------------------
+
+-- Where a row's inputs lie outside its range of validity: a list of { words = the range, name, value, share }.
+function text.outside(self, row)
+  local found = {}
+  for _, bound in ipairs(row.holds) do
+    local value = core.raw(self, bound.name)
+    if value then
+      local outside = core.either(core.below(value, core.like(value, bound.low)), core.above(value, core.like(value, bound.high)))
+      local outside_in = share(outside)
+      if outside_in > 0 then
+        local entry = core.entry(bound.name)
+        local _, _, unit = core.unit_facts(entry.unit)
+        local low, high = format.number(bound.low / entry.factor), format.number(bound.high / entry.factor)
+        found[#found + 1] = { name = bound.name, value = value, share = outside_in, single = #core.axes(outside) == 0,
+          words = ("%s holds for %s from %s to %s%s"):format(row.by, bound.name, low, high, entry.unit == "1" and "" or " " .. unit) }
+      end
+    end
+  end
+  return found
+end
+
+-- The same as sentences.
+function text.warnings(self, row)
+  local warnings = {}
+  for i, outside in ipairs(text.outside(self, row)) do
+    warnings[i] = ("%s; %s here%s"):format(outside.words, text.quantity(outside.value),
+      outside.single and "" or ", outside in " .. format.percent(outside.share))
+  end
+  return warnings
+end
+
+-- One condition of a verdict, "[a] >= [b]" or "2 [a] <= [b]": its sides' names, the factor, whether the left side must be the greater.
+local function parse_condition(condition)
+  local factor, left, sign, right = condition:match "^(%d*)%s*%[([%w_]+)%]%s*([<>]=)%s*%[([%w_]+)%]$"
+  return { left = left, right = right, factor = tonumber(factor) or 1, greater = sign == ">=", sign = sign == ">=" and "≥" or "≤" }
+end
+
+text.parse_condition = parse_condition
+
+-- A verdict's conditions in a case: each with its sides' values, and the share of elements for which it holds.
+function text.conditions(self, name)
+  local number = core.row_of(self, name)
+  local conditions = {}
+  for _, condition in ipairs(number and core.row(number).conditions or {}) do
+    local c = parse_condition(condition)
+    c.left_value, c.right_value = core.raw(self, c.left), core.raw(self, c.right)
+    local left = c.left_value * c.factor
+    local fails = c.greater and core.below(left, c.right_value) or core.above(left, c.right_value)
+    c.failed = 1 - share(1 - fails) -- the share; undefined ones are in it
+    c.holds = c.failed == 0
+    c.margin = left / c.right_value
+    conditions[#conditions + 1] = c
+  end
+  return conditions, number and core.row(number).unchecked
+end
+
+local function condition_text(c)
+  local factor = c.factor == 1 and "" or c.factor .. " × "
+  local sign, state = c.sign, ""
+  if c.failed == 1 then sign = c.greater and "<" or ">"
+  elseif c.failed > 0 then state = (", not in %s of draws"):format(format.percent(c.failed)) end
+  return ("%s%s %s %s %s%s"):format(factor, c.left, text.quantity(c.left_value), sign, c.right == "elements_required" and text.quantity(c.right_value)
+    or c.right .. " " .. text.quantity(c.right_value), state)
+end
+text.condition = condition_text
+
+-- Why a verdict is no, in a few words, from the first condition that fails.
+function verdict_reason(self, name)
+  for _, c in ipairs((text.conditions(self, name))) do
+    if not c.holds then
+      local factor = c.factor == 1 and "" or c.factor .. " × "
+      return ("%s%s %s, %s %s"):format(factor, c.left, text.quantity(c.left_value), c.greater and "below" or "above", text.quantity(c.right_value))
+    end
+  end
+end
+text.verdict_reason = verdict_reason
+
+-- A verdict's words and, where the case it was asked from is known, the margin or the condition that fails.
+function text.with_reason(words, verdict, name)
+  local self = core.case_of(verdict)
+  if not self then return words end
+  local conditions = text.conditions(self, name)
+  local failing
+  for _, c in ipairs(conditions) do if not c.holds and (not failing or c.failed > failing.failed) then failing = c end end
+  if not failing then return #conditions > 0 and words .. ": " .. condition_text(conditions[1]) or words end
+  return words .. ": " .. condition_text(failing)
+end
+
+local function add(lines, indent, s) lines[#lines + 1] = (" "):rep(indent) .. s end
+
+local function add_step(lines, self, step)
+  local value = core.raw(self, step.name)
+  if not step.row then
+    add(lines, 2, ("%s = %s   given"):format(step.name, text.given(self, step.name)))
+    return
+  end
+  local row = core.row(step.row)
+  if row.kind == "assumed" then
+    add(lines, 2, ("%s = %s   assumed (%s)%s"):format(step.name, text.quantity(value), text.source(row), row.supposes and ": " .. row.supposes or ""))
+    return
+  end
+  add(lines, 2, ("%s = %s"):format(step.name, text.quantity(value)))
+  for _, line in ipairs(equation_lines(self, row)) do add(lines, 6, line) end
+  add(lines, 6, text.recipe(row))
+  if row.supposes then add(lines, 6, "supposes " .. row.supposes) end
+  for _, warning in ipairs(text.warnings(self, row)) do add(lines, 6, "beware: " .. warning) end
+end
+
+local function add_verdict(lines, self, name)
+  local conditions, unchecked = text.conditions(self, name)
+  add(lines, 2, "conditions")
+  for _, c in ipairs(conditions) do add(lines, 6, condition_text(c)) end
+  if unchecked then add(lines, 6, "not checked: " .. unchecked) end
+  add(lines, 6, "geometrically resolved only: whether it is detected is not assessed here")
+end
+
+local function add_alternatives(lines, self, name)
+  local others = core.part "lacuna.case".over_recipes(self, name)
+  if #others == 0 then return end
+  add(lines, 2, "with other recipes")
+  for _, other in ipairs(others) do
+    add(lines, 6, ("%s by %s: %s (instead of %s)"):format(other.name, other.by, text.quantity(other.value), other.instead_of))
+  end
+end
+
+text.why_metatable = {
+  __name = "derivation",
+  __tostring = function(why)
+    local self, name = why.case, why.name
+    local value, entry = core.raw(self, name), core.entry(name)
+    local lines = { ("%s = %s"):format(name, text.quantity(value)), "  " .. entry.meaning, "" }
+    for _, step in ipairs(core.steps(self, name)) do add_step(lines, self, step) end
+    if entry.kind == "verdict" then add_verdict(lines, self, name) end
+    add_alternatives(lines, self, name)
+    return table.concat(lines, "\n")
+  end,
+}
+
+-- Why a single number is undefined: the first step that has none, with what it came from.
+function text.undefined(self, name)
+  for _, step in ipairs(core.steps(self, name)) do
+    local value = core.raw(self, step.name)
+    local _, _, _, number = core.facts(value)
+    if number ~= number and step.row then
+      local row, inputs = core.row(step.row), {}
+      for _, input in ipairs(row.from) do inputs[#inputs + 1] = input .. " = " .. text.quantity(core.raw(self, input)) end
+      local range = core.entry(step.name).range
+      return ("%s is undefined: by %s, %s give%s no value%s"):format(step.name, row.by, table.concat(inputs, " and "), #inputs == 1 and "s" or "",
+        range ~= "any" and " that is " .. range or "")
+    end
+  end
+  return name .. " is undefined"
+end
+
+-- What is missing -----------------------------------------------------------------------------------------------------------------
+
+local function hints(names)
+  local lines = {}
+  for _, name in ipairs(names) do
+    local hint = core.entry(name).hint
+    if hint then lines[#lines + 1] = name .. ": " .. hint end
+  end
+  return lines
+end
+
+-- What is missing in one line, as an error says it.
+function text.not_had(missing)
+  if #missing.sets == 0 then return missing.name .. " must be given: no relation gives it" end
+  local ways = {}
+  for i, set in ipairs(missing.sets) do
+    ways[i] = table.concat(set.names, ", ")
+    if set.row then ways[i] = ways[i] .. " (by " .. core.row(set.row).by .. ")" end
+  end
+  return missing.name .. " can't be derived from what is given; give " .. table.concat(ways, ", or ")
+end
+
+text.missing_metatable = {
+  __name = "what is missing",
+  __tostring = function(missing)
+    if missing.had then return missing.name .. " can be had from what is given" end
+    if #missing.sets == 0 then return missing.name .. " must be given: no relation gives it" end
+    local hint = hints(missing.sets[1].names)
+    return text.not_had(missing) .. (#hint > 0 and "\n  " .. table.concat(hint, "\n  ") or "")
+  end,
+}
+
+text.check_metatable = {
+  __name = "check",
+  __tostring = function(check)
+    if #check.entries == 0 then return "no given follows from the others: nothing to compare" end
+    local lines = {}
+    for _, entry in ipairs(check.entries) do
+      lines[#lines + 1] = ("%s: given %s, by %s %s: %s"):format(entry.name, entry.written, entry.by, text.quantity(entry.derived),
+        entry.agrees and "agree" or "DISAGREE")
+    end
+    return table.concat(lines, "\n")
+  end,
+}
+
+-- Cases ---------------------------------------------------------------------------------------------------------------------------
+
+function text.case(self)
+  local info = core.info(self)
+  local lines = { info.target and "case of " .. info.target or "case" }
+  for _, name in ipairs(core.names()) do
+    if info.givens[name] then add(lines, 2, ("%s = %s"):format(name, text.given(self, name))) end
+    if info.labels[name] then add(lines, 2, ("%s = %s"):format(name, info.labels[name])) end
+  end
+  local using = {}
+  for name, by in pairs(info.using) do using[#using + 1] = ("using %s by %s"):format(name, by) end
+  table.sort(using)
+  for _, line in ipairs(using) do add(lines, 2, line) end
+  for i, change in ipairs(info.changed or {}) do
+    if i > 6 then
+      add(lines, 2, ("and %d more recipes changed"):format(#info.changed - 6))
+      break
+    end
+    add(lines, 2, ("%s now by %s, before by %s"):format(change.name, change.after, change.before))
+  end
+  return table.concat(lines, "\n")
+end
+
+-- What the prompt prints of results, a line each; of nothing found, why (as functions return nil and a message), of an answer its note.
+function text.show(...)
+  local results, lines = table.pack(...), {}
+  if results.n == 2 and results[1] == nil and type(results[2]) == "string" then return results[2] end
+  for i = 1, results.n do
+    local value = results[i]
+    if type(value) == "string" and i == 1 then value = ("%q"):format(value) end
+    if value ~= nil or results.n == 1 then lines[#lines + 1] = tostring(value) end
+  end
+  return table.concat(lines, "\n")
+end
+
+return text

@@ -1,0 +1,279 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- Studies from Lua: reading targets, every kind of bad input with its message, the outputs. Stars and instruments are invented; what is
+-- derived is compared with the same asked of a case, or with what follows from the definitions by hand.
+package.path = "tests/lua/?.lua"
+local t = require "harness"
+local lacuna = require "lacuna"
+lacuna.settings { seed = 7, draws = 2000 }
+
+local folder = os.tmpname()
+os.remove(folder)
+assert(os.execute("mkdir " .. folder))
+
+local function path(name) return folder .. "/" .. name end
+local function write(name, content)
+  local file = assert(io.open(path(name), "wb"))
+  file:write(content)
+  file:close()
+  return path(name)
+end
+local function read(name)
+  local file = io.open(path(name), "rb")
+  if not file then return nil end
+  local content = file:read "a"
+  file:close()
+  return content
+end
+
+-- A study without its printing.
+local printed
+local function quietly(fields)
+  local print_before = print
+  print = function(line) printed = tostring(line) end
+  local ok, result = pcall(lacuna.study, fields)
+  print = print_before
+  if not ok then error(result, 0) end
+  return result
+end
+
+local function of_file(content, more)
+  local fields = { targets = write("stars.csv", content), ask = { "parallax" } }
+  for key, value in pairs(more or {}) do fields[key] = value end
+  return quietly(fields)
+end
+
+-- What the file's error must say after the folder's name, as plain text.
+local function refuses(content, message, more)
+  local ok, trouble = pcall(of_file, content, more)
+  t.equal(ok, false, "an error is wanted: " .. message)
+  t.equal(trouble, path("stars.csv") .. message)
+end
+
+local function median(quantity, unit) return lacuna.median(quantity):value(unit) end
+local given_of = function(study, i) return study.rows[i].target.givens end
+
+t.test("values, errors, blanks, texts and labels of a file", function()
+  local study = of_file('\xEF\xBB\xBFname,distance [kpc],distance error [pc],stellar_mass [solMass],stellar_mass upper error [solMass],stellar_mass lower error [solMass],right ascension,band\r\n'
+    .. '"Marrow ""3"", north",0.156,3,1.9,0.2,0.1,"04 12 08,1",H\r\n\r\nQuillon A,101 ± 2 pc,,,,,15 02 27,\r\n"two\nlines", 99 pc ,,.5,0,0,,K')
+  t.equal(#study.rows, 3)
+  t.equal(study.rows[1].name, 'Marrow "3", north')
+  t.equal(study.rows[3].name, "two\nlines")
+  t.equal(study.texts, { "right ascension" })
+  t.equal(study.rows[1].texts["right ascension"], "04 12 08,1")
+  t.equal(study.rows[1].case.band, "H")
+  t.close(median(study.rows[1].case.distance, "pc"), 156, 3 * 4 * 1.25 / 156 / math.sqrt(2000)) -- 4 standard errors of a median
+  t.close(lacuna.deviation(study.rows[1].case.distance):value "pc", 3, 4 / math.sqrt(2 * 2000))
+  local low, high = lacuna.interval(study.rows[1].case.stellar_mass)
+  t.close((high:value "Msun" - 1.9) / (1.9 - low:value "Msun"), 2, 0.3) -- two-sided: twice as far up as down
+  t.close(lacuna.deviation(study.rows[2].case.distance):value "pc", 2, 4 / math.sqrt(2 * 2000))
+  t.equal(given_of(study, 2).stellar_mass, nil)
+  t.close(study.rows[3].case.stellar_mass:value "Msun", 0.5, 1e-15) -- an error of zero is none
+  t.close(study.rows[3].case.distance:value "pc", 99, 1e-15)
+end)
+
+t.test("malformed files", function()
+  refuses("", ": the file is empty; its first line names the columns")
+  refuses("name,distance [pc]\n", ": no targets; the file has a header line alone")
+  refuses('name,distance [pc]\nMarrow 3,1"5\n', ":2:11: malformed CSV: a quotation mark out of place; a quoted field stands in \" \" as a whole, with \"\" for each inside it")
+  refuses('name,distance [pc]\n"é" x,15\n', ":2:5: malformed CSV: a quotation mark out of place; a quoted field stands in \" \" as a whole, with \"\" for each inside it")
+  refuses('name,distance [pc]\nQuillon A,101\n"Marrow 3,15\nTarn,60', ":3: malformed CSV: a quoted field of the row that starts here is never closed")
+  refuses("name,distance [pc]\nMarrow 3\n", ':2: column "distance [pc]": the row has 1 field, the header 2')
+  refuses('name,distance [pc]\n"two\nlines",1\nMarrow 3,15,8\n', ":4: column 3: the row has 3 fields, the header 2")
+  refuses("name,distance [pc]\nMarrow \xff,15\n", ':2: column "name": the cell is not UTF-8')
+  refuses("name,dist\xff\nMarrow,15\n", ":1: column 2: the header is not UTF-8")
+  local ok, trouble = pcall(quietly, { targets = path "nowhere.csv", ask = { "parallax" } })
+  t.equal(ok, false)
+  t.equal(trouble, "cannot open " .. path "nowhere.csv" .. ": No such file or directory")
+end)
+
+t.test("wrong headers", function()
+  refuses("distance [pc]\n15\n", ':1: no column "name"; each target wants one')
+  refuses("name,\nMarrow 3,1\n", ':1: column "": a column wants a header')
+  refuses("name,distance [pc],distance [kpc]\nMarrow 3,15,1\n", ':1: column "distance [kpc]": there is a column of that name already')
+  refuses("name,remarks,remarks\nMarrow 3,a,b\n", ':1: column "remarks": there is a column of that name already')
+  refuses("name,distence [pc]\nMarrow 3,15\n", ":1: column \"distence [pc]\": unknown name 'distence'; did you mean distance?")
+  refuses("name,distanse\nMarrow 3,15\n", ":1: column \"distanse\": unknown name 'distanse'; did you mean distance?")
+  refuses("name,plx [mas]\nMarrow 3,15\n", ":1: column \"plx [mas]\": unknown name 'plx'; it is called parallax here")
+  refuses("name,distance [parsecs]\nMarrow 3,15\n", ":1: column \"distance [parsecs]\": unknown unit 'parsecs'")
+  refuses("name,distance [K]\nMarrow 3,15\n", ':1: column "distance [K]": distance wants a length (in pc); got 1 K')
+  refuses("name,distance error [pc]\nMarrow 3,3\n", ':1: column "distance error [pc]": an error without its value; there is no column "distance"')
+  refuses("name,distance [pc],distance error\nMarrow 3,15,3\n", ':1: column "distance error": an error wants its unit in the header, like "distance error [pc]"')
+  refuses("name,distance [pc],distance upper error [pc]\nMarrow 3,15,3\n", ':1: column "distance upper error [pc]": an upper error without the lower one')
+  refuses("name,distance [pc],distance lower error [pc]\nMarrow 3,15,3\n", ':1: column "distance lower error [pc]": a lower error without the upper one')
+  t.equal(of_file("name,declination,distance [pc],spectral type\nMarrow 3,-33 18 04,15,A5\n").texts, { "declination", "spectral type" }) -- not inclination
+end)
+
+t.test("wrong cells", function()
+  local head = "name,distance [pc],distance error [pc]\n"
+  refuses(head .. "Marrow 3,15x,\n", ':2: column "distance [pc]": can\'t read "15x"; write a number, or one with its error and unit, like "156 ± 3 pc"')
+  refuses(head .. "Marrow 3,nan,\n", ':2: column "distance [pc]": can\'t read "nan"; write a number, or one with its error and unit, like "156 ± 3 pc"')
+  refuses(head .. "Marrow 3,1e999,\n", ':2: column "distance [pc]": distance: "1e999 pc" wants finite numbers and errors that are not negative')
+  refuses(head .. "Marrow 3,15 K,\n", ':2: column "distance [pc]": distance wants a length (in pc); got 15 K')
+  refuses(head .. "Marrow 3,-15,\n", ':2: column "distance [pc]": distance must be > 0; got -15 pc')
+  refuses(head .. "Marrow 3,15,x\n", ':2: column "distance error [pc]": can\'t read "x"; an error is a number in the header\'s unit')
+  refuses(head .. "Marrow 3,15,-3\n", ':2: column "distance error [pc]": an error can\'t be negative; got -3')
+  refuses(head .. "Marrow 3,,3\n", ':2: column "distance error [pc]": an error without its value; got 3')
+  refuses(head .. "Marrow 3,15 ± 1,3\n", ':2: column "distance error [pc]": the value has an error bar already, 15 ± 1')
+  refuses("name,distance [pc],distance upper error [pc],distance lower error [pc]\nMarrow 3,15,3,\n",
+    ':2: column "distance upper error [pc]": one side of a two-sided error is blank, the other is not')
+  refuses("name,distance\nMarrow 3,15\n", ':2: column "distance": distance wants a length (in pc); got 15')
+  refuses(head .. ",15,\n", ':2: column "name": a target wants a name')
+  refuses(head .. "Marrow 3,15,\nTarn,60,\nMarrow 3,16,\n", ':4: column "name": there is a target "Marrow 3" already, in line 2')
+end)
+
+t.test("given twice, and contradictory givens", function()
+  local head = "name,distance [pc]\nMarrow 3,15\n"
+  refuses(head, ':1: column "distance [pc]": distance is given twice, here and in the study\'s given', { given = { distance = "15 pc" } })
+  refuses(head, ':1: column "distance [pc]": distance is given twice, here and in variant "near"', { variants = { { name = "near", given = { distance = "15 pc" }, ask = { "parallax" } } } })
+  local ok, trouble = pcall(of_file, "name,distance [pc],parallax [mas]\nTarn,100,10\nMarrow 3,100,11\n", { ask = { "distance" } })
+  t.equal(ok, false)
+  t.equal(trouble:find(path "stars.csv" .. ":3: contradictory givens: ", 1, true), 1, trouble)
+end)
+
+-- What a study with these fields raises, with the script's line before it.
+local function complains(fields, message)
+  local text = t.raises(function() quietly(fields) end, "study")
+  t.equal(text:match "^[^:]*test_study.lua:%d+: (.*)", message)
+end
+
+t.test("a study that is not one", function()
+  local one = { { name = "Marrow 3", distance = "15 pc" } }
+  complains(5, "study wants a table {targets = ..., ask = ...}; got number")
+  complains({ ask = { "parallax" } }, "study wants targets = the name of a CSV file, or a list of tables")
+  complains({ targets = 5, ask = { "parallax" } }, "study wants targets = the name of a CSV file, or a list of tables; got number")
+  complains({ targets = {}, ask = { "parallax" } }, "study: the list of targets is empty")
+  complains({ targets = one }, 'study wants ask = {names}, like ask = {"rim_radius", "rim_resolved_by_array"}')
+  complains({ targets = one, ask = "parallax" }, "study: ask wants a table; got string")
+  complains({ targets = one, ask = { 5 } }, "study: ask: a name is wanted; got 5")
+  complains({ targets = one, ask = { "paralax" } }, "study: ask: unknown name 'paralax'; did you mean parallax?")
+  complains({ targets = one, ask = { "plx" } }, "study: ask: unknown name 'plx'; it is called parallax here")
+  complains({ targets = one, ask = { "parallax", "parallax" } }, "study: ask: parallax is asked twice")
+  complains({ targets = one, ask = { "band" } }, "study: ask: band is a label; there is nothing to derive")
+  complains({ targets = one, ask = { "parallax" }, variant = {} }, "study: there is no 'variant' here; there are ask, csv, given, latex, targets, title, using, variants")
+  complains({ targets = one, ask = { "parallax" }, given = { stellar_mass = "3 pc" } }, "study: stellar_mass wants a mass (in Msun); got 3 pc")
+  complains({ targets = one, ask = { "parallax" }, given = { stellar_mass = lacuna.sweep("1 Msun", "2 Msun", 3) } },
+    "study: stellar_mass wants one value or an error bar in a study, not one along stellar_mass; make it variants")
+  complains({ targets = one, ask = { "parallax" }, using = { array_resolution = "finge" }, given = { wavelength = "1.65 um", projected_baseline = "100 m" } },
+    'study: target "Marrow 3": using: array_resolution has no recipe \'finge\'; it has half_fringe, fringe')
+  complains({ targets = one, variants = { { ask = { "parallax" } } } }, "study: variant 1 wants name = a text")
+  complains({ targets = one, variants = { { name = "a" } } }, 'study: variant "a": wants ask = {names}, like ask = {"gap_resolved_by_array"}')
+  complains({ targets = one, variants = { { name = "a", ask = { "parallax" } }, { name = "a", ask = { "parallax" } } } }, 'study: variant "a": there is a variant of that name already')
+  complains({ targets = { { name = "a", distanse = "3 pc" } }, ask = { "parallax" } }, "study: target \"a\": unknown name 'distanse'; did you mean distance?")
+  complains({ targets = { { name = "a", distance = "3 K" } }, ask = { "parallax" } }, 'study: target "a": distance wants a length (in pc); got 3 K')
+  complains({ targets = { { distance = "3 pc" } }, ask = { "parallax" } }, "study: target 1 wants name = a text; got nil")
+  complains({ targets = { { name = "a" }, { name = "a" } }, ask = { "parallax" } }, 'study: there are two targets "a", 1 and 2')
+  complains({ targets = { { name = "Marrow 3", distance = "15 pc" } }, ask = { "hill_radius" }, given = { planet_mass = "1 Mjup", stellar_mass = "1 Msun" } },
+    "study: nothing that is asked can be derived for any target: hill_radius of Marrow 3, for want of planet_semi_major_axis")
+end)
+
+local instrument = { wavelength = "1.65 um", projected_baseline = "200 m", planet_mass = "2 ± 0.5 Mjup" }
+local stars = {
+  { name = "Marrow 3", distance = "156 ± 3 pc", rim_radius = "0.15 ± 0.01 au", remarks = "50 % & more_" },
+  { name = "Tarn, 12", distance = "60 pc", rim_radius = "0.02 au" },
+  { name = "Drumlin 30", distance = "446 +21 -17 pc" },
+}
+local asked = { "rim_size_angle", "rim_resolved_by_array" }
+local function study_of_stars(more)
+  local fields = { title = "Rims", targets = stars, given = instrument, ask = asked }
+  for key, value in pairs(more or {}) do fields[key] = value end
+  return quietly(fields)
+end
+
+t.test("cells are what a case says", function()
+  local study = study_of_stars()
+  t.close(study.rows[2].cells[1].value, 2 * 0.02 / 60 * 1000, 1e-12) -- 1 au at 1 pc is 1 arcsec, by the parsec's definition
+  t.equal(study.rows[2].cells[2].share, 0) -- 0.67 mas is below half a fringe of 200 m, 0.85 mas
+  t.equal(study.rows[1].cells[2].share, 1) -- 1.92 mas is not
+  t.close(study.rows[1].cells[1].value, median(study.rows[1].case.rim_size_angle, "mas"), 1e-15)
+  t.equal(study.rows[3].cells[1].missing, true)
+  for _, words in ipairs { "Drumlin 30, for want of", "\nTarn, 12 +0.6667 +no\n", "rim_elements_by_array < elements_required 1: Tarn, 12 %(0.78%)", "detected is not assessed",
+    "seed 7", "2000 draws", "half_fringe", "assumed", "\nMarrow 3 .* yes\n" } do
+    t.equal(printed:lower():find(words:lower()) ~= nil, true, words .. " in " .. printed)
+  end
+end)
+
+t.test("draws: common givens are the same for all targets, a target's own are its own, and no other target changes them", function()
+  local study = study_of_stars { targets = { { name = "a", distance = "156 ± 3 pc" }, { name = "b", distance = "156 ± 3 pc" } }, ask = { "parallax" } }
+  local a, b = study.rows[1].case, study.rows[2].case
+  t.equal(a.planet_mass:value "Mjup", b.planet_mass:value "Mjup")
+  t.equal(a.distance:value "pc" == b.distance:value "pc", false)
+  local alone = study_of_stars { targets = { { name = "b", distance = "156 ± 3 pc", stellar_mass = "1 ± 0.1 Msun" } }, ask = { "parallax" } }
+  t.equal(alone.rows[1].case.distance:value "pc", b.distance:value "pc")
+end)
+
+t.test("variants have their own columns, recipes and cases", function()
+  local study = study_of_stars { variants = {
+    { name = "long", given = { shortest_baseline = "15 m" }, ask = { "rim_resolved_by_array" } },
+    { name = "by fringe", using = { array_resolution = "fringe" }, ask = { "array_resolution" } },
+  } }
+  t.equal(#study.columns, 4)
+  t.equal(study.columns[4].group, "by fringe")
+  t.close(study.rows[1].cells[4].value, 2 * study.rows[1].case.array_resolution:value "mas", 1e-14)
+  t.close(study.rows[1].variants.long.shortest_baseline:value "m", 15, 1e-15)
+  t.raises(function() return study.rows[1].case.shortest_baseline end, "shortest_baseline")
+end)
+
+t.test("targets that don't use the same recipes are named", function()
+  quietly { targets = { { name = "a", distance = "100 pc", bolometric_flux = "1e-11 W.m**-2" }, { name = "b", stellar_radius = "1 Rsun", effective_temperature = "5000 K" } },
+    ask = { "stellar_luminosity" } }
+  t.equal(printed:find "Not all targets use the same recipes\n  stellar_luminosity: flux and distance for a; " ~= nil, true, printed)
+end)
+
+t.test("a table too wide is split between its groups, never wrapped", function()
+  local variants = {}
+  for i = 1, 6 do variants[i] = { name = "variant " .. i, given = { shortest_baseline = i .. " m" }, ask = asked } end
+  local study = study_of_stars { variants = variants }
+  for columns = 50, 130, 20 do
+    for line in study:table(columns):gmatch "[^\n]+" do t.equal(utf8.len(line) <= columns, true, line) end
+  end
+  t.equal(select(2, study:table(50):gsub("\nMarrow 3 ", "")) > select(2, study:table(130):gsub("\nMarrow 3 ", "")), true)
+end)
+
+t.test("CSV: written, and read again as targets", function()
+  local study = study_of_stars { csv = path "out.csv" }
+  local content = read "out.csv"
+  t.equal(content, study:csv())
+  t.equal(content:match "^[^\n]*", "name,remarks,rim_size_angle [mas],rim_size_angle upper error [mas],rim_size_angle lower error [mas],rim_resolved_by_array share")
+  t.equal(content:find('\n"Tarn, 12",,0.6666667,,,0\n', 1, true) ~= nil, true, content)
+  t.equal(content:find("\nDrumlin 30,,,,,\n", 1, true) ~= nil, true, content)
+  local again = quietly { targets = path "out.csv", ask = { "rim_size_angle" } }
+  for i = 1, 2 do t.close(again.rows[i].cells[1].value, study.rows[i].cells[1].value, 2e-3) end -- a new ensemble's median
+  t.equal(again.rows[1].texts.remarks, stars[1].remarks)
+  t.close(tonumber(again.rows[1].texts["rim_resolved_by_array share"]), 1, 1e-15)
+end)
+
+t.test("LaTeX: one booktabs table, its special characters escaped, its braces and environments closed", function()
+  local content = study_of_stars { latex = path "out.tex", variants = { { name = "a_b & c", ask = asked } } } and read "out.tex"
+  local _, opened = content:gsub("\\begin{", "")
+  local _, closed = content:gsub("\\end{", "")
+  t.equal(opened, closed)
+  local depth = 0
+  for mark in content:gsub("\\[{}]", ""):gmatch "[{}]" do
+    depth = depth + (mark == "{" and 1 or -1)
+    t.equal(depth >= 0, true, "braces")
+  end
+  t.equal(depth, 0, "braces")
+  for _, rule in ipairs { "\\toprule", "\\midrule", "\\bottomrule", "\\cmidrule(lr){5-6}", "\\caption{Rims}", "50 \\% \\& more\\_", "a\\_b \\& c", "half\\_fringe", "\\mathrm{mas}", "Assumed" } do
+    t.equal(content:find(rule, 1, true) ~= nil, true, rule .. " in " .. content)
+  end
+  local columns = #content:match "\\begin{tabular}{([lr]+)}"
+  for line in content:match("\\midrule\n(.-)\\bottomrule"):gmatch "[^\n]+" do
+    t.equal(select(2, line:gsub("\\&", ""):gsub("&", "")), columns - 1, line)
+  end
+  t.equal(content:find "[^\\]%%[^ ]" == nil, true, "no bare percent sign")
+end)
+
+t.test("files are whole or absent", function()
+  write("kept.csv", "before")
+  t.raises(function() quietly { targets = {}, ask = asked, csv = path "kept.csv" } end, "empty")
+  t.equal(read "kept.csv", "before")
+  t.raises(function() study_of_stars { csv = path "no/such/folder.csv" } end, "cannot write .*folder.csv: No such file or directory")
+  assert(os.execute("mkdir " .. path "folder"))
+  t.raises(function() study_of_stars { csv = path "folder" } end, "cannot write .*folder: Is a directory")
+  local pipe = io.popen("ls -a " .. folder)
+  t.equal(pipe:read("a"):find "folder%.%w" == nil, true, "no temporary file is left")
+  pipe:close()
+end)
+
+os.execute("rm -r " .. folder)
+t.finish()
