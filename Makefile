@@ -20,8 +20,8 @@ LUA_CFLAGS = -I/usr/include/lua5.4
 LUA_LIBS = -llua5.4
 CFLAGS = -g
 # In the program, what would take a millisecond to load each time is linked statically; where there are only shared libraries:
-# make STATIC_LIBS='-lcsv -lgsl -lgslcblas'
-STATIC_LIBS = -l:libcsv.a -l:libgsl.a -l:libgslcblas.a
+# make STATIC_LIBS='-lreadline -lcsv -lgsl -lgslcblas'
+STATIC_LIBS = -l:libreadline.a -l:libtinfo.a -l:libcsv.a -l:libgsl.a -l:libgslcblas.a -l:libgomp.a
 
 build = build
 demo = scripts/demo_study.lua
@@ -49,7 +49,7 @@ share = $(link) -shared -Wl,-z,nodelete -Wl,-z,relro
 
 core_libs = -lgsl -lgslcblas -lm
 module_libs = -lcsv $(core_libs)
-program_libs = $(LUA_LIBS) -lreadline $(STATIC_LIBS) -lm
+program_libs = $(LUA_LIBS) $(STATIC_LIBS) -lm
 
 # ---- Files ----
 
@@ -152,19 +152,26 @@ $(build)/lacuna.so: $(module_objects) $(build)/liblacuna.a bindings/build/module
 	@echo linking $@
 	$(share) -Wl,--version-script=bindings/build/module.map -o $@ $(module_objects) $(build)/liblacuna.a $(module_libs)
 
+# Not position-independent: thousands of pointers in the tables need no relocation at each start.
 $(build)/lacuna: $(program_objects) $(module_objects) $(build)/liblacuna.a
 	@echo linking $@
-	$(link) -o $@ $^ $(program_libs)
+	$(link) -no-pie -o $@ $^ $(program_libs)
 
 # Tests with Lua states of their own hold the binding too.
 binding_tests = $(build)/tests/test_states $(build)/tests/test_lua_memory
 $(binding_tests): $(module_objects)
 $(binding_tests): binding = $(bindings_flags) $(module_objects) $(LUA_LIBS)
 
-$(build)/tests/%: tests/%.c $(build)/liblacuna.a $(flags_file)
+# For tests of the binding from C; the linker takes what a test asks for.
+$(build)/objects/module.a: $(module_objects) $(parts_file)
+	rm -f $@
+	$(AR) rcs $@ $(module_objects)
+
+$(build)/tests/%: tests/%.c $(build)/objects/module.a $(build)/liblacuna.a $(flags_file)
 	@mkdir -p $(@D)
 	@echo building $@
-	$(compile) -MF $@.d -MT $@ -Itests $< $(binding) -o $@ -Wl,--as-needed $(build)/liblacuna.a -lcmocka $(module_libs)
+	$(compile) $(bindings_flags) -MF $@.d -MT $@ -Itests $< -o $@ -Wl,--as-needed $(build)/objects/module.a $(build)/liblacuna.a \
+	  -lcmocka $(LUA_LIBS) $(module_libs)
 
 -include $(patsubst %.o,%.d,$(core_objects) $(module_objects) $(program_objects)) $(addsuffix .d,$(programs))
 

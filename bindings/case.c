@@ -124,7 +124,9 @@ static void check_dimension(lua_State *L, int id, const lac_quantity *quantity, 
   const lac_dimension wanted = lac_catalogue_unit(lac_catalogue_of(L), id).dimension;
   if (lac_dimension_equal(quantity->dimension, wanted)) return;
   char words[80];
-  lac_error(L, "%s wants %s (in %s); got %s", name->name, lac_a_dimension(wanted, words, sizeof words), name->unit, luaL_tolstring(L, place, NULL));
+  lac_a_dimension(wanted, words, sizeof words);
+  if (lac_dimension_equal(wanted, LAC_DIMENSIONLESS)) lac_error(L, "%s wants %s; got %s", name->name, words, luaL_tolstring(L, place, NULL));
+  lac_error(L, "%s wants %s (in %s); got %s", name->name, words, name->unit, luaL_tolstring(L, place, NULL));
 }
 
 /* given(name, value, target): the value as that name's quantity, checked, bound to the name and the target, draws out of range undefined. */
@@ -139,8 +141,13 @@ static int case_given(lua_State *L) {
   check_dimension(L, id, quantity, 2);
   const lac_range range = lac_catalogue_range(catalogue, id);
   if (quantity->unbound != NULL) {
+    const bool in_range = quantity->unbound->sweep; /* else refused just below */
     check_unbound(L, id, quantity->unbound, 2);
     lac_bind(L, quantity, word, target);
+    if (in_range) {
+      lac_push_empty(L, quantity->dimension, unit, id)->value = lac_value_keep(quantity->value);
+      return 1;
+    }
   } else if (quantity->value != NULL) check_ensemble(L, id, quantity, 2);
   else {
     if (!isfinite(quantity->number)) lac_error(L, "%s wants a finite number; got %s", word, luaL_tolstring(L, 2, NULL));

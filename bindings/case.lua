@@ -161,7 +161,10 @@ local function by_recipe(self, name, by)
   local using = {}
   for other, recipe in pairs(core.info(self).using) do using[other] = recipe end
   using[name] = by
-  return core.new_case(core.info(self).givens, using, core.info(self), true)
+  local info = {}
+  for key, value in pairs(core.info(self)) do info[key] = value end
+  info.using = using
+  return core.new_case(info.givens, using, info, true)
 end
 case.by_recipe = by_recipe
 

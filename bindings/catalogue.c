@@ -144,9 +144,27 @@ static const char *text_field(lua_State *L, const char *what, const char *key, c
   return otherwise;
 }
 
+/* Whether the table at 1 has fields besides these (NULL past the last) and those numbered: an error. */
+static void check_fields(lua_State *L, const char *what, const char *const *fields) {
+  for (lua_pushnil(L); lua_next(L, 1); lua_pop(L, 1)) {
+    if (lua_type(L, -2) != LUA_TSTRING) continue;
+    int i = 0;
+    while (fields[i] != NULL && strcmp(fields[i], lua_tostring(L, -2)) != 0) i++;
+    if (fields[i] != NULL) continue;
+    luaL_Buffer known;
+    lua_pop(L, 1);
+    luaL_buffinit(L, &known);
+    for (i = 0; fields[i] != NULL; i++) luaL_addstring(&known, i > 0 ? ", " : ""), luaL_addstring(&known, fields[i]);
+    luaL_pushresult(&known);
+    lac_error(L, "%s: unknown field '%s'; there are %s", what, lua_tostring(L, -2), lua_tostring(L, -1));
+  }
+}
+
 /* add_name{name, unit, meaning, range, symbol, on_sky}. */
 static int catalogue_add_name(lua_State *L) {
+  static const char *const fields[] = {"name", "unit", "meaning", "range", "symbol", "on_sky", NULL};
   luaL_checktype(L, 1, LUA_TTABLE);
+  check_fields(L, "quantity", fields);
   lac_name name = {.subject = "yours"};
   name.name = text_field(L, "quantity", "name", NULL);
   name.unit = text_field(L, "quantity", "unit", NULL);
@@ -165,6 +183,8 @@ static int catalogue_add_name(lua_State *L) {
   }
 }
 
+static const char elements_axis[] = "element"; /* along which a user's function gets its inputs */
+
 /* What a user's function gave for n elements: into out. */
 static int take_result(lua_State *L, const lac_users_row *users, const lac_relation *row, size_t n, double *out) {
   const lac_catalogue *catalogue = users->state->catalogue;
@@ -173,7 +193,7 @@ static int take_result(lua_State *L, const lac_users_row *users, const lac_relat
   const lac_dimension wanted = lac_catalogue_unit(catalogue, id).dimension;
   const lac_quantity *given = lac_to_quantity(L, -1);
   if (given == NULL && lua_type(L, -1) != LUA_TNUMBER)
-    return lac_error(L, "the relation for %s by '%s' returned %s; wanted is %s", row->gives, row->by, luaL_typename(L, -1), lac_a_dimension(wanted, words, sizeof words));
+    return lac_error(L, "the relation for %s by '%s' returned %s; wanted is %s", row->gives, row->by, lac_shown(L, -1), lac_a_dimension(wanted, words, sizeof words));
   lac_quantity *result = lac_check_bound(L, -1, row->gives);
   if (!lac_dimension_equal(result->dimension, wanted))
     return lac_error(L, "the relation for %s by '%s' returned %s; wanted is %s", row->gives, row->by, luaL_tolstring(L, -1, NULL), lac_a_dimension(wanted, words, sizeof words));
@@ -181,7 +201,7 @@ static int take_result(lua_State *L, const lac_users_row *users, const lac_relat
     for (size_t i = 0; i < n; i++) out[i] = result->number;
     return 0;
   }
-  if (lac_value_size(result->value) != n || lac_value_axes(result->value) != 1)
+  if (lac_value_size(result->value) != n || lac_value_axes(result->value) != 1 || strcmp(lac_value_axis(result->value, 0)->name, elements_axis) != 0)
     return lac_error(L, "the relation for %s by '%s' returned another axis than its arguments'; it is to be elementwise", row->gives, row->by);
   lac_status status = lac_plan_store(&users->state->work, result->value);
   if (status != LAC_OK) return lac_error(L, "%s", lac_status_words(status));
@@ -204,7 +224,7 @@ static void push_argument(lua_State *L, const lac_unit unit, const char *symbol,
   }
   lac_quantity *quantity = lac_push_empty(L, unit.dimension, symbol, -1);
   lac_axis *axis = NULL;
-  lac_status status = lac_axis_new("element", n, NULL, &axis);
+  lac_status status = lac_axis_new(elements_axis, n, NULL, &axis);
   if (status == LAC_OK) status = lac_value_array(1, &axis, elements, &quantity->value);
   lac_axis_drop(axis);
   if (status != LAC_OK) lac_error(L, "%s", lac_status_words(status));
@@ -258,7 +278,9 @@ static void check_known(lua_State *L, const char *name, const char *gives) {
 
 /* add_relation{gives, by, from = {names}, call = function, source, equation, supposes}. */
 static int catalogue_add_relation(lua_State *L) {
+  static const char *const fields[] = {"gives", "by", "from", "call", "source", "equation", "supposes", NULL};
   luaL_checktype(L, 1, LUA_TTABLE);
+  check_fields(L, "relation", fields);
   luaL_checkstack(L, LAC_MAX_ARGUMENTS + 20, NULL);
   lac_relation row = {.kind = LAC_USERS, .call = lac_call_users_row};
   row.gives = text_field(L, "relation", "gives", NULL);
@@ -277,7 +299,7 @@ static int catalogue_add_relation(lua_State *L) {
     row.from[i] = lua_tostring(L, -1);
     check_known(L, row.from[i], row.gives);
   }
-  if (lua_getfield(L, 1, "call") != LUA_TFUNCTION) return lac_error(L, "relation for %s wants call = a function of its inputs; got %s", row.gives, luaL_typename(L, -1));
+  if (lua_getfield(L, 1, "call") != LUA_TFUNCTION) return lac_error(L, "relation for %s wants a function of its inputs; got %s", row.gives, lac_shown(L, -1));
   lac_users_row *users = lua_newuserdatauv(L, sizeof *users, 0);
   lua_insert(L, -2);
   *users = (lac_users_row){.state = lac_state_of(L), .function = luaL_ref(L, LUA_REGISTRYINDEX)};

@@ -12,7 +12,7 @@
 typedef struct {
   FILE *file;
   struct csv_parser parser;
-  bool parsing;         /* the parser holds memory */
+  bool parsing; /* the parser holds memory */
   lua_State *L;
   int list;             /* the place of the list of rows on its stack; the open row is right above */
   lua_Integer line;     /* being fed */
@@ -96,8 +96,10 @@ static void parse(lua_State *L, reader *r, const char *name, const char *text, s
     const lua_Integer rows = r->rows;
     const size_t taken = csv_parse(&r->parser, text + at, step, end_field, end_row, r);
     if (taken < step && csv_error(&r->parser) == CSV_EPARSE)
-      lac_error(L, "%s:%I:%I: malformed CSV: a quotation mark out of place; a quoted field stands in \" \" as a whole, with \"\" for each inside it", name,
-                 r->line, characters(text + at, taken) + 1);
+      lac_error(
+          L,
+          "%s:%I:%I: malformed CSV: a quotation mark out of place; a quoted field stands in \" \" as a whole, with \"\" for each inside it",
+          name, r->line, characters(text + at, taken) + 1);
     if (taken < step) lac_error(L, "%s:%I: %s", name, r->line, csv_strerror(csv_error(&r->parser)));
     inside = r->rows == rows && (inside || step > strspn(text + at, " \t\r\n"));
   }
@@ -107,7 +109,7 @@ static void parse(lua_State *L, reader *r, const char *name, const char *text, s
 
 /* read_csv(path, name): a list of rows, each a list of texts with `line` = where it starts. Errors call the file by name. */
 static int read_csv(lua_State *L) {
-  enum { READER = 3, TEXT, ROWS }; /* places on the stack; the open row, while there is one, is above them */
+  enum { READER = 3, TEXT, ROWS };           /* places on the stack; the open row, while there is one, is above them */
   static const char mark[] = "\xEF\xBB\xBF"; /* of UTF-8; some programs write it */
   const char *path = luaL_checkstring(L, 1), *name = luaL_optstring(L, 2, path);
   lua_settop(L, 2);

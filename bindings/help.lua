@@ -60,7 +60,7 @@ end
 
 local function unit_text(entry)
   local _, _, written = core.unit_facts(entry.unit)
-  return entry.unit == "1" and "a plain number" or written
+  return entry.unit == "1" and "a plain number" or "in " .. written
 end
 
 local function add_row(lines, row)
@@ -88,7 +88,7 @@ local function about_name(name)
   local lines = new_page(("%s  %s"):format(name, text.symbol(name)), "  " .. entry.meaning)
   if entry.kind == "verdict" then lines[#lines + 1] = "  a verdict: yes, no, or in so many per cent of the draws"
   elseif entry.kind == "label" then lines[#lines + 1] = "  a text"
-  else lines[#lines + 1] = ("  in %s%s"):format(unit_text(entry), entry.range ~= "any" and ", " .. entry.range or "") end
+  else lines[#lines + 1] = ("  %s%s"):format(unit_text(entry), entry.range ~= "any" and ", " .. entry.range or "") end
   if entry.synonyms then lines[#lines + 1] = "  also called " .. entry.synonyms:gsub(" ", ", ") end
   if entry.on_sky then lines[#lines + 1] = ("  on the sky: %s_angle"):format(name) end
   lines[#lines + 1] = ""
@@ -100,7 +100,8 @@ end
 
 local function about_unit(word)
   local factor, _, written, si = core.unit_facts(word)
-  return new_page(("%s  a unit: %s %s"):format(written, format.number(factor, 10), si == "1" and "" or si))
+  local _, _, si_written = core.unit_facts(si)
+  return new_page(("%s  a unit: %s"):format(written, format.with_unit(format.number(factor, 10), si_written)))
 end
 
 -- How well an entry answers the words searched for: every word must be found somewhere.
@@ -153,6 +154,8 @@ end
 
 -- recipes "gap_width": all recipes of a name. recipes("gap_width", case): with what each gives in a case.
 function help.recipes(word, self)
+  if type(word) ~= "string" then core.raise("recipes wants a name, like recipes \"gap_width\"; got " .. core.shown(word)) end
+  if self ~= nil and not core.is_case(self) then core.raise("recipes wants a case after the name; got " .. core.shown(self)) end
   local name = core.find(word)
   if not name then core.raise(core.part "lacuna.case".unknown_name(word, "recipes: ")) end
   local lines = new_page()

@@ -15,7 +15,7 @@
 static lua_State *volatile running; /* the coroutine to arm; NULL between calls */
 static lac_state *state;            /* whose computations to stop */
 static volatile sig_atomic_t interrupted;
-static bool second_kills;           /* a script that doesn't answer ends by the second Ctrl-C */
+static bool second_kills; /* a script that doesn't answer ends by the second Ctrl-C */
 static pthread_t main_thread;
 
 static int raise_interruption(lua_State *L) { return luaL_error(L, "interrupted"); }

@@ -5,8 +5,12 @@ local core = ...
 local text = core.part "lacuna.text"
 local case = core.part "lacuna.case"
 
+local settings_shown = { __tostring = function(s)
+  return ("seed %d, %d draws, %d threads, %.0f MiB of memory"):format(s.seed, s.draws, s.threads, s.memory)
+end }
+
 local lacuna = {
-  settings = core.settings,
+  settings = function(changes) return setmetatable(core.settings(changes), settings_shown) end,
   mean = core.mean, deviation = core.deviation, median = core.median, interval = core.interval, quantile = core.quantile,
   chance = core.chance, undefined = core.undefined, lowest = core.lowest, highest = core.highest,
   above = core.above, below = core.below, both = core.both, either = core.either, least = core.least, greatest = core.greatest,
@@ -22,9 +26,10 @@ local methods = {
 }
 -- q:at{axis = point}; core.at lets axes pass that the quantity doesn't have.
 function methods.at(quantity, points)
+  if type(points) ~= "table" then core.raise("at wants a table like {draw = 1}; got " .. core.shown(points)) end
   local known = {}
   for i, axis in ipairs(core.axes(quantity)) do known[i], known[axis.name] = axis.name, true end
-  for axis in pairs(type(points) == "table" and points or {}) do
+  for axis in pairs(points) do
     if not known[axis] then core.raise(("at: the quantity has no axis '%s'; it has %s"):format(tostring(axis), #known > 0 and table.concat(known, ", ") or "none")) end
   end
   return core.at(quantity, points)
@@ -44,9 +49,22 @@ core.case_metatable.__newindex = function() core.raise("a case doesn't change; c
 
 function lacuna.case(givens) return case.new(givens) end
 
+-- A new name; where it brings no symbol of its own, its words are one. A symbol that can't be read is an error now, not in help later.
+local function new_name(entry)
+  local copy = {}
+  for key, value in pairs(entry) do copy[key] = value end
+  if copy.symbol == nil and type(copy.name) == "string" then copy.symbol = "\\mathrm{" .. copy.name:gsub("_", " ") .. "}" end
+  if type(copy.symbol) == "string" then
+    local ok, defect = pcall(core.part "lacuna.equation".plain_symbol, copy.symbol)
+    if not ok and entry.symbol == nil then copy.symbol = nil
+    elseif not ok then core.raise("quantity: its symbol: " .. tostring(defect)) end
+  end
+  return core.add_name(copy)
+end
+
 -- quantity "156 ± 3 pc", quantity(5, "au"): a quantity. quantity{name =, unit =, meaning =, ...}: a new name for the glossary.
 function lacuna.quantity(first, unit)
-  if type(first) == "table" then return core.add_name(first) end
+  if type(first) == "table" then return new_name(first) end
   if unit ~= nil then return core.quantity(first, unit) end
   return core.quantity(first)
 end
@@ -56,7 +74,12 @@ function lacuna.relation(row)
   if type(row) ~= "table" then core.raise("relation wants a table; got " .. type(row)) end
   local copy = {}
   for key, value in pairs(row) do copy[key] = value end
-  copy.call = row[1] or row.call
+  copy.call, copy[1] = row[1] or row.call, nil
+  if type(row.equation) == "string" and row.equation ~= "" then
+    for name in row.equation:gmatch "%[([%w_]+)%]" do case.name_of(name, "relation: its equation has the ") end
+    local ok, defect = pcall(core.part "lacuna.equation".plain, row.equation, text.symbol)
+    if not ok then core.raise("relation: " .. tostring(defect)) end
+  end
   return core.add_relation(copy)
 end
 

@@ -137,13 +137,14 @@ local function representative(quantity)
   return format.number(core.elements(core.median(quantity))[1] / factor, 2), unit
 end
 
--- Of a verdict that mostly is no: the condition that fails most often.
+-- Of a verdict that mostly is no: the conditions that fail in half of the draws or more, or else the one that fails most often.
 local function failing(self, name)
-  local worst
-  for _, c in ipairs((text.conditions(self, name))) do
+  local conditions, found, worst = text.conditions(self, name), {}, nil
+  for _, c in ipairs(conditions) do
+    if c.failed >= 0.5 then found[#found + 1] = c end
     if not worst or c.failed > worst.failed then worst = c end
   end
-  return worst
+  return #found > 0 and found or { worst }
 end
 
 -- "Marrow 3 (0.18), Veyra 77 (0.4)"; where there are many, the range and their names.
@@ -161,13 +162,13 @@ local function why_not(study)
   local columns = ordered()
   for_cells(study, function(column, row, cell, self)
     if not column.verdict or cell.share >= 0.5 then return end
-    local c = failing(self, column.name)
-    if not c then return end
-    local right, unit = representative(c.right_value)
-    local words = condition_words(c, c.greater and "<" or ">") .. " " .. format.with_unit(right, unit)
-    local left = representative(c.left_value * c.factor)
-    local reason = at(at(columns, column.label), words)
-    reason[#reason + 1] = { name = row.name, value = left }
+    for _, c in ipairs(failing(self, column.name)) do
+      local right, unit = representative(c.right_value)
+      local words = condition_words(c, c.greater and "<" or ">") .. " " .. format.with_unit(right, unit)
+      local left = representative(c.left_value * c.factor)
+      local reason = at(at(columns, column.label), words)
+      reason[#reason + 1] = { name = row.name, value = left }
+    end
   end)
   local said = {}
   for label, reasons in each(columns) do
@@ -250,19 +251,24 @@ local function change_words(column, change, study)
 end
 
 local function over_recipes(study)
-  local others, made = ordered(), {}
-  for_cells(study, function(column, row, cell, self)
-    made[self] = made[self] or {}
-    for _, other in ipairs(alternatives(study, self, column)) do
-      local changed = by_recipe(self, other, made[self])
-      local value = changed and core.raw(changed, column.name)
-      if value then
-        local of_recipe = at(others, ("%s by %s instead of %s"):format(other.name, other.by, other.instead_of))
-        local change = at(of_recipe, column, function() return { asked = 0, names = {}, low = math.huge, high = -math.huge } end)
-        add_change(change, column, row, cell, value)
+  local others = ordered()
+  for number, row in ipairs(study.rows) do -- star by star, so that the cases made on the way can go
+    local made = {}
+    for i, column in ipairs(study.columns) do
+      local cell, self = row.cells[i], row.made[column.group_number]
+      made[self] = made[self] or {}
+      for _, other in ipairs(cell.missing and {} or alternatives(study, self, column)) do
+        local changed = by_recipe(self, other, made[self])
+        local value = changed and core.raw(changed, column.name)
+        if value then
+          local of_recipe = at(others, ("%s by %s instead of %s"):format(other.name, other.by, other.instead_of))
+          local change = at(of_recipe, column, function() return { asked = 0, names = {}, low = math.huge, high = -math.huge } end)
+          add_change(change, column, row, cell, value)
+        end
       end
     end
-  end)
+    if number % study.collect_after == 0 then collectgarbage() end
+  end
   local said, nothing = {}, {}
   for recipe, changes in each(others) do
     local words = {}

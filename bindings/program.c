@@ -77,7 +77,8 @@ static int read_options(command_line *line, char **argument) {
     int setting = find_setting(*argument, &text);
     if (setting >= 0) {
       if (text == NULL && argument[1]) text = *++argument;
-      line->setting[setting] = text ? text : "nothing";
+      if (text == NULL) return fprintf(stderr, "lacuna: --%s wants a whole number after it; got nothing\n", settings[setting]), WRONG_USAGE;
+      line->setting[setting] = text;
     } else if (strcmp(*argument, "--") == 0) {
       argument++;
       break;
@@ -124,22 +125,22 @@ int program_load(lua_State *L, const char *text, const char *chunk_name) {
   return status;
 }
 
+/* Writes the values at its arguments' places as the module's show does. */
 static int show_values(lua_State *L) {
-  int count = lua_gettop(L);
   lua_getfield(L, LUA_REGISTRYINDEX, LUA_LOADED_TABLE);
   lua_getfield(L, -1, "lacuna");
-  for (int i = 1; i <= count; i++) {
-    lua_getfield(L, -1, "show");
-    lua_pushvalue(L, i);
-    lua_call(L, 1, 1);
-    puts(luaL_tolstring(L, -1, NULL));
-    lua_pop(L, 2);
-  }
+  lua_getfield(L, -1, "show");
+  lua_replace(L, -3);
+  lua_pop(L, 1);
+  lua_insert(L, 1);
+  lua_call(L, lua_gettop(L) - 1, 1);
+  puts(luaL_tolstring(L, -1, NULL));
   return 0;
 }
 
 int program_show(lua_State *L, int from) {
   int count = lua_gettop(L) - from + 1;
+  if (count == 0) return LUA_OK;
   luaL_checkstack(L, 8, "too many results");
   lua_pushcfunction(L, show_values);
   lua_insert(L, from);

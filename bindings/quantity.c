@@ -373,9 +373,11 @@ static int function_either(lua_State *L) { return of_two(L, "either", lac_block_
 
 static int make_quantity(lua_State *L) {
   if (lua_gettop(L) == 2) { /* quantity(5, "au") */
-    lua_Number number = luaL_checknumber(L, 1);
+    if (lua_type(L, 1) != LUA_TNUMBER) lac_error(L, "quantity wants a number before its unit; got %s", lac_shown(L, 1));
+    if (lua_type(L, 2) != LUA_TSTRING) lac_error(L, "quantity wants a unit after the number, like \"au\"; got %s", lac_shown(L, 2));
+    const lua_Number number = lua_tonumber(L, 1);
     size_t length;
-    const char *text = luaL_checklstring(L, 2, &length);
+    const char *text = lua_tolstring(L, 2, &length);
     lac_unit unit;
     lac_unit_kind kind = lac_unit_read(text, length, false, &unit, NULL);
     if (kind > LAC_UNIT_SHORT_FORM) lac_error(L, "quantity: unknown unit '%s'", text);

@@ -135,6 +135,15 @@ static reply read_input(lua_State *L, int *status) {
   return LINE;
 }
 
+/* In a line by itself the position of a mistake is no news: cuts it off the message on top. */
+static void drop_position(lua_State *L) {
+  static const char position[] = "prompt:1: ";
+  const char *message = lua_tostring(L, -1);
+  if (message == NULL || strncmp(message, position, sizeof position - 1) != 0) return;
+  lua_pushstring(L, message + sizeof position - 1);
+  lua_replace(L, -2);
+}
+
 static bool is_blank(const char *text) { return text[strspn(text, " \t\r\n")] == 0; }
 
 /* Calls the function on the stack's top and shows what it returns; SIGINT comes through meanwhile. */
@@ -179,7 +188,10 @@ void program_repl(lua_State *L) {
     if (answer == CANCELLED || is_blank(lua_tostring(L, 1))) continue;
     remember(history, lua_tostring(L, 1));
     if (status == LUA_OK) status = answer_input(L, &interruption);
-    if (status != LUA_OK) program_report(L, program_was_interrupted() ? "\n" : ""); /* the terminal has shown ^C */
+    if (status != LUA_OK) {
+      drop_position(L);
+      program_report(L, program_was_interrupted() ? "\n" : ""); /* the terminal has shown ^C */
+    }
     fflush(stdout);
     program_forget_interruption();
   }

@@ -51,13 +51,18 @@ end
 
 local function single(quantity) return #core.axes(quantity) == 0 and core.elements(quantity)[1] or nil end
 
+-- The case with other givens, checked already.
+local function with_givens(self, givens)
+  local info = core.info(self)
+  return core.new_case(givens, info.using, { givens = givens, using = info.using, target = info.target, labels = info.labels, written = {} })
+end
+
 -- The chance of a verdict at one value (SI) of a given, in a case without other axes than draw.
 local function chance_at(self, given, goal_name, x)
-  local info = core.info(self)
   local givens = {}
-  for name, quantity in pairs(info.givens) do givens[name] = quantity end
+  for name, quantity in pairs(core.info(self).givens) do givens[name] = quantity end
   givens[given] = core.like(core.given_like(given), x)
-  return core.elements(core.chance(core.raw(core.new_case(givens, info.using, info), goal_name)))[1]
+  return core.elements(core.chance(core.raw(with_givens(self, givens), goal_name)))[1]
 end
 
 -- Bisection of the chance, which is a step function of x: the place where it first reaches the share, nearest to the start.
@@ -88,9 +93,9 @@ end
 
 -- The case with the named axes of its givens fixed at these points.
 local function fixed(self, points)
-  local info, givens = core.info(self), {}
-  for name, quantity in pairs(info.givens) do givens[name] = core.at(quantity, points) end
-  return core.new_case(givens, info.using, info)
+  local givens = {}
+  for name, quantity in pairs(core.info(self).givens) do givens[name] = core.at(quantity, points) end
+  return with_givens(self, givens)
 end
 
 -- All points of the axes but draw, in storage order: calls f with {axis = index}.
@@ -105,11 +110,10 @@ local function each_point(axes, f, points, depth)
 end
 
 local function solve_chances(self, given, goal_name, goal, share, range)
-  local without = fixed(self, {}) -- the given itself is replaced: its own axes don't count
-  local info, others = core.info(without), {}
-  for name, quantity in pairs(info.givens) do others[name] = quantity end
+  local others = {} -- the given itself is replaced: its own axes don't count
+  for name, quantity in pairs(core.info(self).givens) do others[name] = quantity end
   others[given] = core.like(core.given_like(given), range.start)
-  without = core.new_case(others, info.using, info)
+  local without = with_givens(self, others)
   local shape = core.chance(core.raw(without, goal_name))
   local axes = core.axes(shape)
   if #axes == 0 then

@@ -21,7 +21,7 @@ static lac_axis *draw_axis(lua_State *L) {
 static lac_status bind_sweep(const lac_unbound *sweep, const char *name, lac_value **value) {
   lac_axis *axis = NULL;
   lac_status status = lac_axis_new(name, sweep->count, sweep->elements, &axis);
-  if (status == LAC_OK) status = lac_value_array(1, &axis, sweep->elements, value);
+  if (status == LAC_OK) status = lac_value_swept(axis, value);
   lac_axis_drop(axis);
   return status;
 }
@@ -50,6 +50,9 @@ void lac_bind(lua_State *L, lac_quantity *quantity, const char *name, const char
 /* A blank unbound quantity on the stack with room for count elements. */
 static lac_unbound *push_unbound(lua_State *L, const lac_quantity *like, size_t count) {
   lac_check_room(L, count);
+  lac_work *work = &lac_state_of(L)->work;
+  work->wanted = count * sizeof(double);
+  if (work->used > work->cap || work->wanted > work->cap - work->used) lac_state_end(L, LAC_OVER_CAP);
   lac_quantity *quantity = lac_push_empty(L, like->dimension, like->unit, -1);
   quantity->unbound = malloc(sizeof *quantity->unbound + count * sizeof(double));
   if (quantity->unbound == NULL) lac_error(L, "%s", lac_status_words(LAC_NO_MEMORY));

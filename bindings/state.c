@@ -38,8 +38,12 @@ int lac_error(lua_State *L, const char *format, ...) {
   va_list arguments;
   va_start(arguments, format);
   push_position(L);
-  lua_pushvfstring(L, format, arguments);
+  const char *message = lua_pushvfstring(L, format, arguments);
   va_end(arguments);
+  if (strchr(message, '\n') != NULL) { /* of a text that is quoted: the message is one line */
+    luaL_gsub(L, message, "\n", " ");
+    lua_remove(L, -2);
+  }
   lua_concat(L, 2);
   return lua_error(L);
 }
@@ -103,14 +107,14 @@ lac_state *lac_state_of(lua_State *L) {
   pthread_once(&watch_forks, start_watching);
   lac_state *state = lua_newuserdatauv(L, sizeof *state, 0);
   *state = (lac_state){.draws = 10000};
-  lac_work_start(&state->work, processors(), (size_t)2 << 30);
-  state->work.poll = poll_hook;
-  state->work.collect = collect_garbage;
-  state->work.context = state;
   lua_createtable(L, 0, 1);
   lua_pushcfunction(L, state_finalise);
   lua_setfield(L, -2, "__gc");
   lua_setmetatable(L, -2);
+  lac_work_start(&state->work, processors(), (size_t)2 << 30);
+  state->work.poll = poll_hook;
+  state->work.collect = collect_garbage;
+  state->work.context = state;
   lua_rawsetp(L, LUA_REGISTRYINDEX, &state_key);
   return state;
 }
@@ -167,7 +171,7 @@ void lac_state_end(lua_State *L, lac_status status) {
     lua_error(L);
     return;
   case LAC_OVER_CAP:
-    lac_error(L, "the result would take %d MiB, and %d MiB of the %d MiB allowed are in use: use fewer points or draws, or settings{memory = ...}",
+    lac_error(L, "this would take %d MiB, and %d MiB of the %d MiB allowed are in use: use fewer points or draws, or settings{memory = ...}",
               mebibytes_up(state->work.wanted), mebibytes_up(state->work.used), mebibytes_up(state->work.cap));
     return;
   default: lac_error(L, "%s", lac_status_words(status));

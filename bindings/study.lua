@@ -7,8 +7,10 @@ local tables = core.part "lacuna.table"
 local targets = core.part "lacuna.targets"
 local text = core.part "lacuna.text"
 
--- Ensembles up to this length are kept once computed: the table, the reasons and the comparisons all read them.
-local KEPT = 100000
+-- Ensembles up to this length are kept once computed, as the table, the reasons and the comparisons all read them; in all no more
+-- than so many numbers (200 MB), so that a list of a thousand stars passes too.
+local LONGEST_KEPT, MOST_KEPT = 100000, 25000000
+local COLLECT_AFTER = 50 -- stars: the core's memory behind dead cases is not seen by Lua's collector
 local WIDTH = 100 -- of the output where no terminal says otherwise
 
 -- What is asked --------------------------------------------------------------------------------------------------------------------
@@ -127,12 +129,18 @@ end
 
 -- Cases and cells -----------------------------------------------------------------------------------------------------------------
 
-local function keep(quantity)
-  local _, _, _, _, size = core.facts(quantity)
-  return size <= KEPT and core.store(quantity) or quantity
+-- A keeper of one study's ensembles: a function that keeps a quantity while there is room, and returns it.
+local function new_keeper()
+  local room = math.min(MOST_KEPT, core.settings().memory * 1048576 / 8 / 4) -- a quarter of what is allowed at most
+  return function(quantity)
+    local _, _, _, _, size = core.facts(quantity)
+    if size > LONGEST_KEPT or size > room then return quantity end
+    room = room - size
+    return core.store(quantity)
+  end
 end
 
-local function keep_all(givens)
+local function keep_all(givens, keep)
   for _, quantity in pairs(givens) do keep(quantity) end
 end
 
@@ -163,7 +171,7 @@ local function what_is_missing(self, name)
   return "for want of " .. table.concat(ways, ", or of ")
 end
 
-local function cell_of(self, name)
+local function cell_of(self, name, keep)
   if core.row_of(self, name) == nil then return { missing = true, reason = what_is_missing(self, name) } end
   local quantity = keep(core.raw(self, name))
   local _, _, factor, number, size = core.facts(quantity)
@@ -191,15 +199,15 @@ local function make_columns(groups)
   return columns
 end
 
-local function make_row(target, groups, columns)
-  keep_all(target.givens)
+local function make_row(target, groups, columns, keep)
+  keep_all(target.givens, keep)
   local row = { name = target.name, texts = target.texts, target = target, made = {}, variants = {}, cells = {} }
   for number, group in ipairs(groups) do
     row.made[number] = make_case(target, group)
     if group.name then row.variants[group.name] = row.made[number] end
   end
   row.case = row.made[1]
-  for i, column in ipairs(columns) do row.cells[i] = cell_of(row.made[column.group_number], column.name) end
+  for i, column in ipairs(columns) do row.cells[i] = cell_of(row.made[column.group_number], column.name, keep) end
   return row
 end
 
@@ -246,11 +254,15 @@ local function run(fields)
   local groups = read_groups(fields)
   local list = targets.read(fields.targets, find_file)
   refuse_givens_of_targets(list, groups)
-  for _, group in ipairs(groups) do keep_all(group.own) end
+  local keep = new_keeper()
+  for _, group in ipairs(groups) do keep_all(group.own, keep) end
   local columns, rows = make_columns(groups), {}
-  for i, target in ipairs(list) do rows[i] = make_row(target, groups, columns) end
+  for i, target in ipairs(list) do
+    rows[i] = make_row(target, groups, columns, keep)
+    if i % COLLECT_AFTER == 0 then collectgarbage() end
+  end
   refuse_emptiness(columns, rows)
-  local study = { title = fields.title, texts = list.texts, groups = groups, columns = columns, rows = rows }
+  local study = { title = fields.title, texts = list.texts, groups = groups, columns = columns, rows = rows, collect_after = COLLECT_AFTER }
   study.notes = core.part "lacuna.notes".of(study)
   return setmetatable(study, study_metatable)
 end
@@ -258,7 +270,7 @@ end
 -- Calls f(fields) as pcall does. Thousands of short computations are quicker without the threads meeting after each; the bits are the same.
 local function on_one_thread(f, fields)
   local settings = core.settings()
-  if settings.draws > KEPT then return pcall(f, fields) end
+  if settings.draws > LONGEST_KEPT then return pcall(f, fields) end
   core.settings { threads = 1 }
   local ok, result = pcall(f, fields)
   core.settings { threads = settings.threads }

@@ -29,6 +29,9 @@ local function wrapped(text, columns)
   return lines
 end
 
+-- A name or text from a file may have line breaks.
+local function on_one_line(text) return (text:gsub("%s+", " ")) end
+
 local function cell_text(cell)
   if cell.missing then return MISSING end
   if cell.share then return cell.share == 1 and "yes" or cell.share == 0 and "no" or format.percent(cell.share) end
@@ -148,7 +151,7 @@ local function add_page(lines, page, rows, names_width)
   for i = 1, deepest do add("", function(column) return column.heading[i - deepest + #column.heading] or "" end) end
   local width = add("", function(column) return column.unit end)
   lines[#lines + 1] = ("─"):rep(width)
-  for i, row in ipairs(rows) do add(row.name, function(column) return column.texts[i] end) end
+  for i, row in ipairs(rows) do add(on_one_line(row.name), function(column) return column.texts[i] end) end
 end
 
 -- Notes: each with its heading, wrapped, the lines' further parts set in. A line may be a list: what its first text heads.
@@ -171,7 +174,7 @@ end
 -- The table as text, no wider than so many columns where that can be.
 function tables.text(whole, columns)
   local names_width, lines = 0, {}
-  for _, row in ipairs(whole.rows) do names_width = math.max(names_width, format.width(row.name)) end
+  for _, row in ipairs(whole.rows) do names_width = math.max(names_width, format.width(on_one_line(row.name))) end
   if whole.title then lines = wrapped(whole.title, columns) end
   for _, page in ipairs(pages_of(blocks_of(whole), names_width, columns)) do
     if #lines > 0 then lines[#lines + 1] = "" end
@@ -239,8 +242,9 @@ local beyond_ascii = {
   ["⁵"] = "$^{5}$", ["⁶"] = "$^{6}$", ["⁷"] = "$^{7}$", ["⁸"] = "$^{8}$", ["⁹"] = "$^{9}$",
 }
 
+-- "[" and "*" at the start of a row would be taken for an argument of the \\ before.
 local function escaped(text)
-  text = text:gsub("[\\{}$&#%%_~^<>]", special)
+  text = on_one_line(text):gsub("[\\{}$&#%%_~^<>]", special):gsub("^[%[*]", "{%0}")
   return (text:gsub(utf8.charpattern, function(character) return #character > 1 and beyond_ascii[character] or nil end))
 end
 

@@ -143,6 +143,23 @@ function text.quantity(quantity)
   return grid(quantity, axes, verdict, factor, unit)
 end
 
+-- The same within a line: of a grid, its range or the share of it.
+function text.brief(quantity)
+  local axes, over = core.axes(quantity), {}
+  for _, axis in ipairs(axes) do if axis.name ~= "draw" then over[#over + 1] = axis.name end end
+  if #over == 0 then return text.quantity(quantity) end
+  local draws, along = has_draws(axes), over[1] == core.facts(quantity) and "" or " along " .. table.concat(over, " and ")
+  local _, factor, unit = display_unit(quantity)
+  if is_verdict((core.facts(quantity))) then
+    return ("in %s of %s"):format(format.percent(share(quantity)), draws and "draws and points" or "points") .. along .. undefined_note(quantity)
+  end
+  local low = draws and core.median(quantity) or quantity
+  local high = low
+  for _, axis in ipairs(over) do low, high = core.lowest(low, axis), core.highest(high, axis) end
+  local range = ("from %s to %s"):format(format.number(core.elements(low)[1] / factor), format.number(core.elements(high)[1] / factor))
+  return format.with_unit(range, unit) .. (draws and " (medians)" or "") .. along .. undefined_note(quantity)
+end
+
 function text.unbound(quantity, factor, unit)
   if not factor then
     local _
@@ -167,7 +184,7 @@ end
 -- A given as it was given: what its draws make of an error bar is no news.
 function text.given(self, name)
   local info = core.info(self)
-  return info.written[name] or text.quantity(info.givens[name])
+  return info.written[name] or text.brief(info.givens[name])
 end
 
 -- Sources -------------------------------------------------------------------------------------------------------------------------
@@ -248,7 +265,7 @@ end
 function text.warnings(self, row)
   local warnings = {}
   for i, outside in ipairs(text.outside(self, row)) do
-    warnings[i] = ("%s; %s here%s"):format(outside.words, text.quantity(outside.value),
+    warnings[i] = ("%s; %s here%s"):format(outside.words, text.brief(outside.value),
       outside.single and "" or ", outside in " .. format.percent(outside.share))
   end
   return warnings
@@ -273,6 +290,8 @@ function text.conditions(self, name)
     local fails = c.greater and core.below(left, c.right_value) or core.above(left, c.right_value)
     c.failed = 1 - share(1 - fails) -- the share; undefined ones are in it
     c.holds = c.failed == 0
+    local axes = core.axes(fails)
+    c.parts = not has_draws(axes) and "points" or #axes == 1 and "draws" or "draws and points"
     c.margin = left / c.right_value
     conditions[#conditions + 1] = c
   end
@@ -283,9 +302,9 @@ local function condition_text(c)
   local factor = c.factor == 1 and "" or c.factor .. " × "
   local sign, state = c.sign, ""
   if c.failed == 1 then sign = c.greater and "<" or ">"
-  elseif c.failed > 0 then state = (", not in %s of draws"):format(format.percent(c.failed)) end
-  return ("%s%s %s %s %s%s"):format(factor, c.left, text.quantity(c.left_value), sign, c.right == "elements_required" and text.quantity(c.right_value)
-    or c.right .. " " .. text.quantity(c.right_value), state)
+  elseif c.failed > 0 then state = (", not in %s of %s"):format(format.percent(c.failed), c.parts) end
+  return ("%s%s %s %s %s%s"):format(factor, c.left, text.brief(c.left_value), sign, c.right == "elements_required" and text.brief(c.right_value)
+    or c.right .. " " .. text.brief(c.right_value), state)
 end
 text.condition = condition_text
 
@@ -294,7 +313,7 @@ function verdict_reason(self, name)
   for _, c in ipairs((text.conditions(self, name))) do
     if not c.holds then
       local factor = c.factor == 1 and "" or c.factor .. " × "
-      return ("%s%s %s, %s %s"):format(factor, c.left, text.quantity(c.left_value), c.greater and "below" or "above", text.quantity(c.right_value))
+      return ("%s%s %s, %s %s"):format(factor, c.left, text.brief(c.left_value), c.greater and "below" or "above", text.brief(c.right_value))
     end
   end
 end
@@ -324,7 +343,7 @@ local function add_step(lines, self, step)
     add(lines, 2, ("%s = %s   assumed (%s)%s"):format(step.name, text.quantity(value), text.source(row), row.supposes and ": " .. row.supposes or ""))
     return
   end
-  add(lines, 2, ("%s = %s"):format(step.name, text.quantity(value)))
+  add(lines, 2, ("%s = %s"):format(step.name, text.brief(value)))
   for _, line in ipairs(equation_lines(self, row)) do add(lines, 6, line) end
   add(lines, 6, text.recipe(row))
   if row.supposes then add(lines, 6, "supposes " .. row.supposes) end
@@ -344,8 +363,17 @@ local function add_alternatives(lines, self, name)
   if #others == 0 then return end
   add(lines, 2, "with other recipes")
   for _, other in ipairs(others) do
-    add(lines, 6, ("%s by %s: %s (instead of %s)"):format(other.name, other.by, text.quantity(other.value), other.instead_of))
+    add(lines, 6, ("%s by %s: %s (instead of %s)"):format(other.name, other.by, text.brief(other.value), other.instead_of))
   end
+end
+
+-- Which numbers stand in the equations, where a quantity has more than one.
+local function put_in(value)
+  local which = {}
+  for _, axis in ipairs(core.axes(value)) do
+    which[#which + 1] = axis.name == "draw" and "medians of the draws" or "the first point of " .. axis.name
+  end
+  return #which > 0 and "  numbers put in: " .. table.concat(which, ", ") or nil
 end
 
 text.why_metatable = {
@@ -353,7 +381,9 @@ text.why_metatable = {
   __tostring = function(why)
     local self, name = why.case, why.name
     local value, entry = core.raw(self, name), core.entry(name)
-    local lines = { ("%s = %s"):format(name, text.quantity(value)), "  " .. entry.meaning, "" }
+    local lines = { ("%s = %s"):format(name, text.quantity(value)), "  " .. entry.meaning }
+    lines[3] = put_in(value)
+    lines[#lines + 1] = ""
     for _, step in ipairs(core.steps(self, name)) do add_step(lines, self, step) end
     if entry.kind == "verdict" then add_verdict(lines, self, name) end
     add_alternatives(lines, self, name)
@@ -390,7 +420,7 @@ end
 
 -- What is missing in one line, as an error says it.
 function text.not_had(missing)
-  if #missing.sets == 0 then return missing.name .. " must be given: no relation gives it" end
+  if #missing.sets == 0 or missing.sets[1].names[1] == missing.name then return missing.name .. " must be given: no relation gives it" end
   local ways = {}
   for i, set in ipairs(missing.sets) do
     ways[i] = table.concat(set.names, ", ")
@@ -403,8 +433,7 @@ text.missing_metatable = {
   __name = "what is missing",
   __tostring = function(missing)
     if missing.had then return missing.name .. " can be had from what is given" end
-    if #missing.sets == 0 then return missing.name .. " must be given: no relation gives it" end
-    local hint = hints(missing.sets[1].names)
+    local hint = hints(missing.sets[1] and missing.sets[1].names or {})
     return text.not_had(missing) .. (#hint > 0 and "\n  " .. table.concat(hint, "\n  ") or "")
   end,
 }
@@ -415,7 +444,7 @@ text.check_metatable = {
     if #check.entries == 0 then return "no given follows from the others: nothing to compare" end
     local lines = {}
     for _, entry in ipairs(check.entries) do
-      lines[#lines + 1] = ("%s: given %s, by %s %s: %s"):format(entry.name, entry.written, entry.by, text.quantity(entry.derived),
+      lines[#lines + 1] = ("%s: given %s, by %s %s: %s"):format(entry.name, entry.written, entry.by, text.brief(entry.derived),
         entry.agrees and "agree" or "DISAGREE")
     end
     return table.concat(lines, "\n")

@@ -6,19 +6,19 @@
 #include "relation.h"
 #include "value.h"
 
-#define ONE(name, expression)                                                                  \
-  LAC_CLONES void lac_block_##name(size_t n, double *restrict out, const double *const *in) {  \
-    for (size_t i = 0; i < n; i++) {                                                           \
-      const double a = in[0][i];                                                               \
-      out[i] = (expression);                                                                   \
-    }                                                                                          \
+#define ONE(name, expression)                                                                                                              \
+  LAC_CLONES void lac_block_##name(size_t n, double *restrict out, const double *const *in) {                                              \
+    for (size_t i = 0; i < n; i++) {                                                                                                       \
+      const double a = in[0][i];                                                                                                           \
+      out[i] = (expression);                                                                                                               \
+    }                                                                                                                                      \
   }
-#define TWO(name, expression)                                                                  \
-  LAC_CLONES void lac_block_##name(size_t n, double *restrict out, const double *const *in) {  \
-    for (size_t i = 0; i < n; i++) {                                                           \
-      const double a = in[0][i], b = in[1][i];                                                 \
-      out[i] = (expression);                                                                   \
-    }                                                                                          \
+#define TWO(name, expression)                                                                                                              \
+  LAC_CLONES void lac_block_##name(size_t n, double *restrict out, const double *const *in) {                                              \
+    for (size_t i = 0; i < n; i++) {                                                                                                       \
+      const double a = in[0][i], b = in[1][i];                                                                                             \
+      out[i] = (expression);                                                                                                               \
+    }                                                                                                                                      \
   }
 #define DEFINED(value) ((value) == (value))
 #define BOTH(value) lac_where(DEFINED(a) & DEFINED(b), (value))

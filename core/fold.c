@@ -19,21 +19,21 @@ static double joined(const double *lane) {
 }
 
 /* An expression added up over the elements x[i], in lanes. */
-#define SUM(total, expression)                                    \
-  double total;                                                   \
-  do {                                                            \
-    double lane_[LANES] = {0};                                    \
-    size_t i = 0;                                                 \
-    for (; i + LANES <= n; i += LANES)                            \
-      for (size_t j = 0; j < LANES; j++) {                        \
-        const double e = x[i + j];                                \
-        lane_[j] += (expression);                                 \
-      }                                                           \
-    for (size_t j = 0; i + j < n; j++) {                          \
-      const double e = x[i + j];                                  \
-      lane_[j] += (expression);                                   \
-    }                                                             \
-    total = joined(lane_);                                        \
+#define SUM(total, expression)                                                                                                             \
+  double total;                                                                                                                            \
+  do {                                                                                                                                     \
+    double lane_[LANES] = {0};                                                                                                             \
+    size_t i = 0;                                                                                                                          \
+    for (; i + LANES <= n; i += LANES)                                                                                                     \
+      for (size_t j = 0; j < LANES; j++) {                                                                                                 \
+        const double e = x[i + j];                                                                                                         \
+        lane_[j] += (expression);                                                                                                          \
+      }                                                                                                                                    \
+    for (size_t j = 0; i + j < n; j++) {                                                                                                   \
+      const double e = x[i + j];                                                                                                           \
+      lane_[j] += (expression);                                                                                                            \
+    }                                                                                                                                      \
+    total = joined(lane_);                                                                                                                 \
   } while (0)
 
 LAC_CLONES static partial moments(size_t n, const double *x) {
@@ -131,15 +131,17 @@ static double join(const fold_state *folding, size_t cell, size_t blocks, size_t
 }
 
 static lac_status fold_into(lac_work *work, const lac_steps *steps, lac_fold fold, double *results) {
-  fold_state folding = {.fold = fold, .cells = steps->cells};
-  folding.partials = calloc(steps->blocks * steps->cells, sizeof(partial));
-  if (!folding.partials) return LAC_NO_MEMORY;
+  enum { DOUBLES = sizeof(partial) / sizeof(double) }; /* the partial results count towards the cap */
+  lac_buffer room;
+  if (steps->blocks > SIZE_MAX / DOUBLES / steps->cells) return LAC_NO_MEMORY;
+  lac_status status = lac_buffer_take(work, DOUBLES * steps->blocks * steps->cells, &room);
+  if (status != LAC_OK) return status;
+  fold_state folding = {.fold = fold, .cells = steps->cells, .partials = (partial *)room.data};
   const lac_run run = {
       .cells = steps->cells, .shares = lac_steps_shares(work, steps, steps->cells), .take = take_partial, .context = &folding};
-  lac_status status = lac_steps_run(work, steps, &run);
-  for (size_t cell = 0; cell < steps->cells && status == LAC_OK; cell++)
-    results[cell] = join(&folding, cell, steps->blocks, steps->inner);
-  free(folding.partials);
+  status = lac_steps_run(work, steps, &run);
+  for (size_t cell = 0; cell < steps->cells && status == LAC_OK; cell++) results[cell] = join(&folding, cell, steps->blocks, steps->inner);
+  lac_buffer_give(&room);
   return status;
 }
 

@@ -49,10 +49,8 @@ static lac_status by_selection(lac_work *work, const lac_steps *steps, cell_batc
   for (size_t first = 0; first < steps->cells && status == LAC_OK; first += most) {
     batch->first_cell = first;
     batch->cells = steps->cells - first < most ? steps->cells - first : most;
-    const lac_run run = {.first_cell = first,
-                         .cells = batch->cells,
-                         .shares = lac_steps_shares(work, steps, batch->cells),
-                         .into = batch->elements};
+    const lac_run run = {
+        .first_cell = first, .cells = batch->cells, .shares = lac_steps_shares(work, steps, batch->cells), .into = batch->elements};
     status = lac_steps_run(work, steps, &run);
     batch->shares = (size_t)run.shares < batch->cells ? run.shares : (int)batch->cells;
     if (status == LAC_OK) lac_in_shares(batch->shares, select_share, batch);
@@ -188,7 +186,8 @@ static void narrow(rank_search *search) {
     wanted *want = &search->want[i];
     const interval *old = &search->interval[want->in];
     const interval part = old->span > 0 ? narrowed(old, search->bins + want->in * BINS, want->rank) : *old;
-    for (want->in = 0; want->in < count && next[want->in].low != part.low; want->in++) {}
+    for (want->in = 0; want->in < count && next[want->in].low != part.low; want->in++) {
+    }
     if (want->in == count) next[count++] = part;
   }
   search->intervals = count;

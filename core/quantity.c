@@ -111,8 +111,11 @@ lac_value *lac_value_keep(lac_value *value) {
   return value;
 }
 
+/* The coordinates of an axis serve as the elements of its own value: the axis owns them. */
+static int borrows_from_axis(const lac_value *value) { return value->axes == 1 && value->of.stored.data == value->axis[0]->coordinates; }
+
 static void drop_contents(lac_value *value) {
-  if (value->kind == LAC_NODE_STORED) lac_buffer_give(&value->of.stored);
+  if (value->kind == LAC_NODE_STORED && !borrows_from_axis(value)) lac_buffer_give(&value->of.stored);
   if (value->kind == LAC_NODE_DRAWN) free((void *)(uintptr_t)value->of.spread.samples);
   while (value->count > 0) lac_value_drop(value->argument[--value->count]);
 }
@@ -183,6 +186,22 @@ lac_status lac_value_array(size_t axes, lac_axis *const *axis, const double *dat
   if (status != LAC_OK) return status;
   if (axes == 0) (*value)->of.number = data[0];
   else arrange(*value, axes, axis, data);
+  return LAC_OK;
+}
+
+lac_status lac_value_swept(lac_axis *axis, lac_value **value) {
+  *value = NULL;
+  if (!axis->coordinates) return LAC_OUT_OF_RANGE;
+  lac_value *made = node(LAC_NODE_STORED, 0);
+  if (!made) return LAC_NO_MEMORY;
+  made->of.stored = (lac_buffer){.data = axis->coordinates};
+  lac_status status = add_axis(made, axis);
+  if (status != LAC_OK) {
+    made->of.stored.data = NULL;
+    lac_value_drop(made);
+    return status;
+  }
+  *value = made;
   return LAC_OK;
 }
 

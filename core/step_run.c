@@ -26,7 +26,7 @@ typedef struct {
   const double **at; /* where each step's block stands now */
   double *into;      /* where the root's block is wanted, or NULL */
   size_t index[LAC_MAX_AXES], n, padded;
-  size_t streams;                  /* stored blocks that are read where they stand, */
+  size_t streams;                   /* stored blocks that are read where they stand, */
   const double *ahead[MAX_STREAMS]; /* and what follows each */
   bool started, failed;
 } thread_lane;

@@ -18,14 +18,7 @@ typedef struct {
 lac_status lac_buffer_take(lac_work *work, size_t elements, lac_buffer *buffer);
 void lac_buffer_give(lac_buffer *buffer);
 
-typedef enum {
-  LAC_NODE_NUMBER,
-  LAC_NODE_STORED,
-  LAC_NODE_DRAWN,
-  LAC_NODE_CLIPPED,
-  LAC_NODE_COMPUTED,
-  LAC_NODE_CALLED
-} lac_node_kind;
+typedef enum { LAC_NODE_NUMBER, LAC_NODE_STORED, LAC_NODE_DRAWN, LAC_NODE_CLIPPED, LAC_NODE_COMPUTED, LAC_NODE_CALLED } lac_node_kind;
 
 struct lac_value {
   size_t references;

@@ -61,7 +61,8 @@ static void moments_are_those_of_gsl(void **state) {
 }
 
 /* NIST, Statistical Reference Datasets, univariate: NumAcc3 (1000000.2; 1000000.1 and 1000000.3 alternate, 1001 values; mean
-   1000000.2, deviation 0.1, exact) and NumAcc4 (10000000.2 alike), from memory. The data's own rounding, 2^-33 and 2^-30, is their accuracy. */
+   1000000.2, deviation 0.1, exact) and NumAcc4 (10000000.2 alike), from memory. The data's own rounding, 2^-33 and 2^-30, is their
+   accuracy. */
 static void moments_of_numbers_that_cancel(void **state) {
   (void)state;
   const double base[] = {1000000, 10000000}, digits[] = {1e-8, 1e-7};
@@ -141,8 +142,9 @@ static void check_quantiles(const double *x, size_t n, const double *got, const 
     const size_t lower = (size_t)place, upper = lower + 1 < defined ? lower + 1 : lower;
     if (sorted[lower] == sorted[upper] || place == (double)lower) assert_true(got[i] == sorted[lower]);
     else if (isinf(sorted[lower]) || isinf(sorted[upper])) assert_true(isinf(got[i]));
-    else check_near(gsl_stats_quantile_from_sorted_data(sorted, 1, defined, levels[i]), got[i],
-                    4 * DBL_EPSILON * fmax(fabs(sorted[lower]), fabs(sorted[upper])), label);
+    else
+      check_near(gsl_stats_quantile_from_sorted_data(sorted, 1, defined, levels[i]), got[i],
+                 4 * DBL_EPSILON * fmax(fabs(sorted[lower]), fabs(sorted[upper])), label);
   }
   free(sorted);
 }
@@ -170,7 +172,7 @@ static void quantiles_are_those_of_sorted_data(void **state) {
       lac_axis *draw = axis("draw", n);
       lac_value *stored = array(draw, x), *streamed;
       assert_int_equal(lac_value_clipped(stored, (lac_range){-INFINITY, INFINITY, true, true}, &streamed), LAC_OK);
-      for (int way = 0; way < 4; way += n > LAC_SMALL ? 3 : 1) {
+      for (int way = 0; way<4; way += n> LAC_SMALL ? 3 : 1) {
         lac_work work;
         lac_work_start(&work, way % 2 ? 3 : 1, way < 2 ? plenty : 0); /* nothing may be stored under a cap of 0 */
         quantiles_of(&work, way < 2 ? stored : streamed, got[way]);
@@ -202,7 +204,8 @@ static lac_value *apply(lac_block_function *block, lac_value *a, lac_value *b) {
 
 /* exp(log-normal over b) * log(sweep over a) where above 3.5, else undefined; with library functions on both axes. */
 static lac_value *grid(lac_axis *a, lac_axis *b) {
-  lac_value *product = apply(lac_block_multiply, apply(lac_block_exp, drawn(b, 1), NULL), apply(lac_block_log, drawn(a, 2), NULL)), *clipped;
+  lac_value *product = apply(lac_block_multiply, apply(lac_block_exp, drawn(b, 1), NULL), apply(lac_block_log, drawn(a, 2), NULL)),
+            *clipped;
   assert_int_equal(lac_value_clipped(product, (lac_range){3.5, INFINITY, false, true}, &clipped), LAC_OK);
   lac_value_drop(product);
   return clipped;
@@ -261,7 +264,7 @@ static void stored_or_streamed_along_any_axis(void **state) {
         lac_work_start(&work, threads[way % 3], plenty);
         lac_value *value = grid(a, b);
         if (way < 3) assert_int_equal(lac_plan_store(&work, value), LAC_OK);
-        else if (k == 2) work.cap = 3 * 50 * sizeof(double); /* room for the results; the others are too large to be stored first */
+        else if (k == 2) work.cap = 4 * 50 * sizeof(double); /* room for a result and its parts; the others are too large to be stored first */
         fold_all(&work, value, which ? "b" : "a", way == 0 ? first : next, others);
         assert_true(way < 3 || lac_value_data(value) == NULL);
         if (way == 0) check_cells(lac_value_data(value), others, along, which ? b->length : 1, which ? 1 : b->length, first);
@@ -274,7 +277,8 @@ static void stored_or_streamed_along_any_axis(void **state) {
     }
 }
 
-/* A chance over draws: undefined draws in the denominator. Expected: the normal distribution, six standard deviations of a binomial share. */
+/* A chance over draws: undefined draws in the denominator. Expected: the normal distribution, six standard deviations of a binomial share.
+ */
 static void a_chance_is_the_normal_distributions(void **state) {
   (void)state;
   lac_work work;

@@ -80,8 +80,7 @@ static void make_node(expression *e, recipe *node) {
     return;
   case CLIPPED: assert_int_equal(lac_value_clipped(arguments[0], clip, &node->value), LAC_OK); return;
   case SCALED: assert_int_equal(lac_value_scaled(lac_block_root, 2, arguments, &node->value), LAC_OK); return;
-  default:
-    assert_int_equal(lac_value_computed(blocks[node->operation], node->operation == ROOT ? 1 : 2, arguments, &node->value), LAC_OK);
+  default: assert_int_equal(lac_value_computed(blocks[node->operation], node->operation == ROOT ? 1 : 2, arguments, &node->value), LAC_OK);
   }
 }
 

@@ -106,6 +106,23 @@ static int doubled(void *context, size_t n, double *out, const double *const *in
   return in[0][0] < 0;
 }
 
+static void an_axis_lends_its_coordinates(void **state) {
+  (void)state;
+  const double coordinates[] = {1, 2, 4};
+  lac_axis *axis, *bare;
+  lac_value *swept, *none;
+  assert_int_equal(lac_axis_new("a", 3, coordinates, &axis), LAC_OK);
+  assert_int_equal(lac_axis_new("b", 3, NULL, &bare), LAC_OK);
+  assert_int_equal(lac_value_swept(axis, &swept), LAC_OK);
+  assert_int_equal(lac_value_swept(bare, &none), LAC_OUT_OF_RANGE);
+  assert_null(none);
+  lac_axis_drop(axis);
+  lac_axis_drop(bare);
+  assert_int_equal(lac_value_size(swept), 3);
+  assert_memory_equal(lac_value_data(swept), coordinates, sizeof coordinates);
+  lac_value_drop(swept);
+}
+
 static void single_numbers_are_evaluated_at_once(void **state) {
   (void)state;
   int calls = 0;
@@ -243,7 +260,7 @@ static void comparisons_and_logic(void **state) {
       assert_true(of_two(lac_block_minimum, a, b) == fmin(a, b) && of_two(lac_block_maximum, a, b) == fmax(a, b));
       assert_true(of_two(lac_block_not, a, 0) == !a);
     }
-  lac_block_function *const two[] = {lac_block_above, lac_block_below,   lac_block_and,    lac_block_or,
+  lac_block_function *const two[] = {lac_block_above,   lac_block_below,   lac_block_and, lac_block_or,
                                      lac_block_minimum, lac_block_maximum, lac_block_add, lac_block_multiply};
   for (size_t i = 0; i < sizeof two / sizeof *two; i++)
     for (size_t j = 0; j < 8; j++) {
@@ -262,8 +279,8 @@ static void agree_with_the_c_library(void **state) {
     lac_block_function *block;
     double (*function)(double);
     double low, high;
-  } const one[] = {{lac_block_root, sqrt, 0, 1e9},   {lac_block_exp, exp, -600, 600}, {lac_block_log, log, 2, 1e9},
-                   {lac_block_log10, log10, 2, 1e9}, {lac_block_sin, sin, 0.1, 3},    {lac_block_cos, cos, -1.5, 1.5},
+  } const one[] = {{lac_block_root, sqrt, 0, 1e9},   {lac_block_exp, exp, -600, 600},  {lac_block_log, log, 2, 1e9},
+                   {lac_block_log10, log10, 2, 1e9}, {lac_block_sin, sin, 0.1, 3},     {lac_block_cos, cos, -1.5, 1.5},
                    {lac_block_tan, tan, 0.1, 1.5},   {lac_block_absolute, fabs, -5, 5}};
   for (size_t f = 0; f < sizeof one / sizeof *one; f++) {
     double x[67], out[67];
@@ -290,6 +307,7 @@ int main(void) {
       cmocka_unit_test(axes_are_the_same_by_content),
       cmocka_unit_test(the_longest_axis_is_last_and_draw_among_equals),
       cmocka_unit_test(arrays_are_kept_in_storage_order),
+      cmocka_unit_test(an_axis_lends_its_coordinates),
       cmocka_unit_test(single_numbers_are_evaluated_at_once),
       cmocka_unit_test(depth_is_bounded_and_storing_resets_it),
       cmocka_unit_test(bounds_are_kept),

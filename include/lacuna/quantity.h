@@ -31,6 +31,7 @@ int lac_axis_same(const lac_axis *a, const lac_axis *b);
 /* Makers; each result holds one reference, given back by lac_value_drop. Axes and arguments are kept by the value.
    lac_value_array: one element for each point of the axes, copied; data in the order in which the axes are given, the last one
    contiguous (the coordinates of an axis are free to differ from the data along it). No axes: the number data[0].
+   lac_value_swept: an axis's own coordinates, not copied; LAC_OUT_OF_RANGE if it has none.
    lac_value_drawn: a spread along the axis draw; samples are copied.
    lac_value_clipped: out-of-range elements become NaN (undefined).
    lac_value_computed: a block function of count arguments.
@@ -43,6 +44,7 @@ int lac_axis_same(const lac_axis *a, const lac_axis *b);
    (lac_plan_store) and try again; LAC_OUT_OF_RANGE: see lac_spread_check; LAC_CALLBACK_FAILED. *value is NULL then. */
 lac_status lac_value_number(double number, lac_value **value);
 lac_status lac_value_array(size_t axes, lac_axis *const *axis, const double *data, lac_value **value);
+lac_status lac_value_swept(lac_axis *axis, lac_value **value);
 lac_status lac_value_drawn(lac_axis *draw, const lac_spread *spread, lac_value **value);
 lac_status lac_value_clipped(lac_value *of, lac_range range, lac_value **value);
 lac_status lac_value_computed(lac_block_function *block, size_t count, lac_value *const *arguments, lac_value **value);

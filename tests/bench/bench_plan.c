@@ -70,7 +70,7 @@ static lac_value *apply(lac_block_function *block, lac_value *a, lac_value *b) {
 /* Cheap relations as they are written for the tables: each checks its domain. */
 double lac_quotient(double a, double b), lac_product(double a, double b), lac_root(double a, double b);
 LAC_RELATION(quotient, a, b) { return lac_where((a > 0) & (b > 0), a / b); }
-LAC_RELATION(product, a, b) { return lac_where((a > 0) & (b > 0), a *b); }
+LAC_RELATION(product, a, b) { return lac_where((a > 0) & (b > 0), a * b); }
 LAC_RELATION(root, a, b) { return lac_where((a > 0) & (b > 0), sqrt(a / b)); }
 
 static lac_value *chain_of_eight(lac_value *x) {

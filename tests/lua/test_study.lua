@@ -71,6 +71,11 @@ t.test("values, errors, blanks, texts and labels of a file", function()
   t.close(study.rows[3].case.distance:value "pc", 99, 1e-15)
 end)
 
+t.test("a cell with an error bar but no unit takes the header's", function()
+  local c = of_file("name,distance [kpc]\nMarrow 3,0.156 ± 0.003\n").rows[1].case
+  t.close(lacuna.deviation(c.distance):value "pc", 3, 4 / math.sqrt(2 * 2000))
+end)
+
 t.test("malformed files", function()
   refuses("", ": the file is empty; its first line names the columns")
   refuses("name,distance [pc]\n", ": no targets; the file has a header line alone")
@@ -243,7 +248,8 @@ t.test("CSV: written, and read again as targets", function()
 end)
 
 t.test("LaTeX: one booktabs table, its special characters escaped, its braces and environments closed", function()
-  local content = study_of_stars { latex = path "out.tex", variants = { { name = "a_b & c", ask = asked } } } and read "out.tex"
+  local odd = { stars[1], stars[2], stars[3], { name = "[Marrow] 4", remarks = "* north\n", distance = "10 pc" } }
+  local content = study_of_stars { latex = path "out.tex", targets = odd, variants = { { name = "a_b & c", ask = asked } } } and read "out.tex"
   local _, opened = content:gsub("\\begin{", "")
   local _, closed = content:gsub("\\end{", "")
   t.equal(opened, closed)
@@ -256,6 +262,7 @@ t.test("LaTeX: one booktabs table, its special characters escaped, its braces an
   for _, rule in ipairs { "\\toprule", "\\midrule", "\\bottomrule", "\\cmidrule(lr){5-6}", "\\caption{Rims}", "50 \\% \\& more\\_", "a\\_b \\& c", "half\\_fringe", "\\mathrm{mas}", "Assumed" } do
     t.equal(content:find(rule, 1, true) ~= nil, true, rule .. " in " .. content)
   end
+  t.equal(content:find("\n{[}Marrow] 4 & {*} north", 1, true) ~= nil, true, content) -- no argument of the line break before
   local columns = #content:match "\\begin{tabular}{([lr]+)}"
   for line in content:match("\\midrule\n(.-)\\bottomrule"):gmatch "[^\n]+" do
     t.equal(select(2, line:gsub("\\&", ""):gsub("&", "")), columns - 1, line)

@@ -73,12 +73,12 @@ try "$lacuna" --colourful
 want "an option like no other" 2 "" "lacuna: unknown option '--colourful'; lacuna --help lists them"
 for option in --draws=x --draws=0 --draws=-1 --draws=1.5 --draws= --draws=99999999999999999999; do
   try "$lacuna" "$option" script.lua
-  want "$option" 2 "" "lacuna: --draws wants a whole number from 1 to [0-9]*; got ${option#*=}"
+  want "$option" 2 "" "lacuna: --draws wants a whole number from 1 to [0-9]*; got \"${option#*=}\""
 done
 try "$lacuna" --threads 0 script.lua
-want "--threads 0" 2 "" "lacuna: --threads wants a whole number from 1 to [0-9]*; got 0"
+want "--threads 0" 2 "" "lacuna: --threads wants a whole number from 1 to [0-9]*; got \"0\""
 try "$lacuna" --seed
-want "--seed without a number" 2 "" "lacuna: --seed wants a whole number from 0 to [0-9]*; got nothing"
+want "--seed without a number" 2 "" "lacuna: --seed wants a whole number after it; got nothing"
 try "$lacuna" --seed 5 --draws=100 --threads 1 -- script.lua a
 want "options, then --" 0 "script.lua	a	1	a" ""
 
