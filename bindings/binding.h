@@ -21,6 +21,7 @@ typedef struct {
   uint64_t seed;
   size_t draws;
   uint64_t unbound_made;    /* spreads and sweeps made so far: the next one's number names it where no given does */
+  int calls;                /* of users' rows that are being computed, one within the other */
   lac_axis *draw;           /* the axis draw, of draws elements; made at first use */
   lua_State *caller, *main; /* the thread whose C call runs now, and the host's main one, for poll */
   lua_Hook hook, main_hook; /* their hooks when the call began */

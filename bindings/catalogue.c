@@ -160,11 +160,17 @@ static void check_fields(lua_State *L, const char *what, const char *const *fiel
   }
 }
 
+/* The tables must not grow under a computation. */
+static void check_idle(lua_State *L, const char *what) {
+  if (lac_state_of(L)->calls > 0) lac_error(L, "%s: nothing can be added while a relation of yours is computed", what);
+}
+
 /* add_name{name, unit, meaning, range, symbol, on_sky}. */
 static int catalogue_add_name(lua_State *L) {
   static const char *const fields[] = {"name", "unit", "meaning", "range", "symbol", "on_sky", NULL};
   luaL_checktype(L, 1, LUA_TTABLE);
   check_fields(L, "quantity", fields);
+  check_idle(L, "quantity");
   lac_name name = {.subject = "yours"};
   name.name = text_field(L, "quantity", "name", NULL);
   name.unit = text_field(L, "quantity", "unit", NULL);
@@ -253,7 +259,9 @@ int lac_call_users_row(void *context, size_t n, double *out, const double *const
   if (!lua_checkstack(L, 4)) return 1;
   lua_pushcfunction(L, call_protected);
   lua_pushlightuserdata(L, (void *)&call);
+  state->calls++;
   const bool failed = lua_pcall(L, 1, 0, 0) != LUA_OK;
+  state->calls--;
   state->caller = L, state->hook = hook, state->main_hook = main_hook;
   if (failed) lac_state_keep_error(L);
   return failed;
@@ -281,6 +289,7 @@ static int catalogue_add_relation(lua_State *L) {
   static const char *const fields[] = {"gives", "by", "from", "call", "source", "equation", "supposes", NULL};
   luaL_checktype(L, 1, LUA_TTABLE);
   check_fields(L, "relation", fields);
+  check_idle(L, "relation");
   luaL_checkstack(L, LAC_MAX_ARGUMENTS + 20, NULL);
   lac_relation row = {.kind = LAC_USERS, .call = lac_call_users_row};
   row.gives = text_field(L, "relation", "gives", NULL);

@@ -42,9 +42,11 @@ for _, metatable in ipairs { core.number_metatable, core.value_metatable } do
     return method
   end
   metatable.__tostring = text.quantity
+  metatable.__metatable = "quantity" -- its finaliser is not to be called by hand
   metatable.__concat = function(a, b) return tostring(a) .. tostring(b) end
 end
 core.case_metatable.__tostring = text.case
+core.case_metatable.__metatable = "case"
 core.case_metatable.__newindex = function() core.raise("a case doesn't change; c:with{name = value} makes another") end
 
 function lacuna.case(givens) return case.new(givens) end

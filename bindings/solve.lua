@@ -116,16 +116,22 @@ local function solve_chances(self, given, goal_name, goal, share, range)
   local without = with_givens(self, others)
   local shape = core.chance(core.raw(without, goal_name))
   local axes = core.axes(shape)
-  if #axes == 0 then
-    local x, least, most = solve_chance(without, given, goal_name, share, range.low, range.high, range.logarithmic, range.start)
-    if x then return core.like(core.given_like(given), x) end
+  local function none(least, most)
     return nil, ("no %s between %s and %s gives %s in %s of draws: the share runs from %s to %s there"):format(given, write(given, range.low),
       write(given, range.high), goal_name, goal, format.percent(least), format.percent(most))
   end
-  local roots = {}
+  if #axes == 0 then
+    local x, least, most = solve_chance(without, given, goal_name, share, range.low, range.high, range.logarithmic, range.start)
+    if x then return core.like(core.given_like(given), x) end
+    return none(least, most)
+  end
+  local roots, defined, lowest, highest = {}, false, math.huge, -math.huge
   each_point(axes, function(points)
-    roots[#roots + 1] = solve_chance(fixed(without, points), given, goal_name, share, range.low, range.high, range.logarithmic, range.start) or 0 / 0
+    local x, least, most = solve_chance(fixed(without, points), given, goal_name, share, range.low, range.high, range.logarithmic, range.start)
+    roots[#roots + 1] = x or 0 / 0
+    defined, lowest, highest = defined or x ~= nil, math.min(lowest, least), math.max(highest, most)
   end)
+  if not defined then return none(lowest, highest) end
   return core.along_axes(shape, core.given_like(given), roots)
 end
 
@@ -165,7 +171,8 @@ local function solve(self, word, goals, options)
   end
   local found, least, most, brackets, defined = core.solve(self, given, goal_name, goal, low, high, logarithmic, start)
   if defined == 0 then return nil, nothing_found(given, goal_name, text.quantity(goal), low, high, least, most) end
-  return found, brackets > 1 and ("the nearest of %d solutions between %s and %s"):format(brackets, write(given, low), write(given, high)) or nil
+  if brackets > 1 then return found, ("the nearest of %d solutions between %s and %s"):format(brackets, write(given, low), write(given, high)) end
+  return found
 end
 
 core.case_methods.solve = solve

@@ -167,7 +167,8 @@ static int make_along(lua_State *L) {
   return 1;
 }
 
-/* The median of an unbound spread, exact; nil for anything else. Third: how a spread is written. */
+/* Of an unbound spread: its kind, its median (exact) and its parameters; of a sweep: "sweep", how many points, the first and the last.
+   Nothing for anything else. */
 static int unbound_facts(lua_State *L) {
   const lac_quantity *quantity = lac_to_quantity(L, 1);
   if (quantity == NULL || quantity->unbound == NULL) return 0;
@@ -175,7 +176,9 @@ static int unbound_facts(lua_State *L) {
   if (quantity->unbound->sweep) {
     lua_pushliteral(L, "sweep");
     lua_pushinteger(L, (lua_Integer)quantity->unbound->count);
-    return 2;
+    lua_pushnumber(L, quantity->unbound->elements[0]);
+    lua_pushnumber(L, quantity->unbound->elements[quantity->unbound->count - 1]);
+    return 4;
   }
   const lac_spread *spread = &quantity->unbound->spread;
   lua_pushstring(L, kinds[spread->kind]);

@@ -166,7 +166,9 @@ function text.unbound(quantity, factor, unit)
     _, factor, unit = display_unit(quantity)
   end
   local kind, a, b, c, d = core.unbound_facts(quantity)
-  if kind == "sweep" then return ("a sweep of %d points"):format(a) end
+  if kind == "sweep" then
+    return format.with_unit(("%s … %s"):format(format.number(b / factor), format.number(c / factor)), unit) .. (", a sweep of %d points"):format(a)
+  end
   if kind == "normal" or kind == "lopsided" then return format.with_unit(format.with_error(b / factor, c / factor, (kind == "normal" and c or d) / factor), unit) end
   if kind == "uniform" or kind == "log_uniform" then
     return format.with_unit(("from %s to %s"):format(format.number(b / factor), format.number(c / factor)), unit) .. (kind == "uniform" and ", uniform" or ", log-uniform")

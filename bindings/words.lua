@@ -80,6 +80,8 @@ word("settings", {
   "settings{seed = 0, draws = 10000, threads = n, memory = MiB}",
   "  Sets those named, and returns all. They hold for what is made afterwards.",
 })
+word("show", { "show(value, ...)", "  The text of values as the prompt writes them." })
+word("globals", { "globals(environment)", "  For the module in Lua: makes all words, units and names readable as globals there, like globals(_ENV)." })
 word("help", { "help()   help \"name\"   help \"some words\"", "  A map; one name, word or unit; a search." })
 
 return words

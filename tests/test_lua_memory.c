@@ -60,8 +60,10 @@ static void computing_fails_cleanly(void **unused) {
       "return lac.case{distance = '156 ± 3 pc', rim_radius = '0.3 au'}.rim_radius_angle:interval(0.9)",
       "return tostring(lac.case{distance = '156 ± 3 pc', rim_radius = lac.sweep.log('0.1 au', '1 au', 5)})",
       "local c = lac.case{distance = '156 ± 3 pc', rim_radius = '0.3 ± 0.05 au', wavelength = '1.65 um', projected_baseline = '100 m'}"
-      "return tostring(c.rim_resolved_by_array) .. tostring(c:why 'rim_resolved_by_array') .. tostring(c:check()) .. tostring(c:missing 'gap_width')",
-      "local c = lac.case{distance = '156 ± 3 pc', rim_radius = lac.sweep('0.3 au', '0.5 au', 3), wavelength = '1.65 um', projected_baseline = '100 m'}"
+      "return tostring(c.rim_resolved_by_array) .. tostring(c:why 'rim_resolved_by_array') .. tostring(c:check()) .. tostring(c:missing "
+      "'gap_width')",
+      "local c = lac.case{distance = '156 ± 3 pc', rim_radius = lac.sweep('0.3 au', '0.5 au', 3), wavelength = '1.65 um', "
+      "projected_baseline = '100 m'}"
       "return c:solve('projected_baseline', {rim_elements_by_array = 2})",
       "return c:with{rim_radius = '3 ± 0.1 au'}:using{array_resolution = 'fringe'}.shade:at{draw = 3}:value()",
       "return tostring(lac.help 'gap_width')",
@@ -71,10 +73,12 @@ static void computing_fails_cleanly(void **unused) {
   assert_non_null(L);
   open_module(L);
   char text[100];
-  run(L, "lac.settings{draws = 300}"
-         "lac.quantity{name = 'shade', unit = '1', meaning = 'invented'}"
-         "lac.relation{gives = 'shade', from = {'rim_radius'}, function(r) return r / r end}"
-         "c = lac.case{distance = '156 pc', rim_radius = '0.3 ± 0.05 au', wavelength = '1.65 um', projected_baseline = '100 m'}", text, sizeof text);
+  run(L,
+      "lac.settings{draws = 300}"
+      "lac.quantity{name = 'shade', unit = '1', meaning = 'invented'}"
+      "lac.relation{gives = 'shade', from = {'rim_radius'}, function(r) return r / r end}"
+      "c = lac.case{distance = '156 pc', rim_radius = '0.3 ± 0.05 au', wavelength = '1.65 um', projected_baseline = '100 m'}",
+      text, sizeof text);
   for (size_t i = 0; i < sizeof codes / sizeof *codes; i++) {
     assert_int_equal(luaL_loadstring(L, codes[i]), LUA_OK);
     int status = LUA_ERRMEM;

@@ -28,7 +28,8 @@ static void two_states_do_not_disturb_each_other(void **unused) {
   assert_string_equal(run(b, "return lac.rim_colour{rim_radius = '1 au'}:value()", text, sizeof text), "2.0");
   assert_string_not_equal(run(b, ensemble, other, sizeof other), before); /* another seed */
   assert_string_equal(run(a, ensemble, after, sizeof after), before);
-  assert_string_equal(run(a, "local s = lac.settings() return s.seed .. ' ' .. s.draws .. ' ' .. s.memory", text, sizeof text), "0 10000 2048.0");
+  assert_string_equal(run(a, "local s = lac.settings() return s.seed .. ' ' .. s.draws .. ' ' .. s.memory", text, sizeof text),
+                      "0 10000 2048.0");
   assert_non_null(strstr(run(a, "return select(2, pcall(lac.case, {rim_colour = 2}))", text, sizeof text), "unknown name 'rim_colour'"));
   lua_close(b);
   assert_string_equal(run(a, ensemble, after, sizeof after), before);
@@ -64,7 +65,8 @@ static void what_was_stored_is_given_back(void **unused) {
       "lac.quantity{name = 'shade', unit = '1', meaning = 'invented'}"
       "lac.relation{gives = 'shade', from = {'rim_radius'}, function() error 'invented' end}"
       "return select(2, pcall(tostring, lac.case{rim_radius = '1 ± 0.1 au'}.shade))",
-      "lac.settings{memory = 1} return select(2, pcall(lac.quantity '1 ± 0.1'.value, lac.quantity(1, '1') * lac.along('a', lac.quantity '1 ± 0.1':value())))",
+      "lac.settings{memory = 1} return select(2, pcall(lac.quantity '1 ± 0.1'.value, lac.quantity(1, '1') * lac.along('a', lac.quantity '1 "
+      "± 0.1':value())))",
   };
   char text[4000];
   lua_State *L = new_state();
@@ -158,14 +160,13 @@ static void the_hosts_hook_ends_a_computation(void **unused) {
 /* A user's row may use coroutines of its own; the computation around it belongs to the thread it began on. */
 static void a_users_row_with_a_coroutine(void **unused) {
   (void)unused;
-  static const char code[] =
-      "lac.settings{draws = 200000}"
-      "lac.quantity{name = 'shade', unit = '1', meaning = 'invented'}"
-      "lac.relation{gives = 'shade', from = {'rim_radius'}, function(r)"
-      "  local x = coroutine.wrap(function() return lac.mean(lac.quantity '2 ± 0.1') end)()"
-      "  collectgarbage()"
-      "  return r / r + 0 * x end}"
-      "return lac.case{rim_radius = '1 ± 0.1 au'}.shade:mean():value()";
+  static const char code[] = "lac.settings{draws = 200000}"
+                             "lac.quantity{name = 'shade', unit = '1', meaning = 'invented'}"
+                             "lac.relation{gives = 'shade', from = {'rim_radius'}, function(r)"
+                             "  local x = coroutine.wrap(function() return lac.mean(lac.quantity '2 ± 0.1') end)()"
+                             "  collectgarbage()"
+                             "  return r / r + 0 * x end}"
+                             "return lac.case{rim_radius = '1 ± 0.1 au'}.shade:mean():value()";
   char text[64];
   lua_State *L = new_state();
   assert_string_equal(run(L, code, text, sizeof text), "1.0");

@@ -37,7 +37,7 @@ t.test("wrong dimensions", function()
   refused(function() local _ = case { gap_width = 3 } end, "gap_width wants a length (in au); got 3")
   refused(function() local _ = case { viscosity_alpha = "3 K" } end, "viscosity_alpha wants a plain number; got 3 K")
   refused(function() local _ = case { distance = "3 ± 1 K" } end, "distance wants a length (in pc); got 3 ± 1 K")
-  refused(function() local _ = case { distance = lac.sweep("1 K", "2 K", 3) } end, "distance wants a length (in pc); got a sweep of 3 points")
+  refused(function() local _ = case { distance = lac.sweep("1 K", "2 K", 3) } end, "distance wants a length (in pc); got 1 … 2 K, a sweep of 3 points")
   refused(function() local _ = lac.hill_radius { planet_semi_major_axis = 5 * lac.Msun, planet_mass = "1 Mjup", stellar_mass = "1 Msun" } end,
     "planet_semi_major_axis wants a length (in au); got 5 Msun")
   refused(function() local _ = 5 * lac.au + 3 * lac.K end, "can't add a length (5 au) and a temperature (3 K)")

@@ -96,6 +96,39 @@ t.test("memory that Lua doesn't see is given back without a full collection by h
   lac.settings { memory = memory }
 end)
 
+t.test("the tables can't grow under a computation", function()
+  lac.quantity { name = "growing", unit = "au", meaning = "invented" }
+  lac.relation { gives = "growing", by = "more", from = { "rim_radius" }, function(r)
+    for i = 1, 100 do lac.quantity { name = "grown_" .. i, unit = "au", meaning = "invented" } end
+    return r
+  end }
+  for _, radius in ipairs { "1 au", "1 ± 0.1 au" } do
+    t.raises(function() return lac.case { rim_radius = radius }.growing:mean() end, "quantity: nothing can be added while a relation of yours is computed")
+  end
+  lac.quantity { name = "grown", unit = "au", meaning = "invented" }
+end)
+
+t.test("a row that asks a case, its own even", function()
+  lac.quantity { name = "asking", unit = "au", meaning = "invented" }
+  local c
+  lac.relation { gives = "asking", by = "back", from = { "rim_radius" }, function(r) return r + 0 * c.hill_radius end }
+  lac.quantity { name = "endless", unit = "au", meaning = "invented" }
+  lac.relation { gives = "endless", by = "round", from = { "rim_radius" }, function(r) return r + 0 * c.endless end }
+  c = lac.case { rim_radius = "1 au", planet_semi_major_axis = "5 au", planet_star_mass_ratio = 1e-3 }
+  t.equal(c.asking:value "au", 1.0)
+  t.raises(function() return c.endless end, "overflow")
+end)
+
+t.test("the module opened once more", function()
+  if not package.searchpath("lacuna", package.cpath) then return end -- the program has it built in
+  local old = lac.case { distance = "156 ± 3 pc", rim_radius = "0.3 au" }
+  package.loaded.lacuna = nil
+  local new = require "lacuna"
+  t.close(new.median(old.rim_radius_angle):value "mas", 300 / 156, 1e-3)
+  t.equal((2 * lac.au + 1 * new.au):value(new.au), 3.0)
+  t.close(new.case { distance = old.distance, rim_radius = "0.3 au" }.rim_radius_angle:median():value "mas", 300 / 156, 1e-3)
+end)
+
 t.test("closing a quantity by hand", function()
   local kept
   do

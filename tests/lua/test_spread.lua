@@ -71,7 +71,7 @@ t.test("spreads that can't be are refused", function()
   t.raises(function() return lac.spread.normal(1, math.huge) end, "spread.normal wants finite numbers; got infinite")
   t.raises(function() return lac.spread.samples {} end, "spread.samples wants a list that is not empty")
   t.raises(function() return lac.spread.samples { 1, "2 pc" } end, "spread.samples wants a plain number throughout; got 2 pc")
-  t.raises(function() return lac.spread.normal(lac.sweep { 1, 2 }, 1) end, "spread.normal wants single numbers; got a sweep")
+  t.raises(function() return lac.spread.normal(lac.sweep { 1, 2 }, 1) end, "spread.normal wants single numbers; got 1 … 2, a sweep of 2 points")
   t.raises(function() return lac.spread.gaussian(1, 2) end, "gaussian")
 end)
 
@@ -92,6 +92,28 @@ t.test("draws are keyed by seed and name: neither order nor neighbours change th
   lac.settings { seed = 0 }
   t.equal(other[1] == alone[1], false, "another seed, other draws")
   t.equal(draws_of({ distance = "156 ± 3 pc" }, "distance"), alone, "the first seed again")
+end)
+
+t.test("in a study, draws are keyed by the target too; what is common to all targets has none", function()
+  local printing = print
+  local function draws(names)
+    local targets = {}
+    for i, name in ipairs(names) do targets[i] = { name = name, distance = "150 ± 5 pc" } end
+    print = function() end
+    local ok, study = pcall(lac.study, { targets = targets, given = { rim_radius = "0.3 ± 0.05 au" }, ask = { "rim_radius_angle" } })
+    print = printing
+    assert(ok, study)
+    local of = {}
+    for i, name in ipairs(names) do
+      of[name] = { distance = study.rows[i].made[1].distance:value "pc", rim_radius = study.rows[i].made[1].rim_radius:value "au" }
+    end
+    return of
+  end
+  local two, three = draws { "Marrow 1", "Marrow 2" }, draws { "Marrow 2", "Marrow 0", "Marrow 1" } -- invented stars
+  t.equal(two["Marrow 1"].distance[1] == two["Marrow 2"].distance[1], false)
+  t.equal(three["Marrow 1"], two["Marrow 1"], "whatever other targets there are")
+  t.equal(two["Marrow 1"].rim_radius, two["Marrow 2"].rim_radius)
+  t.equal(two["Marrow 1"].rim_radius, draws_of({ rim_radius = "0.3 ± 0.05 au" }, "rim_radius"))
 end)
 
 t.test("the same bits on any number of threads, folded or stored", function()
@@ -272,7 +294,7 @@ t.test("how spreads and grids are written", function()
   t.equal(tostring(lac.quantity "156 ± 3 pc"), "156 ± 3 pc")
   t.equal(tostring(lac.spread.log_uniform(1e-4, 1e-2)), "from 0.0001 to 0.01, log-uniform")
   t.equal(tostring(lac.spread.uniform("1 au", "2 au")), "from 1 to 2 au, uniform")
-  t.equal(tostring(lac.sweep("1 au", "2 au", 5)), "a sweep of 5 points")
+  t.equal(tostring(lac.sweep("1 au", "2 au", 5)), "1 … 2 au, a sweep of 5 points")
   t.equal(tostring(lac.case { rim_radius = lac.sweep("1 au", "2 au", 5) }.rim_radius), "1  1.25  1.5  1.75  2 au\n  along rim_radius 1 … 2 au, 5 points")
   local q = lac.case { rim_radius = lac.sweep("1 au", "2 au", 5), distance = lac.sweep("1 pc", "2 pc", 3) }.rim_radius_angle
   t.equal(tostring(q), "from 500 to 2000 mas over distance 1 … 2 pc, 3 points and rim_radius 1 … 2 au, 5 points")
