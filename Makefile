@@ -186,12 +186,12 @@ Name: lacuna
 Description: What can be resolved around young stars
 Version: $(VERSION)
 License: GPL-3.0-or-later
-Cflags: -I$${includedir}
-Libs: -L$${libdir} -llacuna
+Cflags: -I"$${includedir}"
+Libs: -L"$${libdir}" -llacuna
 Libs.private: $(core_libs) -lgomp
 endef
 
-into = $(DESTDIR)$(1)
+into = '$(DESTDIR)$(1)'
 
 install: all
 	install -d $(call into,$(PREFIX)/bin) $(call into,$(PREFIX)/include/lacuna) $(call into,$(LIBDIR)/pkgconfig) $(call into,$(LUADIR)) $(call into,$(MANDIR))

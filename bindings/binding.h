@@ -56,6 +56,23 @@ typedef struct {
   double elements[];    /* the sweep's, or the spread's samples; SI */
 } lac_unbound;
 
+/* The userdata behind each object in Lua: dust, a band. Immutable; cases hold on to the value. */
+typedef struct {
+  uint64_t tag;
+  lac_value *value; /* of the kind object */
+  const char *type; /* the glossary's name of the kind: "dust" */
+} lac_object;
+
+/* A new object on the stack, still empty, with the metatable in the registry at the key `metatable`; and what it holds, taken over: dropped
+   at once where that fails, which raises. Push first, make the resource second. */
+lac_object *lac_push_object(lua_State *L, const char *type, const void *metatable);
+void lac_object_take(lua_State *L, lac_object *object, const void *pointer, void (*drop)(const void *));
+lac_object *lac_to_object(lua_State *L, int index); /* NULL if it is none */
+const void *lac_check_object(lua_State *L, int index, const char *type, const char *what);
+void lac_open_object(lua_State *L);
+void lac_open_band(lua_State *L);
+void lac_open_dust(lua_State *L);
+
 /* The userdata behind each quantity in Lua. One number: value and unbound are NULL. */
 typedef struct {
   uint64_t tag;
@@ -88,6 +105,7 @@ void lac_store(lua_State *L, lac_quantity *quantity);
 
 /* Openers of the binding's parts: each adds its functions to the table on top of the stack. */
 void lac_open_quantity(lua_State *L);
+void lac_open_elements(lua_State *L);
 void lac_open_spread(lua_State *L);
 void lac_open_summary(lua_State *L);
 void lac_open_catalogue(lua_State *L);

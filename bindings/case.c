@@ -234,6 +234,20 @@ lac_case *lac_check_case(lua_State *L, int index) {
   return object;
 }
 
+/* The objects {name = object} among the info at place 3. */
+static void take_objects(lua_State *L, lac_case *object) {
+  const lac_catalogue *catalogue = lac_catalogue_of(L);
+  if (lua_type(L, 3) != LUA_TTABLE || lua_getfield(L, 3, "objects") != LUA_TTABLE) return;
+  for (lua_pushnil(L); lua_next(L, -2); lua_pop(L, 1)) {
+    const int id = lac_catalogue_find(catalogue, luaL_checkstring(L, -2));
+    if (id < 0) lac_error(L, "new_case wants checked objects");
+    const lac_object *given = lac_to_object(L, -1);
+    if (given == NULL || strcmp(given->type, lac_catalogue_name(catalogue, id)->name) != 0) lac_error(L, "new_case wants checked objects");
+    object->given[id] = true;
+    object->values[id] = lac_value_keep(given->value);
+  }
+}
+
 /* new_case(givens, using, info, try): a case of checked givens {name = quantity}, restrictions {name = by} and a table of the Lua side's.
    Where a restriction can't be had: an error, or nil with try. */
 static int case_new(lua_State *L) {
@@ -256,6 +270,7 @@ static int case_new(lua_State *L) {
     lac_status status = lac_value_of(quantity, &object->values[id]);
     if (status != LAC_OK) return lac_error(L, "%s", lac_status_words(status));
   }
+  take_objects(L, object);
   if (!settle(L, 4, trying)) return 0;
   lua_settop(L, 4);
   return 1;
@@ -339,22 +354,29 @@ static int ask(lua_State *L, lac_case *object, int id, int object_place, int wor
   return 1;
 }
 
-/* __index: a name's quantity, or a method (upvalue 1 is their table), or a label. */
+/* __index: a name's quantity, or a method (upvalue 1 is their table), or an object. */
 static int case_index(lua_State *L) {
   lac_case *object = lac_check_case(L, 1);
   const char *word = lua_type(L, 2) == LUA_TSTRING ? lua_tostring(L, 2) : NULL;
-  const int id = word == NULL ? -1 : lac_catalogue_find(lac_catalogue_of(L), word);
-  if (id >= 0 && lac_catalogue_name(lac_catalogue_of(L), id)->kind != LAC_LABEL) return ask(L, object, id, 1, 2);
+  int id = word == NULL ? -1 : lac_catalogue_find(lac_catalogue_of(L), word);
+  if (word != NULL && id < 0) id = lac_catalogue_find_synonym(lac_catalogue_of(L), word); /* may be asked, though not given */
+  if (id >= 0 && lac_catalogue_name(lac_catalogue_of(L), id)->kind != LAC_OBJECT) return ask(L, object, id, 1, 2);
   lua_pushvalue(L, 2);
   if (lua_rawget(L, lua_upvalueindex(1)) != LUA_TNIL) return 1;
   return handle(L, "unknown", 1, 2);
 }
 
-/* raw(case, name): as ask, but NaN instead of an error for what is undefined, nil for what can't be had. */
+/* raw(case, name): as ask, but NaN instead of an error for what is undefined, nil for what can't be had; and objects too. */
 static int case_raw(lua_State *L) {
   lac_case *object = lac_check_case(L, 1);
   const int id = lac_catalogue_find(lac_catalogue_of(L), luaL_checkstring(L, 2));
   if (id < 0 || lac_chain_row(object->chain, id) == LAC_NO_ROW) return 0;
+  if (lac_catalogue_name(lac_catalogue_of(L), id)->kind == LAC_OBJECT) {
+    lua_getiuservalue(L, 1, 3);
+    lua_getfield(L, -1, "objects");
+    lua_getfield(L, -1, lua_tostring(L, 2));
+    return 1;
+  }
   const lac_dimension dimension = lac_catalogue_unit(lac_catalogue_of(L), id).dimension;
   const lac_name *name = lac_catalogue_name(lac_catalogue_of(L), id);
   derive(L, object, id);

@@ -78,7 +78,7 @@ end
 
 -- Makes a case of raw givens. `checked`: those that are checked already.
 local function make(givens, checked, using, info)
-  local all, labels, written = {}, {}, {}
+  local all, objects, written = {}, {}, {}
   for name, quantity in pairs(checked) do all[name] = quantity end
   for name, words in pairs(info.written or {}) do written[name] = words end
   for _, word in ipairs(sorted_keys(givens)) do
@@ -86,16 +86,17 @@ local function make(givens, checked, using, info)
     local name = type(word) == "string" and core.find(word)
     if not name or select(2, core.find(word)) then core.raise(type(word) == "string" and unknown_name(word, "") or
       ("a case wants name = value; got the value %s without a name"):format(tostring(value)), 0) end
-    if core.entry(name).kind == "label" then labels[name] = value and tostring(value)
+    if core.entry(name).kind == "object" then objects[name] = value and core.part "lacuna.objects".take(name, value)
     elseif value == false then all[name], written[name] = nil, nil
     else
       written[name] = text.as_written(name, value)
       all[name] = core.given(name, value, info.target)
     end
   end
-  for name, label in pairs(info.labels or {}) do if labels[name] == nil then labels[name] = label end end
+  for name, object in pairs(info.objects or {}) do if objects[name] == nil then objects[name] = object end end
+  for name, object in pairs(objects) do if not object then objects[name] = nil end end
   refuse_contradictions(all)
-  return core.new_case(all, using, { givens = all, using = using, target = info.target, labels = labels, written = written, changed = info.changed })
+  return core.new_case(all, using, { givens = all, using = using, target = info.target, objects = objects, written = written, changed = info.changed })
 end
 
 case.make = make -- for studies, which check their givens themselves
@@ -275,8 +276,8 @@ core.set_handlers {
     core.raise(text.undefined(self, name))
   end,
   unknown = function(self, word)
-    local label = core.info(self).labels[word]
-    if label then return label end
+    local object = core.info(self).objects[word]
+    if object then return object end
     if type(word) == "string" and core.find(word) == word then core.raise(("%s is not given; give %s = \"...\""):format(word, word)) end
     core.raise(unknown_name(tostring(word), ""))
   end,

@@ -1,5 +1,6 @@
 /* SPDX-License-Identifier: GPL-3.0-or-later */
 /* The glossary and the relations as Lua sees them, and rows that a user adds. */
+#include <math.h>
 #include <string.h>
 
 #include "binding.h"
@@ -51,7 +52,7 @@ static int catalogue_names(lua_State *L) {
 
 /* entry(name): its row of the glossary as a table, with rows = its relations' numbers in order. */
 static int catalogue_entry(lua_State *L) {
-  static const char *const kinds[] = {"quantity", "verdict", "label"};
+  static const char *const kinds[] = {"quantity", "verdict", "object"};
   const lac_catalogue *catalogue = lac_catalogue_of(L);
   const int id = id_argument(L, 1);
   const lac_name *name = lac_catalogue_name(catalogue, id);
@@ -184,14 +185,18 @@ static int catalogue_add_name(lua_State *L) {
   case LAC_OK: return 0;
   case LAC_DUPLICATE: return lac_error(L, "quantity: there is a quantity '%s' already", name.name);
   case LAC_UNKNOWN_UNIT: return lac_error(L, "quantity '%s': unknown unit '%s'", name.name, name.unit);
-  case LAC_BAD_SYNTAX: return lac_error(L, "quantity '%s': can't read the range \"%s\"; write \"> 0\", \">= 0\", \"0 .. 1\" or \"any\"", name.name, name.range);
+  case LAC_BAD_SYNTAX:
+    if (!lac_catalogue_fit_name(name.name))
+      return lac_error(L, "quantity '%s': a name is made of letters, digits and _, no digit first, at most %d in all", name.name, LAC_MAX_NAME);
+    return lac_error(L, "quantity '%s': can't read the range \"%s\"; write \"> 0\", \">= 0\", \"0 .. 1\" or \"any\"", name.name, name.range);
+  case LAC_WRONG_DIMENSION: return lac_error(L, "quantity '%s': only a length is seen on the sky; %s is none", name.name, name.unit);
   default: return lac_error(L, "quantity '%s': %s", name.name, lac_status_words(status));
   }
 }
 
 static const char elements_axis[] = "element"; /* along which a user's function gets its inputs */
 
-/* What a user's function gave for n elements: into out. */
+/* What a user's function gave for n elements: into out, undefined where it is out of the name's range. */
 static int take_result(lua_State *L, const lac_users_row *users, const lac_relation *row, size_t n, double *out) {
   const lac_catalogue *catalogue = users->state->catalogue;
   const int id = lac_catalogue_find(catalogue, row->gives);
@@ -203,15 +208,17 @@ static int take_result(lua_State *L, const lac_users_row *users, const lac_relat
   lac_quantity *result = lac_check_bound(L, -1, row->gives);
   if (!lac_dimension_equal(result->dimension, wanted))
     return lac_error(L, "the relation for %s by '%s' returned %s; wanted is %s", row->gives, row->by, luaL_tolstring(L, -1, NULL), lac_a_dimension(wanted, words, sizeof words));
+  const lac_range range = lac_catalogue_range(catalogue, id);
   if (result->value == NULL) {
-    for (size_t i = 0; i < n; i++) out[i] = result->number;
+    for (size_t i = 0; i < n; i++) out[i] = lac_range_holds(range, result->number) ? result->number : NAN;
     return 0;
   }
   if (lac_value_size(result->value) != n || lac_value_axes(result->value) != 1 || strcmp(lac_value_axis(result->value, 0)->name, elements_axis) != 0)
     return lac_error(L, "the relation for %s by '%s' returned another axis than its arguments'; it is to be elementwise", row->gives, row->by);
   lac_status status = lac_plan_store(&users->state->work, result->value);
   if (status != LAC_OK) return lac_error(L, "%s", lac_status_words(status));
-  memcpy(out, lac_value_data(result->value), n * sizeof *out);
+  const double *elements = lac_value_data(result->value);
+  for (size_t i = 0; i < n; i++) out[i] = lac_range_holds(range, elements[i]) ? elements[i] : NAN;
   return 0;
 }
 

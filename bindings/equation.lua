@@ -14,7 +14,7 @@
 --   names(equation)             the names that stand in it, each once, in order
 --
 -- The subset: relations apart by commas; numbers, letters, [names], + - / = < > <= >= \le \ge \approx \propto \cdot \times, ( ) \left( \right) \left[ \right],
--- { }, ^ and _, \frac, \sqrt, \dot, \mathrm, \mathcal, \sum, \, (a space), Greek letters, and the functions that equation_tree.lua lists.
+-- { }, ^ and _, \frac, \sqrt, \dot, \mathrm, \mathcal, \sum, \int, \, (a space), Greek letters, and the functions that equation_tree.lua lists.
 
 -- Inside the program the parts come from the binary, elsewhere from files.
 local core = ...
@@ -116,7 +116,7 @@ function plain.label(node, render)
 end
 
 plain["function"] = function(node) return node.name, ATOM end
-function plain.sum_sign() return "∑", ATOM end
+function plain.series_sign(node) return tree.series[node.text], ATOM end
 
 function plain.scripts(node, render)
   local base, binds = render(node[1])
@@ -268,7 +268,7 @@ function tex.name(node, _, symbol_of)
 end
 function tex.label(node) return node.source, ATOM end
 tex["function"] = function(node) return "\\" .. node.name, ATOM end
-function tex.sum_sign() return "\\sum", ATOM end
+function tex.series_sign(node) return node.text, ATOM end
 
 function tex.scripts(node, render)
   local base, binds = render(node[1])
@@ -351,7 +351,7 @@ function mathml.name(node, _, symbol_of)
   return element("mrow", inside), tex_binds_of(symbol)
 end
 mathml["function"] = function(node) return element("mi", node.name), ATOM end
-function mathml.sum_sign() return operator("∑"), ATOM end
+function mathml.series_sign(node) return operator(tree.series[node.text]), ATOM end
 
 function mathml.label(node, render)
   local parts = {}

@@ -3,10 +3,10 @@
 --
 --   parse(text)       the tree; an error with the position for anything outside the subset
 --   names(tree)       the names that stand in it, each once, in order
---   greek, relations, products   the signs by their TeX
+--   greek, relations, products, series   the signs by their TeX
 --
 -- A node is a table with its kind and its parts in order: list, relation, sum, product (with signs[i] before the i-th part), fraction,
--- root, dot, bracket, call, series, scripts (the base; above and below), number, letter, greek, word, name, function, sum_sign, label.
+-- root, dot, bracket, call, series, scripts (the base; above and below), number, letter, greek, word, name, function, series_sign, label.
 
 local greek = {
   alpha = "α", beta = "β", gamma = "γ", delta = "δ", epsilon = "ε", varepsilon = "ε", zeta = "ζ", eta = "η", theta = "θ",
@@ -25,7 +25,9 @@ local relations = {
 }
 local products = { ["\\cdot"] = "·", ["\\times"] = "×", ["/"] = "/" }
 
-local tree = { greek = greek, relations = relations, products = products }
+local series = { ["\\sum"] = "∑", ["\\int"] = "∫" }
+
+local tree = { greek = greek, relations = relations, products = products, series = series }
 
 -- Tokens: { kind, text, at }. Kinds: number, letter, command, name, word (\mathrm, \mathcal: with its command), symbol, end.
 
@@ -242,9 +244,8 @@ end
 
 function Parser:factor()
   if self:at_function() then return self:call() end
-  if self:is("\\sum") then
-    self:take()
-    local sign = self:scripts({ kind = "sum_sign" })
+  if self:is("\\sum") or self:is("\\int") then
+    local sign = self:scripts({ kind = "series_sign", text = self:take().text })
     return { kind = "series", sign, self:product() }
   end
   return self:scripts(self:base())

@@ -9,17 +9,17 @@ local words = core.part "lacuna.words"
 local help = {}
 
 -- Prints itself at the prompt, and under print.
-local page = { __name = "help", __tostring = function(self) return table.concat(self, "\n") end }
+local page = { __name = "help", __tostring = core.part "lacuna.show".page }
 local function new_page(...) return setmetatable({ ... }, page) end
 
 local function wrap(list, indent, width)
-  local lines, line = {}, (" "):rep(indent)
+  local lines, line = {}, ""
   for _, word in ipairs(list) do
-    if #line + #word + 2 > width and line:find "%S" then
+    if #line + #word + 2 > width and line ~= "" then
       lines[#lines + 1] = line
-      line = (" "):rep(indent)
+      line = ""
     end
-    line = line .. word .. "  "
+    line = line .. (line == "" and (" "):rep(indent) or "  ") .. word
   end
   lines[#lines + 1] = line
   return lines
@@ -32,12 +32,13 @@ local function at_other_place(name)
 end
 
 local subjects = {
-  { "star", "the star" }, { "radiation", "radiation" }, { "disc", "the disc, at radius (also as planet_..., ring_...)" }, { "rim", "rim and cavity" },
+  { "star", "the star" }, { "photometry", "photometry" }, { "radiation", "radiation" }, { "disc", "the disc, at radius (also as planet_..., ring_...)" }, { "dust", "dust" }, { "rim", "rim and cavity" },
   { "orbit", "orbits, planets, companions" }, { "gap", "gaps and rings" }, { "instrument", "instruments" },
-  { "structure", "structures: rim, cavity, gap, ring" }, { "visibility", "visibilities" }, { "yours", "your own" },
+  { "structure", "structures: rim, cavity, gap, ring" }, { "visibility", "visibilities" }, { "emission", "the disc's own light" }, { "yours", "your own" },
 }
 
 local function map()
+  local width = math.min(core.terminal_width() or 118, 118)
   local lines = new_page("help \"name\" explains a name, a word or a unit; help \"some words\" searches.", "")
   local by_subject = {}
   for _, name in ipairs(core.names()) do
@@ -48,11 +49,11 @@ local function map()
   for _, subject in ipairs(subjects) do
     if by_subject[subject[1]] then
       lines[#lines + 1] = subject[2]
-      for _, line in ipairs(wrap(by_subject[subject[1]], 2, 118)) do lines[#lines + 1] = line end
+      for _, line in ipairs(wrap(by_subject[subject[1]], 2, width)) do lines[#lines + 1] = line end
     end
   end
   lines[#lines + 1] = "words of the language"
-  for _, line in ipairs(wrap(words.names, 2, 118)) do lines[#lines + 1] = line end
+  for _, line in ipairs(wrap(words.names, 2, width)) do lines[#lines + 1] = line end
   lines[#lines + 1] = ""
   lines[#lines + 1] = "Lengths on the sky have <name>_angle besides."
   return lines
@@ -87,7 +88,7 @@ local function about_name(name)
   local entry = core.entry(name)
   local lines = new_page(("%s  %s"):format(name, text.symbol(name)), "  " .. entry.meaning)
   if entry.kind == "verdict" then lines[#lines + 1] = "  a verdict: yes, no, or in so many per cent of the draws"
-  elseif entry.kind == "label" then lines[#lines + 1] = "  a text"
+  elseif entry.kind == "object" then lines[#lines + 1] = "  an object"
   else lines[#lines + 1] = ("  %s%s"):format(unit_text(entry), entry.range ~= "any" and ", " .. entry.range or "") end
   if entry.synonyms then lines[#lines + 1] = "  also called " .. entry.synonyms:gsub(" ", ", ") end
   if entry.on_sky then lines[#lines + 1] = ("  on the sky: %s_angle"):format(name) end
@@ -146,7 +147,11 @@ function help.help(word)
     word = name
   end
   local name = core.find(word)
-  if name then return about_name(name) end
+  if name then
+    local lines = about_name(name)
+    for _, line in ipairs(words.about[name] or {}) do lines[#lines + 1] = line end
+    return lines
+  end
   if words.about[word] then return new_page(table.unpack(words.about[word])) end
   if core.unit_facts(word) then return about_unit(word) end
   return search(word)

@@ -160,7 +160,8 @@ void program_catch_interrupts(lua_State *L, bool conversation) {
 
 static int add_traceback(lua_State *L) {
   const char *wanted = getenv("LACUNA_TRACEBACK");
-  luaL_tolstring(L, 1, NULL);
+  if (lua_isstring(L, 1) || luaL_getmetafield(L, 1, "__tostring") != LUA_TNIL) luaL_tolstring(L, 1, NULL);
+  else lua_pushfstring(L, "the script failed with a %s as its error, which says nothing", luaL_typename(L, 1));
   if (wanted && strcmp(wanted, "1") == 0) luaL_traceback(L, L, lua_tostring(L, -1), 1);
   return 1;
 }

@@ -15,7 +15,7 @@ local lacuna = {
   chance = core.chance, undefined = core.undefined, lowest = core.lowest, highest = core.highest,
   above = core.above, below = core.below, both = core.both, either = core.either, least = core.least, greatest = core.greatest,
   sqrt = core.sqrt, abs = core.abs, exp = core.exp, log = core.log, log10 = core.log10, sin = core.sin, cos = core.cos, tan = core.tan,
-  along = core.along, show = text.show,
+  along = core.along, show = core.part "lacuna.show".show, band = core.band,
 }
 
 -- Methods of quantities, with every summary among them.
@@ -51,10 +51,18 @@ core.case_metatable.__newindex = function() core.raise("a case doesn't change; c
 
 function lacuna.case(givens) return case.new(givens) end
 
+local later -- parts that are loaded when they are first asked for
+
+local function check_name(name)
+  if core.unit(name) then core.raise(("quantity: %s is a unit already"):format(name)) end
+  if later[name] or rawget(lacuna, name) ~= nil and not core.find(name) then core.raise(("quantity: %s is a word of the language already"):format(name)) end
+end
+
 -- A new name; where it brings no symbol of its own, its words are one. A symbol that can't be read is an error now, not in help later.
 local function new_name(entry)
   local copy = {}
   for key, value in pairs(entry) do copy[key] = value end
+  if type(copy.name) == "string" then check_name(copy.name) end
   if copy.symbol == nil and type(copy.name) == "string" then copy.symbol = "\\mathrm{" .. copy.name:gsub("_", " ") .. "}" end
   if type(copy.symbol) == "string" then
     local ok, defect = pcall(core.part "lacuna.equation".plain_symbol, copy.symbol)
@@ -85,14 +93,23 @@ function lacuna.relation(row)
   return core.add_relation(copy)
 end
 
-lacuna.spread = {
+-- A table of words that answers a slip with what there is.
+local function words_of(name, words, call)
+  local list = table.concat(case.sorted_keys(words), ", ")
+  return setmetatable(words, {
+    __call = call, __tostring = function() return ('%s has %s; help "%s" tells more'):format(name, list, name) end,
+    __index = function(_, word) core.raise(("%s has no '%s'; it has %s"):format(name, tostring(word), list)) end,
+  })
+end
+
+lacuna.spread = words_of("spread", {
   normal = core.spread_normal, lopsided = core.spread_lopsided, uniform = core.spread_uniform, log_uniform = core.spread_log_uniform,
   log_normal = core.spread_log_normal, samples = core.spread_samples,
-}
-lacuna.sweep = setmetatable({ log = core.sweep_log }, { __call = function(_, ...) return core.sweep(...) end })
+})
+lacuna.sweep = words_of("sweep", { log = core.sweep_log }, function(_, ...) return core.sweep(...) end)
 
 -- Parts that many runs don't need are loaded when they are first asked for.
-local later = { help = "lacuna.help", recipes = "lacuna.help", study = "lacuna.study" }
+later = { help = "lacuna.help", recipes = "lacuna.help", study = "lacuna.study", dust = "lacuna.dust", material = "lacuna.dust" }
 
 local function look_up(_, word)
   if type(word) ~= "string" then return nil end

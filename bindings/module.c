@@ -31,9 +31,13 @@ int luaopen_lacuna(lua_State *L) {
   lua_newtable(L);
   lac_open_state(L);
   lac_open_quantity(L);
+  lac_open_elements(L);
   lac_open_spread(L);
   lac_open_summary(L);
   lac_open_catalogue(L);
+  lac_open_object(L);
+  lac_open_band(L);
+  lac_open_dust(L);
   lac_open_case(L);
   lac_open_solve(L);
   lac_open_csv(L);

@@ -226,16 +226,17 @@ local function by_recipe(self, other, made)
   return made[key]
 end
 
--- What changes for one cell: the median's factor, or whether the verdict crosses one half.
+local function is_magnitude(column) return core.entry(column.name).unit == "mag" end
+
+-- What changes for one cell: the median's factor (of a magnitude: its difference), or whether the verdict crosses one half.
 local function add_change(change, column, row, cell, value)
   if column.verdict then
     change.asked = change.asked + 1
     if (core.elements(core.chance(value))[1] >= 0.5) ~= (cell.share >= 0.5) then change.names[#change.names + 1] = row.name end
   else
     local before, after = core.elements(core.median(cell.quantity))[1], core.elements(core.median(value))[1]
-    if before ~= 0 and after == after then
-      change.low, change.high = math.min(change.low, after / before), math.max(change.high, after / before)
-    end
+    local by = is_magnitude(column) and after - before or after / before
+    if by == by and math.abs(by) < math.huge then change.low, change.high = math.min(change.low, by), math.max(change.high, by) end
   end
 end
 
@@ -246,6 +247,11 @@ local function change_words(column, change, study)
   end
   if change.high < change.low then return nil end
   local low, high = format.number(change.low, 2), format.number(change.high, 2)
+  if is_magnitude(column) then
+    low, high = ("%+.2f"):format(change.low), ("%+.2f"):format(change.high)
+    if low:find "^.0.00$" and high:find "^.0.00$" then return nil end
+    return ("%s %s mag"):format(column.label, low == high and low or low .. " to " .. high)
+  end
   if low == "1" and high == "1" then return nil end
   return ("%s × %s"):format(column.label, low == high and low or low .. " to " .. high)
 end
@@ -383,7 +389,7 @@ local function givens_for_all(study)
     local parts = {}
     for _, name in ipairs(core.names()) do
       if group.own[name] then parts[#parts + 1] = name .. (group.written[name]:find "^from " and " " or " = ") .. group.written[name] end
-      if group.labels[name] and not (group.name and study.groups[1].labels[name]) then parts[#parts + 1] = name .. " = " .. group.labels[name] end
+      if group.objects[name] and not (group.name and study.groups[1].objects[name]) then parts[#parts + 1] = name .. " = " .. tostring(group.objects[name]) end
     end
     if #parts > 0 then said[#said + 1] = (group.name and group.name .. ": " or "") .. table.concat(parts, ", ") end
   end

@@ -1,6 +1,8 @@
 /* SPDX-License-Identifier: GPL-3.0-or-later */
 /* Where output goes: files that are whole or absent, and the width of the terminal. */
 #include <errno.h>
+#include <fcntl.h>
+#include <limits.h>
 #include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
@@ -40,16 +42,32 @@ static bool write_and_rename(const char *path, char *temporary, const char *text
   return good;
 }
 
-/* write_file(path, text): the file holds the whole text, or what it held before. */
+/* A device or a pipe is written to; a file of that name must not take its place. */
+static bool write_in_place(const char *path, const char *text, size_t length) {
+  const int file = open(path, O_WRONLY | O_CLOEXEC);
+  if (file < 0) return false;
+  const int trouble = write_all(file, text, length) ? 0 : errno;
+  if (close(file) != 0 && trouble == 0) return false;
+  errno = trouble;
+  return trouble == 0;
+}
+
+/* write_file(path, text): the file, or the one that a link leads to, holds the whole text, or what it held before. */
 static int write_file(lua_State *L) {
-  static const char ending[] = ".XXXXXX";
-  size_t path_length, length;
-  const char *path = luaL_checklstring(L, 1, &path_length), *text = luaL_checklstring(L, 2, &length);
-  char *temporary = lua_newuserdatauv(L, path_length + sizeof ending, 0);
-  memcpy(temporary, path, path_length);
-  memcpy(temporary + path_length, ending, sizeof ending);
-  if (!write_and_rename(path, temporary, text, length)) return lac_error(L, "cannot write %s: %s", path, strerror(errno));
-  return 0;
+  size_t length;
+  const char *path = luaL_checkstring(L, 1), *text = luaL_checklstring(L, 2, &length);
+  struct stat present;
+  bool good;
+  if (stat(path, &present) == 0 && !S_ISREG(present.st_mode)) {
+    good = write_in_place(path, text, length);
+  } else {
+    char real[PATH_MAX];
+    const char *final = realpath(path, real) ? real : path;
+    char *temporary = lua_newuserdatauv(L, strlen(final) + sizeof ".XXXXXX", 0);
+    strcpy(stpcpy(temporary, final), ".XXXXXX");
+    good = write_and_rename(final, temporary, text, length);
+  }
+  return good ? 0 : lac_error(L, "cannot write %s: %s", path, strerror(errno));
 }
 
 /* terminal_width(): COLUMNS where it is set, else the width of the terminal on standard output, else nil. */

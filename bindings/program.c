@@ -226,10 +226,17 @@ static int failed(lua_State *L) {
   return FAILED;
 }
 
+/* The exit status, once all that was written has left. */
+static int finished(int status) {
+  if (fflush(stdout) == 0 && !ferror(stdout)) return status;
+  fprintf(stderr, "lacuna: cannot write to standard output: %s\n", strerror(errno));
+  return FAILED;
+}
+
 int main(int count, char **arguments) {
   command_line line = {.code = NULL};
   int status = count > 0 ? read_options(&line, arguments + 1) : WRONG_USAGE;
-  if (status >= 0) return status;
+  if (status >= 0) return finished(status);
   lua_State *L = luaL_newstate();
   if (L == NULL) return fputs("lacuna: out of memory\n", stderr), FAILED;
   lua_pushcfunction(L, open_libraries);
@@ -242,9 +249,5 @@ int main(int count, char **arguments) {
   if (conversation) program_repl(L);
   else if (run(L, &line) != LUA_OK) status = failed(L);
   lua_close(L);
-  if (fflush(stdout) != 0 || ferror(stdout)) {
-    fprintf(stderr, "lacuna: cannot write to standard output: %s\n", strerror(errno));
-    status = FAILED;
-  }
-  return status;
+  return finished(status);
 }

@@ -146,6 +146,14 @@ static void drop_position(lua_State *L) {
 
 static bool is_blank(const char *text) { return text[strspn(text, " \t\r\n")] == 0; }
 
+/* What people type to leave, as Ctrl-D does. */
+static bool is_farewell(const char *text) {
+  static const char *const words[] = {"exit", "quit", "exit()", "quit()"};
+  for (size_t i = 0; i < sizeof words / sizeof words[0]; i++)
+    if (strcmp(text, words[i]) == 0) return true;
+  return false;
+}
+
 /* Calls the function on the stack's top and shows what it returns; SIGINT comes through meanwhile. */
 static int answer_input(lua_State *L, const sigset_t *interruption) {
   int base = lua_gettop(L);
@@ -183,7 +191,7 @@ void program_repl(lua_State *L) {
     int status = LUA_OK;
     lua_settop(L, 0);
     reply answer = read_input(L, &status);
-    if (answer == END) break;
+    if (answer == END || (answer != CANCELLED && is_farewell(lua_tostring(L, 1)))) break;
     program_forget_interruption();
     if (answer == CANCELLED || is_blank(lua_tostring(L, 1))) continue;
     remember(history, lua_tostring(L, 1));

@@ -138,6 +138,35 @@ static void join(lua_State *L, int joined, stream *streams, int *count, double *
   lua_replace(L, joined);
 }
 
+/* Reads the givens that the target follows from: single numbers into the problem, others as streams. */
+static void join_givens(lua_State *L, int joined, const lac_case *object, problem *p, stream *streams, int *count) {
+  for (int i = 0; i < p->count; i++) {
+    const int id = p->steps[i];
+    if (!object->given[id] || id == p->varied) continue;
+    lac_value *value = object->values[id];
+    if (lac_value_axes(value) == 0) {
+      p->numbers[id] = lac_value_as_number(value);
+      continue;
+    }
+    lac_push_empty(L, LAC_DIMENSIONLESS, NULL, -1)->value = lac_value_keep(value);
+    join(L, joined, streams, count, &p->numbers[id]);
+  }
+}
+
+/* The roots as a quantity of the given that was solved for, with the axes of shape (NULL: one number). */
+static void push_roots(lua_State *L, const problem *p, const lac_value *shape, const double *roots) {
+  const char *unit = lac_catalogue_name(p->catalogue, p->varied)->unit;
+  const lac_dimension dimension = lac_catalogue_unit(p->catalogue, p->varied).dimension;
+  if (shape == NULL) {
+    lac_push_number(L, roots[0], dimension, unit, p->varied);
+    return;
+  }
+  lac_quantity *result = lac_push_empty(L, dimension, unit, p->varied);
+  lac_axis *axes[LAC_MAX_AXES];
+  for (size_t i = 0; i < lac_value_axes(shape); i++) axes[i] = lac_value_axis(shape, i);
+  lac_state_end(L, lac_value_array(lac_value_axes(shape), axes, roots, &result->value));
+}
+
 /* solve(case, given, target, goal, low, high, logarithmic, start): bounds and start in SI, single numbers.
    Returns the solution (with the axes of what it depends on), the least and the greatest value of the target over the scans (SI), the most brackets found, at how many elements it is defined. */
 static int case_solve(lua_State *L) {
@@ -163,17 +192,7 @@ static int case_solve(lua_State *L) {
   p.goal = goal->number;
   luaL_checkstack(L, p.count + 20, "too many givens");
   if (goal->value != NULL) lua_pushvalue(L, GOAL), join(L, JOINED, streams, &with_axes, &p.goal);
-  for (int i = 0; i < p.count; i++) {
-    const int id = steps[i];
-    if (!object->given[id] || id == p.varied) continue;
-    lac_value *value = object->values[id];
-    if (lac_value_axes(value) == 0) {
-      numbers[id] = lac_value_as_number(value);
-      continue;
-    }
-    lac_push_empty(L, LAC_DIMENSIONLESS, NULL, -1)->value = lac_value_keep(value);
-    join(L, JOINED, streams, &with_axes, &numbers[id]);
-  }
+  join_givens(L, JOINED, object, &p, streams, &with_axes);
   const lac_value *shape = lac_to_quantity(L, JOINED)->value;
   const size_t size = shape == NULL ? 1 : lac_value_size(shape);
   if (size > ((size_t)1 << 28)) return lac_error(L, "solve: %I elements are too many; use fewer points or draws", (lua_Integer)size);
@@ -196,15 +215,7 @@ static int case_solve(lua_State *L) {
     if (state->work.stop || state->work.poll(state->work.context)) lac_state_end(L, LAC_INTERRUPTED);
   }
   if (p.failed) lac_state_end(L, LAC_CALLBACK_FAILED);
-  const lac_name *name = lac_catalogue_name(catalogue, p.varied);
-  const lac_dimension dimension = lac_catalogue_unit(catalogue, p.varied).dimension;
-  if (shape == NULL) lac_push_number(L, roots[0], dimension, name->unit, p.varied);
-  else {
-    lac_quantity *result = lac_push_empty(L, dimension, name->unit, p.varied);
-    lac_axis *axes[LAC_MAX_AXES];
-    for (size_t i = 0; i < lac_value_axes(shape); i++) axes[i] = lac_value_axis(shape, i);
-    lac_state_end(L, lac_value_array(lac_value_axes(shape), axes, roots, &result->value));
-  }
+  push_roots(L, &p, shape, roots);
   lua_pushnumber(L, least);
   lua_pushnumber(L, greatest);
   lua_pushinteger(L, most);

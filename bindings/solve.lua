@@ -54,7 +54,7 @@ local function single(quantity) return #core.axes(quantity) == 0 and core.elemen
 -- The case with other givens, checked already.
 local function with_givens(self, givens)
   local info = core.info(self)
-  return core.new_case(givens, info.using, { givens = givens, using = info.using, target = info.target, labels = info.labels, written = {} })
+  return core.new_case(givens, info.using, { givens = givens, using = info.using, target = info.target, objects = info.objects, written = {} })
 end
 
 -- The chance of a verdict at one value (SI) of a given, in a case without other axes than draw.
@@ -143,6 +143,7 @@ local function share_of(goal)
 end
 
 local function solve(self, word, goals, options)
+  if options ~= nil and type(options) ~= "table" then core.raise("solve wants its options in a table, like {between = {\"10 m\", \"300 m\"}}; got " .. core.shown(options)) end
   for option in pairs(options or {}) do
     if option ~= "between" then core.raise(("solve: unknown option '%s'; there is between = {low, high}"):format(tostring(option))) end
   end

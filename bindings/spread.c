@@ -120,6 +120,7 @@ static lac_unbound *push_list_of(lua_State *L, int index, const char *what) {
 
 /* spread.samples{...}: each draw is one of the samples, each as likely. */
 static int spread_samples(lua_State *L) {
+  if (!lua_isnoneornil(L, 2)) lac_error(L, "spread.samples wants one list; its samples have their units themselves: {1*au, 2*au}");
   lac_unbound *unbound = push_list_of(L, 1, "spread.samples");
   unbound->spread = (lac_spread){.kind = LAC_SAMPLES, .samples = unbound->elements, .count = unbound->count};
   return 1;
@@ -135,7 +136,7 @@ static int make_sweep(lua_State *L, bool logarithmic) {
   const lac_quantity *from = single_argument(L, 1, NULL, what), *to = single_argument(L, 2, from, what);
   int whole = 0;
   const lua_Integer count = lua_tointegerx(L, 3, &whole);
-  if (!whole || count < 2 || count > (lua_Integer)1 << 31) lac_error(L, "%s wants how many points as its third argument, a whole number of at least 2; got %s", what, lac_shown(L, 3));
+  if (!whole || count < 2 || count > (lua_Integer)1 << 31) lac_error(L, "%s wants how many points as its third argument, a whole number from 2 to 2147483648; got %s", what, lac_shown(L, 3));
   if (logarithmic && !(from->number > 0 && to->number > 0)) lac_error(L, "%s wants bounds > 0", what);
   lac_unbound *sweep = push_unbound(L, from, (size_t)count);
   sweep->sweep = true;

@@ -40,10 +40,10 @@ end
 
 -- Common givens: checked, without a target, so that their draws are the same for all.
 local function read_givens(given, what)
-  local givens, labels, written = {}, {}, {}
+  local givens, objects, written = {}, {}, {}
   for _, word in ipairs(case.sorted_keys(given or {})) do
     local name = name_for(word, what)
-    if core.entry(name).kind == "label" then labels[name] = tostring(given[word])
+    if core.entry(name).kind == "object" then objects[name] = core.part "lacuna.objects".take(name, given[word])
     else
       local as_written = text.as_written(name, given[word])
       local ok, value = pcall(core.given, name, given[word])
@@ -54,14 +54,14 @@ local function read_givens(given, what)
       givens[name], written[name] = value, as_written or text.quantity(value)
     end
   end
-  return givens, labels, written
+  return givens, objects, written
 end
 
 local function read_ask(ask, what)
   local names, seen = {}, {}
   for i, word in ipairs(ask or {}) do
     local name = name_for(word, what .. ": ask")
-    if core.entry(name).kind == "label" then error(("%s: ask: %s is a label; there is nothing to derive"):format(what, name), 0) end
+    if core.entry(name).kind == "object" then error(("%s: ask: %s is an object; there is nothing to derive"):format(what, name), 0) end
     if seen[name] then error(("%s: ask: %s is asked twice"):format(what, name), 0) end
     seen[name] = true
     names[i] = name
@@ -93,11 +93,11 @@ end
 
 -- One group: what is given in it besides the targets' own, and what is asked. The first has no name; the others are the variants.
 local function read_group(fields, common, what)
-  local givens, labels, written = read_givens(fields.given, what)
+  local givens, objects, written = read_givens(fields.given, what)
   if common then refuse_twice(givens, setmetatable({ called = "in the study's given" }, { __index = common.givens }), what) end
   return {
     name = common and fields.name or nil,
-    givens = both(common and common.givens or {}, givens), own = givens, written = written, labels = both(common and common.labels or {}, labels),
+    givens = both(common and common.givens or {}, givens), own = givens, written = written, objects = both(common and common.objects or {}, objects),
     using = both(common and common.using or {}, read_using(fields.using, what)), ask = read_ask(fields.ask, what),
   }
 end
@@ -145,7 +145,7 @@ local function keep_all(givens, keep)
 end
 
 local function make_case(target, group)
-  local info = { target = target.name, labels = both(group.labels, target.labels) }
+  local info = { target = target.name, objects = both(group.objects, target.objects) }
   local ok, made = pcall(case.make, {}, both(group.givens, target.givens), group.using, info)
   if not ok then error(("%s: %s%s"):format(target.where, group.name and ('in variant "%s": '):format(group.name) or "", targets.bare(made)), 0) end
   return made
@@ -241,7 +241,7 @@ local function find_file(name)
 end
 
 local study_metatable = { __name = "study", __index = {} }
-function study_metatable.__tostring(study) return ("study of %d target%s, %d columns"):format(#study.rows, #study.rows == 1 and "" or "s", #study.columns) end
+function study_metatable.__tostring(study) return ("study of %d target%s, %d column%s"):format(#study.rows, #study.rows == 1 and "" or "s", #study.columns, #study.columns == 1 and "" or "s") end
 
 -- s:table(columns): the table and its notes as text, at most so many columns wide.
 function study_metatable.__index.table(study, columns) return tables.text(study, columns or core.terminal_width() or WIDTH) end

@@ -1,6 +1,6 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- The targets of a study, from a CSV file or a list of tables, checked: each with its name, its givens (bound to the target, so that
--- adding a star changes no other's draws), its labels and its texts.
+-- adding a star changes no other's draws), its objects and its texts.
 --
 -- A column's header names a quantity of the glossary with its unit, `distance [pc]`; `distance error [pc]`, or `distance upper error [pc]`
 -- and `distance lower error [pc]`, make an error bar of it. A cell may carry its own unit and error bar instead, "156 ± 3 pc"; blank means
@@ -73,14 +73,15 @@ local function check_unit(column, where)
   if dimension ~= wanted then at(where, core.given, column.name, unit) end -- which says what is wanted
 end
 
--- What a header stands for: {header, name, kind = "name", "text", "label", "value", "error", "upper error", "lower error", unit}.
+-- What a header stands for: {header, name, kind = "name", "text", "object", "value", "error", "upper error", "lower error", unit}.
 local function read_header(header, where)
   if header == "" then complain("%s: a column wants a header", where) end
   if header == "name" then return { header = header, kind = "name" } end
   local word, kind, unit = split_header(header)
+  if not unit and header:find "[%[%]]" then complain('%s: a unit stands in brackets at the end, like "distance [pc]"', where) end
   local name, synonym = core.find(word)
   if name and not synonym then
-    if core.entry(name).kind == "label" then return { header = header, name = name, kind = "label" } end
+    if core.entry(name).kind == "object" then return { header = header, name = name, kind = "object" } end
     local column = { header = header, name = name, kind = kind, unit = unit }
     check_unit(column, where)
     return column
@@ -157,15 +158,15 @@ local function read_quantity(cells, place)
   return at(place(one.column), with_errors, value, upper, lower)
 end
 
--- The cells of a row that are not blank: quantities by name and kind; labels and texts go to the target.
+-- The cells of a row that are not blank: quantities by name and kind; objects and texts go to the target.
 local function sort_cells(row, columns, target, place)
   local quantities, order = {}, {}
   for i, column in ipairs(columns) do
     local cell = row[i]
-    if not utf8.len(cell) then complain("%s: the cell is not UTF-8", place(column)) end
+    if not utf8.len(cell) or cell:find "\0" then complain("%s: the cell is not UTF-8 text", place(column)) end
     if column.kind == "name" then target.name = cell
     elseif column.kind == "text" then target.texts[column.header] = cell
-    elseif column.kind == "label" then target.labels[column.name] = cell ~= "" and cell or nil
+    elseif column.kind == "object" then target.objects[column.name] = cell ~= "" and core.part "lacuna.objects".take(column.name, cell) or nil
     elseif cell ~= "" then
       if not quantities[column.name] then order[#order + 1] = column.name end
       quantities[column.name] = quantities[column.name] or {}
@@ -176,7 +177,7 @@ local function sort_cells(row, columns, target, place)
 end
 
 local function read_row(row, columns, file)
-  local target = { where = ("%s:%d"):format(file, row.line), givens = {}, labels = {}, texts = {} }
+  local target = { where = ("%s:%d"):format(file, row.line), givens = {}, objects = {}, texts = {} }
   local function place(column) return column_place(file, row.line, column.header) end
   local quantities, order = sort_cells(row, columns, target, place)
   if target.name == "" then complain('%s:%d: column "name": a target wants a name', file, row.line) end
@@ -198,6 +199,14 @@ local function check_fields(row, columns, file)
   if #row > #columns then complain("%s:%d: column %d: the row has %d fields, the header %d", file, row.line, #columns + 1, #row, #columns) end
 end
 
+-- Spreadsheets write such rows below the last one.
+local function is_blank(row)
+  for _, cell in ipairs(row) do
+    if cell ~= "" then return false end
+  end
+  return true
+end
+
 local function from_file(path, file)
   local ok, rows = pcall(core.read_csv, path, file)
   if not ok then complain("%s", bare(rows)) end
@@ -209,11 +218,13 @@ local function from_file(path, file)
     if column.name then list.places[column.name] = list.places[column.name] or column_place(file, rows[1].line, column.header) end
   end
   for i = 2, #rows do
-    check_fields(rows[i], columns, file)
-    local target = read_row(rows[i], columns, file)
-    if names[target.name] then complain('%s:%d: column "name": there is a target "%s" already, in line %d', file, rows[i].line, target.name, names[target.name]) end
-    names[target.name] = rows[i].line
-    list[#list + 1] = target
+    if not is_blank(rows[i]) then
+      check_fields(rows[i], columns, file)
+      local target = read_row(rows[i], columns, file)
+      if names[target.name] then complain('%s:%d: column "name": there is a target "%s" already, in line %d', file, rows[i].line, target.name, names[target.name]) end
+      names[target.name] = rows[i].line
+      list[#list + 1] = target
+    end
   end
   if #list == 0 then complain("%s: no targets; the file has a header line alone", file) end
   return list
@@ -224,7 +235,7 @@ end
 local function take_field(target, word, value, list)
   local name, synonym = core.find(word)
   if name and not synonym then
-    if core.entry(name).kind == "label" then target.labels[name] = tostring(value)
+    if core.entry(name).kind == "object" then target.objects[name] = core.part "lacuna.objects".take(name, value)
     else
       target.givens[name] = at(target.where, core.given, name, value, target.name)
       list.places[name] = list.places[name] or target.where
@@ -248,7 +259,7 @@ local function from_list(given)
     if type(name) ~= "string" or name == "" then error(("study: target %d wants name = a text; got %s"):format(i, tostring(name)), 0) end
     if names[name] then error(('study: there are two targets "%s", %d and %d'):format(name, names[name], i), 0) end
     names[name] = i
-    local target = { name = name, where = ('study: target "%s"'):format(name), givens = {}, labels = {}, texts = {} }
+    local target = { name = name, where = ('study: target "%s"'):format(name), givens = {}, objects = {}, texts = {} }
     for _, word in ipairs(case.sorted_keys(fields)) do
       if type(word) ~= "string" then error(("%s: wants name = value; got the value %s without a name"):format(target.where, tostring(fields[word])), 0) end
       if word ~= "name" then take_field(target, word, fields[word], list) end

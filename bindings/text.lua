@@ -3,6 +3,7 @@
 local core = ...
 local format = core.part "lacuna.format"
 local equation = core.part "lacuna.equation"
+local show = core.part "lacuna.show"
 
 local text = {}
 
@@ -65,7 +66,17 @@ function text.median_and_errors(quantity, factor)
 end
 
 -- An ensemble along the axis draw alone: "0.46 ± 0.03".
-local function ensemble(quantity, factor) return format.with_error(text.median_and_errors(quantity, factor)) end
+local function ensemble(quantity, factor)
+  local median, upper, lower = text.median_and_errors(quantity, factor)
+  if math.max(upper, lower) <= 1e-12 * math.abs(median) then return format.number(median) end -- it doesn't depend on what is uncertain
+  return format.with_error(median, upper, lower)
+end
+
+-- Whether all draws of a nameless plain number are 0 or 1: what above, below, both and either give.
+local function is_yes_or_no(quantity, unit)
+  if unit ~= "" or core.elements(core.lowest(quantity))[1] ~= 0 or core.elements(core.highest(quantity))[1] ~= 1 then return false end
+  return core.elements(core.highest(quantity * (1 - quantity)))[1] == 0
+end
 
 local function verdict_ensemble(quantity)
   local share = core.elements(core.chance(quantity))[1]
@@ -75,15 +86,12 @@ end
 -- The points of an axis as text: "20 … 330 m, 100 points".
 local function axis_text(axis)
   local name = core.find(axis.name)
-  if not axis.values then return ("%s, %d points"):format(axis.name, axis.length) end
+  if not axis.values or not name then return ("%s, %d points"):format(axis.name, axis.length) end
   local first, last = axis.values[1], axis.values[#axis.values]
-  local unit, factor = "", 1
-  if name then
-    local entry = core.entry(name)
-    local _, _, written = core.unit_facts(entry.unit)
-    unit, factor = entry.unit == "1" and "" or " " .. written, entry.factor
-  end
-  return ("%s %s … %s%s, %d points"):format(axis.name, format.number(first / factor), format.number(last / factor), unit, axis.length)
+  local entry = core.entry(name)
+  local _, _, unit = core.unit_facts(entry.unit)
+  return ("%s %s … %s%s, %d points"):format(axis.name, format.number(first / entry.factor), format.number(last / entry.factor),
+    entry.unit == "1" and "" or " " .. unit, axis.length)
 end
 
 -- Some points along the one axis of a quantity: all where they are few, else nine evenly from end to end.
@@ -126,6 +134,7 @@ local verdict_reason -- defined with the derivations
 
 -- The text of a quantity: "156 ± 3 pc", "no", "in 83 % of draws".
 function text.quantity(quantity)
+  if core.object_type(quantity) then return tostring(quantity) end
   local name, _, _, number, _, unbound = core.facts(quantity)
   local verdict = is_verdict(name)
   local _, factor, unit = display_unit(quantity)
@@ -137,6 +146,7 @@ function text.quantity(quantity)
   end
   if #axes == 1 and axes[1].name == "draw" then
     if verdict then return text.with_reason(verdict_ensemble(quantity), quantity, name) end
+    if not name and is_yes_or_no(quantity, unit) then return verdict_ensemble(quantity) end
     local written = ensemble(quantity, factor)
     return format.with_unit(written, unit) .. undefined_note(quantity)
   end
@@ -145,6 +155,7 @@ end
 
 -- The same within a line: of a grid, its range or the share of it.
 function text.brief(quantity)
+  if core.object_type(quantity) then return tostring(quantity) end
   local axes, over = core.axes(quantity), {}
   for _, axis in ipairs(axes) do if axis.name ~= "draw" then over[#over + 1] = axis.name end end
   if #over == 0 then return text.quantity(quantity) end
@@ -173,7 +184,9 @@ function text.unbound(quantity, factor, unit)
   if kind == "uniform" or kind == "log_uniform" then
     return format.with_unit(("from %s to %s"):format(format.number(b / factor), format.number(c / factor)), unit) .. (kind == "uniform" and ", uniform" or ", log-uniform")
   end
-  return format.with_unit(("a spread about %s"):format(format.number(a / factor)), unit)
+  local about = format.with_unit(format.number(a / factor), unit)
+  if kind == "log_normal" then return ("log-normal about %s, standard deviation of its logarithm %s"):format(about, format.number(c)) end
+  return "samples about " .. about
 end
 
 -- How a spread was given, before it is bound to draws: "156 ± 3 pc"; nil for what is no spread.
@@ -186,7 +199,7 @@ end
 -- A given as it was given: what its draws make of an error bar is no news.
 function text.given(self, name)
   local info = core.info(self)
-  return info.written[name] or text.brief(info.givens[name])
+  return info.written[name] or text.brief(info.givens[name] or info.objects[name])
 end
 
 -- Sources -------------------------------------------------------------------------------------------------------------------------
@@ -221,6 +234,7 @@ local symbol_of = text.symbol
 
 -- One representative number of a quantity, for putting into an equation.
 local function representative(quantity)
+  if core.object_type(quantity) then return tostring(quantity) end
   local _, factor, unit = display_unit(quantity)
   local reduced = quantity
   for _, axis in ipairs(core.axes(quantity)) do reduced = axis.name == "draw" and core.median(reduced) or core.at(reduced, { [axis.name] = 1 }) end
@@ -269,6 +283,9 @@ function text.warnings(self, row)
   for i, outside in ipairs(text.outside(self, row)) do
     warnings[i] = ("%s; %s here%s"):format(outside.words, text.brief(outside.value),
       outside.single and "" or ", outside in " .. format.percent(outside.share))
+  end
+  if row.from[1] == "dust" and row.from[2] == "wavelength" then
+    warnings[#warnings + 1] = core.part "lacuna.dust".warning(core.raw(self, "dust"), core.raw(self, "wavelength"))
   end
   return warnings
 end
@@ -338,6 +355,8 @@ local function add_step(lines, self, step)
   local value = core.raw(self, step.name)
   if not step.row then
     add(lines, 2, ("%s = %s   given"):format(step.name, text.given(self, step.name)))
+    local source = core.object_type(value) and core.part "lacuna.objects".source(value)
+    if source then add(lines, 6, source) end
     return
   end
   local row = core.row(step.row)
@@ -389,7 +408,7 @@ text.why_metatable = {
     for _, step in ipairs(core.steps(self, name)) do add_step(lines, self, step) end
     if entry.kind == "verdict" then add_verdict(lines, self, name) end
     add_alternatives(lines, self, name)
-    return table.concat(lines, "\n")
+    return show.page(lines)
   end,
 }
 
@@ -402,8 +421,9 @@ function text.undefined(self, name)
       local row, inputs = core.row(step.row), {}
       for _, input in ipairs(row.from) do inputs[#inputs + 1] = input .. " = " .. text.quantity(core.raw(self, input)) end
       local range = core.entry(step.name).range
+      local beyond = row.from[1] == "dust" and row.from[2] == "wavelength" and core.part "lacuna.dust".beyond(core.raw(self, "dust"), core.raw(self, "wavelength"))
       return ("%s is undefined: by %s, %s give%s no value%s"):format(step.name, row.by, table.concat(inputs, " and "), #inputs == 1 and "s" or "",
-        range ~= "any" and " that is " .. range or "")
+        beyond or range ~= "any" and " that is " .. range or "")
     end
   end
   return name .. " is undefined"
@@ -422,8 +442,14 @@ end
 
 -- What is missing in one line, as an error says it.
 function text.not_had(missing)
-  if #missing.sets == 0 or missing.sets[1].names[1] == missing.name then return missing.name .. " must be given: no relation gives it" end
   local ways = {}
+  if #missing.sets == 0 or missing.sets[1].names[1] == missing.name then
+    for i, number in ipairs(core.entry(missing.name).rows) do
+      local row = core.row(number)
+      ways[i] = table.concat(row.from, ", ") .. " (by " .. row.by .. ")"
+    end
+    return missing.name .. " must be given" .. (#ways == 0 and ": no relation gives it" or ", or follow from " .. table.concat(ways, ", or "))
+  end
   for i, set in ipairs(missing.sets) do
     ways[i] = table.concat(set.names, ", ")
     if set.row then ways[i] = ways[i] .. " (by " .. core.row(set.row).by .. ")" end
@@ -435,8 +461,9 @@ text.missing_metatable = {
   __name = "what is missing",
   __tostring = function(missing)
     if missing.had then return missing.name .. " can be had from what is given" end
-    local hint = hints(missing.sets[1] and missing.sets[1].names or {})
-    return text.not_had(missing) .. (#hint > 0 and "\n  " .. table.concat(hint, "\n  ") or "")
+    local lines = { text.not_had(missing) }
+    for _, hint in ipairs(hints(missing.sets[1] and missing.sets[1].names or {})) do add(lines, 2, hint) end
+    return show.page(lines)
   end,
 }
 
@@ -449,7 +476,7 @@ text.check_metatable = {
       lines[#lines + 1] = ("%s: given %s, by %s %s: %s"):format(entry.name, entry.written, entry.by, text.brief(entry.derived),
         entry.agrees and "agree" or "DISAGREE")
     end
-    return table.concat(lines, "\n")
+    return show.page(lines)
   end,
 }
 
@@ -460,7 +487,7 @@ function text.case(self)
   local lines = { info.target and "case of " .. info.target or "case" }
   for _, name in ipairs(core.names()) do
     if info.givens[name] then add(lines, 2, ("%s = %s"):format(name, text.given(self, name))) end
-    if info.labels[name] then add(lines, 2, ("%s = %s"):format(name, info.labels[name])) end
+    if info.objects[name] then add(lines, 2, ("%s = %s"):format(name, tostring(info.objects[name]))) end
   end
   local using = {}
   for name, by in pairs(info.using) do using[#using + 1] = ("using %s by %s"):format(name, by) end
@@ -473,19 +500,7 @@ function text.case(self)
     end
     add(lines, 2, ("%s now by %s, before by %s"):format(change.name, change.after, change.before))
   end
-  return table.concat(lines, "\n")
-end
-
--- What the prompt prints of results, a line each; of nothing found, why (as functions return nil and a message), of an answer its note.
-function text.show(...)
-  local results, lines = table.pack(...), {}
-  if results.n == 2 and results[1] == nil and type(results[2]) == "string" then return results[2] end
-  for i = 1, results.n do
-    local value = results[i]
-    if type(value) == "string" and i == 1 then value = ("%q"):format(value) end
-    if value ~= nil or results.n == 1 then lines[#lines + 1] = tostring(value) end
-  end
-  return table.concat(lines, "\n")
+  return show.page(lines)
 end
 
 return text

@@ -1,6 +1,8 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- The words of the language as help tells of them: what each does, its arguments with units, its errors, its result, an example.
 -- The examples stand alone and are run by the tests.
+local core = ...
+local text = core.part "lacuna.text"
 local words = { names = {}, about = {} }
 
 local function word(name, lines)
@@ -76,6 +78,65 @@ word("study", {
   "  A list of targets, variants and questions: prints a table with error bars, reasons, recipes and assumptions.",
 })
 word("recipes", { "recipes \"name\"   recipes(\"name\", case)", "  All recipes of a name with their sources; with a case also what each gives in it." })
+local about_bands = {
+  "band{wavelength = ..., width = ..., zero_point = ..., system = ..., name = ...}   band \"H\"",
+  "  A spectral band: of your own by its numbers, or a built-in one. In a case its name does: band = \"H\". Of system = \"AB\" the zero point",
+  "  is known; width may be left out where no bandwidth is asked for.",
+  "  Errors: an unknown band, a field that is missing, of another dimension, or no single number > 0.",
+  "  b:flux(magnitude)       the flux density of a magnitude, also of spreads and sweeps",
+  "  b:magnitude(flux)       the magnitude of a flux density",
+  "  b.name b.system b.wavelength b.width b.zero_point",
+  "  example: band(\"H\"):flux(\"7 mag\")",
+  "  built in, with wavelength, width and zero point:",
+}
+local by_source, sources = {}, {}
+local function shown(quantity, unit) return ("%g %s"):format(core.value(quantity, unit), unit) end
+for i = 1, math.huge do
+  local band = core.band_at(i)
+  if not band then break end
+  local aliases, source = core.band_facts(band)
+  if not by_source[source] then by_source[source], sources[#sources + 1] = {}, source end
+  local line = ("    %-18s %-9s %9s %9s %9s"):format(band.name, aliases, shown(band.wavelength, "um"), shown(band.width, "um"), shown(band.zero_point, "Jy"))
+  table.insert(by_source[source], line)
+end
+for _, source in ipairs(sources) do
+  for _, line in ipairs(by_source[source]) do about_bands[#about_bands + 1] = line end
+  about_bands[#about_bands + 1] = "      zero points: " .. text.source { source = source }
+end
+about_bands[#about_bands + 1] = "      widths from memory"
+word("band", about_bands)
+local about_materials = {
+  "material{name = ..., density = \"3.3 g.cm**-3\", wavelength_unit = \"um\", table = {{wavelength, n, k}, ...}}   material \"soot\"",
+  "  A material of grains: a table of your own (n linear and k geometric in the logarithm of the wavelength), or a built-in analytic model.",
+  "  Errors: wavelengths that don't rise, a hole, n <= 0, k < 0, a unit that isn't um, nm, mm, cm or m.",
+  "  built in:",
+}
+for i = 1, math.huge do
+  local made = core.material_at(i)
+  if not made then break end
+  local facts = core.material_facts(made)
+  about_materials[#about_materials + 1] = ("    %s (%g g/cm3): %s"):format(facts.name, facts.density / 1000, facts.what)
+  about_materials[#about_materials + 1] = "      holds for " .. facts.validity
+  about_materials[#about_materials + 1] = "      " .. facts.source
+  word(facts.name, { facts.name .. "  a material of grains: " .. facts.what, "  holds for " .. facts.validity, "  " .. facts.source })
+end
+word("dust", {
+  "dust{materials = {model_silicate = 0.7, soot = 0.3}, sizes = {smallest = \"0.005 um\", largest = \"1 mm\", index = 3.5}}",
+  "  A population of grains, to be given in a case: case{dust = d, wavelength = \"1.3 mm\"}.dust_opacity. Opacities are per gram of dust.",
+  "  materials     by mass fraction, {name = fraction} or {{material, fraction}, ...}",
+  "  mixing        \"bruggeman\" (as it is if left out) or \"maxwell_garnett\", whose matrix is the first material",
+  "  porosity      volume fraction of vacuum, 0 if left out",
+  "  sizes         radii: {smallest, largest, index} with n(a) as a^-index; {median, width} log-normal, width in ln a; or one size \"1 um\"",
+  "  temperature   of the ice in it, for its far infrared",
+  "  extrapolate   true: also where the materials don't hold, from 0.1 um to 1 cm, with a warning in why",
+  "  Opacities are interpolated, to 0.3 %; a part of the extinction below 0.1 % is not known that well, nor the resonances of transparent grains of one size.",
+  "  d:absorption(wavelength) d:scattering d:extinction d:asymmetry d:albedo d:effective_albedo    also of sweeps and spreads",
+  "  d:planck_mean(temperature) d:rosseland_mean(temperature)   the mean and its relative error",
+  "  d:grain_temperature{grain_size =, heating_luminosity =, effective_temperature =, radius =}   in the open",
+  "  Errors: fractions that don't sum to 1, sizes reversed, an unknown material, a wavelength outside.",
+  "  example: dust{materials = \"model_silicate\", sizes = \"1 um\"}:albedo(\"2.2 um\")",
+})
+word("material", about_materials)
 word("settings", {
   "settings{seed = 0, draws = 10000, threads = n, memory = MiB}",
   "  Sets those named, and returns all. They hold for what is made afterwards.",
@@ -83,5 +144,9 @@ word("settings", {
 word("show", { "show(value, ...)", "  The text of values as the prompt writes them." })
 word("globals", { "globals(environment)", "  For the module in Lua: makes all words, units and names readable as globals there, like globals(_ENV)." })
 word("help", { "help()   help \"name\"   help \"some words\"", "  A map; one name, word or unit; a search." })
+
+-- Methods are told of with what has them.
+for method in ("with using why missing check solve"):gmatch "%a+" do words.about[method] = words.about.case end
+for method in ("as value at stored"):gmatch "%a+" do words.about[method] = words.about.quantity end
 
 return words

@@ -16,9 +16,9 @@
 #include "words.h"
 
 /* In the order in which rows of one kind stand under a name. */
-static const lac_relation *const tables[] = {lac_starlight_relations,  lac_planck_relations,    lac_disc_relations,
-                                             lac_rim_relations,        lac_orbit_relations,     lac_gap_relations,
-                                             lac_resolution_relations, lac_brightness_relations};
+static const lac_relation *const tables[] = {lac_starlight_relations,  lac_planck_relations,    lac_photometry_relations, lac_disc_relations,
+                                             lac_dust_relations,       lac_rim_relations,        lac_orbit_relations,     lac_gap_relations,
+                                             lac_resolution_relations, lac_brightness_relations, lac_emission_relations, lac_disc_emission_relations};
 enum { TABLES = sizeof tables / sizeof tables[0] };
 
 typedef struct {
@@ -139,17 +139,22 @@ static bool read_unit(const lac_catalogue *catalogue, const char *text, lac_unit
   return kind == LAC_UNIT_FINE || kind == LAC_UNIT_DEPRECATED || kind == LAC_UNIT_SHORT_FORM;
 }
 
-static bool is_identifier(const char *text) {
+/* A name serves as an axis's name too, which limits its length. */
+bool lac_catalogue_fit_name(const char *text) {
   static const char letters[] = "abcdefghijklmnopqrstuvwxyzABCDEFGHIJKLMNOPQRSTUVWXYZ_0123456789";
-  return text && *text && !(*text >= '0' && *text <= '9') && text[strspn(text, letters)] == '\0';
+  if (!text || !*text || (*text >= '0' && *text <= '9')) return false;
+  const size_t length = strspn(text, letters);
+  return text[length] == '\0' && length <= LAC_MAX_NAME;
 }
 
 /* Adds a name whose strings stay. */
 static lac_status put_name(lac_catalogue *catalogue, const lac_name *name) {
   name_entry entry = {.name = name};
-  if (!is_identifier(name->name)) return LAC_BAD_SYNTAX;
+  if (!lac_catalogue_fit_name(name->name)) return LAC_BAD_SYNTAX;
   if (lac_catalogue_find(catalogue, name->name) >= 0) return LAC_DUPLICATE;
   if (!read_unit(catalogue, name->unit, &entry.unit)) return LAC_UNKNOWN_UNIT;
+  if (name->on_sky && !lac_dimension_equal(entry.unit.dimension, (lac_dimension){.numerator[LAC_LENGTH] = 1, .denominator = 1}))
+    return LAC_WRONG_DIMENSION;
   if (lac_range_read(name->range, entry.unit.dimension, &entry.range) != LAC_OK) return LAC_BAD_SYNTAX;
   if (!reserve_name(catalogue)) return LAC_NO_MEMORY;
   const int id = catalogue->name_count;
@@ -357,6 +362,7 @@ lac_status lac_catalogue_add_name(lac_catalogue *catalogue, const lac_name *name
 
 lac_status lac_catalogue_add_relation(lac_catalogue *catalogue, const lac_relation *relation, int *row) {
   if (!relation->gives || !known_names(catalogue, relation)) return LAC_UNKNOWN_NAME;
+  if (!relation->call && !relation->of_object && !(relation->function && relation->block)) return LAC_NOT_HAD; /* nothing to evaluate */
   lac_status status = check_circle(catalogue, relation);
   if (status != LAC_OK) return status;
   catalogue->arena.failed = false;

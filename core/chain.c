@@ -254,7 +254,7 @@ lac_status lac_chain_settle(const lac_catalogue *catalogue, const bool *given, c
 
 void lac_chain_free(lac_chain *chain) { free(chain); }
 
-int lac_chain_row(const lac_chain *chain, int id) { return id < chain->names ? chain->row[id] : LAC_NO_ROW; }
+int lac_chain_row(const lac_chain *chain, int id) { return id >= 0 && id < chain->names ? chain->row[id] : LAC_NO_ROW; }
 
 bool lac_chain_settled_at_once(const lac_chain *chain) { return chain->at_once; }
 

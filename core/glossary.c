@@ -40,6 +40,25 @@ const lac_name lac_glossary[] = {
     ON_SKY("star", "corotation_radius", "au", "> 0", "R_{co}", "rco", "where the disc's Keplerian period equals the star's rotation period"),
     QUANTITY("star", "stellar_angular_diameter", "mas", "> 0", "\\theta_*", "theta_star", "angular diameter of the star's photosphere"),
 
+    /* Photometry. */
+    {.name = "band", .unit = "1", .range = "any", .symbol = "\\mathrm{band}", .subject = "photometry", .kind = LAC_OBJECT,
+     .meaning = "spectral band of observation, by its name (\"H\") or made by band{...}"},
+    QUANTITY("photometry", "zero_point_flux", "Jy", "> 0", "F_{0}", "zero_point", "flux density of a source of magnitude zero in the band"),
+    QUANTITY("photometry", "visual_extinction", "mag", ">= 0", "A_V", "A_V av", "extinction in the V band towards the star"),
+    QUANTITY("photometry", "total_to_selective_extinction", "1", "2 .. 6", "R_V", "R_V rv", "visual extinction over the reddening of B - V"),
+    QUANTITY("photometry", "extinction", "mag", ">= 0", "A_\\lambda", "A_lambda", "extinction at wavelength towards the star"),
+    QUANTITY("photometry", "flux_density", "Jy", "> 0", "F_\\nu", NULL, "a flux density at Earth at wavelength"),
+    QUANTITY("photometry", "magnitude", "mag", "any", "m", NULL, "magnitude of flux_density in the band"),
+    QUANTITY("photometry", "photon_flux", "ph.s**-1.m**-2", "> 0", "\\dot{n}", NULL, "photons of flux_density in the bandwidth, per time and area above the atmosphere"),
+    QUANTITY("photometry", "stellar_flux_density", "Jy", "> 0", "F_{\\nu,*}", NULL, "flux density of the star's photosphere at wavelength, without extinction"),
+    QUANTITY("photometry", "stellar_magnitude", "mag", "any", "m_*", NULL, "magnitude of the star's photosphere in the band, without extinction"),
+    QUANTITY("photometry", "b_magnitude", "mag", "any", "m_B", "Bmag", "B magnitude of the star as observed (Johnson)"),
+    QUANTITY("photometry", "v_magnitude", "mag", "any", "m_V", "Vmag", "V magnitude of the star as observed (Johnson)"),
+    QUANTITY("photometry", "j_magnitude", "mag", "any", "m_J", "Jmag", "J magnitude of the star as observed (2MASS)"),
+    QUANTITY("photometry", "h_magnitude", "mag", "any", "m_H", "Hmag", "H magnitude of the star as observed (2MASS)"),
+    QUANTITY("photometry", "k_magnitude", "mag", "any", "m_K", "Kmag", "Ks magnitude of the star as observed (2MASS)"),
+    QUANTITY("photometry", "l_magnitude", "mag", "any", "m_L", "Lmag", "L magnitude of the star as observed (Johnson)"),
+
     /* Radiation. */
     QUANTITY("radiation", "wavelength", "um", "> 0", "\\lambda", "lambda lam", "wavelength of observation, in vacuum"),
     QUANTITY("radiation", "frequency", "Hz", "> 0", "\\nu", "nu", "frequency of observation"),
@@ -88,6 +107,17 @@ const lac_name lac_glossary[] = {
     ON_SKY("disc", "snow_line_radius", "au", "> 0", "r_{snow}", "snow_line ice_line", "where the irradiated midplane has snow_temperature"),
     QUANTITY("disc", "grain_size", "um", "> 0", "a", "grain_radius", "radius of the grains"),
     QUANTITY("disc", "grain_density", "g.cm**-3", "> 0", "\\rho_s", NULL, "density of the grains' material"),
+    {.name = "dust", .unit = "1", .range = "any", .symbol = "\\mathrm{dust}", .subject = "dust", .kind = LAC_OBJECT,
+     .meaning = "a population of grains, made by dust{...}"},
+    QUANTITY("dust", "dust_opacity", "cm**2.g**-1", "> 0", "\\kappa_{abs}", "kappa kappa_abs", "absorption opacity at wavelength per gram of dust"),
+    QUANTITY("dust", "dust_scattering_opacity", "cm**2.g**-1", ">= 0", "\\kappa_{sca}", "kappa_sca", "scattering opacity at wavelength per gram of dust"),
+    QUANTITY("dust", "dust_albedo", "1", "0 .. 1", "\\omega", "albedo", "scattering over extinction opacity of the dust at wavelength"),
+    QUANTITY("dust", "dust_asymmetry", "1", "-1 .. 1", "g", "asymmetry", "mean cosine of the scattering angle of the dust at wavelength"),
+    QUANTITY("dust", "dust_effective_albedo", "1", "0 .. 1", "\\omega_{eff}", NULL, "albedo without what is scattered forwards, at wavelength"),
+    QUANTITY("dust", "gas_to_dust_ratio", "1", "> 0", "r_{gd}", NULL, "mass of the gas over that of the dust"),
+    QUANTITY("dust", "dust_temperature", "K", "> 0", "T_d", NULL, "temperature of the dust that sends out dust_flux_density"),
+    QUANTITY("dust", "dust_mass", "Mearth", "> 0", "M_{dust}", NULL, "mass of the dust that sends out dust_flux_density, optically thin"),
+    QUANTITY("dust", "dust_flux_density", "mJy", "> 0", "F_{dust}", NULL, "optically thin flux density of the disc's dust at wavelength"),
 
     /* Rim and cavity. */
     QUANTITY("rim", "rim_gas_density", "g.cm**-3", "> 0", "\\rho_{rim}", NULL, "density of the gas at the rim"),
@@ -140,8 +170,6 @@ const lac_name lac_glossary[] = {
     ON_SKY("gap", "ring_width", "au", "> 0", "w_{ring}", NULL, "width of a ring in the disc"),
 
     /* Instruments. */
-    {.name = "band", .unit = "1", .range = "any", .symbol = "\\mathrm{band}", .subject = "instrument", .kind = LAC_LABEL,
-     .meaning = "label of the spectral band, carried along into tables; its numbers are wavelength and bandwidth"},
     QUANTITY("instrument", "bandwidth", "um", "> 0", "\\Delta\\lambda", NULL, "width in wavelength of one spectral channel"),
     QUANTITY("instrument", "spectral_resolving_power", "1", "> 0", "R", NULL, "wavelength over bandwidth"),
     QUANTITY("instrument", "projected_baseline", "m", "> 0", "B", "baseline", "separation of two elements of an array, projected on the sky"),
@@ -176,5 +204,20 @@ const lac_name lac_glossary[] = {
     QUANTITY("visibility", "rim_visibility_drop", "1", "0 .. 1", "1 - V^2_{rim}", NULL, "how far the squared visibility is below that of a point"),
     QUANTITY("visibility", "visibility_error", "1", "> 0", "\\sigma_{V^2}", NULL, "standard error of a measured squared visibility"),
     QUANTITY("visibility", "rim_drop_significance", "1", ">= 0", "s_{rim}", NULL, "visibility drop of the rim in standard errors; a small rim is detected long before it is resolved"),
+
+    /* The disc's own light. */
+    QUANTITY("emission", "disc_inner_radius", "au", "> 0", "R_{d,in}", NULL, "inner edge of the emitting disc"),
+    QUANTITY("emission", "disc_outer_radius", "au", "> 0", "R_{d,out}", NULL, "outer edge of the emitting disc"),
+    QUANTITY("emission", "temperature_at_one_au", "K", "> 0", "T_1", NULL, "temperature at 1 au of a disc whose temperature is a power of the radius"),
+    QUANTITY("emission", "temperature_index", "1", ">= 0", "q_T", NULL, "power with which that temperature falls"),
+    QUANTITY("emission", "dust_surface_density_at_one_au", "g.cm**-2", "> 0", "\\Sigma_{d,1}", NULL, "surface density of the dust at 1 au of a disc where it is a power of the radius"),
+    QUANTITY("emission", "dust_surface_density_index", "1", "any", "p", NULL, "power with which that surface density falls"),
+    QUANTITY("emission", "rim_flux_density", "Jy", ">= 0", "F_{rim}", NULL, "flux density of the rim's black surface at wavelength, without extinction"),
+    QUANTITY("emission", "disc_flux_density", "Jy", ">= 0", "F_{disc}", NULL, "flux density of the disc outside the rim at wavelength, without extinction"),
+    QUANTITY("emission", "total_flux_density", "Jy", "> 0", "F_{tot}", "sed SED", "flux density of star, rim and disc at wavelength, without extinction"),
+    QUANTITY("emission", "observed_flux_density", "Jy", "> 0", "F_{obs}", NULL, "flux density of star, rim and disc at wavelength, with extinction"),
+    QUANTITY("emission", "observed_magnitude", "mag", "any", "m_{obs}", NULL, "magnitude of star, rim and disc in the band, with extinction"),
+    QUANTITY("emission", "near_infrared_excess", "1", ">= 0", "f_{NIR}", NULL, "luminosity of the rim from 1 to 5 um over that of the star"),
+    QUANTITY("emission", "correlated_magnitude", "mag", "any", "m_{corr}", NULL, "magnitude of the correlated flux of star and rim on the baseline"),
     {.name = NULL},
 };

@@ -1,6 +1,6 @@
 /* SPDX-License-Identifier: GPL-3.0-or-later */
-/* What would have to be given to have a name: the smallest union of what its forward rows need, found once for each name. Rows
-   other than inverse ones form no circle, so that the search ends; what inverse rows could do in their place is not looked at, so
+/* What would have to be given to have a name: the smallest union of what its forward rows need, found once for each name; through
+   rows that stand aside nothing is sought. Rows other than inverse ones form no circle, so that the search ends; what inverse rows could do in their place is not looked at, so
    that a set may be larger than it had to be, but always suffices. */
 #include <limits.h>
 #include <stdint.h>
@@ -25,7 +25,10 @@ static int set_size(const needs *n, const uint64_t *set) {
   return size;
 }
 
-static bool is_forward(const lac_catalogue *catalogue, int row) { return !lac_catalogue_row(catalogue, row)->inverse_of; }
+static bool is_forward(const lac_catalogue *catalogue, int row) {
+  const lac_relation *relation = lac_catalogue_row(catalogue, row);
+  return !relation->inverse_of && !relation->aside;
+}
 
 static const uint64_t *need_of_name(needs *n, int id, int depth);
 

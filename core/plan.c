@@ -8,7 +8,7 @@
 
 #include "steps.h"
 
-static bool is_pending(const lac_value *value) { return value->kind != LAC_NODE_NUMBER && value->kind != LAC_NODE_STORED; }
+static bool is_pending(const lac_value *value) { return value->kind > LAC_NODE_OBJECT; }
 
 /* ---- users' functions ---- */
 
@@ -34,14 +34,27 @@ static void spread_over(const lac_value *of, const lac_value *over, size_t first
   }
 }
 
-/* The pieces of one called value, whose arguments are numbers or stored. */
-static lac_status call_in_pieces(lac_work *work, const lac_value *value, double *pieces, double *out) {
+/* The arguments of a called value, numbers or stored. They are kept: a user's function may itself have the value stored, which drops its
+   own. */
+typedef struct {
+  size_t count;
+  lac_value *argument[LAC_MAX_ARGUMENTS];
+} call_arguments;
+
+static lac_status store_arguments(lac_work *work, const lac_value *value, call_arguments *kept) {
+  lac_status status = LAC_OK;
+  for (kept->count = 0; kept->count < value->count; kept->count++) kept->argument[kept->count] = lac_value_keep(value->argument[kept->count]);
+  for (size_t k = 0; k < kept->count && status == LAC_OK; k++) status = lac_plan_store(work, kept->argument[k]);
+  return status;
+}
+
+static lac_status call_in_pieces(lac_work *work, const lac_value *value, const call_arguments *kept, double *pieces, double *out) {
   const double *in[LAC_MAX_ARGUMENTS];
-  for (size_t first = 0; first < value->size; first += LAC_PIECE) {
+  for (size_t first = 0; first < value->size && value->kind == LAC_NODE_CALLED; first += LAC_PIECE) {
     if (work->stop || (work->poll && work->poll(work->context))) return LAC_INTERRUPTED;
     const size_t n = value->size - first < LAC_PIECE ? value->size - first : LAC_PIECE;
-    for (size_t k = 0; k < value->count; k++) {
-      const lac_value *argument = value->argument[k];
+    for (size_t k = 0; k < kept->count; k++) {
+      const lac_value *argument = kept->argument[k];
       in[k] = pieces + k * LAC_PIECE;
       if (argument->axes == value->axes) in[k] = argument->of.stored.data + first;
       else spread_over(argument, value, first, n, pieces + k * LAC_PIECE);
@@ -51,20 +64,25 @@ static lac_status call_in_pieces(lac_work *work, const lac_value *value, double 
   return LAC_OK;
 }
 
-static lac_status store_called(lac_work *work, lac_value *value) {
-  lac_status status = LAC_OK;
-  for (size_t k = 0; k < value->count && status == LAC_OK; k++) status = lac_plan_store(work, value->argument[k]);
-  if (status != LAC_OK || value->kind != LAC_NODE_CALLED) return status; /* a user's function may itself have had it stored */
+static lac_status call_and_settle(lac_work *work, lac_value *value, const call_arguments *kept) {
   lac_buffer buffer;
-  double *pieces = malloc(value->count * LAC_PIECE * sizeof(double));
+  double *pieces = malloc(kept->count * LAC_PIECE * sizeof(double));
   if (!pieces) return LAC_NO_MEMORY;
-  status = lac_buffer_take(work, value->size, &buffer);
+  lac_status status = lac_buffer_take(work, value->size, &buffer);
   if (status == LAC_OK) {
-    status = call_in_pieces(work, value, pieces, buffer.data);
+    status = call_in_pieces(work, value, kept, pieces, buffer.data);
     if (status == LAC_OK && value->kind == LAC_NODE_CALLED) lac_value_settle(value, buffer);
     else lac_buffer_give(&buffer);
   }
   free(pieces);
+  return status;
+}
+
+static lac_status store_called(lac_work *work, lac_value *value) {
+  call_arguments kept;
+  lac_status status = store_arguments(work, value, &kept);
+  if (status == LAC_OK && value->kind == LAC_NODE_CALLED) status = call_and_settle(work, value, &kept);
+  for (size_t k = 0; k < kept.count; k++) lac_value_drop(kept.argument[k]);
   return status;
 }
 
@@ -172,6 +190,7 @@ static lac_status apply_row(const lac_catalogue *catalogue, int row, lac_value *
   }
   double number;
   if (relation->call) return lac_value_called(relation->call, relation->context, (size_t)count, arguments, made);
+  if (relation->of_object) return lac_value_of_object(relation->of_object, arguments[0], (size_t)count - 1, arguments + 1, made);
   if (single_value(relation, (size_t)count, arguments, &number)) return lac_value_number(number, made);
   if (relation->shape) return lac_value_scaled(relation->shape, (size_t)count, arguments, made);
   return lac_value_computed(relation->block, (size_t)count, arguments, made);

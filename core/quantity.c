@@ -116,6 +116,8 @@ static int borrows_from_axis(const lac_value *value) { return value->axes == 1 &
 
 static void drop_contents(lac_value *value) {
   if (value->kind == LAC_NODE_STORED && !borrows_from_axis(value)) lac_buffer_give(&value->of.stored);
+  if (value->kind == LAC_NODE_OBJECT) value->of.object.drop(value->of.object.pointer);
+  if (value->kind == LAC_NODE_OF_OBJECT) lac_value_drop(value->of.of_object.object);
   if (value->kind == LAC_NODE_DRAWN) free((void *)(uintptr_t)value->of.spread.samples);
   while (value->count > 0) lac_value_drop(value->argument[--value->count]);
 }
@@ -268,6 +270,34 @@ lac_status lac_value_scaled(lac_block_function *shape, size_t count, lac_value *
   return status;
 }
 
+lac_status lac_value_object(const void *object, void (*drop)(const void *object), lac_value **value) {
+  *value = node(LAC_NODE_OBJECT, 0);
+  if (!*value) {
+    drop(object);
+    return LAC_NO_MEMORY;
+  }
+  (*value)->of.object.pointer = object;
+  (*value)->of.object.drop = drop;
+  return LAC_OK;
+}
+
+lac_status lac_value_of_object(lac_object_function *function, lac_value *object, size_t count, lac_value *const *arguments,
+                               lac_value **value) {
+  const double *in[LAC_MAX_ARGUMENTS];
+  *value = NULL;
+  if (object->kind != LAC_NODE_OBJECT) return LAC_NOT_HAD;
+  if (all_numbers(count, arguments, in)) {
+    double number = NAN;
+    function(object->of.object.pointer, 1, &number, in);
+    return lac_value_number(number, value);
+  }
+  lac_status status = pending(LAC_NODE_OF_OBJECT, count, arguments, value);
+  if (status != LAC_OK) return status;
+  (*value)->of.of_object.function = function;
+  (*value)->of.of_object.object = lac_value_keep(object);
+  return LAC_OK;
+}
+
 lac_status lac_value_called(lac_user_function *call, void *context, size_t count, lac_value *const *arguments, lac_value **value) {
   const double *in[LAC_MAX_ARGUMENTS];
   *value = NULL;
@@ -296,3 +326,5 @@ double lac_value_as_number(const lac_value *value) { return value->kind == LAC_N
 size_t lac_value_depth(const lac_value *value) { return value->depth; }
 
 const double *lac_value_data(const lac_value *value) { return value->kind == LAC_NODE_STORED ? value->of.stored.data : NULL; }
+
+const void *lac_value_object_pointer(const lac_value *value) { return value->kind == LAC_NODE_OBJECT ? value->of.object.pointer : NULL; }

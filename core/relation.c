@@ -33,6 +33,10 @@ double lac_relation_value(const lac_relation *relation, const double *x) {
   case 6: return CALL(a, b, c, d, e, f);
   case 7: return CALL(a, b, c, d, e, f, g);
   case 8: return CALL(a, b, c, d, e, f, g, h);
+  case 9: return CALL(a, b, c, d, e, f, g, h, i);
+  case 10: return CALL(a, b, c, d, e, f, g, h, i, j);
+  case 11: return CALL(a, b, c, d, e, f, g, h, i, j, k);
+  case 12: return CALL(a, b, c, d, e, f, g, h, i, j, k, l);
   }
   return (double)NAN;
 }

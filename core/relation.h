@@ -30,8 +30,8 @@ static inline double lac_where(int condition, double value) { return condition ?
 
 #define LAC_PASTE_(a, b) a##b
 #define LAC_PASTE(a, b) LAC_PASTE_(a, b)
-#define LAC_COUNT_(a, b, c, d, e, f, g, h, count, ...) count
-#define LAC_COUNT(...) LAC_COUNT_(__VA_ARGS__, 8, 7, 6, 5, 4, 3, 2, 1, 0)
+#define LAC_COUNT_(a, b, c, d, e, f, g, h, i, j, k, l, count, ...) count
+#define LAC_COUNT(...) LAC_COUNT_(__VA_ARGS__, 12, 11, 10, 9, 8, 7, 6, 5, 4, 3, 2, 1, 0)
 
 /* For each argument: its parameter, its block pointer, its element. */
 #define LAC_EACH_1(do_, a) do_(a, 0)
@@ -42,6 +42,10 @@ static inline double lac_where(int condition, double value) { return condition ?
 #define LAC_EACH_6(do_, a, b, c, d, e, f) LAC_EACH_5(do_, a, b, c, d, e), do_(f, 5)
 #define LAC_EACH_7(do_, a, b, c, d, e, f, g) LAC_EACH_6(do_, a, b, c, d, e, f), do_(g, 6)
 #define LAC_EACH_8(do_, a, b, c, d, e, f, g, h) LAC_EACH_7(do_, a, b, c, d, e, f, g), do_(h, 7)
+#define LAC_EACH_9(do_, a, b, c, d, e, f, g, h, i) LAC_EACH_8(do_, a, b, c, d, e, f, g, h), do_(i, 8)
+#define LAC_EACH_10(do_, a, b, c, d, e, f, g, h, i, j) LAC_EACH_9(do_, a, b, c, d, e, f, g, h, i), do_(j, 9)
+#define LAC_EACH_11(do_, a, b, c, d, e, f, g, h, i, j, k) LAC_EACH_10(do_, a, b, c, d, e, f, g, h, i, j), do_(k, 10)
+#define LAC_EACH_12(do_, a, b, c, d, e, f, g, h, i, j, k, l) LAC_EACH_11(do_, a, b, c, d, e, f, g, h, i, j, k), do_(l, 11)
 #define LAC_EACH(do_, ...) LAC_PASTE(LAC_EACH_, LAC_COUNT(__VA_ARGS__))(do_, __VA_ARGS__)
 
 #define LAC_PARAMETER(name, index) double name
@@ -79,7 +83,8 @@ static inline double lac_where(int condition, double value) { return condition ?
 
 /* Each subject's table ends with a row whose gives is NULL. */
 extern const lac_relation lac_starlight_relations[], lac_planck_relations[], lac_disc_relations[], lac_rim_relations[],
-    lac_orbit_relations[], lac_gap_relations[], lac_resolution_relations[], lac_brightness_relations[];
+    lac_orbit_relations[], lac_gap_relations[], lac_resolution_relations[], lac_brightness_relations[], lac_photometry_relations[],
+    lac_dust_relations[], lac_emission_relations[], lac_disc_emission_relations[];
 /* The two rows between a length and its angle, for the catalogue: <length> stands for each name that is on the sky. */
 extern const lac_relation lac_angle_relations[];
 extern const lac_name lac_glossary[];   /* ends with name NULL */

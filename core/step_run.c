@@ -14,8 +14,9 @@
 #include "clones.h"
 #include "step_bits.h"
 
-/* Below this much work (weight times elements, some 100 microseconds) threads cost more than they give. */
-enum { WORTH_SHARING = 1 << 18, MAX_STREAMS = 4, CACHE_LINE = 64 / sizeof(double) };
+/* Below this much work (weight times elements, 0.2 to 0.5 ms) threads give little, and cost a time slice of some milliseconds each time
+   another program wants their processor. */
+enum { WORTH_SHARING = 1 << 21, MAX_STREAMS = 4, CACHE_LINE = 64 / sizeof(double) };
 
 /* What one thread works with. */
 typedef struct {
@@ -45,6 +46,11 @@ LAC_CLONES static void fill(double *out, size_t n, double value) {
   for (size_t i = 0; i < n; i++) out[i] = value;
 }
 
+/* An object's function may be dear, and has no lanes: it gets no more elements than are wanted. */
+static void of_object(const lac_value *value, size_t n, double *out, const double *const *in) {
+  value->of.of_object.function(lac_value_object_pointer(value->of.of_object.object), n, out, in);
+}
+
 static size_t place(const thread_lane *lane, const lac_step *step) {
   size_t offset = 0;
   for (size_t k = 0; k < lane->steps->axes; k++) offset += lane->index[k] * step->stride[k];
@@ -69,6 +75,11 @@ static void take_single(thread_lane *lane, size_t i) {
     break;
   case LAC_NODE_CLIPPED: clip(LAC_LANES, out, in[0], value->of.range); break;
   case LAC_NODE_COMPUTED: value->of.block(LAC_LANES, out, in); break;
+  case LAC_NODE_OF_OBJECT:
+    of_object(value, 1, out, in);
+    fill(out, LAC_LANES, out[0]);
+    break;
+  case LAC_NODE_OBJECT: break; /* no step: rows hold their object themselves */
   case LAC_NODE_CALLED:
     if (value->of.call.function(value->of.call.context, 1, out, in) != 0) lane->failed = true;
     fill(out, LAC_LANES, out[0]);
@@ -116,6 +127,7 @@ static void take_block(thread_lane *lane, size_t i) {
   case LAC_NODE_DRAWN: lac_draws(&value->of.spread, place(lane, step), lane->n, out); break;
   case LAC_NODE_CLIPPED: clip(lane->padded, out, in[0], value->of.range); break;
   case LAC_NODE_COMPUTED: value->of.block(lane->padded, out, in); break;
+  case LAC_NODE_OF_OBJECT: of_object(value, lane->n, out, in); break;
   default: break; /* a number has no axis, calls are settled before */
   }
 }

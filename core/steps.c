@@ -78,6 +78,7 @@ static size_t weight_of(const lac_value *value) {
   switch (value->kind) {
   case LAC_NODE_DRAWN: return 16;
   case LAC_NODE_COMPUTED: return 2;
+  case LAC_NODE_OF_OBJECT: return 64;
   default: return 1;
   }
 }

@@ -18,7 +18,16 @@ typedef struct {
 lac_status lac_buffer_take(lac_work *work, size_t elements, lac_buffer *buffer);
 void lac_buffer_give(lac_buffer *buffer);
 
-typedef enum { LAC_NODE_NUMBER, LAC_NODE_STORED, LAC_NODE_DRAWN, LAC_NODE_CLIPPED, LAC_NODE_COMPUTED, LAC_NODE_CALLED } lac_node_kind;
+typedef enum {
+  LAC_NODE_NUMBER,
+  LAC_NODE_STORED,
+  LAC_NODE_OBJECT,
+  LAC_NODE_DRAWN,
+  LAC_NODE_CLIPPED,
+  LAC_NODE_COMPUTED,
+  LAC_NODE_OF_OBJECT,
+  LAC_NODE_CALLED
+} lac_node_kind;
 
 struct lac_value {
   size_t references;
@@ -34,6 +43,14 @@ struct lac_value {
     lac_spread spread; /* its samples are owned */
     lac_range range;
     lac_block_function *block;
+    struct {
+      const void *pointer;
+      void (*drop)(const void *pointer);
+    } object;
+    struct {
+      lac_object_function *function;
+      lac_value *object;
+    } of_object;
     struct {
       lac_user_function *function;
       void *context;

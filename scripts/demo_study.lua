@@ -13,7 +13,7 @@ study {
 
   -- What holds for all of them. An error bar is a spread: "2 ± 0.5 Mjup".
   given = {
-    band = "H", wavelength = "1.65 um", spectral_resolving_power = 300,
+    band = "H", wavelength = "1.65 um", spectral_resolving_power = 300, -- one channel of the band: its own wavelength goes before the band's
     projected_baseline = "200 m", shortest_baseline = "15 m", element_diameter = "1.8 m", -- an invented array of six stations
     telescope_diameter = "8 m", inner_working_angle = "80 mas", -- an invented mirror
     planet_mass = "2 ± 0.5 Mjup",

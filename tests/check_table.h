@@ -9,7 +9,7 @@
 
 #include "check.h"
 
-enum { TABLE_ROWS = 600, TABLE_COLUMNS = 12 };
+enum { TABLE_ROWS = 600, TABLE_COLUMNS = 18 };
 
 /* Long doubles, so that errors of a fraction of a double's last digit can be seen. A text field is NaN. */
 typedef struct {

@@ -32,7 +32,8 @@ static bool is_balanced(const char *tex) {
 
 static void names_are_whole(void **state) {
   (void)state;
-  static const char *const subjects[] = {"star", "radiation", "disc", "rim", "orbit", "gap", "instrument", "structure", "visibility"};
+  static const char *const subjects[] = {"star", "photometry", "radiation", "disc", "dust", "rim", "orbit", "gap", "instrument",
+                                         "structure", "visibility", "emission"};
   for (int id = 0; id < lac_catalogue_names(catalogue); id++) {
     const lac_name *name = lac_catalogue_name(catalogue, id);
     const lac_unit unit = lac_catalogue_unit(catalogue, id);
@@ -113,7 +114,7 @@ static void check_row_inputs(int row) {
   for (int i = 0; i < count; i++) {
     expect_row(strcmp(lac_catalogue_name(catalogue, from[i])->name, r->from[i]) == 0, row, "has an input with a wrong id");
     expect_row(from[i] != lac_catalogue_gives(catalogue, row), row, "takes what it gives");
-    expect_row(lac_catalogue_name(catalogue, from[i])->kind != LAC_LABEL, row, "takes a label");
+    expect_row(lac_catalogue_name(catalogue, from[i])->kind != LAC_OBJECT || (i == 0 && r->of_object), row, "takes an object that is not its first input");
     for (int k = 0; k < i; k++) expect_row(from[k] != from[i], row, "takes an input twice");
   }
   for (int i = 0; i < LAC_MAX_BOUNDS && r->holds[i].name; i++) {
@@ -129,7 +130,8 @@ static void check_row_kind(int row) {
   const int id = lac_catalogue_gives(catalogue, row);
   const bool verdict = lac_catalogue_name(catalogue, id)->kind == LAC_VERDICT;
   expect_row(r->presence == LAC_ONCE, row, "is a template");
-  expect_row(lac_catalogue_name(catalogue, id)->kind != LAC_LABEL, row, "gives a label");
+  expect_row(lac_catalogue_name(catalogue, id)->kind != LAC_OBJECT, row, "gives an object");
+  expect_row(r->kind != LAC_ASSUMED || strcmp(r->by, r->source) == 0, row, "is assumed and not called by its source");
   expect_row((r->kind == LAC_ASSUMED) == is_text(r->assumes), row, "is assumed without a value, or has a value and isn't");
   expect_row((r->conditions[0] != NULL) == verdict, row, "has conditions but is no verdict, or is a verdict without");
   expect_row(lac_catalogue_find_row(catalogue, id, r->by) == row, row, "is not found by its key");
@@ -139,7 +141,8 @@ static void check_row_kind(int row) {
                "assumes a value out of range");
     expect_row(lac_relation_value(r, NULL) == lac_catalogue_assumed(catalogue, row), row, "has two assumed values");
   } else {
-    expect_row(r->function && r->block && is_text(r->function_name) && r->from[0], row, "has no function, block form or inputs");
+    const bool of_numbers = r->function && r->block && is_text(r->function_name);
+    expect_row(of_numbers != (r->of_object != NULL) && r->from[0], row, "has no function, block form or inputs, or takes an object as well");
     expect_row(isnan(lac_catalogue_assumed(catalogue, row)), row, "assumes something");
   }
 }
@@ -372,6 +375,11 @@ static void users_names_are_added(void **state) {
   assert_int_equal(add_with("knot_radius", "au", "> 0", NULL), LAC_DUPLICATE);
   assert_int_equal(add_with("knot_mass", "stones", "> 0", NULL), LAC_UNKNOWN_UNIT);
   assert_int_equal(add_with("knot mass", "kg", "> 0", NULL), LAC_BAD_SYNTAX);
+  char longest[LAC_MAX_NAME + 2];
+  memset(longest, 'k', sizeof longest), longest[LAC_MAX_NAME + 1] = '\0';
+  assert_int_equal(add_with(longest, "kg", "> 0", NULL), LAC_BAD_SYNTAX);
+  longest[LAC_MAX_NAME] = '\0';
+  assert_int_equal(add_with(longest, "kg", "> 0", NULL), LAC_OK);
   /* A name whose angle is there already is not added by half. */
   assert_int_equal(add_with("knot_size_angle", "mas", "> 0", NULL), LAC_OK);
   lac_name half = invented;
@@ -380,7 +388,9 @@ static void users_names_are_added(void **state) {
   assert_int_equal(lac_catalogue_find(catalogue, "knot_size"), -1);
   assert_int_equal(lac_catalogue_find_synonym(catalogue, "knot_s"), -1);
   assert_int_equal(lac_catalogue_find_synonym(catalogue, "R_H"), lac_catalogue_find(catalogue, "hill_radius"));
-  assert_int_equal(lac_catalogue_names(catalogue), names + 3);
+  half.name = "knot_weight", half.unit = "kg"; /* what is no length has no angle */
+  assert_int_equal(lac_catalogue_add_name(catalogue, &half, NULL), LAC_WRONG_DIMENSION);
+  assert_int_equal(lac_catalogue_names(catalogue), names + 4);
 }
 
 static void users_rows_are_added(void **state) {

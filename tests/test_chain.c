@@ -146,11 +146,17 @@ static lac_status settle_by_rule(const bool *given, const int *only, int *chosen
 
 /* Random givens. */
 
+/* Whether a missing name is sought through the row. */
+static bool is_forward(int row) {
+  const lac_relation *relation = lac_catalogue_row(catalogue, row);
+  return !relation->inverse_of && !relation->aside;
+}
+
 static bool has_forward_row(int id) {
   int count;
   const int *rows = lac_catalogue_rows_of(catalogue, id, &count);
   for (int i = 0; i < count; i++)
-    if (!lac_catalogue_row(catalogue, rows[i])->inverse_of && lac_catalogue_row(catalogue, rows[i])->kind != LAC_ASSUMED) return true;
+    if (is_forward(rows[i]) && lac_catalogue_row(catalogue, rows[i])->kind != LAC_ASSUMED) return true;
   return false;
 }
 
@@ -409,7 +415,7 @@ static const need *plain_need(const lac_chain *chain, int id, need *needs) {
   const int *rows = lac_catalogue_rows_of(catalogue, id, &count);
   own->size = INT_MAX;
   for (int i = 0; i < count; i++) {
-    if (lac_catalogue_row(catalogue, rows[i])->inverse_of) continue;
+    if (!is_forward(rows[i])) continue;
     const need trial = need_of_inputs(chain, rows[i], needs);
     if (trial.size < own->size) *own = trial;
     own->found = true;

@@ -177,6 +177,27 @@ static bool same_template(const lac_relation *a, const lac_relation *b) {
   return is_angle_row(a) || strcmp(stem(a->gives), stem(b->gives)) == 0;
 }
 
+/* Rows of objects, whose arguments no line of a table can hold: tests/reference/checks_objects.txt names each with the test that covers it,
+   "gives/by file", and that file must name the row. */
+static bool file_holds(const char *path, const char *text) {
+  char line[LONGEST];
+  bool found = false;
+  FILE *file = fopen(path, "r");
+  while (file && !found && fgets(line, sizeof line, file)) found = strstr(line, text) != NULL;
+  if (file) fclose(file);
+  return found;
+}
+
+static bool is_covered_by_a_test(const lac_relation *r) {
+  char key[LONGEST], line[LONGEST], test[LONGEST] = "";
+  snprintf(key, sizeof key, "%s/%s", r->gives, r->by);
+  FILE *file = fopen("tests/reference/checks_objects.txt", "r");
+  while (file && !*test && fgets(line, sizeof line, file))
+    if (strncmp(line, key, strlen(key)) == 0 && line[strlen(key)] == ' ') sscanf(line + strlen(key), " %999s", test);
+  if (file) fclose(file);
+  return *test && file_holds(test, key);
+}
+
 static void every_row_is_checked(void **state) {
   (void)state;
   int missing = 0, outside = 0;
@@ -190,7 +211,7 @@ static void every_row_is_checked(void **state) {
       seen_outside |= same && checked_outside[other];
     }
     outside += seen_outside;
-    if (seen) continue;
+    if (seen || (r->of_object && is_covered_by_a_test(r))) continue;
     missing++;
     print_error("# %s/%s has no check\n", r->gives, r->by);
   }

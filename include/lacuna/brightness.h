@@ -10,6 +10,10 @@
 #ifndef LACUNA_BRIGHTNESS_H
 #define LACUNA_BRIGHTNESS_H
 
+#ifdef __cplusplus
+extern "C" {
+#endif
+
 /* rim_visibility/with_halo, rim_visibility/without_halo */
 double lac_rim_visibility(double stellar_flux_fraction, double halo_flux_fraction, double rim_radius_angle, double inclination,
                           double disc_position_angle, double projected_baseline, double baseline_position_angle, double wavelength);
@@ -66,5 +70,9 @@ double lac_gaussian_visibility(double spatial_frequency, double fwhm);
    Notes: narrow annuli are integrated by Gauss-Legendre instead, so that no digits are lost to the difference.
    Source: linearity of the Fourier transform. */
 double lac_annulus_visibility(double spatial_frequency, double inner_diameter, double outer_diameter);
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

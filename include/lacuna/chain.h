@@ -8,6 +8,10 @@
 
 #include "lacuna/catalogue.h"
 
+#ifdef __cplusplus
+extern "C" {
+#endif
+
 enum { LAC_GIVEN = -1, LAC_NO_ROW = -2 };
 
 typedef struct lac_chain lac_chain;
@@ -25,7 +29,7 @@ typedef struct lac_chain lac_chain;
 lac_status lac_chain_settle(const lac_catalogue *catalogue, const bool *given, const int *only, lac_chain **chain, int *culprit);
 void lac_chain_free(lac_chain *chain);
 
-/* The row that gives a name: a row number, LAC_GIVEN, or LAC_NO_ROW where it can't be had. */
+/* The row that gives a name: a row number, LAC_GIVEN, or LAC_NO_ROW where it can't be had, or where the id is none. */
 int lac_chain_row(const lac_chain *chain, int id);
 /* Whether step 3 sufficed. */
 bool lac_chain_settled_at_once(const lac_chain *chain);
@@ -40,9 +44,13 @@ int lac_chain_steps(const lac_chain *chain, int id, int *ids);
 void lac_chain_values(const lac_chain *chain, double *values);
 
 /* What would have to be given to have a name: need(had) = nothing, need(a name without forward rows) = the name itself, else the smallest
-   union over its forward rows, ties by order. One set for each of its rows that could give it, smallest first.
+   union over its forward rows, ties by order. Rows that stand aside are not looked at. One set for each of its rows that could give it, smallest first.
    Given: room for max * names bytes in needed[set * names + id]; names: how many the catalogue has.
    Returned: how many sets, at most max, and in rows[set] the row, LAC_NO_ROW for the name itself; 0 if it is had, -1 without memory. */
 int lac_chain_missing(const lac_chain *chain, int id, bool *needed, int max, int *rows);
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

@@ -6,6 +6,10 @@
 
 #include <stddef.h>
 
+#ifdef __cplusplus
+extern "C" {
+#endif
+
 #define LAC_CONSTANT_LIST(X)                                                                                                      \
   X(LAC_SPEED_OF_LIGHT, 299792458.0, "m.s**-1", "SI 2019, exact")                                                                 \
   X(LAC_PLANCK_CONSTANT, 6.62607015e-34, "J.s", "SI 2019, exact")                                                                 \
@@ -43,5 +47,9 @@ typedef struct {
   const char *unit, *source;
 } lac_constant;
 const lac_constant *lac_constant_at(size_t index);
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

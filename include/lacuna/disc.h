@@ -5,6 +5,10 @@
 #ifndef LACUNA_DISC_H
 #define LACUNA_DISC_H
 
+#ifdef __cplusplus
+extern "C" {
+#endif
+
 /* <at>midplane_temperature/dullemond_2018 */
 double lac_midplane_temperature_dullemond_2018(double flaring_angle, double heating_luminosity, double radius);
 /* <at>midplane_temperature/chiang_goldreich_1997 */
@@ -41,5 +45,9 @@ double lac_radial_drift_speed(double stokes_number, double headwind_speed); /* <
 
 /* snow_line_radius/dullemond_2018 */
 double lac_snow_line_radius(double flaring_angle, double heating_luminosity, double snow_temperature);
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

@@ -9,6 +9,10 @@
 
 #include "lacuna/status.h"
 
+#ifdef __cplusplus
+extern "C" {
+#endif
+
 typedef enum {
   LAC_NORMAL,      /* a median, b standard deviation */
   LAC_LOPSIDED,    /* a median, b upper and c lower deviation: two half-normals, half the draws on each side */
@@ -40,5 +44,9 @@ void lac_draws(const lac_spread *spread, uint64_t first, size_t n, double *out);
 
 /* The bare generator, for checks: four words from counter and key. Philox 4x32-10. */
 void lac_philox(const uint32_t counter[4], const uint32_t key[2], uint32_t out[4]);
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

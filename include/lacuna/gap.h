@@ -4,6 +4,10 @@
 #ifndef LACUNA_GAP_H
 #define LACUNA_GAP_H
 
+#ifdef __cplusplus
+extern "C" {
+#endif
+
 double lac_thermal_gap_mass(double planet_aspect_ratio, double stellar_mass); /* thermal_gap_mass/lin_papaloizou_1993 */
 /* viscous_gap_mass/lin_papaloizou_1993 */
 double lac_viscous_gap_mass(double planet_aspect_ratio, double viscosity_alpha, double stellar_mass);
@@ -32,5 +36,9 @@ double lac_inferred_planet_mass_kanagawa_2015(double observed_gap_depth, double 
 double lac_pebble_isolation_mass_bitsch_2018(double planet_aspect_ratio, double viscosity_alpha, double planet_pressure_slope,
                                              double stellar_mass);
 double lac_pebble_isolation_mass_lambrechts_2014(double planet_aspect_ratio); /* pebble_isolation_mass/lambrechts_2014 */
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

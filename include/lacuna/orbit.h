@@ -4,6 +4,10 @@
 #ifndef LACUNA_ORBIT_H
 #define LACUNA_ORBIT_H
 
+#ifdef __cplusplus
+extern "C" {
+#endif
+
 double lac_planet_star_mass_ratio(double planet_mass, double stellar_mass);           /* planet_star_mass_ratio/definition */
 double lac_planet_mass(double planet_star_mass_ratio, double stellar_mass);           /* planet_mass/definition */
 double lac_hill_radius(double planet_semi_major_axis, double planet_star_mass_ratio); /* hill_radius/hill */
@@ -20,5 +24,9 @@ double lac_truncation_radius_manara_2019_re1e4(double roche_lobe_radius, double 
                                                double companion_eccentricity); /* truncation_radius/manara_2019_re1e4 */
 double lac_truncation_radius_manara_2019_re1e6(double roche_lobe_radius, double companion_mass_fraction,
                                                double companion_eccentricity); /* truncation_radius/manara_2019_re1e6 */
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

@@ -10,6 +10,10 @@
 #include "lacuna/chain.h"
 #include "lacuna/quantity.h"
 
+#ifdef __cplusplus
+extern "C" {
+#endif
+
 enum { LAC_BLOCK = 1024, LAC_PIECE = 65536 };
 
 /* What a computation runs with, in place of globals: threads, memory and the ways to stop it.
@@ -50,5 +54,9 @@ lac_status lac_plan_quantiles(lac_work *work, lac_value *value, const char *axis
    put there, so that the next ask finds them (the caller drops them). Single numbers are evaluated at once. LAC_NOT_HAD; LAC_TOO_MANY: a given is too deep an expression, store
    it (lac_plan_store) and ask again; else as the makers of values. */
 lac_status lac_plan_ask(const lac_chain *chain, lac_value **values, int id);
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

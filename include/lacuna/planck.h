@@ -9,6 +9,10 @@
 
 #include <stddef.h>
 
+#ifdef __cplusplus
+extern "C" {
+#endif
+
 double lac_wavelength(double frequency);                                         /* wavelength/definition */
 double lac_frequency(double wavelength);                                         /* frequency/definition */
 double lac_planck_nu(double wavelength, double body_temperature);                /* planck_nu/planck */
@@ -54,9 +58,13 @@ double lac_planck_nu_slope(double wavelength, double body_temperature);
    Inverse:  lac_planck_lambda. That of lac_planck_nu is lac_brightness_temperature. */
 double lac_temperature_from_planck_lambda(double planck_lambda, double wavelength);
 
-/* The brightness temperature in the sense of Rayleigh and Jeans: linear in the intensity, and no body's temperature unless h c/(lambda k T)
-   is small. Given:    specific_intensity  W m^-2 Hz^-1 sr^-1, >= 0 wavelength          m, > 0 Result:   lambda^2 I/(2 k), in K. Accuracy: 3
-   units of 2^-53. Source:   Rayleigh 1900, Philosophical Magazine 49, 539; Jeans 1905, Philosophical Magazine 10, 91. */
+/* The brightness temperature in the sense of Rayleigh and Jeans: linear in the intensity, and no body's temperature unless
+   h c/(lambda k T) is small.
+   Given:    specific_intensity  W m^-2 Hz^-1 sr^-1, >= 0
+             wavelength          m, > 0
+   Result:   lambda^2 I/(2 k), in K.
+   Accuracy: 3 units of 2^-53.
+   Source:   Rayleigh 1900, Philosophical Magazine 49, 539; Jeans 1905, Philosophical Magazine 10, 91. */
 double lac_rayleigh_jeans_temperature(double specific_intensity, double wavelength);
 
 /* How many photons a black body sends out.
@@ -73,5 +81,9 @@ double lac_photon_exitance(double body_temperature);
    Accuracy: 4 units of 2^-53 up to a fraction of 1/2; above, what the fraction itself leaves: (1 - F) is known to 2^-53.
    Source:   inverse of lac_blackbody_fraction, by Newton's method within a bracket. */
 double lac_wavelength_of_blackbody_fraction(double blackbody_fraction, double body_temperature);
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

@@ -1,11 +1,15 @@
 /* SPDX-License-Identifier: GPL-3.0-or-later */
 /* What an array or a mirror can tell apart: resolutions, fields, scales, elements across a structure, verdicts.
    SI units (angles in rad); NaN outside a relation's range. Each function is documented by its row in the table of relations,
-   whose key is given; S stands for each structure (rim, cavity, gap, ring), X for each length on the sky. */
+   whose key is given; <structure> stands for rim, cavity, gap or ring, <length> for each length on the sky. */
 #ifndef LACUNA_RESOLUTION_H
 #define LACUNA_RESOLUTION_H
 
-/* A length seen on the sky, and back: X_angle/definition, X/from_angle. */
+#ifdef __cplusplus
+extern "C" {
+#endif
+
+/* A length seen on the sky, and back: <length>_angle/definition, <length>/from_angle. */
 double lac_angle_on_sky(double length, double distance);
 double lac_length_on_sky(double angle, double distance);
 
@@ -29,20 +33,26 @@ double lac_mirror_resolution_rayleigh(double wavelength, double telescope_diamet
 /* spatial_resolution_of_array/definition, spatial_resolution_of_mirror/definition */
 double lac_spatial_resolution(double resolution, double distance);
 
-/* Structures: S_size_angle/definition; S_elements_by_array/definition and S_elements_by_mirror/definition. */
+/* Structures: rim_size_angle/definition, cavity_size_angle/definition; gap_size_angle/definition, ring_size_angle/definition;
+   <structure>_elements_by_array/definition, <structure>_elements_by_mirror/definition. */
 double lac_size_angle_of_diameter(double radius_angle);
 double lac_size_angle_of_width(double width_angle);
 double lac_gap_radius_angle(double planet_semi_major_axis_angle); /* gap_radius_angle/definition */
 double lac_resolution_elements(double size_angle, double resolution);
 
-/* Verdicts, 1 or 0, NaN where an argument is: S_resolved_by_array/all_conditions, /scale_unlimited, /field_unlimited, /elements_alone. */
+/* Verdicts, 1 or 0, NaN where an argument is: <structure>_resolved_by_array/all_conditions, <structure>_resolved_by_array/scale_unlimited,
+   <structure>_resolved_by_array/field_unlimited, <structure>_resolved_by_array/elements_alone. */
 double lac_resolved_by_array(double elements, double elements_required, double size_angle, double recoverable_scale, double radius_angle,
                              double array_field);
 double lac_resolved_by_array_scale_unlimited(double elements, double elements_required, double radius_angle, double array_field);
 double lac_resolved_by_array_field_unlimited(double elements, double elements_required, double size_angle, double recoverable_scale);
-double lac_elements_suffice(double elements, double elements_required); /* also S_resolved_by_mirror/elements_alone */
+double lac_elements_suffice(double elements, double elements_required); /* also <structure>_resolved_by_mirror/elements_alone */
 
-/* S_resolved_by_mirror/outside_working_angle */
+/* <structure>_resolved_by_mirror/outside_working_angle */
 double lac_resolved_by_mirror(double elements, double elements_required, double radius_angle, double inner_working_angle);
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

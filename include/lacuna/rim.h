@@ -4,6 +4,10 @@
 #ifndef LACUNA_RIM_H
 #define LACUNA_RIM_H
 
+#ifdef __cplusplus
+extern "C" {
+#endif
+
 double lac_sublimation_temperature_isella_natta_2005(double rim_gas_density);    /* sublimation_temperature/isella_natta_2005 */
 double lac_sublimation_temperature_pollack_1994_olivine(double rim_gas_density); /* sublimation_temperature/pollack_1994_olivine */
 double
@@ -23,5 +27,9 @@ double lac_sublimation_radius_monnier_2002(double heating_luminosity, double sub
                                            double absorption_efficiency_ratio);                       /* sublimation_radius/monnier_2002 */
 double lac_sublimation_radius_grey_grains(double heating_luminosity, double sublimation_temperature); /* sublimation_radius/grey_grains */
 double lac_rim_radius(double sublimation_radius);                                                     /* rim_radius/at_sublimation_radius */
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

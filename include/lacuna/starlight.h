@@ -4,6 +4,10 @@
 #ifndef LACUNA_STARLIGHT_H
 #define LACUNA_STARLIGHT_H
 
+#ifdef __cplusplus
+extern "C" {
+#endif
+
 double lac_parallax(double distance); /* parallax/distance */
 double lac_distance(double parallax); /* distance/parallax */
 
@@ -31,5 +35,9 @@ double lac_heating_luminosity_star_alone(double stellar_luminosity);            
 
 double lac_rotation_period(double stellar_mass, double corotation_radius); /* rotation_period/kepler */
 double lac_corotation_radius(double stellar_mass, double rotation_period); /* corotation_radius/kepler */
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

@@ -4,6 +4,10 @@
 #ifndef LACUNA_STATUS_H
 #define LACUNA_STATUS_H
 
+#ifdef __cplusplus
+extern "C" {
+#endif
+
 #define LAC_STATUS_LIST(X)                                                                        \
   X(LAC_OK, "done")                                                                               \
   X(LAC_DOUBTFUL, "done, outside the range the recipe holds for")                                 \
@@ -31,5 +35,9 @@ typedef enum {
 
 /* The words for a status. Given: any lac_status. Returned: a static string, never NULL. */
 const char *lac_status_words(lac_status status);
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

@@ -10,6 +10,10 @@
 
 #include "lacuna/status.h"
 
+#ifdef __cplusplus
+extern "C" {
+#endif
+
 /* The base dimensions. Angle is one of its own, so that a ratio of lengths is never mistaken for
    an angle; sr is rad**2. Things that are counted (photons, pixels, beams) have no dimension. */
 enum { LAC_LENGTH, LAC_MASS, LAC_TIME, LAC_TEMPERATURE, LAC_ANGLE, LAC_MAGNITUDE, LAC_BASE_DIMENSIONS };
@@ -91,5 +95,9 @@ typedef struct {
    with *where at the number. On refusal the numbers are NaN. Refused as ambiguous: a unit that starts with a digit ("156 3 pc"),
    a percent sign right behind an error ("1.5 ± 10%"). Numbers have at most 127 characters. */
 lac_status lac_reading_read(const char *text, size_t length, lac_reading *reading, size_t *where);
+
+#ifdef __cplusplus
+}
+#endif
 
 #endif

@@ -71,6 +71,7 @@ local renderings = { -- equation, plain, TeX
   { [=[\exp\left(-\frac{x}{2}\right)]=], "exp(-x/2)", [=[\exp\left(-\frac{x}{2}\right)]=] },
   { [=[\min\left(x, [distance]\right)]=], "min(x, d)", [=[\min\left(x, d\right)]=] },
   { [=[\sum_{i=1}^{n} x_i y]=], "∑_(i=1)^n x_i y", [=[\sum_{i=1}^n x_i y]=] },
+  { [=[\int_{a}^{b} x y]=], "∫_a^b x y", [=[\int_{a}^b x y]=] },
   { [=[2.2 \times 10^{-11} \cdot x]=], "2.2 × 10⁻¹¹ · x", [=[2.2 \times 10^{-11} \cdot x]=] },
   { [=[170 \mathrm{K}]=], "170 K", [=[170\,\mathrm{K}]=] },
   { [=[[distance] >= 2 x]=], "d ≥ 2 x", [=[d \ge 2 x]=] },

@@ -42,7 +42,20 @@ want "and runs too" 0 done ""
 for header in "$prefix"/include/lacuna/*.h; do
   try sh -c 'echo "#include <lacuna/$0>" | ${CC:-gcc} -std=c11 -Wall -Wpedantic -Werror -I"$1" -x c -fsyntax-only -' "${header##*/}" "$prefix/include"
   want "${header##*/} stands alone" 0 "" ""
+  if command -v "${CXX:-g++}" >/dev/null; then
+    try sh -c 'echo "#include <lacuna/$0>" | ${CXX:-g++} -std=c++11 -Wall -Werror -I"$1" -x c++ -fsyntax-only -' "${header##*/}" "$prefix/include"
+    want "in C++ too" 0 "" ""
+  fi
+  grep -q 'extern "C"' "$header"
+  result $? "with C linkage"
 done
+
+# Jupiter's Hill radius of 0.355 au (textbook, from memory) is 3.55 mas at 100 pc. The error of a median of 10 000 draws is 0.6 % of the 5 % of the distance.
+try sh -c '${CC:-gcc} -std=c11 -Wall -Wextra -Wpedantic -Werror "$0" -o example $(pkg-config --cflags --libs lacuna)' "$OLDPWD/docs/example.c"
+want "docs/example.c compiles" 0 "" ""
+try env LD_LIBRARY_PATH="$prefix/lib" ./example
+want "and gives what is right" 0 "*hill_radius = 0.355?? au, hill*hill_radius_angle = 3.55?? mas, definition
+median of 10000 draws: 3.5[56] mas" ""
 
 visible() { nm "$@" | awk 'NF == 3 && $2 ~ /[A-Z]/ && $2 != "U" { print $3 }' | sort -u; }
 declared() { cat "$prefix"/include/lacuna/*.h | grep -o '\blac_[a-z0-9_]*\b' | sort -u; }
@@ -78,5 +91,10 @@ try make build="$LACUNA_BUILD" PREFIX=/opt/there DESTDIR="$prefix" install
 want "make install with DESTDIR" 0 "*" ""
 test -x "$prefix/opt/there/bin/lacuna" && grep -qx 'prefix=/opt/there' "$prefix/opt/there/lib/pkgconfig/lacuna.pc"
 result $? "packagers get the final paths"
+
+try make build="$LACUNA_BUILD" PREFIX="/opt/two words" DESTDIR="$prefix" install uninstall
+want "make install and uninstall where names have spaces" 0 "*" ""
+test -d "$prefix/opt/two words/bin" && test -z "$(find "$prefix/opt/two words" ! -type d)"
+result $? "stay inside"
 
 finish

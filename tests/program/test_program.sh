@@ -56,7 +56,7 @@ want "a syntax error is one line" 1 "" "lacuna: wrong.lua:1: unexpected symbol n
 try "$lacuna" -e 'error(setmetatable({}, {__tostring = function() return "own words" end}))'
 want "an error that is no text" 1 "" "lacuna: own words"
 try "$lacuna" -e 'error()'
-want "an error without words" 1 "" "lacuna: nil"
+want "an error without words" 1 "" "lacuna: the script failed with a nil as its error, which says nothing"
 try "$lacuna" -e 'os.exit(7)'
 want "a script's own exit status" 7 "" ""
 
@@ -84,6 +84,8 @@ want "options, then --" 0 "script.lua	a	1	a" ""
 
 try sh -c '"$0" -e "print(1)" >/dev/full' "$lacuna"
 want "output that can't be written" 1 "" "lacuna: cannot write to standard output: No space left on device"
+try sh -c '"$0" --help >/dev/full' "$lacuna"
+want "help that can't be written" 1 "" "lacuna: cannot write to standard output: No space left on device"
 
 # Ctrl-C ends a script by the signal, so that a shell's loop around it ends too; pcall does not swallow it.
 echo 'while true do pcall(function() while true do end end) end' >endless.lua

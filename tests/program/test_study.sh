@@ -88,4 +88,18 @@ want "a disk that is full" 1 "" "lacuna: full.lua:2: cannot write small/out.csv:
 test "$(cat small/out.csv)" = old && test "$(ls small | wc -l)" = 1
 result $? "the old file stays whole"
 
+# A device is written to, never replaced; nor is a link.
+ln -s small/out.csv link.csv
+for name in /dev/stdout /dev/full link.csv; do
+  printf 'study { targets = {{ name = "a", distance = "100 pc" }}, ask = { "parallax" }, csv = "%s" }\n' "$name" >odd.lua
+  try "$lacuna" odd.lua
+  case $name in
+    /dev/stdout) want "a CSV file on standard output" 0 "name,parallax \[mas\]*" "" ;;
+    /dev/full) want "a device that is full" 1 "" "lacuna: odd.lua:1: cannot write /dev/full: No space left on device" ;;
+    link.csv) want "a link" 0 "*" "" ;;
+  esac
+done
+test -c /dev/full && test -L link.csv && grep -q '^a,10' small/out.csv
+result $? "devices and links stay what they are"
+
 finish

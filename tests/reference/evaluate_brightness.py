@@ -65,6 +65,7 @@ for squared in ("0.83", "0.04", "1", "0"):
 row("rim_drop_significance", "definition", "rim_visibility_drop=0.17; visibility_error=0.02", mpf("0.17") / mpf("0.02"), TOLERANCE)
 
 with open("tests/reference/evaluated_brightness.csv", "w") as file:
+    file.write("# SPDX-License-Identifier: GPL-3.0-or-later\n")
     file.write("# Written by tests/reference/evaluate_brightness.py, which gives the reasons for the tolerances.\n")
     file.write("gives,by,inputs,expected,tolerance,kind,source\n")
     file.write("\n".join(rows) + "\n")
@@ -96,6 +97,7 @@ FORMS = (
     + [("annulus", inner, annulus) for inner in ("0.125", "0.75", "0.9375", "0.9990234375")]
 )
 with open("tests/reference/evaluated_closed_forms.csv", "w") as file:
+    file.write("# SPDX-License-Identifier: GPL-3.0-or-later\n")
     file.write("# Written by tests/reference/evaluate_brightness.py, mpmath, 40 digits: visibility of models of diameter (Gaussian: full width\n")
     file.write("# at half maximum) 1 rad. The parameter is the limb darkening's, or the annulus' inner diameter.\n")
     file.write("model,parameter,spatial_frequency,visibility\n")

@@ -98,6 +98,7 @@ def verdict_rows():
 for part in (channel_rows, wavelength_rows, field_rows, sky_rows, verdict_rows):
     part()
 with open("tests/reference/evaluated_resolution.csv", "w") as file:
+    file.write("# SPDX-License-Identifier: GPL-3.0-or-later\n")
     file.write("# Written by tests/reference/evaluate_resolution.py, which gives the reason for the tolerances.\n")
     file.write("gives,by,inputs,expected,tolerance,kind,source\n")
     file.write("\n".join(rows) + "\n")
