@@ -57,6 +57,15 @@ static void cancel_line(void) {
 
 typedef enum { LINE, END, CANCELLED } reply;
 
+/* A ppoll that finds input doesn't let a waiting signal in, and what is typed after a Ctrl-C must not be read before it. */
+static void let_interruption_in(const sigset_t *open) {
+  sigset_t waiting, mask;
+  sigpending(&waiting);
+  if (!sigismember(&waiting, SIGINT)) return;
+  sigprocmask(SIG_SETMASK, open, &mask);
+  sigprocmask(SIG_SETMASK, &mask, NULL);
+}
+
 /* Reads one line into *line (malloc's). SIGINT is blocked, and let in while there is nothing to read. */
 static reply read_line(const char *prompt, char **line) {
   sigset_t open;
@@ -68,8 +77,9 @@ static reply read_line(const char *prompt, char **line) {
   while (!finished) {
     struct pollfd input = {.fd = STDIN_FILENO, .events = POLLIN};
     int ready = ppoll(&input, 1, NULL, &open);
+    if (ready > 0) let_interruption_in(&open);
+    if (program_was_interrupted()) return cancel_line(), CANCELLED;
     if (ready > 0) rl_callback_read_char();
-    else if (program_was_interrupted()) return cancel_line(), CANCELLED;
     else if (continued) take_terminal_back();
     else if (errno != EINTR) return rl_callback_handler_remove(), END;
   }

@@ -362,7 +362,6 @@ lac_status lac_catalogue_add_name(lac_catalogue *catalogue, const lac_name *name
 
 lac_status lac_catalogue_add_relation(lac_catalogue *catalogue, const lac_relation *relation, int *row) {
   if (!relation->gives || !known_names(catalogue, relation)) return LAC_UNKNOWN_NAME;
-  if (!relation->call && !relation->of_object && !(relation->function && relation->block)) return LAC_NOT_HAD; /* nothing to evaluate */
   lac_status status = check_circle(catalogue, relation);
   if (status != LAC_OK) return status;
   catalogue->arena.failed = false;

@@ -192,6 +192,7 @@ static lac_status apply_row(const lac_catalogue *catalogue, int row, lac_value *
   if (relation->call) return lac_value_called(relation->call, relation->context, (size_t)count, arguments, made);
   if (relation->of_object) return lac_value_of_object(relation->of_object, arguments[0], (size_t)count - 1, arguments + 1, made);
   if (single_value(relation, (size_t)count, arguments, &number)) return lac_value_number(number, made);
+  if (!relation->block) return LAC_NOT_HAD; /* a row of a user's in C, without a form for blocks */
   if (relation->shape) return lac_value_scaled(relation->shape, (size_t)count, arguments, made);
   return lac_value_computed(relation->block, (size_t)count, arguments, made);
 }
