@@ -424,6 +424,13 @@ static int case_row_of(lua_State *L) {
   return 1;
 }
 
+/* same_chain(a, b): whether two cases have one chain, as cases with the same given names and restrictions do. */
+static int case_same_chain(lua_State *L) {
+  const lac_chain *chain = lac_check_case(L, 1)->chain;
+  lua_pushboolean(L, chain == lac_check_case(L, 2)->chain);
+  return 1;
+}
+
 /* missing_sets(case, name): a list of {row =, names = {...}}, the smallest first; empty if the name is had. */
 static int case_missing_sets(lua_State *L) {
   enum { MOST = 5 };
@@ -464,7 +471,7 @@ static int set_handlers(lua_State *L) {
 
 void lac_open_case(lua_State *L) {
   static const luaL_Reg functions[] = {
-      {"given", case_given}, {"new_case", case_new}, {"raw", case_raw}, {"info", case_info}, {"steps", case_steps}, {"row_of", case_row_of},
+      {"given", case_given}, {"new_case", case_new}, {"raw", case_raw}, {"info", case_info}, {"steps", case_steps}, {"row_of", case_row_of}, {"same_chain", case_same_chain},
       {"missing_sets", case_missing_sets}, {"is_case", is_case}, {"case_of", case_of}, {"set_handlers", set_handlers}, {NULL, NULL},
   };
   luaL_setfuncs(L, functions, 0);
