@@ -87,12 +87,13 @@ want "output that can't be written" 1 "" "lacuna: cannot write to standard outpu
 try sh -c '"$0" --help >/dev/full' "$lacuna"
 want "help that can't be written" 1 "" "lacuna: cannot write to standard output: No space left on device"
 
+# --foreground: one signal, to the program alone, as a second one would end it at once.
 # Ctrl-C ends a script by the signal, so that a shell's loop around it ends too; pcall does not swallow it.
 echo 'while true do pcall(function() while true do end end) end' >endless.lua
-try timeout -s INT 1 "$lacuna" endless.lua
+try timeout --foreground -s INT 1 "$lacuna" endless.lua
 want "Ctrl-C ends a script" 124 "" "lacuna: interrupted"
 echo 'local t = setmetatable({}, {__close = function() print("closed") end}); local a <close> = t; while true do end' >closing.lua
-try timeout -s INT 1 "$lacuna" closing.lua
+try timeout --foreground -s INT 1 "$lacuna" closing.lua
 want "what a script has to close is closed" 124 closed "lacuna: interrupted"
 
 finish
