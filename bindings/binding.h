@@ -131,6 +131,9 @@ typedef struct {
 } lac_embedded;
 extern const lac_embedded lac_embedded_modules[]; /* ends with name NULL; generated */
 
+/* Pushes what the embedded source "lacuna.case" returns (run once for each Lua state); raises as Lua does. */
+void lac_push_part(lua_State *L, const char *name);
+
 __attribute__((visibility("default"))) int luaopen_lacuna(lua_State *L);
 
 #endif

@@ -5,7 +5,8 @@
 
 #include "binding.h"
 
-static const char loaded_key = 0; /* registry key: the module's own sources by name */
+static const char loaded_key = 0; /* registry keys: the module's own sources by name, */
+static const char part_key = 0;   /* and load_part */
 
 /* load_part(name): what the embedded source of that name returns, run once for each Lua state with the private table as its argument. */
 static int load_part(lua_State *L) {
@@ -22,6 +23,12 @@ static int load_part(lua_State *L) {
     return 1;
   }
   return lac_error(L, "no part '%s'", name);
+}
+
+void lac_push_part(lua_State *L, const char *name) {
+  lua_rawgetp(L, LUA_REGISTRYINDEX, &part_key);
+  lua_pushstring(L, name);
+  lua_call(L, 1, 1);
 }
 
 int luaopen_lacuna(lua_State *L) {
@@ -46,6 +53,8 @@ int luaopen_lacuna(lua_State *L) {
   lua_pushcclosure(L, load_part, 1);
   lua_pushvalue(L, -1);
   lua_setfield(L, -3, "part");
+  lua_pushvalue(L, -1);
+  lua_rawsetp(L, LUA_REGISTRYINDEX, &part_key);
   lua_pushliteral(L, "lacuna.lacuna");
   lua_call(L, 1, 1);
   return 1;

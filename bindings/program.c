@@ -10,95 +10,8 @@
 #include <unistd.h>
 
 #include "binding.h"
-#include "nearest.h"
+#include "options.h"
 #include "program.h"
-
-enum { FAILED = 1, WRONG_USAGE = 2 };
-
-/* The options that are settings of the module, with its names for them. */
-enum { SETTINGS = 3 };
-static const char *const settings[SETTINGS] = {"seed", "draws", "threads"};
-
-typedef struct {
-  const char *setting[SETTINGS]; /* the texts given; NULL where none is */
-  const char *code;              /* of -e */
-  char **rest;                   /* the script and its arguments; or the arguments alone, after -e */
-  int count;
-} command_line;
-
-static const char *const words[] = {"--help", "--version", "--seed", "--draws", "--threads"};
-
-static const char help[] = "Usage: lacuna [OPTION...] [FILE.lua [ARGUMENT...]]\n"
-                           "       lacuna [OPTION...] -e CODE [ARGUMENT...]\n"
-                           "What can be resolved around a young star: runs a script, a line of code, or,\n"
-                           "alone at a terminal, a conversation (help() tells more there).\n"
-                           "\n"
-                           "  -               read the script from standard input\n"
-                           "  -e CODE         run CODE; if it is an expression, print its value\n"
-                           "  --seed N        key of the random draws\n"
-                           "  --draws N       how many draws stand for an error bar\n"
-                           "  --threads N     how many processor cores to use\n"
-                           "  --help          print this and leave\n"
-                           "  --version       print the version and leave\n"
-                           "\n"
-                           "Exit status: 0, 1 if the script failed, 2 for wrong usage.\n";
-
-static int unknown_option(const char *option) {
-  int length = (int)strcspn(option, "="), least = 3; /* two slips of the finger, no more */
-  const char *nearest = NULL;
-  char name[66];
-  snprintf(name, sizeof name, "%.*s", length, option);
-  for (size_t i = 0; i < sizeof words / sizeof *words; i++) {
-    int edits = lac_edits(name, words[i]);
-    if (edits < least) least = edits, nearest = words[i];
-  }
-  if (nearest) fprintf(stderr, "lacuna: unknown option '%s'; the nearest known one is %s\n", name, nearest);
-  else fprintf(stderr, "lacuna: unknown option '%.*s'; lacuna --help lists them\n", length, option);
-  return WRONG_USAGE;
-}
-
-/* Which setting an argument like "--draws" or "--draws=5" names, with the text after "=" or NULL. Returned: -1 if none. */
-static int find_setting(const char *argument, const char **text) {
-  for (int i = 0; i < SETTINGS; i++) {
-    size_t length = strlen(settings[i]);
-    if (strncmp(argument, "--", 2) != 0 || strncmp(argument + 2, settings[i], length) != 0) continue;
-    const char *after = argument + 2 + length;
-    if (*after != 0 && *after != '=') continue;
-    *text = *after ? after + 1 : NULL;
-    return i;
-  }
-  return -1;
-}
-
-/* Reads the options up to the first word that is none. Returned: -1 to go on, else the exit status. */
-static int read_options(command_line *line, char **argument) {
-  for (; *argument && **argument == '-' && strcmp(*argument, "-") != 0; argument++) {
-    const char *text;
-    int setting = find_setting(*argument, &text);
-    if (setting >= 0) {
-      if (text == NULL && argument[1]) text = *++argument;
-      if (text == NULL) return fprintf(stderr, "lacuna: --%s wants a whole number after it; got nothing\n", settings[setting]), WRONG_USAGE;
-      line->setting[setting] = text;
-    } else if (strcmp(*argument, "--") == 0) {
-      argument++;
-      break;
-    } else if (strcmp(*argument, "-e") == 0) {
-      if (argument[1] == NULL) return fputs("lacuna: -e wants code after it; got nothing\n", stderr), WRONG_USAGE;
-      line->code = argument[1];
-      argument += 2;
-      break;
-    } else if (strcmp(*argument, "--help") == 0) {
-      return fputs(help, stdout), 0;
-    } else if (strcmp(*argument, "--version") == 0) {
-      return puts("lacuna " LAC_VERSION "\nLicence GPL-3.0-or-later; there is no warranty."), 0;
-    } else {
-      return unknown_option(*argument);
-    }
-  }
-  line->rest = argument;
-  for (line->count = 0; argument[line->count];) line->count++;
-  return -1;
-}
 
 void program_report(lua_State *L, const char *prefix) {
   const char *message = program_was_interrupted() ? "interrupted" : lua_tostring(L, -1);
@@ -171,17 +84,19 @@ static int make_setting(lua_State *L) {
   return 0;
 }
 
+/* Makes the settings among the options given. Returned: 0, or the exit status. */
 static int make_settings(lua_State *L, const command_line *line) {
   static const char subject[] = "settings: ";
-  for (int i = 0; i < SETTINGS; i++) {
-    if (line->setting[i] == NULL) continue;
+  for (int i = 0; i < line->given_count; i++) {
+    const given_option *given = &line->given[i];
+    if (given->option->kind != OPTION_SETTING) continue;
     lua_pushcfunction(L, make_setting);
-    lua_pushstring(L, settings[i]);
-    lua_pushstring(L, line->setting[i]);
+    lua_pushstring(L, given->option->name + 2);
+    lua_pushstring(L, given->text);
     if (lua_pcall(L, 2, 0, 0) == LUA_OK) continue;
     const char *message = lua_tostring(L, -1), *found = message ? strstr(message, subject) : NULL;
     if (found) fprintf(stderr, "lacuna: --%s\n", found + strlen(subject));
-    else fprintf(stderr, "lacuna: --%s: %s\n", settings[i], message ? message : "refused");
+    else fprintf(stderr, "lacuna: %s: %s\n", given->option->name, message ? message : "refused");
     return WRONG_USAGE;
   }
   return 0;
@@ -233,21 +148,26 @@ static int finished(int status) {
   return FAILED;
 }
 
-int main(int count, char **arguments) {
-  command_line line = {.code = NULL};
-  int status = count > 0 ? read_options(&line, arguments + 1) : WRONG_USAGE;
-  if (status >= 0) return finished(status);
+static int run_program(command_line *line) {
   lua_State *L = luaL_newstate();
   if (L == NULL) return fputs("lacuna: out of memory\n", stderr), FAILED;
   lua_pushcfunction(L, open_libraries);
   if (lua_pcall(L, 0, 0, 0) != LUA_OK) return failed(L);
-  status = make_settings(L, &line);
+  int status = make_settings(L, line);
   if (status != 0) return lua_close(L), status;
-  bool conversation = line.code == NULL && line.count == 0 && isatty(STDIN_FILENO);
+  bool conversation = line->code == NULL && line->count == 0 && isatty(STDIN_FILENO);
   program_catch_interrupts(L, conversation);
-  set_arguments(L, &line);
+  set_arguments(L, line);
   if (conversation) program_repl(L);
-  else if (run(L, &line) != LUA_OK) status = failed(L);
+  else if (run(L, line) != LUA_OK) status = failed(L);
   lua_close(L);
+  return status;
+}
+
+int main(int count, char **arguments) {
+  command_line line = {.code = NULL};
+  int status = count > 0 ? command_line_read(&line, arguments + 1) : WRONG_USAGE;
+  if (status < 0) status = run_program(&line);
+  command_line_drop(&line);
   return finished(status);
 }

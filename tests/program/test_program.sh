@@ -10,8 +10,12 @@ END
 try "$lacuna" script.lua one two
 want "a script gets its arguments" 0 "script.lua	one	2	one	two" ""
 
-try "$lacuna" script.lua --seed --draws x
-want "options after the script are the script's" 0 "script.lua	--seed	3	--seed	--draws	x" ""
+try "$lacuna" script.lua --mine x --help -e
+want "options after the script that are none of the program's are the script's" 0 "script.lua	--mine	4	--mine	x	--help	-e" ""
+try "$lacuna" script.lua a --seed 5 b --draws=100
+want "the program's options may stand after the script" 0 "script.lua	a	2	a	b" ""
+try "$lacuna" script.lua -- --seed 5
+want "what follows -- is left to the script" 0 "script.lua	--seed	2	--seed	5" ""
 
 printf '#!/usr/bin/env lacuna\nprint(6)' >first_line.lua
 try "$lacuna" first_line.lua
