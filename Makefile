@@ -3,8 +3,9 @@
 # make try        all that the main job needs, packages included, then the demo study
 # make check      all tests, then all again under the address and undefined-behaviour sanitizers
 # make bench      measures against what is required
+# make docs       the guide, the reference manual and the manual pages, in build/docs/ (generated from the program's own tables)
 # make install    PREFIX=/usr/local, DESTDIR= for packagers; make uninstall
-# make packages   installs what try, check and bench need (Debian); elsewhere names what is missing
+# make packages   installs what try, check, docs and bench need (Debian); elsewhere names what is missing
 # make clean
 # V=1 shows the commands.
 
@@ -12,7 +13,7 @@ VERSION = 0.1.0
 PREFIX = /usr/local
 LIBDIR = $(PREFIX)/lib
 LUADIR = $(LIBDIR)/lua/5.4
-MANDIR = $(PREFIX)/share/man/man1
+MANDIR = $(PREFIX)/share/man
 
 CC = gcc
 LUA = lua5.4
@@ -73,7 +74,9 @@ bench_programs = $(patsubst tests/%.c,$(build)/tests/%,$(bench_sources))
 
 # ---- Targets ----
 
-.PHONY: all tests try check bench packages install uninstall clean
+man_pages = $(build)/docs/lacuna.1 $(build)/docs/lacuna.3
+
+.PHONY: all tests try check docs bench packages install uninstall clean
 .DELETE_ON_ERROR:
 .SECONDARY:
 
@@ -93,13 +96,17 @@ check:
 	@$(MAKE) --no-print-directory build=$(build)/san sanitize=yes tests
 	@tests/run $(build) $(build)/san
 
+docs: $(man_pages)
+	@.ci/packages docs
+	$(build)/lacuna docs/make/pages.lua $(build)/docs
+
 bench:
 	@.ci/packages try check bench
 	@$(MAKE) --no-print-directory all $(bench_programs)
 	@tests/bench/run $(build)
 
 packages:
-	@.ci/packages try check bench
+	@.ci/packages try check docs bench
 
 clean:
 	rm -rf $(build)
@@ -157,6 +164,10 @@ $(build)/lacuna: $(program_objects) $(module_objects) $(build)/liblacuna.a
 	@echo linking $@
 	$(link) -no-pie -o $@ $^ $(program_libs)
 
+$(man_pages) &: $(build)/lacuna $(wildcard docs/make/*) $(wildcard include/lacuna/*.h)
+	@mkdir -p $(@D)
+	$(build)/lacuna docs/make/man_pages.lua $(@D) $(VERSION)
+
 # Tests with Lua states of their own hold the binding too.
 binding_tests = $(build)/tests/test_states $(build)/tests/test_lua_memory
 $(binding_tests): $(module_objects)
@@ -193,8 +204,8 @@ endef
 
 into = '$(DESTDIR)$(1)'
 
-install: all
-	install -d $(call into,$(PREFIX)/bin) $(call into,$(PREFIX)/include/lacuna) $(call into,$(LIBDIR)/pkgconfig) $(call into,$(LUADIR)) $(call into,$(MANDIR))
+install: all $(man_pages)
+	install -d $(call into,$(PREFIX)/bin) $(call into,$(PREFIX)/include/lacuna) $(call into,$(LIBDIR)/pkgconfig) $(call into,$(LUADIR)) $(call into,$(MANDIR)/man1) $(call into,$(MANDIR)/man3)
 	install $(build)/lacuna $(call into,$(PREFIX)/bin)
 	install -m 644 include/lacuna.h $(call into,$(PREFIX)/include)
 	install -m 644 include/lacuna/*.h $(call into,$(PREFIX)/include/lacuna)
@@ -202,11 +213,12 @@ install: all
 	install -m 644 $(build)/liblacuna.a $(shared_library) $(call into,$(LIBDIR))
 	ln -sf $(notdir $(shared_library)) $(call into,$(LIBDIR)/$(soname))
 	ln -sf $(soname) $(call into,$(LIBDIR)/liblacuna.so)
-	install -m 644 docs/lacuna.1 $(call into,$(MANDIR))
+	install -m 644 $(build)/docs/lacuna.1 $(call into,$(MANDIR)/man1)
+	install -m 644 $(build)/docs/lacuna.3 $(call into,$(MANDIR)/man3)
 	$(file >$(build)/lacuna.pc,$(pkg_config))install -m 644 $(build)/lacuna.pc $(call into,$(LIBDIR)/pkgconfig)
 	@if [ -z "$(DESTDIR)" ] && [ "$$(id -u)" = 0 ]; then ldconfig; fi
 
 uninstall:
 	rm -f $(call into,$(PREFIX)/bin/lacuna) $(call into,$(PREFIX)/include/lacuna.h) $(call into,$(LUADIR)/lacuna.so) \
-	  $(call into,$(LIBDIR))/liblacuna.* $(call into,$(MANDIR)/lacuna.1) $(call into,$(LIBDIR)/pkgconfig/lacuna.pc)
+	  $(call into,$(LIBDIR))/liblacuna.* $(call into,$(MANDIR)/man1/lacuna.1) $(call into,$(MANDIR)/man3/lacuna.3) $(call into,$(LIBDIR)/pkgconfig/lacuna.pc)
 	rm -rf $(call into,$(PREFIX)/include/lacuna)
