@@ -171,37 +171,20 @@ local function about_words(records, lines)
   return lines
 end
 
--- How well an entry answers the words searched for: every word must be found somewhere.
-local function score(entry, wanted)
-  local total = 0
-  local places = { { entry.name:gsub("_", " "), 5 }, { (entry.synonyms or ""):lower(), 4 }, { entry.meaning:lower(), 2 } }
-  for _, word in ipairs(wanted) do
-    local best = 0
-    for _, place in ipairs(places) do
-      local at = place[1]:find(word, 1, true)
-      if at then best = math.max(best, place[2] + ((at == 1 or place[1]:sub(at - 1, at - 1) == " ") and 1 or 0)) end
-    end
-    if best == 0 then return 0 end
-    total = total + best
-  end
-  return total / #wanted - #entry.name / 1000
-end
+-- Search --------------------------------------------------------------------------------------------------------------------------
 
-local function search(query)
-  local wanted, found = {}, {}
-  for word in query:lower():gmatch "%w+" do wanted[#wanted + 1] = word end
-  for order, name in ipairs(core.names()) do
-    local entry = core.entry(name)
-    local points = #wanted > 0 and score(entry, wanted) or 0
-    if points > 0 then found[#found + 1] = { points = points, order = order, name = name, meaning = entry.meaning } end
-  end
-  table.sort(found, function(a, b) return a.points > b.points or a.points == b.points and a.order < b.order end)
-  if #found == 0 then
-    local near = core.nearest((query:gsub("%s+", "_")))
-    return new_page(("nothing about '%s'%s"):format(query, #near > 0 and "; nearest are " .. table.concat(near, ", ") or ""))
-  end
-  local lines = new_page(("about '%s':"):format(query))
-  for i = 1, math.min(#found, 12) do lines[#lines + 1] = ("  %-34s %s"):format(found[i].name, found[i].meaning) end
+local MOST_FOUND = 12
+
+local function about_words_searched(query)
+  local found = core.part "lacuna.search".find(query)
+  local near = core.nearest((query:gsub("%s+", "_")))
+  local lines = new_page()
+  if not query:find "%s" then
+    lines[1] = ("there is no '%s'%s"):format(query, #near > 0 and "; nearest are " .. table.concat(near, ", ") or #found == 0 and "; help() lists what there is" or "")
+  elseif #found == 0 then lines[1] = ("nothing about '%s'; help() lists what there is"):format(query) end
+  if #found > 0 then lines[#lines + 1] = ("about '%s':"):format(query) end
+  for i = 1, math.min(#found, MOST_FOUND) do lines[#lines + 1] = ("  %s %s"):format(format.pad_right(found[i].title, 34), found[i].meaning) end
+  if #found > MOST_FOUND then lines[#lines + 1] = ("  and %d more"):format(#found - MOST_FOUND) end
   return lines
 end
 
@@ -216,7 +199,7 @@ function help.help(word)
   local records = words.all(word)
   if name then return about_words(records, about_name(name)) end
   if #records > 0 then return about_words(records, new_page()) end
-  return core.unit_facts(word) and about_unit(word) or about_built_in(word) or search(word)
+  return core.unit_facts(word) and about_unit(word) or about_built_in(word) or about_words_searched(word)
 end
 
 -- recipes "gap_width": all recipes of a name. recipes("gap_width", case): with what each gives in a case.
