@@ -4,6 +4,7 @@
 #include <string.h>
 
 #include "binding.h"
+#include "nearest.h"
 
 static void set_string(lua_State *L, const char *key, const char *text) {
   if (text == NULL) return;
@@ -38,6 +39,12 @@ static int catalogue_nearest(lua_State *L) {
   const int count = lac_catalogue_nearest(catalogue, luaL_checkstring(L, 1), ids, 5);
   lua_createtable(L, count, 0);
   for (int i = 0; i < count; i++) lua_pushstring(L, lac_catalogue_name(catalogue, ids[i])->name), lua_rawseti(L, -2, i + 1);
+  return 1;
+}
+
+/* edits(a, b): how many letters must change to make one word of another. */
+static int catalogue_edits(lua_State *L) {
+  lua_pushinteger(L, lac_edits(luaL_checkstring(L, 1), luaL_checkstring(L, 2)));
   return 1;
 }
 
@@ -327,7 +334,7 @@ static int catalogue_add_relation(lua_State *L) {
 
 void lac_open_catalogue(lua_State *L) {
   static const luaL_Reg functions[] = {
-      {"find", catalogue_find}, {"nearest", catalogue_nearest}, {"names", catalogue_names}, {"entry", catalogue_entry}, {"row", catalogue_row}, {"bounds", catalogue_bounds}, {"given_like", catalogue_given_like},
+      {"find", catalogue_find}, {"nearest", catalogue_nearest}, {"edits", catalogue_edits}, {"names", catalogue_names}, {"entry", catalogue_entry}, {"row", catalogue_row}, {"bounds", catalogue_bounds}, {"given_like", catalogue_given_like},
       {"source", catalogue_source}, {"add_name", catalogue_add_name}, {"add_relation", catalogue_add_relation}, {NULL, NULL},
   };
   luaL_setfuncs(L, functions, 0);

@@ -14,29 +14,13 @@ for i = 1, math.huge do
 end
 dust.materials = builtin_names
 
--- How many letters must change to make one word of another (Levenshtein 1966).
-local function distance(a, b)
-  local row = {}
-  for j = 0, #b do row[j] = j end
-  for i = 1, #a do
-    local corner = row[0]
-    row[0] = i
-    for j = 1, #b do
-      local up = row[j]
-      row[j] = math.min(up + 1, row[j - 1] + 1, corner + (a:byte(i) == b:byte(j) and 0 or 1))
-      corner = up
-    end
-  end
-  return row[#b]
-end
-
 local function named(name)
   if builtin[name] then return builtin[name] end
   local best
   for _, known in ipairs(builtin_names) do
-    if not best or distance(name, known) < distance(name, best) then best = known end
+    if not best or core.edits(name, known) < core.edits(name, best) then best = known end
   end
-  local near = (distance(name, best) <= #best // 2) and ("did you mean %s? "):format(best) or ""
+  local near = (core.edits(name, best) <= #best // 2) and ("did you mean %s? "):format(best) or ""
   core.raise(("unknown material '%s'; %sthere are %s, and material{...} for your own"):format(name, near, table.concat(builtin_names, ", ")))
 end
 

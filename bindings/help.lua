@@ -52,8 +52,16 @@ local function map()
       for _, line in ipairs(wrap(by_subject[subject[1]], 2, width)) do lines[#lines + 1] = line end
     end
   end
-  lines[#lines + 1] = "words of the language"
-  for _, line in ipairs(wrap(words.names, 2, width)) do lines[#lines + 1] = line end
+  for _, subject in ipairs(words.by_subject()) do
+    local names = {}
+    for _, record in ipairs(subject.records) do
+      if not record.of then names[#names + 1] = record.name end
+    end
+    if #names > 0 then
+      lines[#lines + 1] = "words: " .. subject.title
+      for _, line in ipairs(wrap(names, 2, width)) do lines[#lines + 1] = line end
+    end
+  end
   lines[#lines + 1] = ""
   lines[#lines + 1] = "Lengths on the sky have <name>_angle besides."
   return lines
@@ -105,37 +113,78 @@ local function about_unit(word)
   return new_page(("%s  a unit: %s"):format(written, format.with_unit(format.number(factor, 10), si_written)))
 end
 
--- How well an entry answers the words searched for: every word must be found somewhere.
-local function score(entry, wanted)
-  local total = 0
-  local places = { { entry.name:gsub("_", " "), 5 }, { (entry.synonyms or ""):lower(), 4 }, { entry.meaning:lower(), 2 } }
-  for _, word in ipairs(wanted) do
-    local best = 0
-    for _, place in ipairs(places) do
-      local at = place[1]:find(word, 1, true)
-      if at then best = math.max(best, place[2] + ((at == 1 or place[1]:sub(at - 1, at - 1) == " ") and 1 or 0)) end
-    end
-    if best == 0 then return 0 end
-    total = total + best
+-- Words of the language ------------------------------------------------------------------------------------------------------------
+
+local function add_methods(lines, record)
+  local listed, longest = {}, 0
+  for i, name in ipairs(words.methods(record.name)) do
+    local of_it = words.find(record.name .. ":" .. name)
+    local full = of_it.of and words.full_name(of_it) or record.name .. ":" .. name
+    listed[i] = { full, words.one_line(full) }
+    longest = math.max(longest, #full)
   end
-  return total / #wanted - #entry.name / 1000
+  if #listed > 0 then lines[#lines + 1] = ('  it has (help "%s" tells more of one)'):format(listed[1][1]) end
+  for _, pair in ipairs(listed) do lines[#lines + 1] = ("    %s  %s"):format(format.pad_right(pair[1], longest), pair[2]) end
 end
 
-local function search(query)
-  local wanted, found = {}, {}
-  for word in query:lower():gmatch "%w+" do wanted[#wanted + 1] = word end
-  for order, name in ipairs(core.names()) do
-    local entry = core.entry(name)
-    local points = #wanted > 0 and score(entry, wanted) or 0
-    if points > 0 then found[#found + 1] = { points = points, order = order, name = name, meaning = entry.meaning } end
+local function add_examples(lines, record)
+  for i, example in ipairs(record.examples or {}) do
+    if i == 1 then lines[#lines + 1] = "  example" .. (#record.examples > 1 and "s" or "") end
+    for _, line in ipairs(type(example) == "table" and example or { example }) do lines[#lines + 1] = "    > " .. line end
+    for line in record.answers[i]:gmatch "[^\n]+" do lines[#lines + 1] = "    " .. line end
   end
-  table.sort(found, function(a, b) return a.points > b.points or a.points == b.points and a.order < b.order end)
-  if #found == 0 then
-    local near = core.nearest((query:gsub("%s+", "_")))
-    return new_page(("nothing about '%s'%s"):format(query, #near > 0 and "; nearest are " .. table.concat(near, ", ") or ""))
+end
+
+-- One word: its forms, what it does, arguments, result, errors, what it has, examples.
+local function add_word(lines, record)
+  for _, form in ipairs(record.forms) do lines[#lines + 1] = form end
+  lines[#lines + 1] = "  " .. record.does
+  local longest = 0
+  for _, argument in ipairs(record.arguments or {}) do longest = math.max(longest, format.width(argument[1])) end
+  for _, argument in ipairs(record.arguments or {}) do
+    lines[#lines + 1] = ("    %s  %s"):format(format.pad_right(argument[1], math.min(longest, 24)), argument[2])
   end
-  local lines = new_page(("about '%s':"):format(query))
-  for i = 1, math.min(#found, 12) do lines[#lines + 1] = ("  %-34s %s"):format(found[i].name, found[i].meaning) end
+  if record.result then lines[#lines + 1] = "  result: " .. record.result end
+  if record.errors then lines[#lines + 1] = "  errors: " .. record.errors end
+  if not record.of then add_methods(lines, record) end
+  add_examples(lines, record)
+  if record.built_in then
+    lines[#lines + 1] = "  built in"
+    for _, line in ipairs(record.built_in()) do lines[#lines + 1] = "    " .. line end
+  end
+  if record.see then lines[#lines + 1] = "  see also " .. table.concat(record.see, ", ") end
+end
+
+-- A built-in object, by its name.
+local function about_built_in(name)
+  for _, record in ipairs(words.list()) do
+    local lines = record.built_in and record.built_in(name)
+    if lines then return new_page(("%s  a built-in %s"):format(name, record.name), table.unpack(lines)) end
+  end
+end
+
+local function about_words(records, lines)
+  for _, record in ipairs(records) do
+    if #lines > 0 then lines[#lines + 1] = "" end
+    add_word(lines, record)
+  end
+  return lines
+end
+
+-- Search --------------------------------------------------------------------------------------------------------------------------
+
+local MOST_FOUND = 12
+
+local function about_words_searched(query)
+  local found = core.part "lacuna.search".find(query)
+  local near = core.nearest((query:gsub("%s+", "_")))
+  local lines = new_page()
+  if not query:find "%s" then
+    lines[1] = ("there is no '%s'%s"):format(query, #near > 0 and "; nearest are " .. table.concat(near, ", ") or #found == 0 and "; help() lists what there is" or "")
+  elseif #found == 0 then lines[1] = ("nothing about '%s'; help() lists what there is"):format(query) end
+  if #found > 0 then lines[#lines + 1] = ("about '%s':"):format(query) end
+  for i = 1, math.min(#found, MOST_FOUND) do lines[#lines + 1] = ("  %s %s"):format(format.pad_right(found[i].title, 34), found[i].meaning) end
+  if #found > MOST_FOUND then lines[#lines + 1] = ("  and %d more"):format(#found - MOST_FOUND) end
   return lines
 end
 
@@ -147,14 +196,10 @@ function help.help(word)
     word = name
   end
   local name = core.find(word)
-  if name then
-    local lines = about_name(name)
-    for _, line in ipairs(words.about[name] or {}) do lines[#lines + 1] = line end
-    return lines
-  end
-  if words.about[word] then return new_page(table.unpack(words.about[word])) end
-  if core.unit_facts(word) then return about_unit(word) end
-  return search(word)
+  local records = words.all(word)
+  if name then return about_words(records, about_name(name)) end
+  if #records > 0 then return about_words(records, new_page()) end
+  return core.unit_facts(word) and about_unit(word) or about_built_in(word) or about_words_searched(word)
 end
 
 -- recipes "gap_width": all recipes of a name. recipes("gap_width", case): with what each gives in a case.

@@ -132,7 +132,7 @@ local function look_up(_, word)
   rawset(lacuna, word, derive)
   return derive
 end
-setmetatable(lacuna, { __index = look_up })
+setmetatable(lacuna, { __index = look_up, later = later })
 
 -- globals(environment): makes the words, units and names readable as globals there. A unit's global can't be assigned to.
 function lacuna.globals(environment)

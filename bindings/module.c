@@ -8,21 +8,31 @@
 static const char loaded_key = 0; /* registry keys: the module's own sources by name, */
 static const char part_key = 0;   /* and load_part */
 
+static const lac_embedded *find_part(const char *name) {
+  const lac_embedded *part = lac_embedded_modules;
+  while (part->name != NULL && strcmp(part->name, name) != 0) part++;
+  return part->name != NULL ? part : NULL;
+}
+
+/* has_part(name): whether there is an embedded source of that name. */
+static int has_part(lua_State *L) {
+  lua_pushboolean(L, find_part(luaL_checkstring(L, 1)) != NULL);
+  return 1;
+}
+
 /* load_part(name): what the embedded source of that name returns, run once for each Lua state with the private table as its argument. */
 static int load_part(lua_State *L) {
   const char *name = luaL_checkstring(L, 1);
   lua_rawgetp(L, LUA_REGISTRYINDEX, &loaded_key);
   if (lua_getfield(L, -1, name) != LUA_TNIL) return 1;
-  for (const lac_embedded *part = lac_embedded_modules; part->name != NULL; part++) {
-    if (strcmp(part->name, name) != 0) continue;
-    if (luaL_loadbufferx(L, (const char *)part->code, part->size, part->name, NULL) != LUA_OK) return lua_error(L);
-    lua_pushvalue(L, lua_upvalueindex(1));
-    lua_call(L, 1, 1);
-    lua_pushvalue(L, -1);
-    lua_setfield(L, 2, name);
-    return 1;
-  }
-  return lac_error(L, "no part '%s'", name);
+  const lac_embedded *part = find_part(name);
+  if (part == NULL) return lac_error(L, "no part '%s'", name);
+  if (luaL_loadbufferx(L, (const char *)part->code, part->size, part->name, NULL) != LUA_OK) return lua_error(L);
+  lua_pushvalue(L, lua_upvalueindex(1));
+  lua_call(L, 1, 1);
+  lua_pushvalue(L, -1);
+  lua_setfield(L, 2, name);
+  return 1;
 }
 
 void lac_push_part(lua_State *L, const char *name) {
@@ -49,6 +59,8 @@ int luaopen_lacuna(lua_State *L) {
   lac_open_solve(L);
   lac_open_csv(L);
   lac_open_output(L);
+  lua_pushcfunction(L, has_part);
+  lua_setfield(L, -2, "has_part");
   lua_pushvalue(L, -1);
   lua_pushcclosure(L, load_part, 1);
   lua_pushvalue(L, -1);

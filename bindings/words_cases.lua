@@ -1,0 +1,101 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- The words for cases: what is given, what can be asked, rows of the user's own. words.lua says what the fields are.
+local star = 'c = case{distance = "140 ± 5 pc", stellar_luminosity = "18 Lsun", wavelength = "1.65 um", projected_baseline = "92 m"}'
+
+return {
+  {
+    name = "case", subject = "cases", forms = { "case{name = value, ...}" },
+    does = "What is known of one target, in any order, from which any other name can be asked: c.rim_radius. A case doesn't change; c:with{...} makes another.",
+    arguments = { { "name = value", 'a name of the glossary, and a number (of plain numbers), a text "156 pc" or "156 ± 3 pc", a quantity, a spread, a sweep or an object' } },
+    result = "a case; c.name is a quantity",
+    errors = "an unknown name, a wrong dimension, a value out of range, givens that contradict a definition; on asking, what is missing",
+    examples = { 'case{distance = "140 pc", rim_radius = "0.3 au"}.rim_radius_angle', { star, "c" } },
+    answers = { "2.143 mas", "case\n  distance = 140 ± 5 pc\n  stellar_luminosity = 18 Lsun\n  wavelength = 1.65 µm\n  projected_baseline = 92 m" },
+    see = { "study", "missing", "why" },
+  },
+  {
+    name = "with", of = "case", subject = "cases", forms = { "c:with{name = value, ...}" },
+    does = "The case with other givens. Printed, it tells which recipes changed because a given came or went.",
+    arguments = { { "name = value", "a given instead of what was given, or besides; false takes one away" } },
+    result = "another case",
+    errors = "as of case",
+    examples = { { star, 'c:with{projected_baseline = "330 m"}.array_resolution' } },
+    answers = { "0.5157 mas" },
+  },
+  {
+    name = "using", of = "case", subject = "cases", forms = { 'c:using{name = "recipe", ...}' },
+    does = "The case with these recipes. Which there are is told by recipes.",
+    arguments = { { 'name = "recipe"', "a name, and which of its recipes gives it" } },
+    result = "another case",
+    errors = "an unknown name or recipe, a recipe that can't be had from what is given",
+    examples = { { star, 'c:using{array_resolution = "fringe"}.array_resolution' } },
+    answers = { "3.699 mas" },
+    see = { "recipes" },
+  },
+  {
+    name = "why", of = "case", subject = "cases", forms = { 'c:why "name"' },
+    does = "The derivation of a quantity: equations with the numbers put in, papers, assumptions. Of a verdict also its conditions; and what " ..
+      "other recipes give.",
+    arguments = { { "name", "what is to be derived" } },
+    result = "a derivation, which prints itself; where the name can't be had, what is missing",
+    errors = "an unknown name",
+    examples = { { star, 'c:why "array_resolution"' } },
+    answers = { "array_resolution = 1.85 mas\n  smallest angle that the array tells apart, by the named criterion\n\n  wavelength = 1.65 µm   given\n  projected_baseline = 92 m   given\n  array_resolution = 1.85 mas\n      θ_arr = λ / (2 B)\n      = 1.65 µm / (2 · 92 m)\n      half_fringe: common practice, no source\n      supposes the criterion of half a fringe spacing\n  with other recipes\n      array_resolution by fringe: 3.699 mas (instead of half_fringe)" },
+    see = { "missing", "recipes" },
+  },
+  {
+    name = "missing", of = "case", subject = "cases", forms = { 'c:missing "name"' },
+    does = "What would have to be given for a name, by each way that leads there.",
+    arguments = { { "name", "what is wanted" } },
+    result = "a list that prints itself",
+    errors = "an unknown name",
+    examples = { { star, 'c:missing "gap_width"' } },
+    answers = { "gap_width can't be derived from what is given; give stellar_mass, planet_mass, planet_semi_major_axis, viscosity_alpha (by kanagawa_2016)\n  viscosity_alpha: published values run from 1e-4 to 1e-2: give a number, or viscosity_alpha = spread.log_uniform(1e-4, 1e-2)" },
+  },
+  {
+    name = "check", of = "case", subject = "cases", forms = { "c:check()" },
+    does = "What the other givens make of each given, to find givens that don't fit each other. Single numbers disagree beyond 1 %, error bars where zero lies " ..
+      "outside the 95 % interval of the difference.",
+    result = "a table that prints itself; its agree is false where something disagrees",
+    examples = { 'case{stellar_luminosity = "2 ± 0.1 Lsun", stellar_radius = "1.7 ± 0.1 Rsun", effective_temperature = "5000 ± 100 K"}:check()' },
+    answers = { "effective_temperature: given 5000 ± 100 K, by luminosity_and_radius 5270 ± 170 K: agree" },
+  },
+  {
+    name = "solve", of = "case", subject = "cases", forms = { 'c:solve("given", {name = value})', 'c:solve("given", {name = value}, {between = {low, high}})' },
+    does = "For which value of a given a name reaches a goal. The chain of relations stays as it is. Of a verdict over draws the goal is its chance: {name = 0.9}.",
+    arguments = {
+      { "given", "what may change; it must be given in the case, and its present value says where the search starts" },
+      { "name = value", "the goal: a name and its value with unit, or a verdict and true, a share or \"90 %\"" },
+      { "between", "bounds of the search; four decades to both sides if left out" },
+    },
+    result = "a quantity; of several solutions the nearest, and a second result that says so; nil and the reason where there is none",
+    errors = "a name that isn't given, a goal that doesn't depend on it, an unknown name",
+    examples = { { star, 'c:solve("projected_baseline", {array_resolution = "1 mas"})' }, { star, 'c:solve("projected_baseline", {rim_resolved_by_array = 0.9})' } },
+    answers = { "170.2 m", "85.21 m" },
+  },
+  {
+    name = "givens", of = "case", subject = "cases", forms = { "c:givens()" },
+    does = "The names that are given, in the order of the glossary.",
+    result = "a list of texts",
+    examples = { { star, 'table.concat(c:givens(), ", ")' } },
+    answers = { "\"distance, stellar_luminosity, wavelength, projected_baseline\"" },
+  },
+  {
+    name = "relation", subject = "cases",
+    forms = { "relation{gives = name, by = recipe, from = {names}, function(a, b) ... end, source = ..., equation = ..., supposes = ...}" },
+    does = "A row of your own: how one name follows from others. It joins the chain after the built-in recipes; using takes it first.",
+    arguments = {
+      { "gives, from", "names of the glossary; make new ones known with quantity{...}" },
+      { "by", "what the recipe is called, \"yours\" if left out" },
+      { "function", "gets the inputs as quantities in the order of from, single or along an axis (so: no < or >), and returns a quantity of the dimension of gives" },
+      { "source, supposes", "texts, shown with every derivation" },
+      { "equation", "in TeX, names in brackets: \"[rim_radius] = 2 [stellar_radius]\"" },
+    },
+    result = "nothing: the row is there from now on",
+    errors = "an unknown name, a recipe that exists, a circle, an equation that can't be read",
+    examples = { { 'relation{gives = "cavity_radius", by = "tenth", from = {"characteristic_radius"}, function(r) return 0.1 * r end, source = "invented"}',
+      'case{characteristic_radius = "50 au"}.cavity_radius' } },
+    answers = { "5 au" },
+    see = { "quantity" },
+  },
+}

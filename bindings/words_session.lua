@@ -1,0 +1,52 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- The words for the session and for help. words.lua says what the fields are.
+return {
+  {
+    name = "settings", subject = "session", forms = { "settings()", "settings{seed = 0, draws = 10000, threads = n, memory = MiB}" },
+    does = "Sets those named, and returns all. They hold for what is made afterwards.",
+    arguments = {
+      { "seed", "key of the random draws; the same seed gives the same draws, on any number of threads" },
+      { "draws", "how many draws stand for an error bar" },
+      { "threads", "how many processor cores to use" },
+      { "memory", "how much memory arrays may take, in MiB" },
+    },
+    result = "a table of all settings",
+    errors = "an unknown setting, a number out of range",
+    examples = { "settings{seed = 7, draws = 1000}.draws" },
+    answers = { "1000" },
+  },
+  {
+    name = "show", subject = "session", forms = { "show(value, ...)" },
+    does = "The text of values as the prompt writes them.",
+    result = "a text",
+    examples = { { "text = show(5*au)", "text" } },
+    answers = { "\"5 au\"" },
+  },
+  {
+    name = "globals", subject = "session", forms = { "globals(environment)" },
+    does = "Makes all words, units and names readable as globals, for scripts that load the module. They write lacuna.globals(_ENV). A unit's global can't be assigned to then.",
+    arguments = { { "environment", "a table, _ENV mostly" } },
+    result = "the environment",
+    examples = { "globals{}.au" },
+    answers = { "1 au" },
+  },
+  {
+    name = "help", subject = "help", forms = { "help()", 'help "name"', 'help "some words"' },
+    does = "A map by subject; one name, word, method or unit; or a search. The search goes through names, synonyms, meanings, recipes and their sources, and the words of the language.",
+    arguments = { { "name", 'a name of the glossary or a synonym, a word, a method ("solve", "case:solve"), a unit, a material, a band; or a quantity' } },
+    result = "a page that prints itself",
+    errors = "what is neither a text nor a quantity with a name",
+    examples = { 'help "parallax"' },
+    answers = { "parallax  ϖ\n  annual parallax of the star\n  in mas, > 0\n  also called plx\n\n  distance, from distance\n      ϖ = 1 arcsec (1 pc / d)\n      definition" },
+  },
+  {
+    name = "recipes", subject = "help", forms = { 'recipes "name"', 'recipes("name", c)' },
+    does = "All recipes of a name with equations, sources and ranges of validity. With a case, what each gives in it, side by side.",
+    arguments = { { "name", "a name of the glossary" }, { "c", "a case" } },
+    result = "a page that prints itself",
+    errors = "an unknown name, a second argument that is no case",
+    examples = { 'recipes("array_resolution", case{wavelength = "1.65 um", projected_baseline = "92 m"})' },
+    answers = { "  half_fringe, from wavelength, projected_baseline\n      θ_arr = λ / (2 B)\n      common practice, no source\n      supposes the criterion of half a fringe spacing\n      = 1.85 mas\n  fringe, from wavelength, projected_baseline\n      θ_arr = λ/B\n      common practice, no source\n      supposes the criterion of one fringe spacing\n      = 3.699 mas" },
+    see = { "using", "why" },
+  },
+}

@@ -1,0 +1,52 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- The words for studies. words.lua says what the fields are.
+local two_stars = 'stars = study{targets = {{name = "Alder", distance = "140 pc"}, {name = "Birch", distance = "160 ± 4 pc"}}, given = {rim_radius = "0.3 au"}, ask = {"rim_radius_angle"}}'
+
+return {
+  {
+    name = "study", subject = "studies", forms = { "study{targets = ..., given = {...}, ask = {...}, variants = {...}, ...}" },
+    does = "Asks the same of a list of targets. Prints a table with error bars, reasons, recipes and assumptions.",
+    arguments = {
+      { "targets", "the name of a CSV file whose headers are names with units, like distance [pc] and distance error [pc]; or a list of {name = ..., distance = ...}" },
+      { "given", "what is common to all targets, as in case{...}" },
+      { "ask", "names, a column each" },
+      { "variants", "a list of {name = ..., given = {...}, ask = {...}, using = {...}}: further columns with other givens" },
+      { "using", "recipes, as in c:using{...}" },
+      { "title", "stands above the table" },
+      { "csv, latex", "names of files to write" },
+    },
+    result = "a study: stars.rows, stars:table(), stars:csv(), stars:latex()",
+    errors = "an unknown field or name, a target without a name or with one that exists, a cell that can't be read (with file and line), sweeps, nothing that can be derived",
+    examples = { two_stars },
+    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide." },
+  },
+  {
+    name = "rows", of = "study", field = true, subject = "studies", forms = { "stars.rows" },
+    does = "The rows of a study, one a target, for more questions. A row has row.name, row.case, row.variants[name] and row.texts.",
+    result = "a list of tables",
+    examples = { { two_stars, "stars.rows[2].name, stars.rows[2].case.rim_radius_angle" } },
+    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\n\"Birch\"\n1.875 ± 0.047 mas" },
+  },
+  {
+    name = "table", of = "study", subject = "studies", forms = { "stars:table()", "stars:table(columns)" },
+    does = "The table and its notes as text.",
+    arguments = { { "columns", "how wide it may be; the terminal's width, or 100, if left out" } },
+    result = "a text",
+    examples = { { two_stars, '#stars:table(60) > 0' } },
+    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\ntrue" },
+  },
+  {
+    name = "csv", of = "study", subject = "studies", forms = { "stars:csv()" },
+    does = "The table as CSV, with units in the headers and errors in columns of their own.",
+    result = "a text",
+    examples = { { two_stars, "stars:csv()" } },
+    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\n\"name,rim_radius_angle [mas],rim_radius_angle upper error [mas],rim_radius_angle lower error [mas]\\\nAlder,2.142857,,\\\nBirch,1.875142,0.04717808,0.04717808\\\n\"" },
+  },
+  {
+    name = "latex", of = "study", subject = "studies", forms = { "stars:latex()" },
+    does = "The table as LaTeX, with its notes.",
+    result = "a text",
+    examples = { { two_stars, 'stars:latex():match "begin{(%w+)}"' } },
+    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\n\"tabular\"" },
+  },
+}
