@@ -122,7 +122,9 @@ end
 local function derive(self, changes, using)
   local info = core.info(self)
   local other = make(changes, info.givens, using, info)
-  core.info(other).changed = changed_recipes(self, other)
+  local changed = changed_recipes(self, other)
+  core.info(other).changed = changed
+  if #changed > 0 then core.remember_answers(other) end -- so that they can say which recipes are not those of before
   return other
 end
 

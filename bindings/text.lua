@@ -43,6 +43,7 @@ local function share(quantity)
   return core.elements(quantity)[1] ~= 0 and core.elements(quantity)[1] or 0
 end
 
+-- " (1.2 % of draws undefined)", or nothing.
 local function undefined_note(quantity)
   local axes, count = core.axes(quantity), quantity
   for i, axis in ipairs(axes) do
@@ -54,6 +55,7 @@ local function undefined_note(quantity)
   if has_draws(axes) then return (" (%s of draws undefined)"):format(format.percent(count / size)) end
   return (" (%d of %d points undefined)"):format(count, size)
 end
+text.undefined_note = undefined_note
 
 -- Median, upper and lower error of an ensemble in its display unit. Sides that differ by less than a tenth are taken as equal: with some
 -- thousands of draws each is known to a few per cent only.
@@ -65,9 +67,14 @@ function text.median_and_errors(quantity, factor)
   return median, upper, lower
 end
 
--- An ensemble along the axis draw alone: "0.46 ± 0.03".
+-- An ensemble along the axis draw alone: "0.46 ± 0.03". With infinite draws among the central 68 % there is no error bar to write.
 local function ensemble(quantity, factor)
   local median, upper, lower = text.median_and_errors(quantity, factor)
+  if not (upper < math.huge and lower < math.huge) and median == median then
+    local low, high = core.interval(quantity)
+    low, high = core.elements(low)[1] / factor, core.elements(high)[1] / factor
+    return low == high and format.number(median) or ("%s, 68 %% from %s to %s"):format(format.number(median), format.number(low), format.number(high))
+  end
   if math.max(upper, lower) <= 1e-12 * math.abs(median) then return format.number(median) end -- it doesn't depend on what is uncertain
   return format.with_error(median, upper, lower)
 end

@@ -4,7 +4,8 @@
 --   histogram(counts)                 one line, a character a count
 --   histogram(values, columns, { low =, high =, log = true })    the same of values sorted into so many bins from low to high
 --   curve{ x =, y =, low =, high =, low95 =, high95 =, level = }  a curve, its 68 % and 95 % bands, a level line
---   map{ x =, y =, z = { [i] = { [j] = z at x[i], y[j] } }, contour =, z_label =, z_log = true }
+--   map{ x =, y =, z = { [i] = { [j] = z at x[i], y[j] } }, contour =, z_label =, z_log = true,
+--       legend = false }
 --   points{ x =, y =, x_error =, y_error =, names = }             an error is a number, or { upper, lower }
 --
 -- Those with axes also take x_label, y_label, x_log, y_log, width and height (of the whole picture, 80 and 14 where left out) and
@@ -333,9 +334,12 @@ end
 local function map_heads(options, z)
   local glyphs, holes = look(options.ascii), false
   for _, column in ipairs(options.z) do holes = holes or has_hole(column, options.z_log) end
-  local shades = table.concat(glyphs.shades, "", 0, 4)
-  local parts = { ("%s %s [%s] %s"):format(options.z_label or "", format.number(z.low, 3), shades, format.number(z.high, 3)):match "^ ?(.*)$" }
-  if options.contour then parts[2] = glyphs.contour .. " across " .. format.number(options.contour) end
+  local parts = {}
+  if options.z_label then parts[1] = options.z_label end
+  if options.legend ~= false then
+    parts[#parts + 1] = ("%s [%s] %s"):format(format.number(z.low), table.concat(glyphs.shades, "", 0, 4), format.number(z.high))
+  end
+  if options.contour then parts[#parts + 1] = glyphs.contour .. " across " .. format.number(options.contour) end
   if holes then parts[#parts + 1] = undefined_mark(options) end
   return { table.concat(parts, "   ") }
 end
