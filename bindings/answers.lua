@@ -51,7 +51,7 @@ local function histogram_line(quantity)
   local low, high = middle(values)
   if not low then return nil end
   local log = low > 0 and high / low > 30
-  local bars = textplot.histogram(values, math.min(MOST_BINS, math.ceil(2 * #values ^ 0.5)), { low = low, high = high, log = log })
+  local bars = textplot.histogram(values, math.min(MOST_BINS, math.ceil(2 * (#values) ^ 0.5)), { low = low, high = high, log = log })
   return ("  %s %s %s"):format(format.number(low, 3), bars, format.with_unit(format.number(high, 3), unit)) ..
     show.aside(("   99 %% of the draws%s"):format(log and ", logarithmic" or ""))
 end

@@ -205,7 +205,7 @@ end
 function methods.missing(self, word)
   local name = name_of(word, "missing: ")
   local sets = core.missing_sets(self, name)
-  return setmetatable({ name = name, sets = sets, had = core.row_of(self, name) ~= nil }, text.missing_metatable)
+  return setmetatable({ case = self, name = name, sets = sets, had = core.row_of(self, name) ~= nil }, text.missing_metatable)
 end
 
 -- Single numbers agree within 1 %; ensembles where zero lies inside the 95 % interval of the difference.
