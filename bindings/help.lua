@@ -109,14 +109,14 @@ local function add_methods(lines, record)
     longest = math.max(longest, #full)
   end
   if #listed > 0 then lines[#lines + 1] = ('  it has (help "%s" tells more of one)'):format(listed[1][1]) end
-  for _, pair in ipairs(listed) do lines[#lines + 1] = ("    %s  %s"):format(format.pad_right(pair[1], longest), pair[2]) end
+  for _, pair in ipairs(listed) do lines[#lines + 1] = ("    %s\t%s"):format(format.pad_right(pair[1], longest), pair[2]) end
 end
 
 local function add_examples(lines, record)
   for i, example in ipairs(record.examples or {}) do
     if i == 1 then lines[#lines + 1] = "  example" .. (#record.examples > 1 and "s" or "") end
     for _, line in ipairs(type(example) == "table" and example or { example }) do lines[#lines + 1] = "    > " .. line end
-    for line in record.answers[i]:gmatch "[^\n]+" do lines[#lines + 1] = "    " .. line end
+    for line in (record.answers[i] .. "\n"):gmatch "(.-)\n" do lines[#lines + 1] = line == "" and "" or "    " .. line end
   end
 end
 
@@ -127,7 +127,7 @@ local function add_word(lines, record)
   local longest = 0
   for _, argument in ipairs(record.arguments or {}) do longest = math.max(longest, format.width(argument[1])) end
   for _, argument in ipairs(record.arguments or {}) do
-    lines[#lines + 1] = ("    %s  %s"):format(format.pad_right(argument[1], math.min(longest, 24)), argument[2])
+    lines[#lines + 1] = ("    %s\t%s"):format(format.pad_right(argument[1], math.min(longest, 24)), argument[2])
   end
   if record.result then lines[#lines + 1] = "  result: " .. record.result end
   if record.errors then lines[#lines + 1] = "  errors: " .. record.errors end
@@ -165,13 +165,14 @@ local function found_or_not(query, found, all_known)
   if #found > 0 and all_known then return ("about '%s':"):format(query) end
   local near = core.nearest((query:gsub("%s+", "_")))
   if #near > 0 then return ("there is no '%s'; nearest are %s"):format(query, table.concat(near, ", ")) end
-  return ("nothing about '%s'; %s"):format(query, #found > 0 and "about what is spelt nearly so:" or "help() lists what there is")
+  return (#found > 0 and "not all of '%s' is known; about what is spelt like it:" or "nothing about '%s'; help() lists what there is"):format(query)
 end
 
 local function about_words_searched(query)
   local found, all_known = core.part "lacuna.search".find(query)
-  local lines = new_page(found_or_not(query, found, all_known))
-  for i = 1, math.min(#found, MOST_FOUND) do lines[#lines + 1] = ("  %s %s"):format(format.pad_right(found[i].title, 34), found[i].meaning) end
+  local lines, longest = new_page(found_or_not(query, found, all_known)), 0
+  for i = 1, math.min(#found, MOST_FOUND) do longest = math.max(longest, #found[i].title) end
+  for i = 1, math.min(#found, MOST_FOUND) do lines[#lines + 1] = ("  %s\t%s"):format(format.pad_right(found[i].title, longest), found[i].meaning) end
   if #found > MOST_FOUND then lines[#lines + 1] = ("  and %d more"):format(#found - MOST_FOUND) end
   return lines
 end

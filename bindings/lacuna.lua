@@ -136,6 +136,7 @@ setmetatable(lacuna, { __index = look_up, later = later })
 
 -- globals(environment): makes the words, units and names readable as globals there. A unit's global can't be assigned to.
 function lacuna.globals(environment)
+  if type(environment) ~= "table" then core.raise("globals wants a table, like globals(_ENV); got " .. core.shown(environment)) end
   return setmetatable(environment, {
     __index = lacuna,
     __newindex = function(t, word, value)

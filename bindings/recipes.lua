@@ -106,7 +106,7 @@ local function add_aligned(lines, cells)
     for i = 1, 2 do widths[i] = math.max(widths[i], format.width(row[i])) end
   end
   for _, row in ipairs(cells) do
-    lines[#lines + 1] = ("  %s  %s  %s"):format(format.pad_right(row[1], widths[1]), format.pad_right(row[2], widths[2]), row[3]):gsub(" +$", "")
+    lines[#lines + 1] = ("  %s  %s\t%s"):format(format.pad_right(row[1], widths[1]), format.pad_right(row[2], widths[2]), row[3]):gsub("%s+$", "")
   end
 end
 

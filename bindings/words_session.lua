@@ -18,6 +18,7 @@ return {
   {
     name = "show", subject = "session", forms = { "show(value, ...)" },
     does = "The text of values as the prompt writes them.",
+    arguments = { { "value", "anything" } },
     result = "a text",
     examples = { { "text = show(5*au)", "text" } },
     answers = { "\"5 au\"" },
@@ -27,6 +28,7 @@ return {
     does = "Makes all words, units and names readable as globals, for scripts that load the module. They write lacuna.globals(_ENV). A unit's global can't be assigned to then.",
     arguments = { { "environment", "a table, _ENV mostly" } },
     result = "the environment",
+    errors = "what is no table; on assigning to a unit's global later, that it is a unit",
     examples = { "globals{}.au" },
     answers = { "1 au" },
   },
