@@ -265,6 +265,9 @@ function methods.givens(self)
   return names
 end
 
+-- c:recipes(name): what each recipe of a name gives in this case; prints itself.
+function methods.recipes(self, word) return core.part "lacuna.recipes".recipes(word, self) end
+
 -- The solver is loaded when it is first asked for; it takes this method's place.
 function methods.solve(self, ...)
   core.part "lacuna.solve"

@@ -2,9 +2,9 @@
 -- help(): a map by subject. help "gap_width": one name. help "word": one word of the language, a unit, or a search. All from the tables.
 local core = ...
 local text = core.part "lacuna.text"
-local equation = core.part "lacuna.equation"
 local format = core.part "lacuna.format"
 local words = core.part "lacuna.words"
+local recipes = core.part "lacuna.recipes"
 
 local help = {}
 
@@ -72,26 +72,6 @@ local function unit_text(entry)
   return entry.unit == "1" and "a plain number" or "in " .. written
 end
 
-local function add_row(lines, row)
-  local function add(s) lines[#lines + 1] = "      " .. s end
-  if row.kind == "assumed" then
-    lines[#lines + 1] = ("  assumed %s: %s"):format(row.assumes, text.source(row))
-  else
-    lines[#lines + 1] = ("  %s, from %s"):format(row.by, table.concat(row.from, ", "))
-    if row.equation and row.equation ~= "" then add(equation.plain(row.equation, text.symbol)) end
-    add(row.source == "definition" and "definition" or text.source(row))
-  end
-  if row.supposes then add("supposes " .. row.supposes) end
-  if row.unchecked then add("not checked: " .. row.unchecked) end
-  for _, bound in ipairs(row.holds) do
-    local entry = core.entry(bound.name)
-    local _, _, unit = core.unit_facts(entry.unit)
-    add(("holds for %s from %s to %s%s"):format(bound.name, format.number(bound.low / entry.factor), format.number(bound.high / entry.factor),
-      entry.unit == "1" and "" or " " .. unit))
-  end
-  if row.inverse_of then add("the inverse of " .. row.inverse_of) end
-end
-
 local function about_name(name)
   local entry = core.entry(name)
   local lines = new_page(("%s  %s"):format(name, text.symbol(name)), "  " .. entry.meaning)
@@ -102,8 +82,13 @@ local function about_name(name)
   if entry.on_sky then lines[#lines + 1] = ("  on the sky: %s_angle"):format(name) end
   lines[#lines + 1] = ""
   if #entry.rows == 0 then lines[#lines + 1] = "  It must be given: no relation gives it." end
-  for _, number in ipairs(entry.rows) do add_row(lines, core.row(number)) end
+  for _, number in ipairs(entry.rows) do recipes.add_row(lines, core.row(number)) end
   if entry.hint then lines[#lines + 1] = "  " .. entry.hint end
+  local example = core.part "lacuna.example".of(name)
+  local computed, answer = pcall(example and example.answer) -- a relation of the user's may fail
+  if computed then
+    for _, line in ipairs { "", "  example", "    > " .. example.line, "    " .. answer:gsub("\n", "\n    ") } do lines[#lines + 1] = line end
+  end
   return lines
 end
 
@@ -124,14 +109,14 @@ local function add_methods(lines, record)
     longest = math.max(longest, #full)
   end
   if #listed > 0 then lines[#lines + 1] = ('  it has (help "%s" tells more of one)'):format(listed[1][1]) end
-  for _, pair in ipairs(listed) do lines[#lines + 1] = ("    %s  %s"):format(format.pad_right(pair[1], longest), pair[2]) end
+  for _, pair in ipairs(listed) do lines[#lines + 1] = ("    %s\t%s"):format(format.pad_right(pair[1], longest), pair[2]) end
 end
 
 local function add_examples(lines, record)
   for i, example in ipairs(record.examples or {}) do
     if i == 1 then lines[#lines + 1] = "  example" .. (#record.examples > 1 and "s" or "") end
     for _, line in ipairs(type(example) == "table" and example or { example }) do lines[#lines + 1] = "    > " .. line end
-    for line in record.answers[i]:gmatch "[^\n]+" do lines[#lines + 1] = "    " .. line end
+    for line in (record.answers[i] .. "\n"):gmatch "(.-)\n" do lines[#lines + 1] = line == "" and "" or "    " .. line end
   end
 end
 
@@ -142,7 +127,7 @@ local function add_word(lines, record)
   local longest = 0
   for _, argument in ipairs(record.arguments or {}) do longest = math.max(longest, format.width(argument[1])) end
   for _, argument in ipairs(record.arguments or {}) do
-    lines[#lines + 1] = ("    %s  %s"):format(format.pad_right(argument[1], math.min(longest, 24)), argument[2])
+    lines[#lines + 1] = ("    %s\t%s"):format(format.pad_right(argument[1], math.min(longest, 24)), argument[2])
   end
   if record.result then lines[#lines + 1] = "  result: " .. record.result end
   if record.errors then lines[#lines + 1] = "  errors: " .. record.errors end
@@ -175,15 +160,19 @@ end
 
 local MOST_FOUND = 12
 
-local function about_words_searched(query)
-  local found = core.part "lacuna.search".find(query)
+-- What stands before the list of what was found.
+local function found_or_not(query, found, all_known)
+  if #found > 0 and all_known then return ("about '%s':"):format(query) end
   local near = core.nearest((query:gsub("%s+", "_")))
-  local lines = new_page()
-  if not query:find "%s" then
-    lines[1] = ("there is no '%s'%s"):format(query, #near > 0 and "; nearest are " .. table.concat(near, ", ") or #found == 0 and "; help() lists what there is" or "")
-  elseif #found == 0 then lines[1] = ("nothing about '%s'; help() lists what there is"):format(query) end
-  if #found > 0 then lines[#lines + 1] = ("about '%s':"):format(query) end
-  for i = 1, math.min(#found, MOST_FOUND) do lines[#lines + 1] = ("  %s %s"):format(format.pad_right(found[i].title, 34), found[i].meaning) end
+  if #near > 0 then return ("there is no '%s'; nearest are %s"):format(query, table.concat(near, ", ")) end
+  return (#found > 0 and "not all of '%s' is known; about what is spelt like it:" or "nothing about '%s'; help() lists what there is"):format(query)
+end
+
+local function about_words_searched(query)
+  local found, all_known = core.part "lacuna.search".find(query)
+  local lines, longest = new_page(found_or_not(query, found, all_known)), 0
+  for i = 1, math.min(#found, MOST_FOUND) do longest = math.max(longest, #found[i].title) end
+  for i = 1, math.min(#found, MOST_FOUND) do lines[#lines + 1] = ("  %s\t%s"):format(format.pad_right(found[i].title, longest), found[i].meaning) end
   if #found > MOST_FOUND then lines[#lines + 1] = ("  and %d more"):format(#found - MOST_FOUND) end
   return lines
 end
@@ -200,26 +189,6 @@ function help.help(word)
   if name then return about_words(records, about_name(name)) end
   if #records > 0 then return about_words(records, new_page()) end
   return core.unit_facts(word) and about_unit(word) or about_built_in(word) or about_words_searched(word)
-end
-
--- recipes "gap_width": all recipes of a name. recipes("gap_width", case): with what each gives in a case.
-function help.recipes(word, self)
-  if type(word) ~= "string" then core.raise("recipes wants a name, like recipes \"gap_width\"; got " .. core.shown(word)) end
-  if self ~= nil and not core.is_case(self) then core.raise("recipes wants a case after the name; got " .. core.shown(self)) end
-  local name = core.find(word)
-  if not name then core.raise(core.part "lacuna.case".unknown_name(word, "recipes: ")) end
-  local lines = new_page()
-  for _, number in ipairs(core.entry(name).rows) do
-    local row = core.row(number)
-    add_row(lines, row)
-    if self then
-      local other = core.part "lacuna.case".by_recipe(self, name, row.by)
-      local value = other and core.raw(other, name)
-      lines[#lines + 1] = "      " .. (value and "= " .. text.quantity(value) or "not to be had from what is given")
-    end
-  end
-  if #lines == 0 then lines[1] = name .. " has no recipe: it must be given" end
-  return lines
 end
 
 return help

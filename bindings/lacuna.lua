@@ -109,7 +109,10 @@ lacuna.spread = words_of("spread", {
 lacuna.sweep = words_of("sweep", { log = core.sweep_log }, function(_, ...) return core.sweep(...) end)
 
 -- Parts that many runs don't need are loaded when they are first asked for.
-later = { glossary = "lacuna.glossary", help = "lacuna.help", recipes = "lacuna.help", study = "lacuna.study", dust = "lacuna.dust", material = "lacuna.dust" }
+later = {
+  compare = "lacuna.compare", dust = "lacuna.dust", glossary = "lacuna.glossary", help = "lacuna.help", material = "lacuna.dust",
+  recipes = "lacuna.recipes", study = "lacuna.study",
+}
 
 local function look_up(_, word)
   if type(word) ~= "string" then return nil end
@@ -136,6 +139,7 @@ setmetatable(lacuna, { __index = look_up, later = later })
 
 -- globals(environment): makes the words, units and names readable as globals there. A unit's global can't be assigned to.
 function lacuna.globals(environment)
+  if type(environment) ~= "table" then core.raise("globals wants a table, like globals(_ENV); got " .. core.shown(environment)) end
   return setmetatable(environment, {
     __index = lacuna,
     __newindex = function(t, word, value)

@@ -17,8 +17,9 @@ for word in ("a an and are as at be by can do does for from how i in is it its m
   carry_nothing[word] = true
 end
 
+-- Other spellings, Greek letters, and adjectives whose nouns have another stem.
 local spellings = {
-  disk = "disc", gray = "grey", ["α"] = "alpha", ["β"] = "beta", ["γ"] = "gamma", ["ε"] = "epsilon", ["θ"] = "theta", ["κ"] = "kappa", ["λ"] = "lambda", ["μ"] = "mu",
+  disk = "disc", gray = "grey", deep = "depth", high = "height", long = "length", ["α"] = "alpha", ["β"] = "beta", ["γ"] = "gamma", ["ε"] = "epsilon", ["θ"] = "theta", ["κ"] = "kappa", ["λ"] = "lambda", ["μ"] = "mu",
   ["ν"] = "nu", ["ρ"] = "rho", ["σ"] = "sigma", ["Σ"] = "sigma", ["ω"] = "omega", ["Ω"] = "omega", ["Δ"] = "delta",
 }
 
@@ -29,7 +30,7 @@ local endings = {
 }
 
 local function stem(word)
-  word = spellings[word] or word:gsub("meter", "metre")
+  word = spellings[word] or word:gsub("meter$", "metre"):gsub("meters$", "metres")
   for _, ending in ipairs(endings) do
     local stripped, count = word:gsub(ending[1], ending[2])
     if count > 0 and #stripped >= 3 then return stripped end
@@ -175,13 +176,13 @@ local function score(entry, wanted, rarity)
   return total * coverage * coverage * entry.share * (1 + share_of_name(entry, wanted)) * (1 + 0.2 * pairs_in_order(entry, wanted))
 end
 
--- What some words are about: a list of { title =, meaning = }, the best first.
+-- What some words are about: a list of { title =, meaning = }, the best first; and whether all words occur as they are spelt.
 function search.find(query)
   local entries, occurs, stem_of = all_entries()
-  local wanted, rarity, found = {}, {}, {}
+  local wanted, rarity, found, all_known = {}, {}, {}, true
   for i, word in ipairs(words_of(query)) do
     local known, certain = stem(word), 1
-    if not occurs[known] then known, certain = nearest_stem(word, occurs, stem_of) or known, 0.5 end
+    if not occurs[known] then known, certain, all_known = nearest_stem(word, occurs, stem_of) or known, 0.5, false end
     wanted[i] = known
     rarity[known] = certain * math.log(1 + #entries / (occurs[known] or 1))
   end
@@ -190,7 +191,7 @@ function search.find(query)
     if entry.score > 0 then found[#found + 1] = entry end
   end
   table.sort(found, function(a, b) return a.score > b.score or a.score == b.score and a.order < b.order end)
-  return found
+  return found, all_known
 end
 
 return search

@@ -23,14 +23,19 @@ local function finished(text, colour) return (text:gsub("[\1\2\3]", colour and e
 
 -- Pages ---------------------------------------------------------------------------------------------------------------------------
 
--- A line folded at its spaces, what follows set in by two more; longer words stand alone.
+-- Where a line may be folded: at its spaces; code, which stands after "> ", where a comma is before them.
+local function may_fold(line, before) return before:find "%S" and (not line:find "^ *> " or before:sub(-1) == ",") end
+
+-- A line folded, what follows set in by two more, or under what stands after a tab; longer words stand alone.
 local function fold(line, columns)
-  local folded, further = {}, line:match "^ *" .. "  "
+  local folded, first = {}, line:match "^(.-)\t"
+  local further = first and format.width(first) <= columns / 2 and (" "):rep(format.width(first) + 2) or line:match "^ *" .. "  "
+  line = line:gsub("\t", "  ")
   while format.width(line) > columns do
     local at
     for space in line:gmatch "()%f[ ] +" do
       local before = line:sub(1, space - 1)
-      if before:find "%S" and (not at or format.width(before) <= columns) then at = space end
+      if #before >= #further and may_fold(line, before) and (not at or format.width(before) <= columns) then at = space end
     end
     if not at then break end
     folded[#folded + 1] = line:sub(1, at - 1)
@@ -40,11 +45,12 @@ local function fold(line, columns)
   return table.concat(folded, "\n")
 end
 
--- The text of a page's lines: folded on a terminal, as they are in a file.
+-- The text of a page's lines: folded on a terminal, as they are in a file. A tab (two spaces when written) says under what to go on.
 function show.page(lines)
   local columns = core.terminal_width()
   local text = table.concat(lines, "\n")
-  return columns and text:gsub("[^\n]+", function(line) return fold(line, math.max(columns, 40)) end) or text
+  if not columns then return (text:gsub("\t", "  ")) end
+  return (text:gsub("[^\n]+", function(line) return fold(line, math.max(columns, 40)) end))
 end
 
 -- Answers -------------------------------------------------------------------------------------------------------------------------

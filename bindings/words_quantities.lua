@@ -7,7 +7,15 @@ local along_axis = { "axis", 'the axis to go along, "draw" if left out; the othe
 -- A summary over the draws, a word and a method.
 local function summary(fields)
   fields.subject, fields.also_of = "quantities", "quantity"
-  fields.result = fields.result or "a quantity of the same dimension without that axis"
+  fields.result = fields.result or "a quantity of the same dimension without that axis; one that hasn't got the axis stays as it is"
+  fields.errors = fields.errors or "what is no quantity"
+  return fields
+end
+
+-- A function of one quantity, point by point.
+local function of_one(fields)
+  fields.subject = "quantities"
+  fields.result = fields.result or "a plain number"
   return fields
 end
 
@@ -133,6 +141,9 @@ return {
     forms = { "spread.normal(...)", "spread.lopsided(...)", "spread.uniform(...)", "spread.log_uniform(...)", "spread.log_normal(...)", "spread.samples{...}" },
     does = "Quantities known with an error bar: an ensemble along the axis draw. The same seed, target and name give the same draws; how many there are and from " ..
       "which seed is said by settings.",
+    arguments = { { "...", "what each of them wants: help \"spread.normal\"" } },
+    result = "a spread: given in a case it becomes an ensemble, bound to the case's target and the given's name",
+    errors = "arguments of different dimensions or out of range",
     examples = { 'case{distance = "140 pc", rim_radius = spread.uniform(0.2*au, 0.4*au)}.rim_radius_angle' },
     answers = { "2.14 ± 0.49 mas" },
     see = { "settings", "chance", "interval" },
@@ -166,7 +177,7 @@ return {
     answers = { "1.429  2.5 mas\n  along star, 2 points" },
   },
   summary { name = "mean", forms = { "mean(q)", "q:mean()", "mean(q, axis)" }, does = "The mean over the draws.",
-    arguments = { { "q", "a quantity" }, along_axis }, errors = "a quantity with axes but not that one", examples = { { uncertain_radius, "mean(r)" } },
+    arguments = { { "q", "a quantity" }, along_axis }, examples = { { uncertain_radius, "mean(r)" } },
     answers = { "1.923 mas" } },
   summary { name = "median", forms = { "median(q)", "q:median()", "median(q, axis)" }, does = "The median over the draws.",
     arguments = { { "q", "a quantity" }, along_axis }, examples = { { uncertain_radius, "r:median()" } },
@@ -184,10 +195,10 @@ return {
   summary { name = "chance", see = { "above", "below" }, forms = { "chance(v)", "v:chance()", "chance(v, axis)" },
     does = "The share of draws for which a verdict holds. Undefined draws count in the denominator, as not holding.",
     arguments = { { "v", "a verdict, like c.rim_resolved_by_array or above(a, b)" }, along_axis }, result = "a plain number from 0 to 1",
-    errors = "a quantity with a unit", examples = { { uncertain_radius, 'chance(above(r, "2 mas"))' } },
+    errors = "a quantity with a unit, or with axes but not this one", examples = { { uncertain_radius, 'chance(above(r, "2 mas"))' } },
     answers = { "0.2815" } },
   summary { name = "undefined", forms = { "undefined(q)", "q:undefined()", "undefined(q, axis)" }, does = "How many draws are undefined: those that left a relation's domain.",
-    arguments = { { "q", "a quantity" }, along_axis }, result = "a plain number",
+    arguments = { { "q", "a quantity" }, along_axis }, result = "a plain number", errors = "a quantity with axes but not this one",
     examples = { 'undefined(case{planet_semi_major_axis = "3 ± 1 au", gap_width = "4 au"}.gap_inner_radius)' },
     answers = { "1651" } },
   summary { name = "lowest", forms = { "lowest(q)", "q:lowest()", "lowest(q, axis)" }, does = "The lowest value along an axis.",
@@ -214,28 +225,28 @@ return {
   of_two { name = "greatest", forms = { "greatest(a, b)" }, does = "The greater of two quantities, point by point.", result = "a quantity",
     errors = "quantities of different dimensions", examples = { 'greatest("2 au", "400e6 km")' },
     answers = { "2.674 au" } },
-  { name = "sqrt", also_of = "quantity", subject = "quantities", forms = { "sqrt(q)", "q:sqrt()" }, does = "The square root of a quantity, point by point, of any dimension.",
+  of_one { name = "sqrt", also_of = "quantity", arguments = { { "q", "a quantity of any dimension" } }, errors = "what is no quantity", forms = { "sqrt(q)", "q:sqrt()" }, does = "The square root of a quantity, point by point, of any dimension.",
     result = "a quantity of half the dimension", examples = { "sqrt(4*au*au)" },
     answers = { "2 au" } },
-  { name = "abs", also_of = "quantity", subject = "quantities", forms = { "abs(q)", "q:abs()" }, does = "A quantity without its sign, point by point.",
+  of_one { name = "abs", also_of = "quantity", arguments = { { "q", "a quantity of any dimension" } }, errors = "what is no quantity", forms = { "abs(q)", "q:abs()" }, does = "A quantity without its sign, point by point.",
     result = "a quantity", examples = { "abs(-3*K)" },
     answers = { "3 K" } },
-  { name = "exp", subject = "quantities", forms = { "exp(x)" }, does = "e to the power of a plain number, point by point.", result = "a plain number",
+  of_one { name = "exp", arguments = { { "x", "a plain number, a spread or sweep of such" } }, forms = { "exp(x)" }, does = "e to the power of a plain number, point by point.",
     errors = "a quantity with a unit", examples = { "exp(-0.5)" },
     answers = { "0.6065" } },
-  { name = "log", subject = "quantities", forms = { "log(x)" }, does = "The natural logarithm of a plain number, point by point.", result = "a plain number",
+  of_one { name = "log", arguments = { { "x", "a plain number, a spread or sweep of such" } }, forms = { "log(x)" }, does = "The natural logarithm of a plain number, point by point.",
     errors = "a quantity with a unit", examples = { "log(2)" },
     answers = { "0.6931" } },
-  { name = "log10", subject = "quantities", forms = { "log10(x)" }, does = "The decimal logarithm of a plain number, point by point.", result = "a plain number",
+  of_one { name = "log10", arguments = { { "x", "a plain number, a spread or sweep of such" } }, forms = { "log10(x)" }, does = "The decimal logarithm of a plain number, point by point.",
     errors = "a quantity with a unit", examples = { "log10(2)" },
     answers = { "0.301" } },
-  { name = "sin", subject = "quantities", forms = { "sin(angle)" }, does = "The sine of an angle, point by point.", result = "a plain number",
+  of_one { name = "sin", arguments = { { "angle", "an angle with its unit, like \"30 deg\"" } }, forms = { "sin(angle)" }, does = "The sine of an angle, point by point.",
     errors = "a quantity that is no angle", examples = { 'sin "30 deg"' },
     answers = { "0.5" } },
-  { name = "cos", subject = "quantities", forms = { "cos(angle)" }, does = "The cosine of an angle, point by point.", result = "a plain number",
+  of_one { name = "cos", arguments = { { "angle", "an angle with its unit, like \"30 deg\"" } }, forms = { "cos(angle)" }, does = "The cosine of an angle, point by point.",
     errors = "a quantity that is no angle", examples = { 'cos "30 deg"' },
     answers = { "0.866" } },
-  { name = "tan", subject = "quantities", forms = { "tan(angle)" }, does = "The tangent of an angle, point by point.", result = "a plain number",
+  of_one { name = "tan", arguments = { { "angle", "an angle with its unit, like \"30 deg\"" } }, forms = { "tan(angle)" }, does = "The tangent of an angle, point by point.",
     errors = "a quantity that is no angle", examples = { 'tan "30 deg"' },
     answers = { "0.5774" } },
 }

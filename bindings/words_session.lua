@@ -18,6 +18,7 @@ return {
   {
     name = "show", subject = "session", forms = { "show(value, ...)" },
     does = "The text of values as the prompt writes them.",
+    arguments = { { "value", "anything" } },
     result = "a text",
     examples = { { "text = show(5*au)", "text" } },
     answers = { "\"5 au\"" },
@@ -27,6 +28,7 @@ return {
     does = "Makes all words, units and names readable as globals, for scripts that load the module. They write lacuna.globals(_ENV). A unit's global can't be assigned to then.",
     arguments = { { "environment", "a table, _ENV mostly" } },
     result = "the environment",
+    errors = "what is no table; on assigning to a unit's global later, that it is a unit",
     examples = { "globals{}.au" },
     answers = { "1 au" },
   },
@@ -37,7 +39,7 @@ return {
     result = "a page that prints itself",
     errors = "what is neither a text nor a quantity with a name",
     examples = { 'help "parallax"' },
-    answers = { "parallax  ϖ\n  annual parallax of the star\n  in mas, > 0\n  also called plx\n\n  distance, from distance\n      ϖ = 1 arcsec (1 pc / d)\n      definition" },
+    answers = { "parallax  ϖ\n  annual parallax of the star\n  in mas, > 0\n  also called plx\n\n  distance, from distance\n      ϖ = 1 arcsec (1 pc / d)\n      definition\n\n  example\n    > case{distance = \"140 pc\"}.parallax\n    7.143 mas" },
   },
   {
     name = "recipes", subject = "help", forms = { 'recipes "name"', 'recipes("name", c)' },
@@ -46,7 +48,7 @@ return {
     result = "a page that prints itself",
     errors = "an unknown name, a second argument that is no case",
     examples = { 'recipes("array_resolution", case{wavelength = "1.65 um", projected_baseline = "92 m"})' },
-    answers = { "  half_fringe, from wavelength, projected_baseline\n      θ_arr = λ / (2 B)\n      common practice, no source\n      supposes the criterion of half a fringe spacing\n      = 1.85 mas\n  fringe, from wavelength, projected_baseline\n      θ_arr = λ/B\n      common practice, no source\n      supposes the criterion of one fringe spacing\n      = 3.699 mas" },
+    answers = { "array_resolution  θ_arr: smallest angle that the array tells apart, by the named criterion\n\n  recipe       value\n  half_fringe  1.85 mas   taken here, no range stated\n  fringe       3.699 mas  no range stated\n\n  half_fringe, from wavelength, projected_baseline\n      θ_arr = λ / (2 B)\n      common practice, no source\n      supposes the criterion of half a fringe spacing\n  fringe, from wavelength, projected_baseline\n      θ_arr = λ/B\n      common practice, no source\n      supposes the criterion of one fringe spacing" },
     see = { "using", "why" },
   },
 }

@@ -32,6 +32,7 @@ return {
     does = "The table and its notes as text.",
     arguments = { { "columns", "how wide it may be; the terminal's width, or 100, if left out" } },
     result = "a text",
+    errors = "what is no number of columns",
     examples = { { two_stars, '#stars:table(60) > 0' } },
     answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\ntrue" },
   },

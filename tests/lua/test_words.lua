@@ -131,6 +131,10 @@ local function defects_of(record, seen)
   want(#record.forms > 0, "no forms")
   want(#words.one_line(name) <= 95, "its first sentence is long: " .. words.one_line(name))
   want(record.examples and #record.examples > 0, "no example")
+  want(record.result, "no result")
+  local takes_something = table.concat(record.forms, "\n"):find '[({"][^)}]'
+  want(not takes_something or record.arguments, "no arguments")
+  want(not takes_something or record.errors or name == "show", "no errors") -- show takes anything
   want(#(record.examples or {}) == #(record.answers or {}), "as many answers as examples are wanted")
   for _, other in ipairs(record.see or {}) do want(words.find(other), "see " .. other .. ", which has no record") end
   return defects
