@@ -12,6 +12,8 @@ local answers = {}
 
 local function columns() return math.max(core.terminal_width() or 80, 40) end
 local function add(lines, line) lines[#lines + 1] = line end
+-- So high that a plot and what stands with it fit on the screen.
+local function height() return math.max(8, math.min(14, (core.terminal().rows or 24) - 6)) end
 
 -- Ensembles -----------------------------------------------------------------------------------------------------------------------
 
@@ -188,7 +190,7 @@ local function sweep(quantity, verdict, axis)
     local positive = extremes(drawn.low or drawn.middle)
     lines = trimmed(textplot.curve {
       x = along.values, y = drawn.middle, low = drawn.low, high = drawn.high, x_log = is_logarithmic(along.values),
-      y_log = not verdict and positive > 0 and high / positive > 100, width = math.min(columns(), 100), height = 14,
+      y_log = not verdict and positive > 0 and high / positive > 100, width = math.min(columns(), 100), height = height(),
       y_label = label .. note, x_label = ("%s, %d points"):format(along.label, axis.length),
     })
   else add(lines, label .. note) end
@@ -212,7 +214,7 @@ local function grid(quantity, verdict, over)
   local title, plain_verdict = title_of(quantity), verdict and not drawn.share
   return trimmed(textplot.map {
     x = x.values, y = y.values, z = z, x_log = is_logarithmic(x.values), y_log = is_logarithmic(y.values), z_log = not verdict and low > 0 and high / low > 100,
-    contour = drawn.share and low < 50 and high >= 50 and 50 or nil, height = 16, width = math.min(columns(), 100),
+    contour = drawn.share and low < 50 and high >= 50 and 50 or nil, height = height() + 2, width = math.min(columns(), 100),
     x_label = ("%s, %d points"):format(x.label, #x.values), y_label = ("%s, %d points%s"):format(y.label, #y.values, text.undefined_note(quantity)),
     z_label = plain_verdict and title .. "   filled yes, empty no" or
       title .. (drawn.share and " (% of draws)" or unit ~= "" and " (" .. unit .. ")" or "") .. (drawn.low and ", medians" or ""),
