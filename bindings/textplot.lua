@@ -233,30 +233,26 @@ end
 
 -- Draws the curve in quarters of cells: between neighbouring points a straight line without a step left open.
 local function draw_curve(frame, x, y)
-  local columns, rows, filled = 2 * frame.columns, 2 * frame.rows, {}
-  local function fill(column, row) filled[row * columns + column] = true end
-  local function pixel(position) return position[1] * (columns - 1), clipped((1 - position[2]) * rows, 0, rows - 1) end
+  local columns, rows, masks = 2 * frame.columns, 2 * frame.rows, {}
+  local function fill(column, row)
+    column, row = clipped(math.floor(column), 0, columns - 1), clipped(math.floor(row), 0, rows - 1)
+    local cell = (row // 2) * frame.columns + column // 2
+    masks[cell] = (masks[cell] or 0) | 1 << 2 * (row % 2) + column % 2
+  end
+  local function pixel(position) return position[1] * (columns - 1), math.min((1 - position[2]) * rows, rows - 1) end
   local points = positions(frame, x, y)
   for i = 1, #x do
     if points[i] then
       local x1, y1 = pixel(points[i])
-      fill(math.floor(x1 + 0.5), math.floor(y1))
+      fill(x1 + 0.5, y1)
       if points[i + 1] then
         local x2, y2 = pixel(points[i + 1])
         local steps = math.ceil(math.max(math.abs(x2 - x1), math.abs(y2 - y1)))
-        for k = 1, steps do fill(math.floor(x1 + (x2 - x1) * k / steps + 0.5), math.floor(y1 + (y2 - y1) * k / steps)) end
+        for k = 1, steps do fill(x1 + (x2 - x1) * k / steps + 0.5, y1 + (y2 - y1) * k / steps) end
       end
     end
   end
-  for row = 0, frame.rows - 1 do
-    for column = 0, frame.columns - 1 do
-      local mask = 0
-      for k, offset in ipairs { 0, 1, columns, columns + 1 } do
-        if filled[2 * row * columns + 2 * column + offset] then mask = mask | 1 << k - 1 end
-      end
-      if mask > 0 then frame[row + 1][column + 1] = frame.glyphs.quarters[mask] end
-    end
-  end
+  for cell, mask in pairs(masks) do frame[cell // frame.columns + 1][cell % frame.columns + 1] = frame.glyphs.quarters[mask] end
 end
 
 -- Marks the columns on the axis that belong to points with no value: halfway to the neighbours.
