@@ -42,7 +42,12 @@ local function middle(values)
   local beyond = #sorted // 200
   local low, high = sorted[1 + beyond], sorted[#sorted - beyond]
   if low == high then low, high = sorted[1], sorted[#sorted] end
-  if low and low < high and finite(low) and finite(high) then return low, high end
+  if low and finite(low) and finite(high) and high - low > 1e-12 * math.max(math.abs(low), math.abs(high)) then return low, high end
+end
+
+-- So many digits that both ends are told apart well.
+local function digits_for(low, high)
+  return math.max(3, math.ceil(math.log(math.max(math.abs(low), math.abs(high)) / (high - low), 10)) + 2)
 end
 
 -- "0.129 ▁▂▅█▆▃▁ 0.167 au" over the central 99 % of the draws; logarithmic where they reach over more than a decade and a half.
@@ -54,7 +59,8 @@ local function histogram_line(quantity)
   if not low then return nil end
   local log = low > 0 and high / low > 30
   local bars = textplot.histogram(values, math.min(MOST_BINS, math.ceil(2 * (#values) ^ 0.5)), { low = low, high = high, log = log })
-  return ("  %s %s %s"):format(format.number(low, 3), bars, format.with_unit(format.number(high, 3), unit)) ..
+  local digits = digits_for(low, high)
+  return ("  %s %s %s"):format(format.number(low, digits), bars, format.with_unit(format.number(high, digits), unit)) ..
     show.aside(("   99 %% of the draws%s"):format(log and ", logarithmic" or ""))
 end
 
@@ -84,7 +90,7 @@ local function axis_facts(axis)
   local entry = axis.values and name and core.entry(name)
   for i = 1, axis.length do values[i] = entry and axis.values[i] / entry.factor or i end
   local unit = entry and entry.unit ~= "1" and select(3, core.unit_facts(entry.unit)) or ""
-  return { values = values, name = axis.name, unit = unit, label = axis.name .. (unit ~= "" and " (" .. unit .. ")" or "") }
+  return { values = values, known = entry and true, name = axis.name, unit = unit, label = axis.name .. (unit ~= "" and " (" .. unit .. ")" or "") }
 end
 
 -- Whether values are spaced more evenly in their logarithm.
@@ -169,7 +175,8 @@ local function trimmed(lines)
   return lines
 end
 
--- One axis besides the draws.
+-- One axis besides the draws: a plot, and numbers below it; of a few points, or where all are the same, the numbers alone.
+local FEW = 5
 local function sweep(quantity, verdict, axis)
   local name, note = core.facts(quantity), text.undefined_note(quantity)
   if name == axis.name then return { text.brief(quantity):gsub("^from (.-) to ", "%1 … ") .. (", %d points"):format(axis.length) } end
@@ -184,18 +191,23 @@ local function sweep(quantity, verdict, axis)
       return turns
     end
   end
+  local numbers = along.known and number_lines(along, drawn.middle, title, drawn.share and "of draws" or unit, verdict, 9) or
+    { text.quantity(quantity) }
+  if not along.known and axis.length < FEW then return numbers end
+  if axis.length < FEW or not low or low == high then
+    note = (drawn.low and " (medians)" or "") .. note
+    if note ~= "" then add(numbers, show.aside(" " .. note)) end
+    return numbers
+  end
   local label = drawn.share and title .. ", share of draws (%)" or title .. (unit ~= "" and " (" .. unit .. ")" or "") .. (drawn.low and ", median and 68 % of the draws" or "")
-  local lines = {}
-  if axis.length > 2 and low and low ~= high then
-    local positive = extremes(drawn.low or drawn.middle)
-    lines = trimmed(textplot.curve {
-      x = along.values, y = drawn.middle, low = drawn.low, high = drawn.high, x_log = is_logarithmic(along.values),
-      y_log = not verdict and positive > 0 and high / positive > 100, width = math.min(columns(), 100), height = height(),
-      y_label = label .. note, x_label = ("%s, %d points"):format(along.label, axis.length),
-    })
-  else add(lines, label .. note) end
-  for _, line in ipairs(number_lines(along, drawn.middle, title, drawn.share and "of draws" or unit, verdict, 9)) do add(lines, line) end
-  return lines
+  if not text.has_draws(core.axes(quantity)) then note = "" end -- the plot counts its holes
+  local lowest = extremes(drawn.low or drawn.middle)
+  local lines = trimmed(textplot.curve {
+    x = along.values, y = drawn.middle, low = drawn.low, high = drawn.high, x_log = is_logarithmic(along.values),
+    y_log = not verdict and lowest > 0 and high / lowest > 100, width = math.min(columns(), 100), height = height(),
+    y_label = label .. note, x_label = ("%s, %d points"):format(along.label, axis.length),
+  })
+  return table.move(numbers, 1, #numbers, #lines + 1, lines)
 end
 
 -- Two axes besides the draws: a map, whose legend says the range.
@@ -215,14 +227,14 @@ local function grid(quantity, verdict, over)
   return trimmed(textplot.map {
     x = x.values, y = y.values, z = z, x_log = is_logarithmic(x.values), y_log = is_logarithmic(y.values), z_log = not verdict and low > 0 and high / low > 100,
     contour = drawn.share and low < 50 and high >= 50 and 50 or nil, height = height() + 2, width = math.min(columns(), 100),
-    x_label = ("%s, %d points"):format(x.label, #x.values), y_label = ("%s, %d points%s"):format(y.label, #y.values, text.undefined_note(quantity)),
+    x_label = ("%s, %d points"):format(x.label, #x.values), y_label = ("%s, %d points%s"):format(y.label, #y.values, text.has_draws(core.axes(quantity)) and text.undefined_note(quantity) or ""),
     z_label = plain_verdict and title .. "   filled yes, empty no" or
       title .. (drawn.share and " (% of draws)" or unit ~= "" and " (" .. unit .. ")" or "") .. (drawn.low and ", medians" or ""),
     legend = not plain_verdict,
   })
 end
 
--- The recipes on the way to a quantity that with or using has changed in its case.
+-- The recipes on the way to a quantity that with or using has changed in its case; each is said with the first answer that goes by it.
 local function changed_lines(quantity, name)
   local self, lines = name and core.case_of(quantity), {}
   local changed = self and core.info(self).changed or {}
@@ -230,7 +242,10 @@ local function changed_lines(quantity, name)
   local on_the_way = {}
   for _, step in ipairs(core.steps(self, name)) do on_the_way[step.name] = true end
   for _, change in ipairs(changed) do
-    if on_the_way[change.name] then add(lines, show.aside(("  %s now by %s, before by %s"):format(change.name, change.after, change.before))) end
+    if on_the_way[change.name] and not change.said then
+      change.said = true
+      add(lines, show.aside(("  %s now by %s, before by %s"):format(change.name, change.after, change.before)))
+    end
   end
   return lines
 end
