@@ -132,12 +132,13 @@ local function fitted(text, columns, glyphs)
   return format.pad_right(text, columns)
 end
 
--- The empty picture between two scales. `heads`: lines above it, besides that of the y label.
-local function new_frame(options, x, y, heads)
+-- The empty picture between two scales. `heads`: lines above it, besides that of the y label; `note` stands beside that.
+local function new_frame(options, x, y, heads, note)
   local glyphs = look(options.ascii)
   local frame = { glyphs = glyphs, x = x, y = y, options = options, heads = heads, holes = {} }
   frame.width = math.max(math.floor(options.width or 80), 24)
-  local around = 2 + #heads + (options.y_label and 1 or 0) + (options.x_label and 1 or 0)
+  frame.title = note and (options.y_label and options.y_label .. "   " or "") .. note or options.y_label
+  local around = 2 + #heads + (frame.title and 1 or 0) + (options.x_label and 1 or 0)
   frame.rows = math.max(math.floor(options.height or 14) - around, 3)
   frame.y_ticks = ticks_of(y, math.max(2, math.ceil(frame.rows * 0.6)))
   frame.margin = 0
@@ -181,7 +182,7 @@ local function finished(frame)
   local options, glyphs, lines, labels = frame.options, frame.glyphs, {}, {}
   local function add(text) lines[#lines + 1] = fitted(text, frame.width, glyphs) end
   for _, head in ipairs(frame.heads) do add(head) end
-  if options.y_label then add(options.y_label) end
+  if frame.title then add(frame.title) end
   for _, tick in ipairs(frame.y_ticks) do labels[row_of(frame, tick.value)] = tick.text end
   for row = 1, frame.rows do
     add(format.pad_left(labels[row] or "", frame.margin) .. " " .. (labels[row] and glyphs.tick or glyphs.up) .. table.concat(frame[row]))
@@ -233,30 +234,26 @@ end
 
 -- Draws the curve in quarters of cells: between neighbouring points a straight line without a step left open.
 local function draw_curve(frame, x, y)
-  local columns, rows, filled = 2 * frame.columns, 2 * frame.rows, {}
-  local function fill(column, row) filled[row * columns + column] = true end
-  local function pixel(position) return position[1] * (columns - 1), clipped((1 - position[2]) * rows, 0, rows - 1) end
+  local columns, rows, masks = 2 * frame.columns, 2 * frame.rows, {}
+  local function fill(column, row)
+    column, row = clipped(math.floor(column), 0, columns - 1), clipped(math.floor(row), 0, rows - 1)
+    local cell = (row // 2) * frame.columns + column // 2
+    masks[cell] = (masks[cell] or 0) | 1 << 2 * (row % 2) + column % 2
+  end
+  local function pixel(position) return position[1] * (columns - 1), math.min((1 - position[2]) * rows, rows - 1) end
   local points = positions(frame, x, y)
   for i = 1, #x do
     if points[i] then
       local x1, y1 = pixel(points[i])
-      fill(math.floor(x1 + 0.5), math.floor(y1))
+      fill(x1 + 0.5, y1)
       if points[i + 1] then
         local x2, y2 = pixel(points[i + 1])
         local steps = math.ceil(math.max(math.abs(x2 - x1), math.abs(y2 - y1)))
-        for k = 1, steps do fill(math.floor(x1 + (x2 - x1) * k / steps + 0.5), math.floor(y1 + (y2 - y1) * k / steps)) end
+        for k = 1, steps do fill(x1 + (x2 - x1) * k / steps + 0.5, y1 + (y2 - y1) * k / steps) end
       end
     end
   end
-  for row = 0, frame.rows - 1 do
-    for column = 0, frame.columns - 1 do
-      local mask = 0
-      for k, offset in ipairs { 0, 1, columns, columns + 1 } do
-        if filled[2 * row * columns + 2 * column + offset] then mask = mask | 1 << k - 1 end
-      end
-      if mask > 0 then frame[row + 1][column + 1] = frame.glyphs.quarters[mask] end
-    end
-  end
+  for cell, mask in pairs(masks) do frame[cell // frame.columns + 1][cell % frame.columns + 1] = frame.glyphs.quarters[mask] end
 end
 
 -- Marks the columns on the axis that belong to points with no value: halfway to the neighbours.
@@ -271,12 +268,15 @@ local function mark_holes(frame, x, y)
   end
 end
 
-local function has_hole(y, log)
-  for _, value in ipairs(y) do if not drawable(value, log) then return true end end
-  return false
+-- "× 3 of 20 undefined" of the values of some lists; nil where all can be drawn.
+local function hole_note(options, lists, log)
+  local holes, all = 0, 0
+  for _, values in ipairs(lists) do
+    for _, value in ipairs(values) do holes = holes + (drawable(value, log) and 0 or 1) end
+    all = all + #values
+  end
+  return holes > 0 and ("%s %d of %d undefined"):format(look(options.ascii).hole, holes, all) or nil
 end
-
-local function undefined_mark(options) return look(options.ascii).hole .. " undefined" end
 
 function textplot.curve(options)
   local x = list(options, "x", "curve")
@@ -284,8 +284,7 @@ function textplot.curve(options)
   local low, high, low95, high95 = list(options, "low", "curve", #x), list(options, "high", "curve", #x), list(options, "low95", "curve", #x), list(options, "high95", "curve", #x)
   local lists = { y, { options.level } }
   for _, edge in pairs { low or {}, high or {}, low95 or {}, high95 or {} } do lists[#lists + 1] = edge end
-  local heads = has_hole(y, options.y_log) and { undefined_mark(options) } or {}
-  local frame = new_frame(options, scale_of({ x }, options.x_log), scale_of(lists, options.y_log), heads)
+  local frame = new_frame(options, scale_of({ x }, options.x_log), scale_of(lists, options.y_log), {}, hole_note(options, { y }, options.y_log))
   if low95 and high95 then draw_band(frame, x, low95, high95, frame.glyphs.band95) end
   if low and high then draw_band(frame, x, low, high, frame.glyphs.band) end
   if options.level and drawable(options.level, options.y_log) then
@@ -332,15 +331,13 @@ local function shade_of(value, scale, glyphs)
 end
 
 local function map_heads(options, z)
-  local glyphs, holes = look(options.ascii), false
-  for _, column in ipairs(options.z) do holes = holes or has_hole(column, options.z_log) end
-  local parts = {}
+  local glyphs, parts = look(options.ascii), {}
   if options.z_label then parts[1] = options.z_label end
   if options.legend ~= false then
     parts[#parts + 1] = ("%s [%s] %s"):format(format.number(z.low), table.concat(glyphs.shades, "", 0, 4), format.number(z.high))
   end
   if options.contour then parts[#parts + 1] = glyphs.contour .. " across " .. format.number(options.contour) end
-  if holes then parts[#parts + 1] = undefined_mark(options) end
+  parts[#parts + 1] = hole_note(options, options.z, options.z_log)
   return { table.concat(parts, "   ") }
 end
 
@@ -411,7 +408,7 @@ function textplot.points(options)
   local legend = name_lines(names, width, look(options.ascii))
   local inner = setmetatable({ height = (options.height or 14) - #legend }, { __index = options })
   local frame = new_frame(inner, scale_of({ x_low, x, x_high }, options.x_log), scale_of({ y_low, y, y_high }, options.y_log),
-    has_hole(y, options.y_log) and { undefined_mark(options) } or {})
+    {}, hole_note(options, { y }, options.y_log))
   local shown = {}
   for i = 1, #x do shown[i] = drawable(x[i], options.x_log) and drawable(y[i], options.y_log) end
   for i = 1, #x do
