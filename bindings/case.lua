@@ -76,6 +76,10 @@ local function refuse_contradictions(givens)
   end
 end
 
+-- The distribution of each given that was a spread, {kind, median, a, b, c} in SI, as long as the given lives: its draws alone don't tell it.
+local distributions = setmetatable({}, { __mode = "k" })
+function case.distribution(given) return distributions[given] end
+
 -- Makes a case of raw givens. `checked`: those that are checked already.
 local function make(givens, checked, using, info)
   local all, objects, written = {}, {}, {}
@@ -89,8 +93,10 @@ local function make(givens, checked, using, info)
     if core.entry(name).kind == "object" then objects[name] = value and core.part "lacuna.objects".take(name, value)
     elseif value == false then all[name], written[name] = nil, nil
     else
-      written[name] = text.as_written(name, value)
+      local distribution
+      written[name], distribution = text.as_written(name, value)
       all[name] = core.given(name, value, info.target)
+      distributions[all[name]] = distribution
     end
   end
   for name, object in pairs(info.objects or {}) do if objects[name] == nil then objects[name] = object end end
@@ -118,6 +124,7 @@ local function changed_recipes(a, b)
   end
   return changed
 end
+case.changed_recipes = changed_recipes
 
 local function derive(self, changes, using)
   local info = core.info(self)
@@ -263,10 +270,12 @@ function methods.givens(self)
   return names
 end
 
--- The solver is loaded when it is first asked for; it takes this method's place.
-function methods.solve(self, ...)
-  core.part "lacuna.solve"
-  return methods.solve(self, ...)
+-- Parts that are loaded when they are first asked for; what they bring takes these methods' places.
+for _, method in ipairs { "solve", "sensitivity" } do
+  methods[method] = function(...)
+    core.part("lacuna." .. method)
+    return methods[method](...)
+  end
 end
 
 core.set_handlers {

@@ -178,4 +178,4 @@ end
 
 core.case_methods.solve = solve
 
-return {}
+return { bounds = bounds, with_givens = with_givens, write = write }

@@ -189,11 +189,11 @@ function text.unbound(quantity, factor, unit)
   return "samples about " .. about
 end
 
--- How a spread was given, before it is bound to draws: "156 ± 3 pc"; nil for what is no spread.
+-- How a spread was given, before it is bound to draws: "156 ± 3 pc", and its distribution; nil for what is no spread.
 function text.as_written(name, value)
   if type(value) == "string" then value = core.reading(value, name) end
-  local kind = core.unbound_facts(value)
-  if kind and kind ~= "sweep" then return text.quantity(value) end
+  local kind, median, a, b, c = core.unbound_facts(value)
+  if kind and kind ~= "sweep" then return text.quantity(value), { kind = kind, median = median, a = a, b = b, c = c } end
 end
 
 -- A given as it was given: what its draws make of an error bar is no news.
