@@ -5,8 +5,9 @@
 --
 -- with columns { name (or heading = a text as it stands), entry = row of the glossary, verdict, group = heading over it or nil, unit (VOUnits), unit_text, unit_tex,
 -- left = true for texts that begin below each other },
--- rows { name, texts, cells }, cells { share } of a verdict or { value, upper, lower } in the column's unit (no errors: a single
--- number) or { missing = true } or { text }, { mark = "*" } besides where one is to stand behind it, and notes { heading, lines (texts, or lists whose first text heads the others) }. A column belongs to the group of its left neighbour where the name is the same.
+-- rows { name, texts, cells, rule = true for a rule above it }, cells { share } of a verdict or { value, upper, lower } in the column's unit (no errors: a single
+-- number) or { missing = true } or { text }, word = true where a text has no place below
+-- the numbers, mark = "*" besides where one is to stand behind it, and notes { heading, lines (texts, or lists whose first text heads the others) }. A column belongs to the group of its left neighbour where the name is the same.
 local core = ...
 local format = core.part "lacuna.format"
 
@@ -31,7 +32,7 @@ local function wrapped(text, columns)
 end
 
 -- A name or text from a file may have line breaks.
-local function on_one_line(text) return (text:gsub("%s+", " ")) end
+local function on_one_line(text) return (text:gsub("%s*[\n\r\t\v\f]%s*", " ")) end
 
 local function cell_text(cell)
   if cell.text then return cell.text end
@@ -48,17 +49,24 @@ local function parts(text)
   return text, ""
 end
 
--- The texts of a column's cells, all of one width; flush left where asked for.
+-- The texts of a column's cells, all of one width; words flush right, or all flush left where asked for.
 local function aligned(cells, flush_left)
-  local left, right, lefts, rights = 0, 0, {}, {}
+  local left, right, words, marks, lefts, rights = 0, 0, 0, 0, {}, {}
   for i, cell in ipairs(cells) do
-    local cut = flush_left and function(text) return text, "" end or parts
-    lefts[i], rights[i] = cut(cell_text(cell))
-    if cell.mark then rights[i] = rights[i] .. " " .. cell.mark end
-    left, right = math.max(left, format.width(lefts[i])), math.max(right, format.width(rights[i]))
+    lefts[i], rights[i] = cell_text(cell), ""
+    if flush_left or cell.word then words = math.max(words, format.width(lefts[i]))
+    else
+      lefts[i], rights[i] = parts(lefts[i])
+      left, right = math.max(left, format.width(lefts[i])), math.max(right, format.width(rights[i]))
+    end
+    if cell.mark then marks = math.max(marks, 1 + format.width(cell.mark)) end
   end
-  for i = 1, #cells do lefts[i] = (flush_left and format.pad_right or format.pad_left)(lefts[i], left) .. format.pad_right(rights[i], right) end
-  return lefts, left + right
+  local width, texts = math.max(left + right, words), {}
+  for i, cell in ipairs(cells) do
+    if not flush_left then lefts[i] = format.pad_left(lefts[i], cell.word and width or width - right) end
+    texts[i] = format.pad_right(lefts[i] .. rights[i] .. (cell.mark and " " .. cell.mark or ""), width + marks)
+  end
+  return texts, width + marks
 end
 
 -- A column laid out: its heading's lines, its cells' texts, its width.
@@ -156,7 +164,10 @@ local function add_page(lines, page, rows, names_width)
   for i = 1, deepest do width = math.max(width, add("", function(column) return column.heading[i - deepest + #column.heading] or "" end)) end
   if in_units then width = math.max(width, add("", function(column) return column.unit end)) end
   lines[#lines + 1] = ("─"):rep(width)
-  for i, row in ipairs(rows) do add(on_one_line(row.name), function(column) return column.texts[i] end) end
+  for i, row in ipairs(rows) do
+    if row.rule then lines[#lines + 1] = ("─"):rep(width) end
+    add(on_one_line(row.name), function(column) return column.texts[i] end)
+  end
 end
 
 -- Notes: each with its heading, wrapped, the lines' further parts set in. A line may be a list: what its first text heads.
