@@ -126,10 +126,22 @@ local function changed_recipes(a, b)
 end
 case.changed_recipes = changed_recipes
 
+-- The recipes that this step changed, and those that earlier steps of a chain of with{} and using{} changed for good.
+local function changed_so_far(first, before, now)
+  local changed, listed = changed_recipes(before, now), {}
+  for _, change in ipairs(changed) do listed[change.name] = true end
+  for _, change in ipairs(first == before and {} or changed_recipes(first, now)) do
+    if not listed[change.name] then changed[#changed + 1] = change end
+  end
+  return changed
+end
+
 local function derive(self, changes, using)
   local info = core.info(self)
   local other = make(changes, info.givens, using, info)
-  core.info(other).changed = changed_recipes(self, other)
+  local about = core.info(other)
+  about.first = info.first or self
+  about.changed = changed_so_far(about.first, self, other)
   return other
 end
 
@@ -210,7 +222,7 @@ end
 function methods.missing(self, word)
   local name = name_of(word, "missing: ")
   local sets = core.missing_sets(self, name)
-  return setmetatable({ name = name, sets = sets, had = core.row_of(self, name) ~= nil }, text.missing_metatable)
+  return setmetatable({ name = name, sets = sets, had = core.row_of(self, name) ~= nil, given = core.row_of(self, name) == false }, text.missing_metatable)
 end
 
 -- Single numbers agree within 1 %; ensembles where zero lies inside the 95 % interval of the difference.

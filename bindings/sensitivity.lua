@@ -10,6 +10,7 @@ local tables = core.part "lacuna.table"
 local text = core.part "lacuna.text"
 
 local HARDLY = 0.005                -- a share or a slope below it is left out of the table
+local ROUGH = 200                   -- draws of a verdict that differ from the others: the shares are rough where there are fewer
 local STEP, MORE = 1e-3, 0.1        -- relative: of the differences for a slope; of "10 % more"
 local FACTOR = 10                   -- to either side of a value: how far a turn is looked for
 local WIDTH = 100                   -- of the output where no terminal says otherwise
@@ -212,10 +213,14 @@ local function shares_table(s)
   if with_slope then column("slope", function(entry) return entry.slope and signed("%.2f", entry.slope) or "—" end) end
   if not verdict then column("10\u{a0}%\u{a0}more makes\u{a0}it", function(entry) return change_text(entry, s.name) end) end
   column("given", function(entry) return short(text.given(s.case, entry.name)) end, true)
+  local _, _, _, _, size = core.facts(s.answer)
   if s.defined then
-    local _, _, _, _, size = core.facts(s.answer)
     lines[#lines + 1] = ("What several givens do only together carries %.1f %% of the variance; estimated from %d draws%s."):format(100 * math.max(0, s.interactions),
       s.defined, s.defined < size and (", %s being undefined"):format(format.percent(1 - s.defined / size)) or "")
+  end
+  if s.defined and verdict then
+    local rarer = math.floor(size * math.min(number_of(core.chance(s.answer)), 1 - number_of(core.chance(s.answer))) + 0.5)
+    if rarer < ROUGH then lines[#lines + 1] = ("Only %d draw%s otherwise than the others: the shares are rough."):format(rarer, rarer == 1 and " is" or "s are") end
   end
   if with_slope then lines[#lines + 1] = "The slope is d ln " .. s.name .. " / d ln of the given, with every given at its median." end
   if #left_out > 0 then lines[#lines + 1] = (verdict and "Less than 0.5 % each: " or "Hardly matters: ") .. list_or_count(left_out) .. "." end
@@ -226,7 +231,7 @@ end
 local function turn_text(t, yes)
   local value = solve.write(t.name, t.at)
   if yes then return (t.at >= t.now and "above " or "below ") .. value end
-  return (t.at >= t.now and "from " or "down from ") .. value
+  return value .. (t.at >= t.now and " or more" or " or less")
 end
 
 local function by_text(t)
@@ -241,7 +246,8 @@ local function recipe_text(other) return ("%s by %s instead of %s"):format(other
 
 local function turns_table(s)
   local to = s.yes and "no" or "yes"
-  local whole = { columns = { { heading = "now" }, { heading = "turns", left = true }, { heading = "by" }, { heading = "", left = true } }, rows = {}, notes = {} }
+  local whole = { columns = {}, rows = {}, notes = {} }
+  if #s.turns > 0 then whole.columns = { { heading = "now" }, { heading = "turns", left = true }, { heading = "by" }, { heading = "", left = true } } end
   for i, t in ipairs(s.turns) do
     local cells = { solve.write(t.name, t.now), turn_text(t, s.yes), by_text(t), t.kind == "assumed" and "assumed" or "" }
     for j, cell in ipairs(cells) do cells[j] = { text = cell } end

@@ -431,38 +431,92 @@ end
 
 -- What is missing -----------------------------------------------------------------------------------------------------------------
 
-local function hints(names)
-  local lines = {}
-  for _, name in ipairs(names) do
-    local hint = core.entry(name).hint
-    if hint then lines[#lines + 1] = name .. ": " .. hint end
-  end
-  return lines
+local function contains(names, others)
+  local has = {}
+  for _, name in ipairs(names) do has[name] = true end
+  for _, name in ipairs(others) do if not has[name] then return false end end
+  return true
 end
 
--- What is missing in one line, as an error says it.
-function text.not_had(missing)
+-- The sets of names that would do, as { names, by = recipes }: those that more than one recipe takes once.
+local function ways_of(missing)
   local ways = {}
+  for _, set in ipairs(missing.sets) do
+    local by, same = set.row and core.row(set.row).by, nil
+    for _, way in ipairs(ways) do
+      if #way.names == #set.names and contains(way.names, set.names) then same = way end
+    end
+    if not same then
+      same = { names = set.names, by = {} }
+      ways[#ways + 1] = same
+    end
+    same.by[#same.by + 1] = by
+  end
+  return ways
+end
+
+-- The names of a way, and by which recipes; a definition alone is no news.
+local function way_text(way, names)
+  local by = table.concat(way.by, " or ")
+  return names .. ((by == "" or by == "definition") and "" or " (by " .. by:gsub("^definition or ", "definition, or ") .. ")")
+end
+
+-- What is missing in one line, as an error says it. Ways that want more than another one are left to missing.
+function text.not_had(missing)
+  local parts = {}
   if #missing.sets == 0 or missing.sets[1].names[1] == missing.name then
     for i, number in ipairs(core.entry(missing.name).rows) do
       local row = core.row(number)
-      ways[i] = table.concat(row.from, ", ") .. " (by " .. row.by .. ")"
+      parts[i] = way_text({ by = { row.by } }, table.concat(row.from, ", "))
     end
-    return missing.name .. " must be given" .. (#ways == 0 and ": no relation gives it" or ", or follow from " .. table.concat(ways, ", or "))
+    return missing.name .. " must be given" .. (#parts == 0 and ": no relation gives it" or ", or follow from " .. table.concat(parts, ", or "))
   end
-  for i, set in ipairs(missing.sets) do
-    ways[i] = table.concat(set.names, ", ")
-    if set.row then ways[i] = ways[i] .. " (by " .. core.row(set.row).by .. ")" end
+  local ways = ways_of(missing)
+  for i, way in ipairs(ways) do
+    local more = false
+    for j = 1, i - 1 do more = more or contains(way.names, ways[j].names) end
+    if not more then parts[#parts + 1] = way_text(way, table.concat(way.names, ", ")) end
   end
-  return missing.name .. " can't be derived from what is given; give " .. table.concat(ways, ", or ")
+  return missing.name .. " can't be derived from what is given; give " .. table.concat(parts, ", or ")
+end
+
+-- A further way: what it wants besides all that the first one wants, or all of it.
+local function further_way(way, first)
+  if not contains(way.names, first.names) then return way_text(way, "or " .. table.concat(way.names, ", ")) end
+  local besides = {}
+  for _, name in ipairs(way.names) do
+    if not contains(first.names, { name }) then besides[#besides + 1] = name end
+  end
+  return way_text(way, "or, besides, " .. table.concat(besides, ", "))
+end
+
+-- Each name that some way wants once: its unit, its meaning, a hint.
+local function explained(lines, ways)
+  local seen = {}
+  for _, way in ipairs(ways) do
+    for _, name in ipairs(way.names) do
+      if not seen[name] then
+        local entry = core.entry(name)
+        local unit = entry.unit and entry.unit ~= "1" and select(3, core.unit_facts(entry.unit))
+        add(lines, 2, ("%s%s: %s"):format(name, unit and " [" .. unit .. "]" or "", entry.meaning))
+        if entry.hint then add(lines, 4, entry.hint) end
+      end
+      seen[name] = true
+    end
+  end
 end
 
 text.missing_metatable = {
   __name = "what is missing",
   __tostring = function(missing)
+    if missing.given then return missing.name .. " is given" end
     if missing.had then return missing.name .. " can be had from what is given" end
-    local lines = { text.not_had(missing) }
-    for _, hint in ipairs(hints(missing.sets[1] and missing.sets[1].names or {})) do add(lines, 2, hint) end
+    local ways = ways_of(missing)
+    if #ways == 0 or ways[1].names[1] == missing.name then return show.page { text.not_had(missing) } end
+    local lines = { missing.name .. " can't be derived from what is given; give " .. way_text(ways[1], table.concat(ways[1].names, ", ")) }
+    for i = 2, #ways do add(lines, 2, further_way(ways[i], ways[1])) end
+    lines[#lines + 1] = ""
+    explained(lines, ways)
     return show.page(lines)
   end,
 }

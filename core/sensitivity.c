@@ -10,7 +10,7 @@
 #include <string.h>
 
 /* Hermite's polynomials of high degree hang on a few draws far out: above the fifth, ten thousand draws don't settle their coefficients. */
-enum { HIGHEST_DEGREE = 12, HIGHEST_OF_NORMAL = 5, MOST_TERMS = 120, MOST_BINS = 50, DRAWS_A_TERM = 10, DRAWS_A_BIN = 50, POLL_EVERY = 1024 };
+enum { HIGHEST_DEGREE = 12, HIGHEST_OF_NORMAL = 5, MOST_TERMS = 120, MOST_BINS = 200, DRAWS_A_TERM = 10, DRAWS_A_BIN = 50, POLL_EVERY = 1024 };
 
 typedef struct {
   lac_work *work;
@@ -21,6 +21,7 @@ typedef struct {
   const double *y;
   size_t *index;   /* of the defined draws */
   double *ranks;   /* of each input without a distribution: its place between 0 and 1; n for each input */
+  double *centre;  /* of each input: the mean of its first polynomial, so that products of two hold nothing of one alone */
   double *gram;    /* normal equations: (terms + 2)^2, of 1, the terms and y, lower triangle */
   double *fit;     /* coefficients of 1 and the terms */
   double *means;   /* of the terms over the draws */
@@ -68,7 +69,7 @@ static void evaluate_basis(const problem *p, size_t draw, double *out) {
   }
   double *product = out + p->first[p->inputs];
   for (size_t i = 1; i < p->inputs && product <= out + p->terms; i++)
-    for (size_t j = 0; j < i; j++) *product++ = out[p->first[i]] * out[p->first[j]];
+    for (size_t j = 0; j < i; j++) *product++ = (out[p->first[i]] - p->centre[i]) * (out[p->first[j]] - p->centre[j]);
   out[p->terms + 1] = p->y[p->index[draw]] - p->mean;
 }
 
@@ -98,6 +99,17 @@ static lac_status rank_draws(problem *p, size_t input) {
     for (size_t t = first; t < end; t++) p->ranks[input * p->n + list[t].draw] = (double)(first + end) / 2 / (double)p->n;
   }
   free(list);
+  return LAC_OK;
+}
+
+/* 0 by nature where all draws are there. */
+static lac_status find_centres(problem *p) {
+  for (size_t t = 0; t < p->n && !p->whole; t++) {
+    if (stopped(p, t)) return LAC_INTERRUPTED;
+    evaluate_basis(p, t, p->basis);
+    for (size_t i = 0; i < p->inputs; i++) p->means[i] += p->basis[p->first[i]] / (double)p->n;
+  }
+  memcpy(p->centre, p->means, p->inputs * sizeof *p->centre);
   return LAC_OK;
 }
 
@@ -193,14 +205,13 @@ static lac_status sum_variances(problem *p, variances *v) {
     }
   }
   v->left /= (double)(p->n - p->terms - 1);
-  const double scatter = v->left / (double)p->n;
   for (size_t i = 0; i <= p->inputs; i++) {
     for (size_t k = p->first[i]; is_known(p, i) && k < p->first[i + 1]; k++) v->variance[i] += p->fit[k] * p->fit[k];
     v->variance[i] -= v->noise[i];
     if (i == p->inputs) break;
     for (size_t bin = i * p->bins; bin < (i + 1) * p->bins; bin++)
       if (v->counts[bin] > 0) v->binned[i] += v->sums[bin] * v->sums[bin] / v->counts[bin] / (double)p->n;
-    v->binned[i] -= ((double)p->bins - (double)(p->first[i + 1] - p->first[i])) * scatter;
+    v->binned[i] -= ((double)p->bins - (double)(p->first[i + 1] - p->first[i])) * (v->left - v->binned[i]) / (double)p->n;
   }
   return LAC_OK;
 }
@@ -232,6 +243,7 @@ static lac_status shares_with(problem *p, variances *v, lac_share *shares) {
   lac_status status = LAC_OK;
   for (size_t i = 0; i < p->inputs && status == LAC_OK; i++)
     if (p->x[i].distribution == LAC_ANY_DISTRIBUTION) status = rank_draws(p, i);
+  if (status == LAC_OK) status = find_centres(p);
   if (status == LAC_OK) status = sum_products(p);
   if (status != LAC_OK) return status;
   const double whole = p->gram[(p->terms + 2) * (p->terms + 2) - 1];
@@ -284,12 +296,12 @@ lac_status lac_first_order_shares(lac_work *work, size_t n, const double *y, siz
   if (p.n < DRAWS_A_TERM * inputs || inputs == 0) return free(p.index), LAC_TOO_MANY;
   choose_terms(&p);
   const size_t width = p.terms + 2, bins = inputs * p.bins;
-  double *room = calloc(inputs * p.n + width * width + 3 * width + 4 * (inputs + 1) + 2 * bins, sizeof *room);
+  double *room = calloc(inputs * p.n + width * width + 3 * width + 5 * (inputs + 1) + 2 * bins, sizeof *room);
   lac_status status = LAC_NO_MEMORY;
   if (room != NULL) {
     p.ranks = room, p.gram = p.ranks + inputs * p.n, p.fit = p.gram + width * width, p.means = p.fit + width, p.basis = p.means + width;
     variances v = {.variance = p.basis + width};
-    v.noise = v.variance + inputs + 1, v.binned = v.noise + inputs + 1, v.own = v.binned + inputs + 1, v.sums = v.own + inputs + 1, v.counts = v.sums + bins;
+    v.noise = v.variance + inputs + 1, v.binned = v.noise + inputs + 1, v.own = v.binned + inputs + 1, p.centre = v.own + inputs + 1, v.sums = p.centre + inputs + 1, v.counts = v.sums + bins;
     status = shares_with(&p, &v, shares);
   }
   free(room);
