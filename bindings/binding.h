@@ -111,6 +111,7 @@ void lac_open_summary(lua_State *L);
 void lac_open_catalogue(lua_State *L);
 void lac_open_case(lua_State *L);
 void lac_open_solve(lua_State *L);
+void lac_open_sensitivity(lua_State *L);
 void lac_open_state(lua_State *L);
 void lac_open_csv(lua_State *L);
 void lac_open_output(lua_State *L);

@@ -76,6 +76,10 @@ local function refuse_contradictions(givens)
   end
 end
 
+-- The distribution of each given that was a spread, {kind, median, a, b, c} in SI, as long as the given lives: its draws alone don't tell it.
+local distributions = setmetatable({}, { __mode = "k" })
+function case.distribution(given) return distributions[given] end
+
 -- Makes a case of raw givens. `checked`: those that are checked already.
 local function make(givens, checked, using, info)
   local all, objects, written = {}, {}, {}
@@ -89,8 +93,10 @@ local function make(givens, checked, using, info)
     if core.entry(name).kind == "object" then objects[name] = value and core.part "lacuna.objects".take(name, value)
     elseif value == false then all[name], written[name] = nil, nil
     else
-      written[name] = text.as_written(name, value)
+      local distribution
+      written[name], distribution = text.as_written(name, value)
       all[name] = core.given(name, value, info.target)
+      distributions[all[name]] = distribution
     end
   end
   for name, object in pairs(info.objects or {}) do if objects[name] == nil then objects[name] = object end end
@@ -118,13 +124,25 @@ local function changed_recipes(a, b)
   end
   return changed
 end
+case.changed_recipes = changed_recipes
+
+-- The recipes that this step changed, and those that earlier steps of a chain of with{} and using{} changed for good.
+local function changed_so_far(first, before, now)
+  local changed, listed = changed_recipes(before, now), {}
+  for _, change in ipairs(changed) do listed[change.name] = true end
+  for _, change in ipairs(first == before and {} or changed_recipes(first, now)) do
+    if not listed[change.name] then changed[#changed + 1] = change end
+  end
+  return changed
+end
 
 local function derive(self, changes, using)
   local info = core.info(self)
   local other = make(changes, info.givens, using, info)
-  local changed = changed_recipes(self, other)
-  core.info(other).changed = changed
-  if #changed > 0 then core.remember_answers(other) end -- so that they can say which recipes are not those of before
+  local about = core.info(other)
+  about.first = info.first or self
+  about.changed = changed_so_far(about.first, self, other)
+  if #about.changed > 0 then core.remember_answers(other) end -- so that they can say which recipes are not those of before
   return other
 end
 
@@ -205,7 +223,7 @@ end
 function methods.missing(self, word)
   local name = name_of(word, "missing: ")
   local sets = core.missing_sets(self, name)
-  return setmetatable({ case = self, name = name, sets = sets, had = core.row_of(self, name) ~= nil }, text.missing_metatable)
+  return setmetatable({ case = self, name = name, sets = sets, had = core.row_of(self, name) ~= nil, given = core.row_of(self, name) == false }, text.missing_metatable)
 end
 
 -- Single numbers agree within 1 %; ensembles where zero lies inside the 95 % interval of the difference.
@@ -268,10 +286,12 @@ end
 -- c:recipes(name): what each recipe of a name gives in this case; prints itself.
 function methods.recipes(self, word) return core.part "lacuna.recipes".recipes(word, self) end
 
--- The solver is loaded when it is first asked for; it takes this method's place.
-function methods.solve(self, ...)
-  core.part "lacuna.solve"
-  return methods.solve(self, ...)
+-- Parts that are loaded when they are first asked for; what they bring takes these methods' places.
+for _, method in ipairs { "solve", "sensitivity" } do
+  methods[method] = function(...)
+    core.part("lacuna." .. method)
+    return methods[method](...)
+  end
 end
 
 core.set_handlers {

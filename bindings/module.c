@@ -57,6 +57,7 @@ int luaopen_lacuna(lua_State *L) {
   lac_open_dust(L);
   lac_open_case(L);
   lac_open_solve(L);
+  lac_open_sensitivity(L);
   lac_open_csv(L);
   lac_open_output(L);
   lua_pushcfunction(L, has_part);

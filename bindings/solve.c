@@ -14,6 +14,7 @@ enum { SCAN_POINTS = 97, ITERATIONS = 200 };
 typedef struct {
   const lac_catalogue *catalogue;
   const lac_chain *chain;
+  lac_value *const *values; /* of the case, for its objects */
   const int *steps;
   int count, varied, target;
   double *numbers; /* by id, SI */
@@ -37,7 +38,8 @@ static double miss(double x, void *context) {
     double arguments[LAC_MAX_ARGUMENTS];
     const double *in[LAC_MAX_ARGUMENTS];
     for (int j = 0; j < inputs; j++) arguments[j] = p->numbers[from[j]], in[j] = &arguments[j];
-    if (relation->call != NULL) {
+    if (relation->of_object != NULL) relation->of_object(lac_value_object_pointer(p->values[from[0]]), 1, &p->numbers[id], in + 1);
+    else if (relation->call != NULL) {
       if (relation->call(relation->context, 1, &p->numbers[id], in) != 0) return p->failed = true, (double)NAN;
     } else if (relation->assumes != NULL) p->numbers[id] = lac_catalogue_assumed(p->catalogue, row);
     else p->numbers[id] = lac_relation_value(relation, arguments);
@@ -173,7 +175,7 @@ static int case_solve(lua_State *L) {
   enum { CASE = 1, GOAL = 4, JOINED = 10 };
   lac_case *object = lac_check_case(L, CASE);
   const lac_catalogue *catalogue = lac_catalogue_of(L);
-  problem p = {.catalogue = catalogue, .chain = object->chain, .varied = lac_catalogue_find(catalogue, luaL_checkstring(L, 2)),
+  problem p = {.catalogue = catalogue, .chain = object->chain, .values = object->values, .varied = lac_catalogue_find(catalogue, luaL_checkstring(L, 2)),
                .target = lac_catalogue_find(catalogue, luaL_checkstring(L, 3))};
   luaL_argcheck(L, p.varied >= 0 && p.target >= 0, 2, "unknown name");
   lac_quantity *goal = lac_check_bound(L, GOAL, "the goal");

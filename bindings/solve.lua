@@ -44,9 +44,17 @@ local function write(name, number)
   return text.quantity(core.like(core.given_like(name), number))
 end
 
+-- "it runs from 1 au to 3 au there", "it is 2 au throughout"
+local function runs(what, least, most)
+  return least == most and ("%s is %s throughout"):format(what, least) or ("%s runs from %s to %s there"):format(what, least, most)
+end
+
 local function nothing_found(given, goal_name, goal, low, high, least, most)
-  local runs = least <= most and ("it runs from %s to %s there"):format(write(goal_name, least), write(goal_name, most)) or "it is undefined there"
-  return ("no %s between %s and %s gives %s = %s: %s"):format(given, write(given, low), write(given, high), goal_name, goal, runs)
+  local between = ("no %s between %s and %s "):format(given, write(given, low), write(given, high))
+  if not (least <= most) then return between .. ("gives %s = %s: it is undefined there"):format(goal_name, goal) end
+  local there = runs("it", write(goal_name, least), write(goal_name, most))
+  if core.entry(goal_name).kind == "verdict" then return between .. ("turns %s: %s"):format(goal_name, there) end
+  return between .. ("gives %s = %s: %s"):format(goal_name, goal, there)
 end
 
 local function single(quantity) return #core.axes(quantity) == 0 and core.elements(quantity)[1] or nil end
@@ -65,18 +73,21 @@ local function chance_at(self, given, goal_name, x)
   return core.elements(core.chance(core.raw(with_givens(self, givens), goal_name)))[1]
 end
 
--- Bisection of the chance, which is a step function of x: the place where it first reaches the share, nearest to the start.
+-- Bisection of the chance, which is a step function of x: the place where it first reaches the share, nearest to the start; besides, the
+-- least and the greatest chance, which way it goes on being reached from there, and how many such places were seen.
 local function solve_chance(self, given, goal_name, share, low, high, logarithmic, start)
   local to, from = function(x) return x end, function(x) return x end
   if logarithmic then to, from = math.log, math.exp end
   local a, b, points = to(low), to(high), 49
   local least, most, left, right = math.huge, -math.huge, nil, nil
   local before, at
+  local places = 0
   for i = 0, points - 1 do
     local x = a + (b - a) * i / (points - 1)
     local value = chance_at(self, given, goal_name, from(x))
     least, most = math.min(least, value), math.max(most, value)
     if before and (before < share) ~= (value < share) then
+      places = places + 1
       if not left or math.abs((at + x) / 2 - to(start)) < math.abs((left + right) / 2 - to(start)) then left, right = at, x end
     end
     before, at = value, x
@@ -88,7 +99,7 @@ local function solve_chance(self, given, goal_name, share, low, high, logarithmi
     if middle == left or middle == right then break end
     if (chance_at(self, given, goal_name, from(middle)) < share) == rising then left = middle else right = middle end
   end
-  return from(rising and right or left), least, most -- the side on which the share is reached
+  return from(rising and right or left), least, most, rising and "up" or "down", places -- the side on which the share is reached
 end
 
 -- The case with the named axes of its givens fixed at these points.
@@ -117,13 +128,15 @@ local function solve_chances(self, given, goal_name, goal, share, range)
   local shape = core.chance(core.raw(without, goal_name))
   local axes = core.axes(shape)
   local function none(least, most)
-    return nil, ("no %s between %s and %s gives %s in %s of draws: the share runs from %s to %s there"):format(given, write(given, range.low),
-      write(given, range.high), goal_name, goal, format.percent(least), format.percent(most))
+    return nil, ("no %s between %s and %s gives %s in %s of draws: %s"):format(given, write(given, range.low), write(given, range.high), goal_name,
+      goal, runs("the share", format.percent(least), format.percent(most)))
   end
   if #axes == 0 then
-    local x, least, most = solve_chance(without, given, goal_name, share, range.low, range.high, range.logarithmic, range.start)
-    if x then return core.like(core.given_like(given), x) end
-    return none(least, most)
+    local x, least, most, way, places = solve_chance(without, given, goal_name, share, range.low, range.high, range.logarithmic, range.start)
+    if not x then return none(least, most) end
+    local note = ("%s in %s%s of draws from there %s"):format(goal_name, share < 1 and "at least " or "", goal, way)
+    if places > 1 then note = note .. (", up to the next of %d turns between %s and %s"):format(places, write(given, range.low), write(given, range.high)) end
+    return core.like(core.given_like(given), x), note
   end
   local roots, defined, lowest, highest = {}, false, math.huge, -math.huge
   each_point(axes, function(points)
@@ -142,6 +155,21 @@ local function share_of(goal)
   return share
 end
 
+-- The case with a name's assumed value given, where it is assumed.
+local function with_assumed(self, name)
+  local row = core.row_of(self, name)
+  if not row or core.row(row).kind ~= "assumed" then return self end
+  return self:with { [name] = core.raw(self, name) }
+end
+
+-- What a single verdict does from its turn on.
+local function way_of_verdict(self, given, goal_name, found, places, low, high)
+  local x = single(found)
+  if not x then return nil end
+  local note = ("%s is yes from there %s"):format(goal_name, chance_at(self, given, goal_name, x + 1e-9 * math.abs(x)) == 1 and "up" or "down")
+  return places > 1 and note .. (", up to the next of %d turns between %s and %s"):format(places, write(given, low), write(given, high)) or note
+end
+
 local function solve(self, word, goals, options)
   if options ~= nil and type(options) ~= "table" then core.raise("solve wants its options in a table, like {between = {\"10 m\", \"300 m\"}}; got " .. core.shown(options)) end
   for option in pairs(options or {}) do
@@ -150,10 +178,12 @@ local function solve(self, word, goals, options)
   if type(goals) ~= "table" or next(goals) == nil or next(goals, next(goals)) ~= nil then
     core.raise("solve wants one goal, like {gap_elements_by_array = 2}")
   end
-  local given, info = case.name_of(word, "solve: "), core.info(self)
+  local given = case.name_of(word, "solve: ")
   local goal_word, goal = next(goals)
   local goal_name = case.name_of(goal_word, "solve: ")
-  if not info.givens[given] then core.raise(("solve: %s is not given in this case; only what is given can be solved for"):format(given)) end
+  self = with_assumed(self, given)
+  local info = core.info(self)
+  if not info.givens[given] then core.raise(("solve: %s is not given in this case; only what is given or assumed can be solved for"):format(given)) end
   if core.row_of(self, goal_name) == nil then core.raise(text.not_had(self:missing(goal_name))) end
   local depends = false
   for _, step in ipairs(core.steps(self, goal_name)) do depends = depends or step.name == given end
@@ -172,10 +202,13 @@ local function solve(self, word, goals, options)
   end
   local found, least, most, brackets, defined = core.solve(self, given, goal_name, goal, low, high, logarithmic, start)
   if defined == 0 then return nil, nothing_found(given, goal_name, text.quantity(goal), low, high, least, most) end
+  if core.entry(goal_name).kind == "verdict" then return found, way_of_verdict(self, given, goal_name, found, brackets, low, high) end
+  local _, _, _, _, size = core.facts(found)
+  if defined < size then return found, ("where undefined, no %s between %s and %s gives %s = %s"):format(given, write(given, low), write(given, high), goal_name, text.brief(goal)) end
   if brackets > 1 then return found, ("the nearest of %d solutions between %s and %s"):format(brackets, write(given, low), write(given, high)) end
   return found
 end
 
 core.case_methods.solve = solve
 
-return {}
+return { bounds = bounds, with_givens = with_givens, with_assumed = with_assumed, write = write }

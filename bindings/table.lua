@@ -3,9 +3,11 @@
 --
 --   { title = text or nil, texts = { headers of the texts carried along }, columns = {...}, rows = {...}, notes = {...} }
 --
--- with columns { name, entry = row of the glossary, verdict, group = heading over it or nil, unit (VOUnits), unit_text, unit_tex },
--- rows { name, texts, cells }, cells { share } of a verdict or { value, upper, lower } in the column's unit (no errors: a single
--- number) or { missing = true }, and notes { heading, lines (texts, or lists whose first text heads the others) }. A column belongs to the group of its left neighbour where the name is the same.
+-- with columns { name (or heading = a text as it stands), entry = row of the glossary, verdict, group = heading over it or nil, unit (VOUnits), unit_text, unit_tex,
+-- left = true for texts that begin below each other },
+-- rows { name, texts, cells, rule = true for a rule above it }, cells { share } of a verdict or { value, upper, lower } in the column's unit (no errors: a single
+-- number) or { missing = true } or { text }, word = true where a text has no place below
+-- the numbers, mark = "*" besides where one is to stand behind it, and notes { heading, lines (texts, or lists whose first text heads the others) }. A column belongs to the group of its left neighbour where the name is the same.
 local core = ...
 local format = core.part "lacuna.format"
 
@@ -31,9 +33,10 @@ end
 tables.wrapped = wrapped
 
 -- A name or text from a file may have line breaks.
-local function on_one_line(text) return (text:gsub("%s+", " ")) end
+local function on_one_line(text) return (text:gsub("%s*[\n\r\t\v\f]%s*", " ")) end
 
 local function cell_text(cell)
+  if cell.text then return cell.text end
   if cell.missing then return MISSING end
   if cell.share then return cell.share == 1 and "yes" or cell.share == 0 and "no" or format.percent(cell.share) end
   return cell.upper and format.with_error(cell.value, cell.upper, cell.lower) or format.number(cell.value)
@@ -47,26 +50,35 @@ local function parts(text)
   return text, ""
 end
 
--- The texts of a column's cells, all of one width.
-local function aligned(cells)
-  local left, right, lefts, rights = 0, 0, {}, {}
+-- The texts of a column's cells, all of one width; words flush right, or all flush left where asked for.
+local function aligned(cells, flush_left)
+  local left, right, words, marks, lefts, rights = 0, 0, 0, 0, {}, {}
   for i, cell in ipairs(cells) do
-    lefts[i], rights[i] = parts(cell_text(cell))
-    left, right = math.max(left, format.width(lefts[i])), math.max(right, format.width(rights[i]))
+    lefts[i], rights[i] = cell_text(cell), ""
+    if flush_left or cell.word then words = math.max(words, format.width(lefts[i]))
+    else
+      lefts[i], rights[i] = parts(lefts[i])
+      left, right = math.max(left, format.width(lefts[i])), math.max(right, format.width(rights[i]))
+    end
+    if cell.mark then marks = math.max(marks, 1 + format.width(cell.mark)) end
   end
-  for i = 1, #cells do lefts[i] = format.pad_left(lefts[i], left) .. format.pad_right(rights[i], right) end
-  return lefts, left + right
+  local width, texts = math.max(left + right, words), {}
+  for i, cell in ipairs(cells) do
+    if not flush_left then lefts[i] = format.pad_left(lefts[i], cell.word and width or width - right) end
+    texts[i] = format.pad_right(lefts[i] .. rights[i] .. (cell.mark and " " .. cell.mark or ""), width + marks)
+  end
+  return texts, width + marks
 end
 
 -- A column laid out: its heading's lines, its cells' texts, its width.
 local function laid_out(column, cells)
-  local texts, width = aligned(cells)
-  local name = column.name:gsub("_", " "):gsub(" by ", " by" .. NO_BREAK)
+  local texts, width = aligned(cells, column.left)
+  local name = column.heading or column.name:gsub("_", " "):gsub(" by ", " by" .. NO_BREAK)
   for word in name:gmatch "%S+" do width = math.max(width, format.width(word)) end
-  width = math.max(width, format.width(column.unit_text))
+  width = math.max(width, format.width(column.unit_text or ""))
   local heading = wrapped(name, width)
   for i, line in ipairs(heading) do heading[i] = line:gsub(NO_BREAK, " ") end
-  return { heading = heading, unit = column.unit_text, texts = texts, width = width }
+  return { heading = heading, unit = column.unit_text or "", texts = texts, width = width, left = column.left }
 end
 
 -- Neighbouring columns of one group, each laid out.
@@ -127,10 +139,10 @@ end
 local function trimmed(line) return (line:gsub("%s+$", "")) end
 
 local function add_page(lines, page, rows, names_width)
-  local deepest, grouped = 0, false
+  local deepest, grouped, in_units = 0, false, false
   for _, block in ipairs(page) do
     grouped = grouped or block.group
-    for _, column in ipairs(block) do deepest = math.max(deepest, #column.heading) end
+    for _, column in ipairs(block) do deepest, in_units = math.max(deepest, #column.heading), in_units or column.unit ~= "" end
   end
   local blank = (" "):rep(names_width)
   if grouped then
@@ -144,15 +156,19 @@ local function add_page(lines, page, rows, names_width)
   local function add(first, text_of)
     local line = format.pad_right(first, names_width)
     for _, block in ipairs(page) do
-      for _, column in ipairs(block) do line = line .. GAP .. format.pad_left(text_of(column), column.width) end
+      for _, column in ipairs(block) do line = line .. GAP .. (column.left and format.pad_right or format.pad_left)(text_of(column), column.width) end
     end
     lines[#lines + 1] = trimmed(line)
     return format.width(line)
   end
-  for i = 1, deepest do add("", function(column) return column.heading[i - deepest + #column.heading] or "" end) end
-  local width = add("", function(column) return column.unit end)
+  local width = 0
+  for i = 1, deepest do width = math.max(width, add("", function(column) return column.heading[i - deepest + #column.heading] or "" end)) end
+  if in_units then width = math.max(width, add("", function(column) return column.unit end)) end
   lines[#lines + 1] = ("─"):rep(width)
-  for i, row in ipairs(rows) do add(on_one_line(row.name), function(column) return column.texts[i] end) end
+  for i, row in ipairs(rows) do
+    if row.rule then lines[#lines + 1] = ("─"):rep(width) end
+    add(on_one_line(row.name), function(column) return column.texts[i] end)
+  end
 end
 
 -- Notes: each with its heading, wrapped, the lines' further parts set in. A line may be a list: what its first text heads.

@@ -196,11 +196,11 @@ function text.unbound(quantity, factor, unit)
   return "samples about " .. about
 end
 
--- How a spread was given, before it is bound to draws: "156 ± 3 pc"; nil for what is no spread.
+-- How a spread was given, before it is bound to draws: "156 ± 3 pc", and its distribution; nil for what is no spread.
 function text.as_written(name, value)
   if type(value) == "string" then value = core.reading(value, name) end
-  local kind = core.unbound_facts(value)
-  if kind and kind ~= "sweep" then return text.quantity(value) end
+  local kind, median, a, b, c = core.unbound_facts(value)
+  if kind and kind ~= "sweep" then return text.quantity(value), { kind = kind, median = median, a = a, b = b, c = c } end
 end
 
 -- A given as it was given: what its draws make of an error bar is no news.
@@ -440,13 +440,11 @@ end
 
 -- What is missing -----------------------------------------------------------------------------------------------------------------
 
-local function hints(names)
-  local lines = {}
-  for _, name in ipairs(names) do
-    local hint = core.entry(name).hint
-    if hint then lines[#lines + 1] = name .. ": " .. hint end
-  end
-  return lines
+local function contains(names, others)
+  local has = {}
+  for _, name in ipairs(names) do has[name] = true end
+  for _, name in ipairs(others) do if not has[name] then return false end end
+  return true
 end
 
 -- Where on the way to a name the givens of one set are lacking: the name, its row, and which of the row's inputs can't be had. From the asked
@@ -472,40 +470,87 @@ local function branch_text(self, asked, set)
   return (name ~= asked and "for " .. name .. " " or "") .. "by " .. row.by .. (direct and "" or " from " .. table.concat(lacking, ", "))
 end
 
--- Whether all of some names are among others.
-local function within(names, others)
-  local there = {}
-  for _, name in ipairs(others) do there[name] = true end
-  for _, name in ipairs(names) do if not there[name] then return false end end
-  return true
+-- The sets of names that would do, as { names, by = recipes }: those that more than one recipe takes once.
+local function ways_of(missing)
+  local ways = {}
+  for _, set in ipairs(missing.sets) do
+    local by, same = set.row and core.row(set.row).by, nil
+    for _, way in ipairs(ways) do
+      if #way.names == #set.names and contains(way.names, set.names) then same = way end
+    end
+    if not same then
+      same = { names = set.names, by = {}, set = set }
+      ways[#ways + 1] = same
+    end
+    same.by[#same.by + 1] = by
+  end
+  return ways
 end
 
--- What is missing in one line, as an error says it: each way to have the name, but none that wants more than another besides.
+-- The names of a way, and by which recipes; a definition alone is no news. `branch`: where on the way they are lacking, if that is known.
+local function way_text(way, names, branch)
+  local by = table.concat(way.by, " or ")
+  if by == "" or by == "definition" and (not branch or branch:find "^by") then return names end
+  return names .. " (" .. (#way.by == 1 and branch or "by " .. by:gsub("^definition or ", "definition, or ")) .. ")"
+end
+
+-- What is missing in one line, as an error says it. Ways that want more than another one are left to missing.
 function text.not_had(missing)
-  local ways, first = {}, missing.sets[1]
-  if not first or first.names[1] == missing.name then
+  local parts = {}
+  if #missing.sets == 0 or missing.sets[1].names[1] == missing.name then
     for i, number in ipairs(core.entry(missing.name).rows) do
       local row = core.row(number)
-      ways[i] = table.concat(row.from, ", ") .. " (by " .. row.by .. ")"
+      parts[i] = way_text({ by = { row.by } }, table.concat(row.from, ", "))
     end
-    return missing.name .. " must be given" .. (#ways == 0 and ": no relation gives it" or ", or follow from " .. table.concat(ways, ", or "))
+    return missing.name .. " must be given" .. (#parts == 0 and ": no relation gives it" or ", or follow from " .. table.concat(parts, ", or "))
   end
-  for i, set in ipairs(missing.sets) do
-    local needless = false
-    for j = 1, i - 1 do needless = needless or within(missing.sets[j].names, set.names) end
-    if not needless then
-      ways[#ways + 1] = table.concat(set.names, ", ") .. (set.row and (" (%s)"):format(branch_text(missing.case, missing.name, set)) or "")
+  local ways = ways_of(missing)
+  for i, way in ipairs(ways) do
+    local more = false
+    for j = 1, i - 1 do more = more or contains(way.names, ways[j].names) end
+    local branch = way.set.row and branch_text(missing.case, missing.name, way.set)
+    if not more then parts[#parts + 1] = way_text(way, table.concat(way.names, ", "), branch) end
+  end
+  return missing.name .. " can't be derived from what is given; give " .. table.concat(parts, ", or ")
+end
+
+-- A further way: what it wants besides all that the first one wants, or all of it.
+local function further_way(way, first)
+  if not contains(way.names, first.names) then return way_text(way, "or " .. table.concat(way.names, ", ")) end
+  local besides = {}
+  for _, name in ipairs(way.names) do
+    if not contains(first.names, { name }) then besides[#besides + 1] = name end
+  end
+  return way_text(way, "or, besides, " .. table.concat(besides, ", "))
+end
+
+-- Each name that some way wants once: its unit, its meaning, a hint.
+local function explained(lines, ways)
+  local seen = {}
+  for _, way in ipairs(ways) do
+    for _, name in ipairs(way.names) do
+      if not seen[name] then
+        local entry = core.entry(name)
+        local unit = entry.unit and entry.unit ~= "1" and select(3, core.unit_facts(entry.unit))
+        add(lines, 2, ("%s%s: %s"):format(name, unit and " [" .. unit .. "]" or "", entry.meaning))
+        if entry.hint then add(lines, 4, entry.hint) end
+      end
+      seen[name] = true
     end
   end
-  return missing.name .. " can't be derived from what is given; give " .. table.concat(ways, ", or ")
 end
 
 text.missing_metatable = {
   __name = "what is missing",
   __tostring = function(missing)
+    if missing.given then return missing.name .. " is given" end
     if missing.had then return missing.name .. " can be had from what is given" end
-    local lines = { text.not_had(missing) }
-    for _, hint in ipairs(hints(missing.sets[1] and missing.sets[1].names or {})) do add(lines, 2, hint) end
+    local ways = ways_of(missing)
+    if #ways == 0 or ways[1].names[1] == missing.name then return show.page { text.not_had(missing) } end
+    local lines = { missing.name .. " can't be derived from what is given; give " .. way_text(ways[1], table.concat(ways[1].names, ", ")) }
+    for i = 2, #ways do add(lines, 2, further_way(ways[i], ways[1])) end
+    lines[#lines + 1] = ""
+    explained(lines, ways)
     return show.page(lines)
   end,
 }

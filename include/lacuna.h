@@ -21,6 +21,7 @@
 #include "lacuna/quantity.h"
 #include "lacuna/resolution.h"
 #include "lacuna/rim.h"
+#include "lacuna/sensitivity.h"
 #include "lacuna/starlight.h"
 #include "lacuna/status.h"
 #include "lacuna/units.h"
