@@ -294,4 +294,4 @@ local function new_study(fields)
   return study
 end
 
-return { study = new_study }
+return { study = new_study, fields = study_fields, variant_fields = variant_fields }
