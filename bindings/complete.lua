@@ -6,8 +6,9 @@
 --     cursor       how many bytes of the input stand before it
 --     environment  a list of plain tables in which variables are looked up, the first before the second; the session's if left out
 --     start        where the word begins, from 1
---     candidates   a list of {text =, meaning =, append =}; common = what all that begin like the word have in common
+--     candidates   a list of {text =, meaning =, append =, group =}; common = what all that begin like the word have in common
 --     files        true where the word is the name of a file, which others know better
+--   find(...): the same, but it may raise
 --   listing(candidates, from, columns, lines) -> text, last: a page of them, and the number of the last that is on it
 --   environment    the session's list
 local core = ...
@@ -15,19 +16,31 @@ local lists = core.part "lacuna.complete_lists"
 local values = core.part "lacuna.complete_values"
 local tokens = core.part "lacuna.tokens"
 local format = core.part "lacuna.format"
+local string = string
 local find, match, gmatch, sub, rep, lower, byte = string.find, string.match, string.gmatch, string.sub, string.rep, string.lower, string.byte
-local next, type, select, pcall = next, type, select, pcall
+local ipairs, math, next, pcall, select, table, type = ipairs, math, next, pcall, select, table, type
 
 local complete = { environment = { _G } }
 
 -- What is expected ------------------------------------------------------------------------------------------------------------------
 --
--- An expectation tells what may stand in a place: text(content) -> candidates, word's start in the content: of what a string there
--- may hold; and of a table there: keys(already there) -> candidates; value(key), element: the expectation of a field, of an item.
+-- An expectation tells what may stand in a place: text(content, object) -> candidates, word's start in the content: of what a string there
+-- may hold, as an argument of a method of that object; and of a table there: keys(already there) -> candidates; value(key), element: the expectation of a field, of an item.
+
+-- Several lists in one; of equal words the first counts.
+local function join(...)
+  local all, seen = {}, {}
+  for i = 1, select("#", ...) do
+    for _, candidate in ipairs((select(i, ...))) do
+      if not seen[candidate.text] then all[#all + 1], seen[candidate.text] = candidate, true end
+    end
+  end
+  return all
+end
 
 -- A string that is one word of a list.
 local function word_of(make)
-  return { text = function() return make(), 1 end }
+  return { text = function(_, object) return make(object), 1 end }
 end
 
 -- The unit at the end of a string that has a number before it; alone: the string is a unit. like: the unit to be like.
@@ -39,16 +52,14 @@ local function unit_in(content, like, alone)
   return lists.units(not find(before, "[%a][^%d]*[.*/]%*?%s*$") and like or nil), start
 end
 
-local name_text = word_of(lists.names)
+local name_text = word_of(function() return lists.names() end)
+local name_to_explain = word_of(function(case) return lists.members(case) end)
+local name_to_reach = word_of(function(case) return lists.members(case, true) end)
 local name_list = { element = name_text }
 local unit_text = { text = function(content) return unit_in(content, nil, true) end }
 local band_text, material_text = word_of(lists.bands), word_of(lists.materials)
 local help_text = word_of(function()
-  local all = lists.words()
-  for _, list in next, { lists.names(), lists.units() } do
-    for _, candidate in next, list do all[#all + 1] = { text = candidate.text, meaning = candidate.meaning, synonyms = candidate.synonyms, append = "" } end
-  end
-  return all
+  return join(lists.words(), lists.names(), lists.units())
 end)
 
 -- The value of a given: a number with a unit of its dimension, or the name of an object.
@@ -66,14 +77,14 @@ end
 local function names_as_keys(there) return lists.names(" = ", there) end
 local givens = { keys = names_as_keys, value = value_of }
 local choices = {
-  keys = function(there) return lists.names(" = \"", there) end,
+  keys = function(there) return lists.names_with_choice(" = \"", there) end,
   value = function(name) return word_of(function() return lists.recipes(name) end) end,
 }
 
 -- Keys of a table by the form of the word that takes it: "band{wavelength = ..., width = ...}" has wavelength and width.
 local function keys_of_form(word)
   local keys, seen = {}, {}
-  for _, form in next, lists.forms_of(word) do
+  for _, form in ipairs(lists.forms_of(word)) do
     for key in gmatch(match(form, word .. "(%b{})") or "", "[{,] *([%l_]+) =") do
       if not seen[key] then keys[#keys + 1], seen[key] = key, true end
     end
@@ -85,7 +96,7 @@ local function fields(keys, of, expected)
   return {
     keys = function(there)
       local list = {}
-      for _, key in next, keys() do
+      for _, key in ipairs(keys()) do
         if not there[key] then list[#list + 1] = { text = key, meaning = "a field of " .. of, append = " = " } end
       end
       return list
@@ -107,14 +118,14 @@ local of_study = { given = givens, using = choices, ask = name_list, variants = 
 local function of_form(word, expected) return fields(function() return keys_of_form(word) end, word, expected or {}) end
 local fractions = { keys = function(there)
   local list = {}
-  for _, candidate in next, lists.materials(" = ") do if not there[candidate.text] then list[#list + 1] = candidate end end
+  for _, candidate in ipairs(lists.materials(" = ")) do if not there[candidate.text] then list[#list + 1] = candidate end end
   return list
 end, element = { element = material_text } }
 local sizes = fields(function() return { "smallest", "largest", "index", "median", "width" } end, "sizes", {})
 
 -- What functions and methods take, argument by argument.
 local arguments = {
-  case = { givens }, with = { givens }, using = { choices }, why = { name_text }, missing = { name_text }, sensitivity = { name_text },
+  case = { givens }, with = { givens }, using = { choices }, why = { name_to_explain }, missing = { name_to_reach }, sensitivity = { name_to_explain },
   solve = { name_text, givens }, compare = { {}, givens, name_list }, recipes = { name_text }, help = { help_text },
   study = { fields(function() return sorted_keys(core.part "lacuna.study".fields) end, "study", of_study) },
   band = { { text = band_text.text, keys = of_form("band").keys } }, material = { { text = material_text.text, keys = of_form("material").keys } },
@@ -127,7 +138,7 @@ local arguments = {
 local function expected_of_call(callee, argument)
   local name = callee.method or callee.word
   if not name then return nil end
-  if arguments[name] then return arguments[name][argument] end
+  if arguments[name] then return arguments[name][argument], callee.object end
   if argument == 1 and core.find(name) == name then return givens end -- hill_radius{...}
 end
 
@@ -164,13 +175,13 @@ end
 -- What stands at the cursor ---------------------------------------------------------------------------------------------------------
 
 local function in_string(reading, open)
-  local expected
+  local expected, object
   local i = #reading.tokens + 1 -- the string's own number
   if values.ends_prefix(reading.tokens[i - 1]) then
-    expected = expected_of_call(values.find(reading.tokens, reading.partner, i - 1, reading.environment), 1)
-  elseif begins_item(reading, i, #reading.stack) then expected = expected_of_item(reading, #reading.stack) end
+    expected, object = expected_of_call(values.find(reading.tokens, reading.partner, i - 1, reading.environment), 1)
+  elseif begins_item(reading, i, #reading.stack) then expected, object = expected_of_item(reading, #reading.stack) end
   if expected and expected.text then
-    local candidates, start = expected.text(open.text)
+    local candidates, start = expected.text(open.text, core.is_case(object) and object or nil)
     return candidates or {}, open.first + (start or 1) - 1, false, true
   end
   local candidates, start = unit_in(open.text)
@@ -188,16 +199,6 @@ local function after_mark(reading, mark)
   local methods = found.kind and lists.methods(found.kind) or {}
   if #methods > 0 then return methods end
   return type(found.value) == "table" and lists.fields(found.value, true) or found.value == nil and lists.all_methods() or {}
-end
-
-local function join(...)
-  local all, seen = {}, {}
-  for i = 1, select("#", ...) do
-    for _, candidate in next, (select(i, ...)) do
-      if not seen[candidate.text] then all[#all + 1], seen[candidate.text] = candidate, true end
-    end
-  end
-  return all
 end
 
 -- A word by itself: a key where a table wants some, else whatever has a value. Where nothing is typed yet, what is likely.
@@ -220,7 +221,7 @@ end
 
 local function selected(candidates, test)
   local list = {}
-  for _, candidate in next, candidates do if test(candidate) then list[#list + 1] = candidate end end
+  for _, candidate in ipairs(candidates) do if test(candidate) then list[#list + 1] = candidate end end
   return list
 end
 
@@ -259,11 +260,11 @@ local function append_to(candidate, after, quote)
   local append = candidate.append
   if quote then return begins(after, quote) and "" or quote end
   local first = match(append, "%S")
-  if append ~= "" and (match(after, "^%s*(%S)") == first or find(after, "^[%w_]")) then return "" end
+  if first and match(after, "^%s*(%S)") == first or find(after, "^[%w_]") then return "" end
   return append
 end
 
-local function find_candidates(input, cursor, environment)
+function complete.find(input, cursor, environment)
   local before, after = sub(input, 1, cursor), sub(input, cursor + 1)
   local list, word, open = tokens.read(before)
   local stack, partner = tokens.brackets(list)
@@ -278,8 +279,8 @@ local function find_candidates(input, cursor, environment)
   elseif not (last and last.kind == "number" and last.last == start - 1) then candidates = alone(reading, word.text) end
   local written = sub(before, start)
   local meant = {}
-  for i, candidate in next, meant_by(candidates, written) do
-    meant[i] = { text = candidate.text, meaning = candidate.meaning, append = append_to(candidate, after, closes and open.quote) }
+  for i, candidate in ipairs(meant_by(candidates, written)) do
+    meant[i] = { text = candidate.text, meaning = candidate.meaning, group = candidate.group, append = append_to(candidate, after, closes and open.quote) }
   end
   meant.common = common_part(meant, written)
   return start, meant
@@ -287,7 +288,7 @@ end
 
 -- What goes wrong here must not disturb who types: then there is nothing to offer.
 function complete.at(input, cursor, environment)
-  local good, start, candidates, files = pcall(find_candidates, input, cursor, environment)
+  local good, start, candidates, files = pcall(complete.find, input, cursor, environment)
   if good then return start, candidates, files end
   return cursor + 1, { common = "" }
 end
@@ -296,10 +297,11 @@ end
 
 -- Words of a text in lines of so many columns.
 local function wrapped(words, columns)
-  local lines, line = {}, ""
+  local lines, line, width = {}, "", 0
   for word in gmatch(words, "%S+") do
-    if line ~= "" and format.width(line) + 1 + format.width(word) > columns then lines[#lines + 1], line = line, "" end
-    line = line == "" and word or line .. " " .. word
+    local more = format.width(word)
+    if line ~= "" and width + 1 + more > columns then lines[#lines + 1], line, width = line, "", 0 end
+    line, width = line == "" and word or line .. " " .. word, (line == "" and 0 or width + 1) + more
   end
   lines[#lines + 1] = line
   return lines
@@ -307,19 +309,26 @@ end
 
 local WIDEST = 36 -- of the column of words
 
+-- The lines of one candidate, its word in a column of so many.
+local function lines_of(candidate, widest, columns)
+  local lines = wrapped(candidate.meaning, math.max(columns - widest - 5, 20))
+  local head, indent = "  " .. format.pad_right(candidate.text, widest) .. "  ", rep(" ", widest + 4)
+  if format.width(head) > widest + 4 then table.insert(lines, 1, "") end
+  for i = 1, #lines do lines[i] = match((i == 1 and head or indent) .. lines[i], "^(.-)%s*$") end
+  return lines
+end
+
 function complete.listing(candidates, from, columns, lines)
   if from > #candidates then from = 1 end
-  local room = math.max(lines - 2, 2) -- the prompt, and how many more there are
-  local widest = 0
+  local room, widest = math.max(lines - 2, 2), 0 -- the prompt, and how many more there are
   for i = from, math.min(#candidates, from + room) do widest = math.max(widest, format.width(candidates[i].text)) end
   widest = math.min(widest, WIDEST, columns // 2)
-  local indent, page, i = rep(" ", widest + 4), {}, from
+  local page, i, group = {}, from, nil
   while i <= #candidates do
-    local meaning = wrapped(candidates[i].meaning, math.max(columns - widest - 5, 20))
-    local head = "  " .. format.pad_right(candidates[i].text, widest) .. "  "
-    if format.width(head) > widest + 4 then table.insert(meaning, 1, "") end
-    if #page > 0 and #page + #meaning > room then break end
-    for k = 1, #meaning do page[#page + 1] = match((k == 1 and head or indent) .. meaning[k], "^(.-)%s*$") end
+    local more = lines_of(candidates[i], widest, columns)
+    if candidates[i].group ~= group then group = candidates[i].group; table.insert(more, 1, group .. ":") end
+    if #page > 0 and #page + #more > room then break end
+    table.move(more, 1, #more, #page + 1, page)
     i = i + 1
   end
   if i <= #candidates then page[#page + 1] = ("  and %d more: Tab again"):format(#candidates - i + 1)

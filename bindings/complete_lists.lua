@@ -1,13 +1,13 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
--- What completion can offer, by kind: names, units, recipes, bands, words, variables. Each list holds candidates {text =, meaning =, append =},
--- append being what is put behind a word that is the only one. All from the tables; nothing here runs code of the user's.
+-- What completion can offer, by kind: names, units, recipes, bands, words, variables. Each list holds candidates {text =, meaning =, append =, group =},
+-- append being what is put behind a word that is the only one, group a heading over several (or nil). Who gets a list doesn't change it. All from the tables; nothing here runs code of the user's.
 local core = ...
 local text = core.part "lacuna.text"
 local format = core.part "lacuna.format"
 local words = core.part "lacuna.words"
 local keywords = core.part "lacuna.tokens".keywords
 local find, match, gmatch, sub = string.find, string.match, string.gmatch, string.sub
-local next, type, rawget, select, math_type, sort = next, type, rawget, select, math.type, table.sort
+local getmetatable, ipairs, math, next, rawget, select, string, table, tostring, type = getmetatable, ipairs, math, next, rawget, select, string, table, tostring, type
 
 local lists = {}
 
@@ -33,7 +33,7 @@ end
 -- Methods of a kind: a list of {name, meaning, what follows it in its form}.
 local function methods_of(kind)
   local found, seen = {}, {}
-  for _, line in next, words.about[kind] or {} do
+  for _, line in ipairs(words.about[kind] or {}) do
     for name, after in gmatch(line, "%f[%w]%l:([%l_]+)()") do
       if not seen[name] then found[#found + 1], seen[name] = { name, match(line, "^  %l:.-   *(%S.*)$"), sub(line, after) }, true end
     end
@@ -56,23 +56,25 @@ local function what_follows(word, forms)
   return all or ""
 end
 
+local all_words -- made when first wanted, as are units and keywords below: they are always the same
 function lists.words()
-  local list = {}
-  for _, word in next, words.names do add(list, word, one_line(word), what_follows(word, forms_of(word))) end
-  return list
+  if all_words then return all_words end
+  all_words = {}
+  for _, word in ipairs(words.names) do add(all_words, word, one_line(word), what_follows(word, forms_of(word))) end
+  return all_words
 end
 
 function lists.methods(kind)
   local list = {}
-  for _, method in next, methods_of(kind) do add(list, method[1], method[2], first_mark(method[3])) end
+  for _, method in ipairs(methods_of(kind)) do add(list, method[1], method[2], first_mark(method[3])) end
   return list
 end
 
 -- Methods of whatever has any, where it isn't known what stands before the colon.
 function lists.all_methods()
   local list, seen = {}, {}
-  for _, kind in next, { "case", "quantity", "dust", "band" } do
-    for _, candidate in next, lists.methods(kind) do
+  for _, kind in ipairs({ "case", "quantity", "dust", "band" }) do
+    for _, candidate in ipairs(lists.methods(kind)) do
       if not seen[candidate.text] then list[#list + 1], seen[candidate.text] = candidate, true end
     end
   end
@@ -97,7 +99,7 @@ lists.entry_of = entry_of
 -- All names but those in `without`, with the same append.
 function lists.names(append, without)
   local list = {}
-  for _, name in next, core.names() do
+  for _, name in ipairs(core.names()) do
     if not (without and without[name]) then
       local entry = entry_of(name)
       add(list, name, entry.meaning, append)
@@ -107,26 +109,36 @@ function lists.names(append, without)
   return list
 end
 
--- Names as members of a case: first those that it has, then those for which more would have to be given.
-function lists.members(case)
-  local had, others = {}, {}
-  for _, candidate in next, lists.names() do
-    local row = case and core.row_of(case, candidate.text)
-    if entry_of(candidate.text).kind ~= "object" or row == false then
-      if row == false then candidate.meaning = "given; " .. candidate.meaning
-      elseif case and not row then candidate.meaning = "not to be had yet; " .. candidate.meaning end
-      local list = (row ~= nil or not case) and had or others
-      list[#list + 1] = candidate
-    end
+-- The names that have several recipes.
+function lists.names_with_choice(append, without)
+  local list = {}
+  for _, candidate in ipairs(lists.names(append, without)) do
+    if #core.entry(candidate.text).rows > 1 then list[#list + 1] = candidate end
   end
-  for _, candidate in next, others do had[#had + 1] = candidate end
-  return had
+  return list
+end
+
+-- Names as members of a case (nil: not known): those that it has, the given ones first, then those for which more would have to be given;
+-- or these first.
+function lists.members(case, wanting_first)
+  local given, had, others = {}, {}, {}
+  for _, candidate in ipairs(lists.names()) do
+    local row = case and core.row_of(case, candidate.text)
+    local list, group = had, case and "to be had"
+    if row == false then list, group = given, "given"
+    elseif case and not row then list, group = others, "not to be had from what is given" end
+    candidate.group = group
+    if entry_of(candidate.text).kind ~= "object" or row == false then list[#list + 1] = candidate end
+  end
+  local all = {}
+  for _, list in ipairs(wanting_first and { others, given, had } or { given, had, others }) do table.move(list, 1, #list, #all + 1, all) end
+  return all
 end
 
 function lists.recipes(name)
   local list = {}
   if not core.find(name) then return list end
-  for _, number in next, core.entry(core.find(name)).rows do
+  for _, number in ipairs(core.entry(core.find(name)).rows) do
     local row = core.row(number)
     local source = row.kind == "assumed" and "assumed " .. row.assumes or row.source == "definition" and "by definition" or text.source(row)
     add(list, row.by, source .. (row.supposes and "; supposes " .. row.supposes or ""))
@@ -136,11 +148,11 @@ end
 
 -- Units, bands, materials -----------------------------------------------------------------------------------------------------------
 
-local units -- made when first wanted: they are always the same
+local units
 local function all_units()
   if units then return units end
   units = {}
-  for _, symbol in next, core.unit_symbols() do
+  for _, symbol in ipairs(core.unit_symbols()) do
     local factor, _, _, si = core.unit_facts(symbol)
     local _, _, si_written = core.unit_facts(si)
     add(units, symbol, format.with_unit(format.number(factor, 6), si == "1" and "" or si_written))
@@ -153,7 +165,7 @@ end
 function lists.units(like)
   local _, _, _, si = core.unit_facts(like or "")
   local list = {}
-  for _, unit in next, all_units() do
+  for _, unit in ipairs(all_units()) do
     local candidate = { text = unit.text, meaning = unit.meaning, append = "" }
     if unit.text == like then table.insert(list, 1, candidate)
     elseif not si or unit.si == si then list[#list + 1] = candidate end
@@ -196,7 +208,7 @@ lists.standard = standard
 local function about(value)
   local kind = type(value)
   if kind == "string" then return ("%q"):format(#value > 40 and sub(value, 1, 40) .. "..." or value):gsub("\\\n", "\\n") .. "" end
-  if math_type(value) or kind == "boolean" then return tostring(value) end
+  if math.type(value) or kind == "boolean" then return tostring(value) end
   if kind ~= "userdata" then return "a " .. kind end
   if core.is_case(value) then return "a case" end
   if select("#", core.facts(value)) > 0 then return "a quantity, " .. (core.dimension(value)) end
@@ -211,7 +223,7 @@ end
 local function is_identifier(key) return type(key) == "string" and find(key, "^[%a_][%w_]*$") and not keywords[key] end
 
 local function sorted(list)
-  sort(list, function(a, b) return a.text < b.text end)
+  table.sort(list, function(a, b) return a.text < b.text end)
   return list
 end
 
@@ -235,7 +247,7 @@ end
 -- The user's variables in the environment, a list of plain tables; or, with `standard_ones`, those that Lua has by itself.
 function lists.variables(environment, standard_ones)
   local list, seen = {}, {}
-  for _, scope in next, environment do
+  for _, scope in ipairs(environment) do
     for key, value in next, scope do
       if is_identifier(key) and not seen[key] and (standard[key] ~= nil) == standard_ones then
         seen[key] = true
@@ -247,10 +259,12 @@ function lists.variables(environment, standard_ones)
 end
 
 local takes_nothing = { ["break"] = true, ["end"] = true, ["false"] = true, ["nil"] = true, ["true"] = true, ["else"] = true, ["repeat"] = true }
+local all_keywords
 function lists.keywords()
-  local list = {}
-  for word in next, keywords do add(list, word, "a keyword of Lua's", takes_nothing[word] and "" or " ") end
-  return sorted(list)
+  if all_keywords then return all_keywords end
+  all_keywords = {}
+  for word in next, keywords do add(all_keywords, word, "a keyword of Lua's", takes_nothing[word] and "" or " ") end
+  return sorted(all_keywords)
 end
 
 return lists

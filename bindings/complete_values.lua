@@ -3,7 +3,7 @@
 -- A finding is a table: value = (a Lua value), kind = ("case", "quantity", "dust", ...), word = (a word of the language or a name),
 -- method = (its name; kind is then that of its object). An empty one is not known. Variables are looked up raw.
 local core = ...
-local next, type, rawget, getmetatable, select = next, type, rawget, getmetatable, select
+local getmetatable, ipairs, rawget, select, type = getmetatable, ipairs, rawget, select, type
 
 local values = {}
 
@@ -30,7 +30,7 @@ local function of_value(value) return { value = value, kind = values.kind_of(val
 
 -- A finding for a variable, a word, a unit or a name.
 local function variable(name, environment)
-  for _, scope in next, environment do
+  for _, scope in ipairs(environment) do
     local value = rawget(scope, name)
     if value ~= nil then return of_value(value) end
   end

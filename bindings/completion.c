@@ -21,6 +21,7 @@ static struct {
   int start;       /* of the word, in readline's line; -1: none */
   bool files;      /* it names a file */
   char quote;      /* in this quotation mark */
+  bool stuck;      /* several candidates, and nothing that all of them add to the word */
   int listed;      /* candidates of the present list that were shown */
   int point;       /* where the cursor was when they were */
 } found;
@@ -50,7 +51,7 @@ static void push_function(lua_State *L, const char *name) {
   lua_remove(L, -2);
 }
 
-/* at(input, cursor): leaves its results on the stack. */
+/* at(input, cursor): leaves its results on the stack, and what all candidates have in common. */
 static int ask(lua_State *L) {
   push_function(L, "at");
   lua_pushfstring(L, "%s%s%s", earlier ? earlier : "", earlier ? "\n" : "", rl_line_buffer);
@@ -58,7 +59,8 @@ static int ask(lua_State *L) {
   lua_call(L, 2, 3);
   lua_pushvalue(L, -2);
   lua_rawsetp(L, LUA_REGISTRYINDEX, &candidates_key);
-  return 3;
+  lua_getfield(L, -2, "common");
+  return 4;
 }
 
 /* readline asks with which characters a word ends: then the cursor's context is looked at. The one character before our word does. */
@@ -67,10 +69,11 @@ static char *find_word(void) {
   const int shift = earlier ? (int)strlen(earlier) + 1 : 0;
   found.start = -1;
   breaks[0] = ' ';
-  if (!call_quietly(state, ask, NULL, 3)) return breaks;
-  const int start = (int)lua_tointeger(state, -3) - 1 - shift;
-  found.files = lua_toboolean(state, -1);
-  lua_pop(state, 3);
+  if (!call_quietly(state, ask, NULL, 4)) return breaks;
+  const int start = (int)lua_tointeger(state, -4) - 1 - shift;
+  found.files = lua_toboolean(state, -2);
+  found.stuck = lua_rawlen(state, -3) > 1 && lua_rawlen(state, -1) == (size_t)(rl_point - start);
+  lua_pop(state, 4);
   if (start < 0 || start > rl_point || (start > 0 && (unsigned char)rl_line_buffer[start - 1] >= 0x80)) return breaks;
   found.start = start;
   found.quote = start > 0 ? rl_line_buffer[start - 1] : 0;
@@ -112,7 +115,7 @@ static char **complete_file(const char *text) {
 
 static char **complete_word(const char *text, int start, int end) {
   char **matches = NULL;
-  (void)end;
+  if (end == 0) find_word(); /* readline doesn't ask where nothing stands before the cursor */
   rl_attempted_completion_over = 1;
   rl_sort_completion_matches = 0;
   if (rl_completion_type != '?' || rl_point != found.point) found.listed = 0;
@@ -126,13 +129,15 @@ static char **complete_word(const char *text, int start, int end) {
 static int list_page(lua_State *L) {
   int lines, columns;
   rl_get_screen_size(&lines, &columns);
+  lines -= rl_end / (columns > 0 ? columns : 80); /* the input comes again below it */
   push_function(L, "listing");
   lua_rawgetp(L, LUA_REGISTRYINDEX, &candidates_key);
   lua_pushinteger(L, found.listed + 1);
   lua_pushinteger(L, columns);
   lua_pushinteger(L, lines);
   lua_call(L, 4, 2);
-  fprintf(rl_outstream, "\n%s", lua_tostring(L, -2));
+  fputc('\n', rl_outstream);
+  fputs(lua_tostring(L, -2), rl_outstream);
   found.listed = (int)lua_tointeger(L, -1);
   found.point = rl_point;
   return 0;
@@ -160,7 +165,9 @@ static int complete_or_indent(int count, int key) {
   const size_t blanks = strspn(rl_line_buffer, " \t");
   if (earlier && (size_t)rl_point <= blanks) return rl_insert_text("  "), 0;
   (void)key;
-  return rl_complete_internal(rl_completion_mode(complete_or_indent));
+  int mode = rl_completion_mode(complete_or_indent);
+  if (mode == '\t' && rl_last_func == complete_or_indent && find_word() && found.stuck) mode = '?'; /* the Tab before got this far */
+  return rl_complete_internal(mode);
 }
 
 void completion_start(lua_State *L) {

@@ -53,8 +53,11 @@ static void take_size(void) {
 
 static void cancel_line(void) {
   rl_callback_sigcleanup();
+  rl_point = rl_end;
+  rl_redisplay();
+  fputs("^C", rl_outstream);
   rl_callback_handler_remove();
-  fputs("^C\n", rl_outstream);
+  fputc('\n', rl_outstream);
 }
 
 /* A ppoll that finds input doesn't let a waiting signal in, and what is typed after a Ctrl-C must not be read before it. */
@@ -74,10 +77,10 @@ reply prompt_read_line(const char *prompt, const char *earlier, char **line) {
   typed = NULL;
   finished = false;
   completion_set_context(earlier);
+  if (resized) resized = 0, rl_reset_screen_size(); /* while code ran */
   rl_callback_handler_install(prompt, take_line);
   while (!finished) {
     struct pollfd input = {.fd = STDIN_FILENO, .events = POLLIN};
-    if (resized) take_size(); /* while code ran, say */
     int ready = ppoll(&input, 1, NULL, &open);
     if (ready > 0) let_interruption_in(&open);
     if (program_was_interrupted()) return cancel_line(), CANCELLED;
@@ -106,5 +109,6 @@ void prompt_start(void) {
   rl_readline_name = "lacuna";
   rl_catch_signals = rl_catch_sigwinch = 0;
   rl_change_environment = 0; /* COLUMNS, once set, would hide a later size from what is printed */
+  rl_instream = stdin;
   rl_outstream = isatty(STDOUT_FILENO) ? stdout : stderr;
 }
