@@ -252,11 +252,19 @@ static int unit_named(lua_State *L) {
   return 1;
 }
 
+/* unit_symbols(): the units that completion offers, a list. */
+static int unit_symbols(lua_State *L) {
+  const char *symbol;
+  lua_newtable(L);
+  for (size_t i = 0; (symbol = lac_unit_symbol(i)) != NULL; i++) lua_pushstring(L, symbol), lua_rawseti(L, -2, (lua_Integer)i + 1);
+  return 1;
+}
+
 void lac_open_elements(lua_State *L) {
   static const luaL_Reg functions[] = {
       {"as", quantity_as}, {"value", quantity_value}, {"at", quantity_at}, {"axes", quantity_axes}, {"elements", quantity_elements},
       {"store", quantity_store}, {"stored", quantity_stored}, {"like", quantity_like}, {"along_axes", quantity_along_axes},
-      {"facts", quantity_facts}, {"dimension", quantity_dimension}, {"unit_facts", unit_facts}, {"unit", unit_named}, {NULL, NULL},
+      {"facts", quantity_facts}, {"dimension", quantity_dimension}, {"unit_facts", unit_facts}, {"unit", unit_named}, {"unit_symbols", unit_symbols}, {NULL, NULL},
   };
   luaL_setfuncs(L, functions, 0);
 }

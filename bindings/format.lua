@@ -205,6 +205,7 @@ end
 
 -- Bytes that are no UTF-8 count as one column each.
 function format.width(text)
+  if not text:find("[^ -~]") then return #text end
   local columns, at = 0, 1
   while at <= #text do
     local _, bad = utf8.len(text, at)

@@ -294,4 +294,4 @@ local function new_study(fields)
   return study
 end
 
-return { study = new_study, cell_of = cell_of, WIDTH = WIDTH }
+return { study = new_study, cell_of = cell_of, WIDTH = WIDTH, fields = study_fields, variant_fields = variant_fields }

@@ -1,90 +1,16 @@
 # SPDX-License-Identifier: GPL-3.0-or-later
 """The conversation at a terminal, driven through a pseudo-terminal as a person would."""
 import os
-import pty
 import re
-import select
 import shutil
-import signal
 import stat
 import subprocess
 import tempfile
-import time
 
-LACUNA = os.environ["LACUNA"]
-PATIENCE = 30  # seconds for an answer; sanitised builds are slow
-CONTROL_C, CONTROL_D, UP = "\x03", "\x04", "\x1b[A"
-PROMPT = re.compile(r"(^|\n)> $")
+from terminal import CONTROL_C, LACUNA, LEFT, PASTE_BEGINS, PASTE_ENDS, PROMPT, TAB, UP, Session, check, plan
+
 MANY_DRAWS = "--draws=10000000000"  # a minute of work
-results = 0
-
-
-def check(good, name, seen=""):
-    global results
-    results += 1
-    print(f"{'ok' if good else 'not ok'} {results} - {name}", flush=True)
-    if not good:
-        print("# saw " + repr(seen), flush=True)
-
-
-class Session:
-    """One program on a terminal of its own."""
-
-    def __init__(self, state_folder, *options):
-        environment = dict(os.environ, XDG_STATE_HOME=state_folder, TERM="xterm", INPUTRC="/dev/null")
-        self.pid, self.terminal = pty.fork()
-        if self.pid == 0:
-            os.execve(LACUNA, [LACUNA, *options], environment)
-        self.screen = ""
-
-    def type(self, text):
-        self.screen = ""
-        os.write(self.terminal, text.encode())
-
-    def wait(self, pattern, patience=PATIENCE):
-        """Reads until what was seen since the last typing matches; terminal control is left out."""
-        pattern, end = re.compile(pattern) if isinstance(pattern, str) else pattern, time.monotonic() + patience
-        while not pattern.search(self.screen):
-            if not select.select([self.terminal], [], [], max(0, end - time.monotonic()))[0]:
-                return False
-            try:
-                piece = os.read(self.terminal, 65536)
-            except OSError:  # the program has left
-                return bool(pattern.search(self.screen))
-            self.screen = re.sub(r"\x1b\[[0-9;?]*[a-zA-Z]|\r", "", self.screen + piece.decode(errors="replace"))
-        return True
-
-    def ask(self, line, answer, name):
-        """Types a line and wants this answer before the next prompt."""
-        self.type(line + "\r")
-        good = self.wait(PROMPT) and re.search(r"\n" + answer + r"\n> $", self.screen)
-        check(bool(good), name, self.screen)
-
-    def interrupt(self, line, name):
-        """Types a line that never ends, then Ctrl-C, and wants the prompt back."""
-        self.type(line + "\r")
-        self.wait(r"\n")
-        time.sleep(0.5)
-        check(not PROMPT.search(self.screen), name + " runs", self.screen)
-        self.type(CONTROL_C)
-        check(self.wait(PROMPT) and "\ninterrupted\n" in self.screen, name + " ends by Ctrl-C", self.screen)
-
-    def leave(self):
-        self.type(CONTROL_D)
-        end = time.monotonic() + PATIENCE
-        while time.monotonic() < end:
-            if select.select([self.terminal], [], [], 0.05)[0]:
-                try:
-                    os.read(self.terminal, 65536)
-                except OSError:
-                    pass
-            pid, status = os.waitpid(self.pid, os.WNOHANG)
-            if pid:
-                os.close(self.terminal)
-                return os.waitstatus_to_exitcode(status)
-        os.kill(self.pid, signal.SIGKILL)
-        os.waitpid(self.pid, 0)
-        return None
+INVENTED_STAR = 'c = case{distance = "150 pc", bolometric_flux = "2e-11 W.m**-2"}'
 
 
 def talk(folder):
@@ -105,8 +31,8 @@ def talk(folder):
     session.ask("error('bad')", "bad", "an error is one line")
     session.ask("x = = 1", "unexpected symbol near '='", "so is a syntax error")
     session.ask("x", "20", "the session lives on")
-    session.type("\x1b[200~first = 1\nsecond = 2\nprint(first + second)\x1b[201~\r")
-    check(session.wait(r"\n3\n> $"), "several pasted lines are one input", session.screen)
+    session.type("y = {\r1,\rnil + 1}\r")
+    check(session.wait(r"\nprompt:3: attempt to perform arithmetic on a nil value\n> $"), "of several lines, an error says which", session.screen)
     return session
 
 
@@ -130,6 +56,112 @@ def stop_things(session):
     check(session.wait(r"\n42\n> $"), "Ctrl-C and a line in one go", session.screen)
 
 
+def paste(session):
+    """Several lines at once, as a terminal hands over what is pasted: one input, one entry of the history."""
+    session.type(PASTE_BEGINS + "first = 1\nsecond = 2\n\nprint(first + second)" + PASTE_ENDS)
+    session.settle()
+    check("\n3\n" not in session.screen, "what is pasted waits for Enter", session.screen)
+    session.type("\r")
+    check(session.wait(r"\n3\n> $"), "several pasted lines are one input", session.screen)
+    session.type(UP)
+    check(session.wait(r"first = 1\nsecond = 2\n\nprint\(first \+ second\)$"), "which comes back whole", session.screen)
+    session.type(LEFT + " * 10\r")
+    check(session.wait(r"\n21\n> $"), "and can be edited", session.screen)
+    session.type(PASTE_BEGINS + "for i = 1, 2 do\n\tprint(i)\n" + PASTE_ENDS + "\r")
+    check(session.wait(r">> $"), "half a statement can be pasted, tabs in it", session.screen)
+    session.ask("end", "1\n2", "and the rest typed")
+
+
+def survive(session):
+    """What ends a computation in C or in Lua doesn't end the session."""
+    session.ask("settings{memory = 16}", ".*16 MiB of memory", "little memory")
+    session.ask("case{distance = sweep('1 pc', '2 pc', 1e7)}.parallax:stored()", ".*MiB allowed.*", "over the memory cap")
+    session.ask("settings{memory = 2000}", ".*2000 MiB of memory", "enough memory")
+    session.ask("s = ('x'):rep(1 << 60)", "resulting string too large", "a string too large")
+    session.ask("function f() return f() + 1 end f()", ".*stack overflow.*(\n.*)*", "a stack overflow")
+    session.ask("error()", ".*nil.*", "an error without a value")
+    session.ask("error({})", ".*table.*", "an error that is a table")
+    session.ask("error(setmetatable({}, {__tostring = function() error 'again' end}))", ".+", "an error that fails to be told")
+    session.ask("return " + "(" * 300 + "1" + ")" * 300, ".*(levels|overflow).*", "too deep for the parser")
+    session.ask("x", "20", "the session lives on")
+
+
+def complete(session):
+    def completed(typed, shown, name):
+        session.type(typed + TAB)
+        check(session.wait(shown + "$"), name, session.screen)
+        session.type(CONTROL_C)
+        session.wait(r"\^C\n> $")
+
+    session.ask(INVENTED_STAR + " print 'made'", "made", "a star")
+    completed("c.rim_ra", "c.rim_radius", "a member of a case")
+    completed('case{distance = "150 pc", bolom', "bolometric_flux = ", "a name as a key, with what follows it")
+    completed("c:wh", 'c:why "', "a method, with what follows it")
+    completed('c:why "heating_l', 'heating_luminosity"', "a name in a string, which is closed")
+    completed('q = "150 k', "150 k", "several units")
+    completed("string.fo", r"string\.format\(", "a function of Lua's")
+    completed('dofile "scripts/what_', r'"scripts/what_if\.lua"', "a file")
+    completed('dofile "script', '"scripts/', "a folder")
+    completed("a_p", "planet_semi_major_axis{", "a synonym leads to the name")
+    completed('c:using{sublimation_radius = "gr', 'grey_grains"', "a recipe of that name")
+    session.type("case{\r")
+    session.wait(r">> $")
+    completed('distance = "150 p', '150 pc"', "in a later line of an input")
+    session.type("for i = 1, 2 do\r")
+    session.wait(r">> $")
+    session.type(TAB + "print(i)\r")
+    check(session.wait(r"^  print\(i\)\n>> $"), "Tab before the first word of a later line sets it in", session.screen)
+    session.type(CONTROL_C)
+    session.wait(r"\^C\n> $")
+
+
+def list_candidates(session):
+    session.type("c:w" + TAB)
+    session.settle()
+    check("\n" not in session.screen, "the first Tab lists nothing", session.screen)
+    session.type(TAB)
+    check(session.wait(r"\n  with +the case .*\n  why +the derivation.*(\n +.*)*\n> c:w$"), "the second Tab lists all, with what they mean", session.screen)
+    session.type(CONTROL_C)
+    session.wait(PROMPT)
+    session.type("c." + TAB + TAB)
+    check(session.wait(r"given:\n  distance +distance of the star.*(\n.*)*and \d+ more: Tab again\n> c\.$"), "a long list is cut, with a count", session.screen)
+    shown = session.screen.count("\n")
+    check(shown <= 24, "to what the terminal holds", session.screen)
+    session.type(TAB)
+    check(session.wait(r"and \d+ more: Tab again\n> c\.$") and not session.screen.startswith("\ngiven:"), "a third Tab shows more", session.screen)
+    session.type(CONTROL_C)
+    session.wait(PROMPT)
+
+
+def resize(session):
+    def widest_listed(columns, name):
+        session.settle()
+        session.type("c.rim_" + TAB + TAB)
+        session.wait(r"\n> c\.rim_$")
+        widest = max(len(line) for line in session.screen.split("\n"))
+        check(columns - 15 <= widest <= columns, name, session.screen)
+        session.type(CONTROL_C)
+        session.wait(PROMPT)
+
+    widest_listed(80, "the list is as wide as the terminal")
+    session.resize(24, 50)
+    widest_listed(50, "also when that has become narrower")
+    session.type("x = 'long " + "o" * 45)
+    session.settle()
+    session.resize(30, 120)
+    session.settle()
+    session.type("' print(#x)\r")
+    check(session.wait(r"\n50\n> $"), "a line goes on where the size changes in the middle of it", session.screen)
+    session.type("while true do end\r")
+    session.settle()
+    session.resize(24, 60)
+    session.type(CONTROL_C)
+    check(session.wait("interrupted\n> $"), "a resize during a computation does not disturb it", session.screen)
+    widest_listed(60, "and is seen after it")
+    session.resize(24, 80)
+    session.settle()
+
+
 def remember(folder):
     history = os.path.join(folder, "lacuna", "history")
     check(stat.S_IMODE(os.stat(history).st_mode) == 0o600, "the history is the user's alone")
@@ -140,36 +172,81 @@ def remember(folder):
     other.wait(PROMPT)
     session.ask("print 'first session'", "first session", "one session")
     other.ask("print 'second session'", "second session", "and another")
+    session.type("text = [[\r")
+    session.wait(r">> $")
+    session.type("\r#12\r]] print(text)\r")
+    check(session.wait(r"\n\n#12\n\n> $"), "an input with a blank line, and one like a line of the history's own", session.screen)
     check(session.leave() == 0 and other.leave() == 0, "Ctrl-D leaves, exit status 0")
     text = open(history).read()
     check("'first session'\n" in text and "'second session'\n" in text and "for i = 1, 2 do\n" in text, "both are remembered", text)
     session = Session(folder)
     session.wait(PROMPT)
     session.type(UP)
-    check(session.wait("'second session'"), "the last line comes back", session.screen)
-    steps = text[text.index("for i = 1, 2 do"):].count("\n#")
+    check(session.wait(r"text = \[\[\n\n#12 ?\n\]\] print\(text\)$"), "an input of several lines comes back whole", session.screen)
+    session.type(UP)
+    check(session.wait("'second session'"), "before it the other session's", session.screen)
+    steps = len(re.findall(r"^#\d+$", text[text.index("first = 1\nsecond = 2"):], re.M)) - 1
     session.type(UP * steps)
-    session.wait("print.i . 10.\nend")
-    session.ask("", "10\n20", "an input of several lines comes back whole")
+    session.settle()
+    session.ask("", "3", "what was pasted in a session before, too")
     session.leave()
 
 
 def without_terminal(folder):
-    done = subprocess.run([LACUNA], input="print(5)", capture_output=True, text=True, env=dict(os.environ, XDG_STATE_HOME=folder + "/none"))
+    def run(text, *arguments):
+        return subprocess.run([LACUNA, *arguments], input=text, capture_output=True, text=True, env=dict(os.environ, XDG_STATE_HOME=folder + "/none", TERM="xterm"))
+
+    done = run("print(5)")
     check(done.stdout == "5\n" and done.stderr == "" and not os.path.exists(folder + "/none"), "no terminal, no banner, no history", done.stdout)
+    check(done.returncode == 0, "exit status 0")
+    done = run("print(5)\nerror 'bad'\nprint(6)")
+    check((done.returncode, done.stdout, done.stderr) == (1, "5\n", "lacuna: stdin:2: bad\n"), "a failed one: 1, and where", done)
+    done = run("print(5")
+    check((done.returncode, done.stdout) == (1, "") and done.stderr.startswith("lacuna: stdin:1: "), "half a script: 1", done)
+    done = run("", "-e", "help()")
+    check(done.returncode == 0 and "\x1b" not in done.stdout, "no colour in a pipe", done)
     session = Session("/dev/null/nowhere")
     session.wait(PROMPT)
     session.ask("6", "6", "a state folder that can't be made is no obstacle")
     session.leave()
 
 
+def plain_terminals(folder):
+    session = Session(folder, TERM="dumb")
+    session.wait(PROMPT)
+    session.ask("help 'gap_width'", "(.*\n)+.*", "help on a dumb terminal")
+    session.ask(INVENTED_STAR + " print 'made'", "made", "a star")
+    session.type("c:w" + TAB + TAB)
+    check(session.wait(r"\n  why .*(\n +.*)*\n> c:w$"), "completion on one", session.screen)
+    session.type(CONTROL_C)
+    session.wait(r"\^C\n> $")
+    session.ask("error 'bad'", "bad", "an error on one")
+    session.resize(24, 60)
+    session.settle()
+    session.leave()
+    check("\x1b" not in session.raw, "no escape sequence is sent there", session.raw)
+    session = Session(folder, NO_COLOR="1")
+    session.wait(PROMPT)
+    session.ask("help 'gap_width'", "(.*\n)+.*", "help without colour")
+    paste(session)
+    session.leave()
+    colours = re.findall(r"\x1b\[(?:\d+;)*(?:3\d|4\d|9\d|10\d)(?:;\d+)*m", session.raw)
+    check(not colours, "NO_COLOR is honoured", colours)
+
+
 folder = tempfile.mkdtemp()
 try:
     session = talk(folder)
+    paste(session)
     stop_things(session)
+    survive(session)
+    complete(session)
+    list_candidates(session)
+    resize(session)
     check(session.leave() == 0, "Ctrl-D leaves")
     remember(folder)
     without_terminal(folder)
+    plain_terminals(folder)
 finally:
     shutil.rmtree(folder)
-print(f"1..{results}")
+plan()

@@ -1,0 +1,114 @@
+/* SPDX-License-Identifier: GPL-3.0-or-later */
+/* Reading a line at a terminal, on readline. Its callback interface with ppoll, and SIGINT blocked but there, is the one way in which
+   neither a Ctrl-C nor what is typed after it gets lost. Signals that concern the terminal only set a flag; they are answered where
+   nothing is under way. */
+#define _GNU_SOURCE
+#include "prompt.h"
+
+#include <errno.h>
+#include <poll.h>
+#include <signal.h>
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+#include <unistd.h>
+
+#include <readline/readline.h>
+
+#include "program.h"
+
+/* readline's callbacks have no context. */
+static char *typed;
+static bool finished;
+static volatile sig_atomic_t continued, resized;
+
+static void take_line(char *line) {
+  typed = line;
+  finished = true;
+  rl_callback_handler_remove();
+}
+
+static void on_continue(int number) {
+  (void)number;
+  continued = resized = 1;
+}
+
+static void on_resize(int number) {
+  (void)number;
+  resized = 1;
+}
+
+/* After Ctrl-Z and fg the terminal has the shell's settings, and perhaps another size. */
+static void take_terminal_back(void) {
+  continued = 0;
+  rl_deprep_terminal();
+  rl_prep_terminal(1);
+  rl_forced_update_display();
+}
+
+static void take_size(void) {
+  resized = 0;
+  rl_resize_terminal();
+}
+
+static void cancel_line(void) {
+  rl_callback_sigcleanup();
+  rl_point = rl_end;
+  rl_redisplay();
+  fputs("^C", rl_outstream);
+  rl_callback_handler_remove();
+  fputc('\n', rl_outstream);
+}
+
+/* A ppoll that finds input doesn't let a waiting signal in, and what is typed after a Ctrl-C must not be read before it. */
+static void let_interruption_in(const sigset_t *open) {
+  sigset_t waiting, mask;
+  sigpending(&waiting);
+  if (!sigismember(&waiting, SIGINT)) return;
+  sigprocmask(SIG_SETMASK, open, &mask);
+  sigprocmask(SIG_SETMASK, &mask, NULL);
+}
+
+/* SIGINT is let in while there is nothing to read. */
+reply prompt_read_line(const char *prompt, const char *earlier, char **line) {
+  sigset_t open;
+  sigprocmask(SIG_SETMASK, NULL, &open);
+  sigdelset(&open, SIGINT);
+  typed = NULL;
+  finished = false;
+  completion_set_context(earlier);
+  if (resized) resized = 0, rl_reset_screen_size(); /* while code ran */
+  rl_callback_handler_install(prompt, take_line);
+  while (!finished) {
+    struct pollfd input = {.fd = STDIN_FILENO, .events = POLLIN};
+    int ready = ppoll(&input, 1, NULL, &open);
+    if (ready > 0) let_interruption_in(&open);
+    if (program_was_interrupted()) return cancel_line(), CANCELLED;
+    if (continued) take_terminal_back();
+    if (resized) take_size();
+    if (ready > 0) rl_callback_read_char();
+    else if (ready < 0 && errno != EINTR) return rl_callback_handler_remove(), END;
+  }
+  *line = typed;
+  return typed ? LINE : END;
+}
+
+static void answer_signal(int number, void (*handler)(int)) {
+  struct sigaction action = {.sa_handler = handler, .sa_flags = SA_RESTART};
+  sigemptyset(&action.sa_mask);
+  sigaction(number, &action, NULL);
+}
+
+void prompt_start(void) {
+  sigset_t interruption;
+  sigemptyset(&interruption);
+  sigaddset(&interruption, SIGINT);
+  sigprocmask(SIG_BLOCK, &interruption, NULL);
+  answer_signal(SIGCONT, on_continue);
+  answer_signal(SIGWINCH, on_resize);
+  rl_readline_name = "lacuna";
+  rl_catch_signals = rl_catch_sigwinch = 0;
+  rl_change_environment = 0; /* COLUMNS, once set, would hide a later size from what is printed */
+  rl_instream = stdin;
+  rl_outstream = isatty(STDOUT_FILENO) ? stdout : stderr;
+}

@@ -1,0 +1,106 @@
+# SPDX-License-Identifier: GPL-3.0-or-later
+"""A program on a pseudo-terminal, driven as a person would: for the tests of the conversation."""
+import fcntl
+import os
+import pty
+import re
+import select
+import signal
+import struct
+import termios
+import time
+
+LACUNA = os.environ["LACUNA"]
+PATIENCE = 30  # seconds for an answer; sanitised builds are slow
+CONTROL_C, CONTROL_D, UP, LEFT, TAB, START_OF_LINE = "\x03", "\x04", "\x1b[A", "\x1b[D", "\t", "\x01"
+PASTE_BEGINS, PASTE_ENDS = "\x1b[200~", "\x1b[201~"
+PROMPT = re.compile(r"(^|\n)> $")
+results = 0
+
+
+def check(good, name, seen=""):
+    global results
+    results += 1
+    print(f"{'ok' if good else 'not ok'} {results} - {name}", flush=True)
+    if not good:
+        print("# saw " + repr(seen), flush=True)
+
+
+def plan():
+    print(f"1..{results}")
+
+
+class Session:
+    """One program on a terminal of its own. screen: what was seen since the last typing, without terminal control; raw: with it, all of it."""
+
+    def __init__(self, state_folder, *options, rows=24, columns=80, **settings):
+        environment = {**os.environ, "XDG_STATE_HOME": state_folder, "TERM": "xterm", "INPUTRC": "/dev/null", **settings}
+        self.pid, self.terminal = pty.fork()
+        if self.pid == 0:
+            self.terminal = 0
+            self.resize(rows, columns)
+            os.execve(LACUNA, [LACUNA, *options], environment)
+        self.screen = self.raw = ""
+
+    def resize(self, rows, columns):
+        """As a window does whose size is changed: the kernel tells the program by a signal."""
+        fcntl.ioctl(self.terminal, termios.TIOCSWINSZ, struct.pack("HHHH", rows, columns, 0, 0))
+
+    def type(self, text):
+        self.screen = ""
+        os.write(self.terminal, text.encode())
+
+    def read(self, patience):
+        """Takes in what comes within that time. Returned: whether something did."""
+        if not select.select([self.terminal], [], [], max(0, patience))[0]:
+            return False
+        try:
+            piece = os.read(self.terminal, 65536).decode(errors="replace")
+        except OSError:  # the program has left
+            return False
+        self.raw += piece
+        self.screen = re.sub(r"\x1b\[[0-9;?]*[a-zA-Z]|[\r\a]", "", self.screen + piece)
+        return True
+
+    def wait(self, pattern, patience=PATIENCE):
+        """Reads until what was seen since the last typing matches."""
+        pattern, end = re.compile(pattern) if isinstance(pattern, str) else pattern, time.monotonic() + patience
+        while not pattern.search(self.screen):
+            if not self.read(end - time.monotonic()):
+                return bool(pattern.search(self.screen))
+        return True
+
+    def settle(self, quiet=0.3):
+        """Reads until nothing has come for a while."""
+        while self.read(quiet):
+            pass
+        return self.screen
+
+    def ask(self, line, answer, name):
+        """Types a line and wants this answer before the next prompt."""
+        self.type(line + "\r")
+        good = self.wait(PROMPT) and re.search(r"\n" + answer + r"\n> $", self.screen)
+        check(bool(good), name, self.screen)
+
+    def interrupt(self, line, name):
+        """Types a line that never ends, then Ctrl-C, and wants the prompt back."""
+        self.type(line + "\r")
+        self.wait(r"\n")
+        time.sleep(0.5)
+        check(not PROMPT.search(self.screen), name + " runs", self.screen)
+        self.type(CONTROL_C)
+        check(self.wait(PROMPT) and "\ninterrupted\n" in self.screen, name + " ends by Ctrl-C", self.screen)
+
+    def leave(self):
+        """Types Ctrl-D. Returned: the exit status; None if the program stays."""
+        self.type(CONTROL_D)
+        end = time.monotonic() + PATIENCE
+        while time.monotonic() < end:
+            self.read(0.05)
+            pid, status = os.waitpid(self.pid, os.WNOHANG)
+            if pid:
+                os.close(self.terminal)
+                return os.waitstatus_to_exitcode(status)
+        os.kill(self.pid, signal.SIGKILL)
+        os.waitpid(self.pid, 0)
+        return None
