@@ -134,7 +134,7 @@ static reply read_input(lua_State *L, int *status) {
   if (answer != LINE) return answer;
   lua_pushstring(L, line);
   free(line);
-  while ((*status = program_load(L, lua_tostring(L, -1), "=prompt")) != LUA_OK && program_is_beginning(L)) {
+  while ((*status = program_compile_input(L, lua_tostring(L, -1), "=prompt")) != LUA_OK && program_is_beginning(L)) {
     lua_pop(L, 1);
     answer = read_line(">> ", &line);
     if (answer != LINE) return answer;
@@ -166,12 +166,28 @@ static bool is_farewell(const char *text) {
 
 /* Calls the function on the stack's top and shows what it returns; SIGINT comes through meanwhile. */
 static int answer_input(lua_State *L, const sigset_t *interruption) {
-  int base = lua_gettop(L);
   sigprocmask(SIG_UNBLOCK, interruption, NULL);
-  int status = program_call(L, 0, LUA_MULTRET);
-  if (status == LUA_OK) status = program_show(L, base);
+  int status = program_answer_input(L, lua_tostring(L, 1));
   sigprocmask(SIG_BLOCK, interruption, NULL);
   return status;
+}
+
+/* What failed is told of, and the conversation goes on. */
+static void finish_answer(lua_State *L, int status) {
+  if (status != LUA_OK) {
+    drop_position(L);
+    program_report(L, program_was_interrupted() ? "\n" : ""); /* the terminal has shown ^C */
+  }
+  fflush(stdout);
+  program_forget_interruption();
+}
+
+/* The personal start-up file and the one that was asked for, as if they were typed. */
+static void read_start(lua_State *L, const char *start, const sigset_t *interruption) {
+  sigprocmask(SIG_UNBLOCK, interruption, NULL);
+  finish_answer(L, program_start_up(L));
+  finish_answer(L, program_start(L, start));
+  sigprocmask(SIG_BLOCK, interruption, NULL);
 }
 
 static void start_readline(char *history) {
@@ -189,7 +205,7 @@ static void start_readline(char *history) {
   else *history = 0;
 }
 
-void program_repl(lua_State *L) {
+void program_repl(lua_State *L, const char *start) {
   char history[MOST_OF_PATH];
   sigset_t interruption;
   sigemptyset(&interruption);
@@ -197,6 +213,7 @@ void program_repl(lua_State *L) {
   sigprocmask(SIG_BLOCK, &interruption, NULL);
   start_readline(history);
   if (isatty(STDOUT_FILENO)) fputs(banner, stdout);
+  read_start(L, start, &interruption);
   for (;;) {
     int status = LUA_OK;
     lua_settop(L, 0);
@@ -206,12 +223,7 @@ void program_repl(lua_State *L) {
     if (answer == CANCELLED || is_blank(lua_tostring(L, 1))) continue;
     remember(history, lua_tostring(L, 1));
     if (status == LUA_OK) status = answer_input(L, &interruption);
-    if (status != LUA_OK) {
-      drop_position(L);
-      program_report(L, program_was_interrupted() ? "\n" : ""); /* the terminal has shown ^C */
-    }
-    fflush(stdout);
-    program_forget_interruption();
+    finish_answer(L, status);
   }
   fputc('\n', rl_outstream);
 }

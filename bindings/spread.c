@@ -190,11 +190,19 @@ static int unbound_facts(lua_State *L) {
   return 5;
 }
 
+/* unbound_made(): how many spreads and sweeps have been numbered. unbound_made(n) goes back to n: the next has the number n + 1. */
+static int unbound_made(lua_State *L) {
+  lac_state *state = lac_state_of(L);
+  if (!lua_isnoneornil(L, 1)) state->unbound_made = (uint64_t)luaL_checkinteger(L, 1);
+  lua_pushinteger(L, (lua_Integer)state->unbound_made);
+  return 1;
+}
+
 void lac_open_spread(lua_State *L) {
   static const luaL_Reg functions[] = {
       {"spread_normal", spread_normal}, {"spread_lopsided", spread_lopsided}, {"spread_uniform", spread_uniform},
       {"spread_log_uniform", spread_log_uniform}, {"spread_log_normal", spread_log_normal}, {"spread_samples", spread_samples},
-      {"sweep", sweep_even}, {"sweep_log", sweep_log}, {"along", make_along}, {"unbound_facts", unbound_facts}, {NULL, NULL},
+      {"sweep", sweep_even}, {"sweep_log", sweep_log}, {"along", make_along}, {"unbound_facts", unbound_facts}, {"unbound_made", unbound_made}, {NULL, NULL},
   };
   luaL_setfuncs(L, functions, 0);
 }

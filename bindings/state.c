@@ -239,4 +239,6 @@ void lac_open_state(lua_State *L) {
   lua_setfield(L, -2, "raise");
   lua_pushcfunction(L, show_value);
   lua_setfield(L, -2, "shown");
+  lua_pushliteral(L, LAC_VERSION);
+  lua_setfield(L, -2, "version");
 }
