@@ -167,7 +167,10 @@ local function script()
     if input.failed then
       if #input.failed > 0 then add("-- " .. left_out(input)) end
     else
-      if input.from ~= from then add(input.from and "-- from " .. input.from or "\n-- typed") end
+      if input.from ~= from then
+        if lines[#lines] ~= "" then add "" end
+        add(input.from and "-- from " .. input.from or "-- typed")
+      end
       from = input.from
       if skips > 0 then add(("for _ = 1, %d do spread.uniform(0, 1) end -- as many as what is left out had made"):format(skips)) end
       skips = 0
