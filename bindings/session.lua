@@ -5,7 +5,7 @@
 -- Besides, what was typed and what came of it is noted for the notebook.
 local core = ...
 local tokens = core.part "lacuna.tokens"
-local debug, load, globals, pairs = debug, load, _G, pairs -- the user may give these names away
+local debug, load, globals, pairs, type = debug, load, _G, pairs, type -- the user may give these names away
 
 -- A variable: {name =, attribute =, read = a function whose first upvalue is the variable}.
 local variables, latest = {}, {} -- by name; and {name = value} after the last input
@@ -17,11 +17,21 @@ local session = {
 
 -- What is known before an input, to be compared with after one that failed.
 local pending
-local function names_of_all()
+local function all_values()
   local values = {}
   for name, value in pairs(globals) do values[name] = value end
   for name, variable in pairs(variables) do values[name] = variable.read() end
   return values
+end
+
+-- The spreads and sweeps among them that nothing has named yet.
+local function unbound_among(values)
+  local held = {}
+  for _, value in pairs(values) do
+    local hold = type(value) == "userdata" and core.unbound_hold(value)
+    if hold then held[value] = hold end
+  end
+  return held
 end
 
 local function keep_local(name, read, attribute)
@@ -92,8 +102,9 @@ function session.compile(text, chunk_name, statements)
   local chunk = maker(keep_local)
   join(chunk)
   session.began = session.began or core.settings()
+  local values = all_values()
   pending = {
-    text = text, list = list, expression = expression ~= nil, values = names_of_all(), made = core.unbound_made(),
+    text = text, list = list, expression = expression ~= nil, values = values, made = core.unbound_made(), unbound = unbound_among(values),
     apart = alone and list[1] and not_kept[list[1].text] and not variables[list[1].text],
   }
   return chunk
@@ -104,7 +115,7 @@ function session.current() return pending end
 
 -- Names whose values differ from what they were, in order.
 local function changed(before)
-  local now, names = names_of_all(), {}
+  local now, names = all_values(), {}
   for name, value in pairs(now) do
     if not rawequal(value, before[name]) then names[#names + 1] = tostring(name) end
   end
@@ -126,15 +137,16 @@ local function is_simple(input)
   return input.expression or assignments == 1
 end
 
--- Free spreads and sweeps are named by the order of their making. A failed input gives its numbers back, so that a script without it draws
--- the same; where one of its spreads may live on, the script has to skip the numbers.
+-- Free spreads and sweeps are named by their first use, or by the order of their making. A failed input gives names and numbers back, so that
+-- a script without it draws the same; where one of its spreads may live on, the script has to skip the numbers.
 local function note_failure(input)
   local names, skips = changed(input.values), core.unbound_made() - input.made
   if #names == 0 and is_simple(input) then
     core.unbound_made(input.made)
-    return
+    for quantity, held in pairs(input.unbound) do core.unbound_restore(quantity, held) end
+  elseif #names > 0 or skips > 0 then
+    table.insert(session.inputs, { text = input.text, failed = names, skips = skips })
   end
-  if #names > 0 or skips > 0 then table.insert(session.inputs, { text = input.text, failed = names, skips = skips }) end
 end
 
 -- ran(text, ok, results, from): to be called after each input, with how many values were shown, and the file it came from if any.

@@ -21,6 +21,7 @@ local function fresh()
     made = n or made
     return made
   end
+  function core.unbound_hold() end
   function core.raise(message) error(message, 0) end
   function core.shown(value) return tostring(value) end
   function core.write_file(path, text) files[path] = text end
