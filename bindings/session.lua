@@ -12,7 +12,8 @@ local variables, latest = {}, {} -- by name; and {name = value} after the last i
 
 local session = {
   environment = { latest, globals }, -- where names can be looked up, raw
-  inputs = {},                       -- for the notebook: {text =, expression =, results =, from = file} or {text =, failed = names, skips = n}
+  inputs = {},                       -- for the notebook: {text =, expression =, results =, from = file} or
+                                     -- {text =, failed = names, skips = n, settings = the changed ones}
 }
 
 -- What is known before an input, to be compared with after one that failed.
@@ -101,10 +102,11 @@ function session.compile(text, chunk_name, statements)
   if not maker then return nil, message end
   local chunk = maker(keep_local)
   join(chunk)
-  session.began = session.began or core.settings()
+  local settings = core.settings()
+  session.began = session.began or settings
   local values = all_values()
   pending = {
-    text = text, list = list, expression = expression ~= nil, values = values, made = core.unbound_made(), unbound = unbound_among(values),
+    text = text, list = list, expression = expression ~= nil, values = values, settings = settings, made = core.unbound_made(), unbound = unbound_among(values),
     apart = alone and list[1] and not_kept[list[1].text] and not variables[list[1].text],
   }
   return chunk
@@ -141,11 +143,15 @@ end
 -- a script without it draws the same; where one of its spreads may live on, the script has to skip the numbers.
 local function note_failure(input)
   local names, skips = changed(input.values), core.unbound_made() - input.made
+  local settings, now = {}, core.settings()
+  for _, key in ipairs { "draws", "seed" } do
+    if now[key] ~= input.settings[key] then names[#names + 1], settings[key] = key, now[key] end
+  end
   if #names == 0 and is_simple(input) then
     core.unbound_made(input.made)
     for quantity, held in pairs(input.unbound) do core.unbound_restore(quantity, held) end
   elseif #names > 0 or skips > 0 then
-    table.insert(session.inputs, { text = input.text, failed = names, skips = skips })
+    table.insert(session.inputs, { text = input.text, failed = names, skips = skips, settings = settings })
   end
 end
 

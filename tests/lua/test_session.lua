@@ -238,6 +238,12 @@ t.test("keep: what was typed, without what failed", function()
     head .. "print(show(5))\nlocal z = 3 print(show(z))\nprint(show((type)(1)))\nprint(show(('x'):rep(2)))\n")
   t.equal(kept("type(1) -- [[ note", "-- note", "table.unpack {}", "select(2, 1), nil"),
     head .. "print(show(type(1))) -- [[ note\n-- note\ntable.unpack {}\nprint(show(select(2, 1), nil))\n")
+  t.equal(kept("do goto over end local x = 1 ::over::", "x"), head .. "-- left out: jumps in a way that a script can't: do goto over end local x = 1 ::over::\nprint(show(x))\n")
+  t.equal(kept("if true then return 7 end", "local y = 2 ::here::", "y"),
+    head .. "print(show((function()\nif true then return 7 end\nend)()))\nlocal y = (function()\nlocal y = 2 ::here::\nreturn y\nend)()\nprint(show(y))\n")
+  t.equal(kept("local print = print", "local show = 5", "show"), head:gsub("\n\n", "\n" ..
+    "local print_shown = (function(print, show) return function(...) print(show(...)) end end)(print, show)\n\n") ..
+    "local print = print\nlocal show = 5\nprint_shown(show)\n")
   t.equal(kept("again 'nowhere'", "help 'x'", "keep 'other'"), head)
   local text, printed = kept("a_global = 1 error 'x'")
   t.equal(text, head .. "-- left out: failed after it had set a_global: a_global = 1 error 'x'\n")

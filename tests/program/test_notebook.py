@@ -240,10 +240,20 @@ def start_files(folder):
     session.fail('again "absent.lua"', "again: cannot read absent.lua: No such file or directory")
     session.answer('keep "all.lua"')
     text = read(folder, "all.lua")
-    check(re.search(r"-- from \S*/config/lacuna/start.lua\n-- invented\nquantity ", text) and "\n-- from stars.lua\n" in text and "\n-- from broken.lua\nlocal ran = 7\n" in text,
+    check(re.search(r"-- from start-up file \S*/config/lacuna/start.lua\n-- invented\nquantity ", text) and "\n-- from start-up file stars.lua\n-- invented stars\n" in text and "\n-- from broken.lua\nlocal ran = 7\n" in text,
           "start-up files and what was read again stand in the script", text)
     check("again" not in text and "never = " not in text, "and again doesn't", text)
     runs_the_same(session, "all.lua", "the script runs without them")
+    session.leave()
+    session = Session(folder, "--draws=300", "--start=stars.lua")
+    shown = session.answer('again "all.lua"')
+    check(shown == "4\n100 pc\n1 au\n7\n8\n", "in a session with the same start-up files only the rest is run again", shown)
+    session.fail("settings { seed = 7, nothing = 1 }", "settings: unknown setting")
+    check("draws 10000" not in session.answer("settings()") and "seed 0, 10000 draws" in session.screen, "settings are made all or none", session.screen)
+    session.fail("settings { draws = 50 } error 'late'", "late")
+    session.shown = session.answer("spread.normal(0, 1) * 1")
+    session.answer('keep "drawn.lua"')
+    check(run(folder, "drawn.lua").stdout.endswith(session.shown), "settings made before a failure stay in the script", read(folder, "drawn.lua"))
     session.leave()
 
 

@@ -31,7 +31,7 @@ class Session:
     """One program on a terminal of its own."""
 
     def __init__(self, state_folder, *options):
-        environment = dict(os.environ, XDG_STATE_HOME=state_folder, TERM="xterm", INPUTRC="/dev/null")
+        environment = dict(os.environ, XDG_STATE_HOME=state_folder, XDG_CONFIG_HOME=state_folder, TERM="xterm", INPUTRC="/dev/null")
         self.pid, self.terminal = pty.fork()
         if self.pid == 0:
             os.execve(LACUNA, [LACUNA, *options], environment)
