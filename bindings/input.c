@@ -31,6 +31,14 @@ int program_compile_input(lua_State *L, const char *text, const char *chunk_name
   return good ? LUA_OK : LUA_ERRSYNTAX;
 }
 
+/* A local of an earlier input is an upvalue to Lua; to who typed it, it is a local. Of the error on the stack's top, if it is a text. */
+static int in_plain_words(lua_State *L, int status) {
+  if (status == LUA_OK || lua_type(L, -1) != LUA_TSTRING) return status;
+  luaL_gsub(L, lua_tostring(L, -1), "(upvalue '", "(local '");
+  lua_remove(L, -2);
+  return status;
+}
+
 /* Arguments: the text, whether it went well, how many values were shown. */
 static int tell_session(lua_State *L) {
   push_word(L, "lacuna.session", "ran");
@@ -49,7 +57,7 @@ int program_answer_input(lua_State *L, const char *text) {
   lua_pushboolean(L, status == LUA_OK);
   lua_pushinteger(L, results);
   const int told = lua_pcall(L, 3, 0, 0);
-  if (told == LUA_OK) return status;
+  if (told == LUA_OK) return in_plain_words(L, status);
   if (status == LUA_OK) return told;
   lua_pop(L, 1); /* of two errors the first is told */
   return status;
@@ -66,12 +74,12 @@ static int run_file(lua_State *L) {
 
 int program_start_up(lua_State *L) {
   lua_pushcfunction(L, run_file);
-  return program_call(L, 0, 0);
+  return in_plain_words(L, program_call(L, 0, 0));
 }
 
 int program_start(lua_State *L, const char *path) {
   if (path == NULL) return LUA_OK;
   lua_pushcfunction(L, run_file);
   lua_pushstring(L, path);
-  return program_call(L, 1, 0);
+  return in_plain_words(L, program_call(L, 1, 0));
 }

@@ -80,35 +80,39 @@ local function join(chunk)
   end
 end
 
+-- Whether the text is an expression, which `statements` rules out, and whether it could be one; or nil and the parser's message.
+local function parse(text, chunk_name, statements)
+  local chunk, message = load("return " .. text, chunk_name, "t")
+  if chunk then return not statements, true end
+  if statements or not message:find "<eof>$" then chunk, message = load(text, chunk_name, "t") end
+  if chunk then return false, false end
+  return nil, message
+end
+
 -- An input that begins with one of these words is about the conversation, and no part of it.
 local not_kept = { help = true, keep = true, again = true }
+
+local function note_before(input)
+  local first = input.list[1] and input.list[1].text
+  input.apart = input.could_be_one and not_kept[first] and not variables[first]
+  input.values, input.settings, input.made = all_values(), core.settings(), core.unbound_made()
+  input.unbound = unbound_among(input.values)
+  session.began = session.began or input.settings
+  pending = input
+end
 
 -- compile(text, chunk_name): the input as a function, or nil and a message, which ends in <eof> where the text is only a beginning.
 -- The text is an expression, whose values are returned, if it can be one, or the beginning of one. With `statements` it never is.
 function session.compile(text, chunk_name, statements)
-  local expression, message = load("return " .. text, chunk_name, "t")
-  local alone = expression ~= nil
-  if statements then expression = nil
-  elseif not expression and message:find "<eof>$" then return nil, message end
-  if not expression then
-    local whole
-    whole, message = load(text, chunk_name, "t")
-    if not whole then return nil, message end
-  end
+  local expression, could_be_one = parse(text, chunk_name, statements)
+  if expression == nil then return nil, could_be_one end
   local list = tokens.read(text)
   local code = expression and "return " .. text or handing_over(text, list)
-  local maker
-  maker, message = load(("local %s = ... return function(...) %s\nend"):format(declarations(list), code), chunk_name, "t")
+  local maker, message = load(("local %s = ... return function(...) %s\nend"):format(declarations(list), code), chunk_name, "t")
   if not maker then return nil, message end
   local chunk = maker(keep_local)
   join(chunk)
-  local settings = core.settings()
-  session.began = session.began or settings
-  local values = all_values()
-  pending = {
-    text = text, list = list, expression = expression ~= nil, values = values, settings = settings, made = core.unbound_made(), unbound = unbound_among(values),
-    apart = alone and list[1] and not_kept[list[1].text] and not variables[list[1].text],
-  }
+  note_before { text = text, list = list, expression = expression, could_be_one = could_be_one }
   return chunk
 end
 

@@ -128,6 +128,8 @@ def keep_what_went_well(folder):
     session.go("local width = spread.normal(2*au, 0.1*au)")
     session.fail("width + 3*K", "can't add a length")
     session.go("mean(case { cavity_radius = width }.cavity_radius)")
+    session.go("local nobody")
+    session.fail("nobody.name", "attempt to index a nil value (local 'nobody')")
     session.go("local many = sweep { 1*au, 2*au }")
     session.fail("many + 3*K", "can't add a length")
     session.go("c:with { rim_radius = many }.rim_radius_angle")
@@ -152,7 +154,7 @@ def keep_what_went_well(folder):
     check(session.wait(PROMPT) and "interrupted" in session.screen, "an interrupted input", session.screen)
     session.answer('help "distance"')
     shown = session.answer('keep "kept.lua"')
-    check(shown == "kept 20 inputs in kept.lua\n", "keep says what it wrote", shown)
+    check(shown == "kept 21 inputs in kept.lua\n", "keep says what it wrote", shown)
     text = read(folder, "kept.lua")
     check(re.match(r"-- A session of Lacuna [0-9.]+, kept on \d{4}-\d\d-\d\d\nsettings \{ seed = 5, draws = 500 \}\n\nlocal c = case", text),
           "the script begins with version, date, seed and draws", text)
@@ -166,13 +168,13 @@ def keep_what_went_well(folder):
 def keep_again(session):
     folder = session.folder
     session.go("spread.normal(0, 1) * 1")
-    check(session.answer('keep "kept.lua"') == "kept 21 inputs in kept.lua\n", "the session's own file is replaced", session.screen)
+    check(session.answer('keep "kept.lua"') == "kept 22 inputs in kept.lua\n", "the session's own file is replaced", session.screen)
     runs_the_same(session, "kept.lua", "and has what came since")
     write(folder, "mine.lua", "-- mine\n")
     refusal = 'keep: mine.lua exists, and not as this session has written it; keep("mine.lua", true) replaces it'
     session.fail('keep "mine.lua"', refusal)
     check(read(folder, "mine.lua") == "-- mine\n", "and is left as it was")
-    check(session.answer('keep("mine.lua", true)') == "kept 21 inputs in mine.lua\n", "unless that is asked for", session.screen)
+    check(session.answer('keep("mine.lua", true)') == "kept 22 inputs in mine.lua\n", "unless that is asked for", session.screen)
     session.fail("keep()", 'keep wants a file\'s name, like keep "file.lua"; got nothing')
     session.fail('keep "none/x.lua"', "cannot write none/x.lua: No such file or directory")
     session.fail('do keep "x.lua" end', 'keep is an input of its own: type keep "file.lua" alone')
