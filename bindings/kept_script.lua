@@ -56,7 +56,7 @@ local own_printer = "local print_shown = (function(print, show) return function(
 -- The line of an expression that starts at a token, put after `before`: printed if the session showed a value. Comments after it stay behind.
 local function printing(input, list, first, before, shown)
   local last = list[#list].text == ";" and #list - 1 or #list
-  local expression, after = input.text:sub(list[first].first, list[last].last), input.text:sub(list[#list].last + 1):gsub("%s+$", "")
+  local expression, after = input.text:sub(list[first].first, list[last].last), input.text:sub(list[#list].last + 1)
   if input.results > 0 then return before .. shown:format(expression) .. after end
   if compiles(expression) then return before .. (list[first].text == "(" and ";" or "") .. expression .. after end
   return before .. "do local _ = " .. expression .. " end" .. after
@@ -127,7 +127,7 @@ local function make_room(script, count)
 end
 
 local function add_input(script, input)
-  local text = written(input, script.shown)
+  local text = written(input, script.shown):match "^(.-)%s*$"
   if input.from ~= script.from then
     if script.lines[#script.lines] ~= "" then add(script, "") end
     add(script, mark(input.from))
