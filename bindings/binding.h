@@ -53,8 +53,11 @@ typedef struct {
   lac_spread spread;    /* of a spread */
   size_t count;         /* of a sweep: its elements */
   uint64_t ordinal;
+  int further;          /* holders besides the first one: see lac_unbound_drop */
   double elements[];    /* the sweep's, or the spread's samples; SI */
 } lac_unbound;
+
+void lac_unbound_drop(lac_unbound *unbound); /* the last holder's frees it; NULL is let pass */
 
 /* The userdata behind each object in Lua: dust, a band. Immutable; cases hold on to the value. */
 typedef struct {

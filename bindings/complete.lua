@@ -20,7 +20,7 @@ local string = string
 local find, match, gmatch, sub, rep, lower, byte = string.find, string.match, string.gmatch, string.sub, string.rep, string.lower, string.byte
 local ipairs, math, next, pcall, select, table, type = ipairs, math, next, pcall, select, table, type
 
-local complete = { environment = { _G } }
+local complete = { environment = core.part "lacuna.session".environment }
 
 -- What is expected ------------------------------------------------------------------------------------------------------------------
 --

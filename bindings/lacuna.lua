@@ -110,8 +110,8 @@ lacuna.sweep = words_of("sweep", { log = core.sweep_log }, function(_, ...) retu
 
 -- Parts that many runs don't need are loaded when they are first asked for.
 later = {
-  compare = "lacuna.compare", dust = "lacuna.dust", glossary = "lacuna.glossary", help = "lacuna.help", material = "lacuna.dust",
-  recipes = "lacuna.recipes", study = "lacuna.study",
+  again = "lacuna.notebook", compare = "lacuna.compare", dust = "lacuna.dust", glossary = "lacuna.glossary", help = "lacuna.help",
+  keep = "lacuna.notebook", material = "lacuna.dust", recipes = "lacuna.recipes", study = "lacuna.study",
 }
 
 local function look_up(_, word)

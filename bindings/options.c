@@ -12,6 +12,7 @@ const option options[] = {
     {"--seed", "N", "a whole number", OPTION_SETTING, "key of the random draws; the same seed gives the same draws, on any number of threads"},
     {"--draws", "N", "a whole number", OPTION_SETTING, "how many draws stand for an error bar"},
     {"--threads", "N", "a whole number", OPTION_SETTING, "how many processor cores to use"},
+    {"--start", "FILE", "a file", OPTION_START, "run FILE first; its locals are the conversation's"},
     {"--help", NULL, NULL, OPTION_LEAVE, "print this and leave"},
     {"--version", NULL, NULL, OPTION_LEAVE, "print the version and leave"},
     {NULL, NULL, NULL, OPTION_LEAVE, NULL},

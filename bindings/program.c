@@ -117,10 +117,20 @@ static void set_arguments(lua_State *L, const command_line *line) {
   lua_setglobal(L, "arg");
 }
 
-/* Loads what the command line names and calls it. Returned: a status of Lua's. */
+/* The file of --start, or NULL. */
+static const char *start_of(const command_line *line) {
+  const char *start = NULL;
+  for (int i = 0; i < line->given_count; i++)
+    if (line->given[i].option->kind == OPTION_START) start = line->given[i].text;
+  return start;
+}
+
+/* Loads what the command line names and calls it, the file of --start before. Returned: a status of Lua's. */
 static int run(lua_State *L, const command_line *line) {
-  int status, first = line->code ? 0 : 1;
-  if (line->code) status = program_load(L, line->code, "=-e");
+  const char *start = start_of(line);
+  int status = program_start(L, start), first = line->code ? 0 : 1;
+  if (status != LUA_OK) return status;
+  if (line->code) status = start ? program_compile_input(L, line->code, "=-e") : program_load(L, line->code, "=-e");
   else status = luaL_loadfile(L, line->count && strcmp(line->rest[0], "-") != 0 ? line->rest[0] : NULL);
   if (status != LUA_OK) return status;
   int base = lua_gettop(L);
@@ -158,7 +168,7 @@ static int run_program(command_line *line) {
   bool conversation = line->code == NULL && line->count == 0 && isatty(STDIN_FILENO);
   program_catch_interrupts(L, conversation);
   set_arguments(L, line);
-  if (conversation) program_repl(L);
+  if (conversation) program_repl(L, start_of(line));
   else if (run(L, line) != LUA_OK) status = failed(L);
   lua_close(L);
   return status;

@@ -26,10 +26,18 @@ bool program_is_beginning(lua_State *L); /* of the message on the top of the sta
    a screenful at once. As program_call. */
 int program_show(lua_State *L, int from, bool conversation);
 
+/* An input of a conversation, compiled by the part lacuna.session, so that it has the locals of those before: as program_load. And called, what
+   it returns shown; the session is told what came of it. As program_call. */
+int program_compile_input(lua_State *L, const char *text, const char *chunk_name);
+int program_answer_input(lua_State *L, const char *text);
+/* Runs a file's statements as inputs of the conversation: the personal start-up file if there is one, or the one named (NULL: none). As program_call. */
+int program_start_up(lua_State *L);
+int program_start(lua_State *L, const char *path);
+
 /* Prints the error on the top of the stack, in one line if it is one, and takes it off. Prefix: "lacuna: ", or "" at the prompt. */
 void program_report(lua_State *L, const char *prefix);
 
-/* The conversation at a terminal, until Ctrl-D. */
-void program_repl(lua_State *L);
+/* The conversation at a terminal, until Ctrl-D. `start` is the file of --start, or NULL. */
+void program_repl(lua_State *L, const char *start);
 
 #endif

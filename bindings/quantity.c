@@ -58,7 +58,7 @@ static int quantity_finalise(lua_State *L) {
   if (quantity == NULL) return 0;
   lac_value_drop(quantity->value);
   quantity->value = NULL;
-  free(quantity->unbound);
+  lac_unbound_drop(quantity->unbound);
   quantity->unbound = NULL;
   return 0;
 }

@@ -24,7 +24,7 @@ static reply read_input(lua_State *L, int *status) {
   if (answer != LINE) return answer;
   lua_pushstring(L, line);
   free(line);
-  while ((*status = program_load(L, lua_tostring(L, -1), "=prompt")) != LUA_OK && program_is_beginning(L)) {
+  while ((*status = program_compile_input(L, lua_tostring(L, -1), "=prompt")) != LUA_OK && program_is_beginning(L)) {
     lua_pop(L, 1);
     answer = prompt_read_line(">> ", lua_tostring(L, -1), &line);
     if (answer != LINE) return answer;
@@ -56,15 +56,31 @@ static bool is_farewell(const char *text) {
 
 /* Calls the function on the stack's top and shows what it returns; SIGINT comes through meanwhile. */
 static int answer_input(lua_State *L, const sigset_t *interruption) {
-  int base = lua_gettop(L);
   sigprocmask(SIG_UNBLOCK, interruption, NULL);
-  int status = program_call(L, 0, LUA_MULTRET);
-  if (status == LUA_OK) status = program_show(L, base, true);
+  int status = program_answer_input(L, lua_tostring(L, 1));
   sigprocmask(SIG_BLOCK, interruption, NULL);
   return status;
 }
 
-void program_repl(lua_State *L) {
+/* What failed is told of, and the conversation goes on. */
+static void finish_answer(lua_State *L, int status, const char *input) {
+  if (status != LUA_OK) {
+    drop_position(L, input);
+    program_report(L, program_was_interrupted() ? "\n" : ""); /* the terminal has shown ^C */
+  }
+  fflush(stdout);
+  program_forget_interruption();
+}
+
+/* The personal start-up file and the one that was asked for, as if they were typed. */
+static void read_start(lua_State *L, const char *start, const sigset_t *interruption) {
+  sigprocmask(SIG_UNBLOCK, interruption, NULL);
+  finish_answer(L, program_start_up(L), "");
+  finish_answer(L, program_start(L, start), "");
+  sigprocmask(SIG_BLOCK, interruption, NULL);
+}
+
+void program_repl(lua_State *L, const char *start) {
   sigset_t interruption;
   sigemptyset(&interruption);
   sigaddset(&interruption, SIGINT);
@@ -72,6 +88,7 @@ void program_repl(lua_State *L) {
   history_start();
   completion_start(L);
   if (isatty(STDOUT_FILENO)) fputs(banner, stdout);
+  read_start(L, start, &interruption);
   for (;;) {
     int status = LUA_OK;
     lua_settop(L, 0);
@@ -81,12 +98,7 @@ void program_repl(lua_State *L) {
     if (answer == CANCELLED || is_blank(lua_tostring(L, 1))) continue;
     history_remember(lua_tostring(L, 1));
     if (status == LUA_OK) status = answer_input(L, &interruption);
-    if (status != LUA_OK) {
-      drop_position(L, lua_tostring(L, 1));
-      program_report(L, program_was_interrupted() ? "\n" : ""); /* the terminal has shown ^C */
-    }
-    fflush(stdout);
-    program_forget_interruption();
+    finish_answer(L, status, lua_tostring(L, 1));
   }
   fputc('\n', rl_outstream);
 }

@@ -26,6 +26,10 @@ static lac_status bind_sweep(const lac_unbound *sweep, const char *name, lac_val
   return status;
 }
 
+void lac_unbound_drop(lac_unbound *unbound) {
+  if (unbound != NULL && unbound->further-- == 0) free(unbound);
+}
+
 void lac_bind(lua_State *L, lac_quantity *quantity, const char *name, const char *target) {
   lac_unbound *unbound = quantity->unbound;
   if (unbound == NULL) return;
@@ -44,7 +48,7 @@ void lac_bind(lua_State *L, lac_quantity *quantity, const char *name, const char
   }
   if (status != LAC_OK) lac_error(L, "%s: %s", name, lac_status_words(status));
   quantity->unbound = NULL;
-  free(unbound);
+  lac_unbound_drop(unbound);
 }
 
 /* A blank unbound quantity on the stack with room for count elements. */
@@ -190,11 +194,40 @@ static int unbound_facts(lua_State *L) {
   return 5;
 }
 
+/* unbound_hold(q): of a quantity that is still unbound, what unbound_restore(q, held) needs to make it so again; nothing for anything else. */
+static int unbound_hold(lua_State *L) {
+  const lac_quantity *quantity = lac_to_quantity(L, 1);
+  if (quantity == NULL || quantity->unbound == NULL) return 0;
+  lac_push_empty(L, quantity->dimension, quantity->unit, quantity->name)->unbound = quantity->unbound;
+  quantity->unbound->further++;
+  return 1;
+}
+
+static int unbound_restore(lua_State *L) {
+  lac_quantity *quantity = lac_to_quantity(L, 1);
+  const lac_quantity *held = lac_to_quantity(L, 2);
+  if (quantity == NULL || held == NULL || held->unbound == NULL || quantity->unbound != NULL) return 0;
+  lac_value_drop(quantity->value);
+  quantity->value = NULL;
+  quantity->unbound = held->unbound;
+  quantity->unbound->further++;
+  return 0;
+}
+
+/* unbound_made(): how many spreads and sweeps have been numbered. unbound_made(n) goes back to n: the next has the number n + 1. */
+static int unbound_made(lua_State *L) {
+  lac_state *state = lac_state_of(L);
+  if (!lua_isnoneornil(L, 1)) state->unbound_made = (uint64_t)luaL_checkinteger(L, 1);
+  lua_pushinteger(L, (lua_Integer)state->unbound_made);
+  return 1;
+}
+
 void lac_open_spread(lua_State *L) {
   static const luaL_Reg functions[] = {
       {"spread_normal", spread_normal}, {"spread_lopsided", spread_lopsided}, {"spread_uniform", spread_uniform},
       {"spread_log_uniform", spread_log_uniform}, {"spread_log_normal", spread_log_normal}, {"spread_samples", spread_samples},
-      {"sweep", sweep_even}, {"sweep_log", sweep_log}, {"along", make_along}, {"unbound_facts", unbound_facts}, {NULL, NULL},
+      {"sweep", sweep_even}, {"sweep_log", sweep_log}, {"along", make_along}, {"unbound_facts", unbound_facts}, {"unbound_hold", unbound_hold},
+      {"unbound_restore", unbound_restore}, {"unbound_made", unbound_made}, {NULL, NULL},
   };
   luaL_setfuncs(L, functions, 0);
 }

@@ -202,25 +202,41 @@ static size_t bytes_of(lua_State *L) {
   return (size_t)(mib * 1048576.0);
 }
 
+/* What is wanted, until all of it has been found good. */
+typedef struct {
+  uint64_t seed;
+  int threads;
+  size_t memory, draws; /* draws: 0 where none are asked for */
+} wanted_settings;
+
 /* One setting: its key and value on top of the stack, which stay there. */
-static void set_one(lua_State *L, lac_state *state) {
+static void read_setting(lua_State *L, wanted_settings *wanted) {
   const char *key = lua_type(L, -2) == LUA_TSTRING ? lua_tostring(L, -2) : "";
-  if (strcmp(key, "seed") == 0) state->seed = (uint64_t)whole_number(L, key, 0, LUA_MAXINTEGER);
-  else if (strcmp(key, "threads") == 0) state->work.threads = (int)whole_number(L, key, 1, 256);
-  else if (strcmp(key, "memory") == 0) state->work.cap = bytes_of(L);
-  else if (strcmp(key, "draws") == 0) {
-    state->draws = (size_t)whole_number(L, key, 1, (lua_Integer)1 << 40);
-    lac_axis_drop(state->draw);
-    state->draw = NULL;
-  } else lac_error(L, "settings: unknown setting '%s'; there are seed, draws, threads, memory", key);
+  if (strcmp(key, "seed") == 0) wanted->seed = (uint64_t)whole_number(L, key, 0, LUA_MAXINTEGER);
+  else if (strcmp(key, "threads") == 0) wanted->threads = (int)whole_number(L, key, 1, 256);
+  else if (strcmp(key, "memory") == 0) wanted->memory = bytes_of(L);
+  else if (strcmp(key, "draws") == 0) wanted->draws = (size_t)whole_number(L, key, 1, (lua_Integer)1 << 40);
+  else lac_error(L, "settings: unknown setting '%s'; there are seed, draws, threads, memory", key);
 }
 
-/* settings{seed =, draws =, threads =, memory =}: sets those named; returns all as a table. */
+static void make_settings(lac_state *state, const wanted_settings *wanted) {
+  state->seed = wanted->seed;
+  state->work.threads = wanted->threads;
+  state->work.cap = wanted->memory;
+  if (wanted->draws == 0) return;
+  state->draws = wanted->draws;
+  lac_axis_drop(state->draw);
+  state->draw = NULL;
+}
+
+/* settings{seed =, draws =, threads =, memory =}: sets those named, all or none; returns all as a table. */
 static int state_settings(lua_State *L) {
   lac_state *state = lac_state_of(L);
   if (!lua_isnoneornil(L, 1)) {
     luaL_checktype(L, 1, LUA_TTABLE);
-    for (lua_pushnil(L); lua_next(L, 1); lua_pop(L, 1)) set_one(L, state);
+    wanted_settings wanted = {.seed = state->seed, .threads = state->work.threads, .memory = state->work.cap};
+    for (lua_pushnil(L); lua_next(L, 1); lua_pop(L, 1)) read_setting(L, &wanted);
+    make_settings(state, &wanted);
   }
   lua_createtable(L, 0, 4);
   lua_pushinteger(L, (lua_Integer)state->seed), lua_setfield(L, -2, "seed");
@@ -239,4 +255,6 @@ void lac_open_state(lua_State *L) {
   lua_setfield(L, -2, "raise");
   lua_pushcfunction(L, show_value);
   lua_setfield(L, -2, "shown");
+  lua_pushliteral(L, LAC_VERSION);
+  lua_setfield(L, -2, "version");
 }

@@ -1,5 +1,5 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
--- Reads the beginning of an input in Lua, as far as completion needs it: its tokens up to the cursor, and which brackets stand open there.
+-- Reads an input in Lua, whole or up to the cursor: its tokens, and which brackets stand open at the end.
 -- It never fails: what is no Lua is read as symbols. (Forms of words in help, "case{name = value, ...}", are read by it too.)
 --
 --   read(text) -> tokens, word, open
@@ -48,7 +48,7 @@ local function end_of_comment(text, at)
   return (find(text, "\n", at, true))
 end
 
-local number_forms = { "^0[xX][%x.]*", "^%d*%.?%d*[eE][-+]?%d+", "^%d*%.?%d*" }
+local number_forms = { "^0[xX][%x.]*[pP][-+]?%d+", "^0[xX][%x.]*", "^%d*%.?%d*[eE][-+]?%d+", "^%d*%.?%d*" }
 local symbol_forms = { "^%.%.%.", "^%.%.", "^[=~<>]=", "^//", "^::", "^<<", "^>>", "^." }
 
 local function first_match(text, forms, at)

@@ -34,7 +34,7 @@ class Session:
     """One program on a terminal of its own. screen: what was seen since the last typing, without terminal control; raw: with it, all of it."""
 
     def __init__(self, state_folder, *options, rows=24, columns=80, **settings):
-        environment = {**os.environ, "XDG_STATE_HOME": state_folder, "TERM": "xterm", "INPUTRC": "/dev/null", **settings}
+        environment = {**os.environ, "XDG_STATE_HOME": state_folder, "XDG_CONFIG_HOME": state_folder, "TERM": "xterm", "INPUTRC": "/dev/null", **settings}
         self.pid, self.terminal = pty.fork()
         if self.pid == 0:
             self.terminal = 0
