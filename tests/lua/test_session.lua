@@ -3,6 +3,7 @@
 -- the reference here, run by Lua itself (Lua 5.4 Reference Manual, sections 3.3 and 3.5).
 package.path = "tests/lua/?.lua;" .. package.path
 local t = require "harness"
+setmetatable(_G, nil) -- in the program the globals have units behind them: here a and b are plain names
 
 -- The parts with a core of their own, so that each test begins with a fresh session; files are a table. In place of spreads there is only
 -- their count: make_spread() adds one.
