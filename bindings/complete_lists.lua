@@ -15,28 +15,19 @@ local function add(list, word, meaning, append) list[#list + 1] = { text = word,
 
 -- Words of the language and methods -------------------------------------------------------------------------------------------------
 
--- The forms in which a word is written, as help shows them: "case{name = value, ...}"; of a method without what stands before it.
+-- How a word is written, in all its forms.
 local function forms_of(word)
-  local forms, head = {}, words.about[word] and words.about[word][1] or ""
-  for form in gmatch(head, "%f[%w_]" .. word .. "%f[^%w_][^\n]-%f[ ]   ?") do forms[#forms + 1] = form end
-  if #forms == 0 and head ~= "" then forms[1] = head end
-  return forms
+  local record = words.find(word)
+  return record and record.forms or {}
 end
 lists.forms_of = forms_of
 
--- The first sentence that help says of a word.
-local function one_line(word)
-  local about = words.about[word]
-  return about and about[2] and match(about[2], "^%s*(.-)%.?$") or ""
-end
-
 -- Methods of a kind: a list of {name, meaning, what follows it in its form}.
 local function methods_of(kind)
-  local found, seen = {}, {}
-  for _, line in ipairs(words.about[kind] or {}) do
-    for name, after in gmatch(line, "%f[%w]%l:([%l_]+)()") do
-      if not seen[name] then found[#found + 1], seen[name] = { name, match(line, "^  %l:.-   *(%S.*)$"), sub(line, after) }, true end
-    end
+  local found = {}
+  for _, name in ipairs(words.methods(kind)) do
+    local record = words.find(kind .. ":" .. name)
+    if not record.field then found[#found + 1] = { name, words.one_line(kind .. ":" .. name), match(record.forms[1], "[:.]" .. name .. "(.*)$") or "" } end
   end
   return found
 end
@@ -60,7 +51,9 @@ local all_words -- made when first wanted, as are units and keywords below: they
 function lists.words()
   if all_words then return all_words end
   all_words = {}
-  for _, word in ipairs(words.names) do add(all_words, word, one_line(word), what_follows(word, forms_of(word))) end
+  for _, record in ipairs(words.list()) do
+    if not record.of then add(all_words, record.name, words.one_line(record.name), what_follows(record.name, record.forms)) end
+  end
   return all_words
 end
 

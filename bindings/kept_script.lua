@@ -2,7 +2,7 @@
 -- The script that a conversation's inputs make: each stands as it was typed, in a frame that makes a script of them, and what the session
 -- showed is printed. The frame can be taken off again.
 local core = ...
-local tokens = core.part "lacuna.tokens"
+local statements = core.part "lacuna.statements"
 local session = core.part "lacuna.session"
 local load, print, os, type = load, print, os, type -- the user may give these names away
 
@@ -66,7 +66,7 @@ end
 local function in_a_function(input, list, shown)
   if input.results > 0 then return shown:format("(function()\n" .. input.text .. "\nend)()") end
   local names = {}
-  for _, statement in ipairs(tokens.locals(list)) do
+  for _, statement in ipairs(statements.locals(list)) do
     for _, entry in ipairs(statement.names) do names[#names + 1] = entry.name end
   end
   if #names == 0 then return ";(function()\n" .. input.text .. "\nend)()" end
@@ -76,11 +76,11 @@ end
 
 -- The input's lines in the script.
 local function written(input, shown)
-  local list = tokens.read(input.text)
+  local list = statements.read(input.text)
   if #list == 0 then return input.text end
   if input.expression then return printing(input, list, 1, input.text:sub(1, list[1].first - 1), shown) end
-  local last, inside = tokens.returns(list)
-  if inside or tokens.needs_block(list) then return in_a_function(input, list, shown) end
+  local last, inside = statements.returns(list)
+  if inside or statements.needs_block(list) then return in_a_function(input, list, shown) end
   if not last then return (list[1].text == "(" and ";" or "") .. input.text end
   local before = input.text:sub(1, list[last].first - 1)
   if last == #list or list[last + 1].text == ";" then return before end
@@ -89,13 +89,13 @@ end
 
 -- An input's beginning, as a message or a comment quotes it.
 local function quoted(text)
-  local line = text:match("[^\n]*", tokens.read(text)[1].first)
+  local line = text:match("[^\n]*", statements.read(text)[1].first)
   return #line > 60 and line:sub(1, 57):gsub("[\128-\255]+$", "") .. "..." or line
 end
 
 local function count_locals(text)
   local count = 0
-  for _, statement in ipairs(tokens.locals(tokens.read(text))) do count = count + #statement.names end
+  for _, statement in ipairs(statements.locals(statements.read(text))) do count = count + #statement.names end
   return count
 end
 

@@ -29,7 +29,7 @@ local function end_of_quoted(text, first)
     local stop = sub(text, place, place)
     if stop == "\n" then return place - 1 end
     if stop ~= "\\" then return place end
-    at = place + 2
+    at = sub(text, place + 1, place + 1) == "z" and find(text, "%S", place + 2) or place + 2
   end
 end
 
