@@ -30,6 +30,15 @@ local function one_line(word)
   return about and about[2] and match(about[2], "^%s*(.-)%.?$") or ""
 end
 
+-- What help says of a field of the table that a word takes.
+function lists.meaning_of_field(word, field)
+  for _, line in ipairs(words.about[word] or {}) do
+    local meaning = match(line, "^  " .. field .. "  +(.*)$")
+    if meaning then return meaning end
+  end
+  return "a field of " .. word
+end
+
 -- Methods of a kind: a list of {name, meaning, what follows it in its form}.
 local function methods_of(kind)
   local found, seen = {}, {}

@@ -7,7 +7,7 @@ import stat
 import subprocess
 import tempfile
 
-from terminal import CONTROL_C, LACUNA, LEFT, PASTE_BEGINS, PASTE_ENDS, PROMPT, TAB, UP, Session, check, plan
+from terminal import CONTROL_C, LACUNA, LEFT, META_ENTER, PASTE_BEGINS, PASTE_ENDS, PROMPT, TAB, UP, Session, check, plan
 
 MANY_DRAWS = "--draws=10000000000"  # a minute of work
 INVENTED_STAR = 'c = case{distance = "150 pc", bolometric_flux = "2e-11 W.m**-2"}'
@@ -67,6 +67,12 @@ def paste(session):
     check(session.wait(r"first = 1\nsecond = 2\n\nprint\(first \+ second\)$"), "which comes back whole", session.screen)
     session.type(LEFT + " * 10\r")
     check(session.wait(r"\n21\n> $"), "and can be edited", session.screen)
+    session.type(UP)
+    session.settle()
+    session.type(UP + LEFT + UP + UP + "0\r")
+    check(session.wait(r"\n21\n> $"), "arrow after arrow walks through the history; after another key, from line to line", session.screen)
+    session.type(UP + LEFT + UP + META_ENTER + "second = 300\r")
+    check(session.wait(r"\n301\n> $"), "Meta-Enter begins a new line", session.screen)
     session.type(PASTE_BEGINS + "for i = 1, 2 do\n\tprint(i)\n" + PASTE_ENDS + "\r")
     check(session.wait(r">> $"), "half a statement can be pasted, tabs in it", session.screen)
     session.ask("end", "1\n2", "and the rest typed")
