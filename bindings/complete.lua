@@ -92,12 +92,13 @@ local function keys_of_form(word)
   return keys
 end
 
+-- Those of the function `of`, or of a table inside its own.
 local function fields(keys, of, expected)
   return {
     keys = function(there)
       local list = {}
       for _, key in ipairs(keys()) do
-        if not there[key] then list[#list + 1] = { text = key, meaning = "a field of " .. of, append = " = " } end
+        if not there[key] then list[#list + 1] = { text = key, meaning = lists.meaning_of_field(of, key), append = " = " } end
       end
       return list
     end,
@@ -113,7 +114,7 @@ local function sorted_keys(t)
 end
 
 local of_group = { given = givens, using = choices, ask = name_list }
-local variant = fields(function() return sorted_keys(core.part "lacuna.study".variant_fields) end, "a variant", of_group)
+local variant = fields(function() return sorted_keys(core.part "lacuna.study".variant_fields) end, "study", of_group)
 local of_study = { given = givens, using = choices, ask = name_list, variants = { element = variant }, targets = { element = givens } }
 local function of_form(word, expected) return fields(function() return keys_of_form(word) end, word, expected or {}) end
 local fractions = { keys = function(there)
@@ -121,7 +122,7 @@ local fractions = { keys = function(there)
   for _, candidate in ipairs(lists.materials(" = ")) do if not there[candidate.text] then list[#list + 1] = candidate end end
   return list
 end, element = { element = material_text } }
-local sizes = fields(function() return { "smallest", "largest", "index", "median", "width" } end, "sizes", {})
+local sizes = fields(function() return { "smallest", "largest", "index", "median", "width" } end, "dust", {})
 
 -- What functions and methods take, argument by argument.
 local arguments = {
@@ -174,12 +175,23 @@ end
 
 -- What stands at the cursor ---------------------------------------------------------------------------------------------------------
 
+-- Members of what ends in token i.
+local function members(reading, i)
+  local found = values.find(reading.tokens, reading.partner, i, reading.environment)
+  if found.kind == "case" then return lists.members(found.value) end
+  return type(found.value) == "table" and lists.fields(found.value) or {}
+end
+
 local function in_string(reading, open)
   local expected, object
   local i = #reading.tokens + 1 -- the string's own number
   if values.ends_prefix(reading.tokens[i - 1]) then
     expected, object = expected_of_call(values.find(reading.tokens, reading.partner, i - 1, reading.environment), 1)
   elseif begins_item(reading, i, #reading.stack) then expected, object = expected_of_item(reading, #reading.stack) end
+  local frame = reading.stack[#reading.stack]
+  if frame and frame.open == "[" and frame.at == i - 1 and values.ends_prefix(reading.tokens[i - 2]) then
+    return members(reading, i - 2), open.first, false, true -- c["rim_radius"]
+  end
   if expected and expected.text then
     local candidates, start = expected.text(open.text, core.is_case(object) and object or nil)
     return candidates or {}, open.first + (start or 1) - 1, false, true
@@ -189,12 +201,8 @@ local function in_string(reading, open)
   return {}, open.first, open.quote ~= ""
 end
 
-local function after_mark(reading, mark)
+local function after_colon(reading)
   local found = values.find(reading.tokens, reading.partner, #reading.tokens - 1, reading.environment)
-  if mark == "." then
-    if found.kind == "case" then return lists.members(found.value) end
-    return type(found.value) == "table" and lists.fields(found.value) or {}
-  end
   if type(found.value) == "string" then return lists.fields(string, true) end
   local methods = found.kind and lists.methods(found.kind) or {}
   if #methods > 0 then return methods end
@@ -275,7 +283,8 @@ function complete.find(input, cursor, environment)
     if open.kind == "comment" then return start, { common = "" } end
     candidates, start, files, closes = in_string(reading, open)
     if files then return start, { common = "" }, true end
-  elseif last and last.kind == "symbol" and (last.text == "." or last.text == ":") then candidates = after_mark(reading, last.text)
+  elseif last and last.kind == "symbol" and last.text == "." then candidates = members(reading, #list - 1)
+  elseif last and last.kind == "symbol" and last.text == ":" then candidates = after_colon(reading)
   elseif not (last and last.kind == "number" and last.last == start - 1) then candidates = alone(reading, word.text) end
   local written = sub(before, start)
   local meant = {}

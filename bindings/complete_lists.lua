@@ -22,6 +22,15 @@ local function forms_of(word)
 end
 lists.forms_of = forms_of
 
+-- What help says of a field of the table that a word takes.
+function lists.meaning_of_field(word, field)
+  local record = words.find(word)
+  for _, argument in ipairs(record and record.arguments or {}) do
+    for name in gmatch(argument[1], "[%a_][%w_]*") do if name == field then return argument[2] end end
+  end
+  return "a field of " .. word
+end
+
 -- Methods of a kind: a list of {name, meaning, what follows it in its form}.
 local function methods_of(kind)
   local found = {}

@@ -108,11 +108,9 @@ static char *entry_of(const char *input) {
   return entry;
 }
 
-void history_remember(const char *input) {
-  HIST_ENTRY *last = history_length ? history_get(history_base + history_length - 1) : NULL;
-  if (last && strcmp(last->line, input) == 0) return;
-  add_history(input);
-  char *entry = *file_name ? entry_of(input) : NULL;
+/* Appends the input to the file. */
+static void write_entry(const char *input) {
+  char *entry = entry_of(input);
   if (!entry) return;
   int file = open(file_name, O_WRONLY | O_APPEND | O_CREAT | O_CLOEXEC, 0600);
   if (file >= 0) {
@@ -120,4 +118,21 @@ void history_remember(const char *input) {
     close(file);
   }
   free(entry);
+}
+
+/* What was pasted often ends in blank lines. */
+static char *without_blank_end(const char *input) {
+  size_t length = strlen(input);
+  while (length > 0 && isspace((unsigned char)input[length - 1])) length--;
+  return strndup(input, length);
+}
+
+void history_remember(const char *input) {
+  HIST_ENTRY *last = history_length ? history_get(history_base + history_length - 1) : NULL;
+  char *kept = without_blank_end(input);
+  if (kept && *kept && (last == NULL || strcmp(last->line, kept) != 0)) {
+    add_history(kept);
+    if (*file_name) write_entry(kept);
+  }
+  free(kept);
 }

@@ -14,6 +14,9 @@ void prompt_start(void);
 /* Reads one line into *line (malloc's). earlier: the lines of the same input before it, NULL where it is the first. */
 reply prompt_read_line(const char *prompt, const char *earlier, char **line);
 
+/* Keys for inputs of several lines. */
+void lines_start(void);
+
 /* The inputs of earlier sessions, for the arrow keys; and one more. */
 void history_start(void);
 void history_remember(const char *input);

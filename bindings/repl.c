@@ -85,6 +85,7 @@ void program_repl(lua_State *L, const char *start) {
   sigemptyset(&interruption);
   sigaddset(&interruption, SIGINT);
   prompt_start();
+  lines_start();
   history_start();
   completion_start(L);
   if (isatty(STDOUT_FILENO)) fputs(banner, stdout);

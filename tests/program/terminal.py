@@ -12,7 +12,7 @@ import time
 
 LACUNA = os.environ["LACUNA"]
 PATIENCE = 30  # seconds for an answer; sanitised builds are slow
-CONTROL_C, CONTROL_D, UP, LEFT, TAB, START_OF_LINE = "\x03", "\x04", "\x1b[A", "\x1b[D", "\t", "\x01"
+CONTROL_C, CONTROL_D, UP, LEFT, TAB, META_ENTER = "\x03", "\x04", "\x1b[A", "\x1b[D", "\t", "\x1b\r"
 PASTE_BEGINS, PASTE_ENDS = "\x1b[200~", "\x1b[201~"
 PROMPT = re.compile(r"(^|\n)> $")
 results = 0
@@ -59,7 +59,7 @@ class Session:
         except OSError:  # the program has left
             return False
         self.raw += piece
-        self.screen = re.sub(r"\x1b\[[0-9;?]*[a-zA-Z]|[\r\a]", "", self.screen + piece)
+        self.screen = re.sub(r"\x1b\[[0-9;?]*[@-~]|[\r\a]", "", self.screen + piece)
         return True
 
     def wait(self, pattern, patience=PATIENCE):

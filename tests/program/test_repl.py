@@ -7,7 +7,7 @@ import stat
 import subprocess
 import tempfile
 
-from terminal import CONTROL_C, LACUNA, LEFT, PASTE_BEGINS, PASTE_ENDS, PROMPT, TAB, UP, Session, check, plan
+from terminal import CONTROL_C, LACUNA, LEFT, META_ENTER, PASTE_BEGINS, PASTE_ENDS, PROMPT, TAB, UP, Session, check, plan
 
 MANY_DRAWS = "--draws=10000000000"  # a minute of work
 INVENTED_STAR = 'c = case{distance = "150 pc", bolometric_flux = "2e-11 W.m**-2"}'
@@ -67,6 +67,12 @@ def paste(session):
     check(session.wait(r"first = 1\nsecond = 2\n\nprint\(first \+ second\)$"), "which comes back whole", session.screen)
     session.type(LEFT + " * 10\r")
     check(session.wait(r"\n21\n> $"), "and can be edited", session.screen)
+    session.type(UP)
+    session.settle()
+    session.type(UP + LEFT + UP + UP + "0\r")
+    check(session.wait(r"\n21\n> $"), "arrow after arrow walks through the history; after another key, from line to line", session.screen)
+    session.type(UP + LEFT + UP + META_ENTER + "second = 300\r")
+    check(session.wait(r"\n301\n> $"), "Meta-Enter begins a new line", session.screen)
     session.type(PASTE_BEGINS + "for i = 1, 2 do\n\tprint(i)\n" + PASTE_ENDS + "\r")
     check(session.wait(r">> $"), "half a statement can be pasted, tabs in it", session.screen)
     session.ask("end", "1\n2", "and the rest typed")
@@ -79,6 +85,10 @@ def survive(session):
     session.ask("settings{memory = 2000}", ".*2000 MiB of memory", "enough memory")
     session.ask("s = ('x'):rep(1 << 60)", "resulting string too large", "a string too large")
     session.ask("function f() return f() + 1 end f()", ".*stack overflow.*(\n.*)*", "a stack overflow")
+    session.ask("dust{materials = 'soot', sizes = '1 um'}:planck_mean('1e9 K')", ".*is undefined at 1e9 K.*", "an integral that is not to be had")
+    session.type("quantity{name = 'trial', unit = '1', meaning = 'of a test'} relation{gives = 'trial', from = {'distance'}, function() error 'mine' end}\r")
+    session.wait(PROMPT)
+    session.ask("case{distance = sweep('1 pc', '2 pc', 10)}.trial", "mine", "a relation of the user's that fails below a computation")
     session.ask("error()", ".*nil.*", "an error without a value")
     session.ask("error({})", ".*table.*", "an error that is a table")
     session.ask("error(setmetatable({}, {__tostring = function() error 'again' end}))", ".+", "an error that fails to be told")
