@@ -44,7 +44,9 @@ local function load_all()
   for _, subject in ipairs(subjects) do of_subject[subject[1]] = {} end
   for _, part in ipairs(parts) do
     local name = "lacuna." .. part
-    for _, record in ipairs(core.has_part(name) and core.part(name) or {}) do table.insert(of_subject[record.subject], record) end
+    for _, record in ipairs(core.has_part(name) and core.part(name) or {}) do
+      table.insert(of_subject[record.subject] or error(("%s: %s is of no known subject"):format(part, record.name)), record)
+    end
   end
   ordered, by_name = {}, {}
   for _, subject in ipairs(subjects) do

@@ -176,7 +176,7 @@ const lac_name lac_glossary[] = {
     QUANTITY("instrument", "shortest_baseline", "m", "> 0", "B_{min}", NULL, "shortest projected baseline of the array"),
     QUANTITY("instrument", "baseline_position_angle", "deg", "any", "\\mathrm{PA}_B", NULL, "position angle of the projected baseline, from north through east"),
     QUANTITY("instrument", "element_diameter", "m", "> 0", "D_e", NULL, "diameter of one element of the array"),
-    QUANTITY("instrument", "array_resolution", "mas", "> 0", "\\theta_{arr}", "lambda/B", "smallest angle that the array tells apart, by the named criterion"),
+    QUANTITY("instrument", "array_resolution", "mas", "> 0", "\\theta_{arr}", "lambda/2B lambda/B", "smallest angle that the array tells apart, by the named criterion"),
     QUANTITY("instrument", "bandwidth_field", "mas", "> 0", "\\theta_{bw}", NULL, "field that the bandwidth leaves unsmeared, to the first null"),
     QUANTITY("instrument", "beam_field", "mas", "> 0", "\\theta_{beam}", NULL, "field of one element of the array"),
     QUANTITY("instrument", "array_field", "mas", "> 0", "\\theta_{field}", NULL, "field of the array, the smaller of those known"),

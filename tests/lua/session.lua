@@ -1,6 +1,6 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- Lines as typed at the prompt, and what the prompt answers. A fresh process runs them, so that each list of lines starts anew: draws, axes
--- and the user's own names are as in a new session.
+-- and the user's own names are as in a new session. It works in a folder of its own that holds scripts/ alone; what it writes goes with it.
 --
 --   session.answers(lines)   runs them here, in this process: a list of answers
 --   session.fresh(lines)     the same in a new process
@@ -39,6 +39,15 @@ end
 -- What runs this test: stock Lua or the program.
 local interpreter = os.getenv "INTERPRETER" or arg[-1]
 
+-- Goes to a new folder, makes the paths to what runs absolute, and runs the lines that stand in $1 there; the folder goes afterwards.
+local in_a_folder = [[
+root=$PWD folder=$(mktemp -d) && trap 'rm -rf "$folder"' EXIT && ln -s "$root/scripts" "$folder/scripts" && cd "$folder" || exit
+case $INTERPRETER in */*) INTERPRETER=$root/${INTERPRETER#$root/} ;; esac
+case $LUA_CPATH in /*) ;; *) LUA_CPATH=$root/$LUA_CPATH ;; esac
+export LUA_CPATH LUA_PATH="$root/tests/lua/?.lua;;"
+"$INTERPRETER" "$root/tests/lua/session.lua" "$1"
+]]
+
 local function quoted(text) return "'" .. text:gsub("'", "'\\''") .. "'" end
 
 function session.fresh(lines)
@@ -46,7 +55,7 @@ function session.fresh(lines)
   local file = assert(io.open(name, "w"))
   file:write(table.concat(lines, separator))
   file:close()
-  local process = assert(io.popen(interpreter .. " tests/lua/session.lua " .. quoted(name)))
+  local process = assert(io.popen(("INTERPRETER=%s sh -c %s sh %s"):format(quoted(interpreter), quoted(in_a_folder), quoted(name))))
   local output = process:read "a"
   local ok = process:close()
   os.remove(name)

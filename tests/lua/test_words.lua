@@ -42,7 +42,7 @@ local function rewrite(file)
     end
     lines[#lines + 1] = line
   end
-  assert(count == #with_examples, file .. ": as many lines with answers as records with examples are wanted")
+  if count ~= #with_examples then return print(("# %s: left alone: %d lines set answers, of %d records with examples"):format(file, count, #with_examples)) end
   local out = assert(io.open(file .. ".new", "w"))
   out:write(table.concat(lines, "\n"), "\n")
   out:close()
