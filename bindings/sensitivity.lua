@@ -159,7 +159,7 @@ end
 local function share_text(entry)
   if not entry.share then return entry.varies and "—" or "no error bar" end
   local value, error_bar = ("%.1f"):format(100 * entry.share), ("%.1f"):format(100 * entry.error)
-  return error_bar == "0.0" and value .. " %" or value .. " ± " .. error_bar .. " %"
+  return error_bar == "0.0" and value .. " %" or value .. " ± " .. error_bar .. " %" -- no bar: below 0.05 %
 end
 
 local function signed(pattern, value)
