@@ -36,7 +36,7 @@ return {
       .. "Of a verdict, with every given at its median: the value at which each given or assumed value alone turns it, the nearest first, looked for "
       .. "up to a factor of ten to either side and as far as its error bar goes; and which other recipes turn it.",
     arguments = { { "name", "what is asked: anything that follows from the givens" } },
-    result = "s: s.givens lists {name, share, error, slope, more}; s.interactions; s.defined (draws used); of a verdict s.yes (of the median case), "
+    result = "s: s.givens lists {name, share, error, slope, more, assumed}, assumed values among them for their slopes; s.interactions; s.defined (draws used); of a verdict s.yes (of the median case), "
       .. "s.turns and s.not_turning list {name, kind = \"given\" or \"assumed\", now, at, low, high} (SI), s.recipes {name, by, instead_of, turns}",
     errors = "a name that can't be derived, is given itself, is undefined in all draws, or runs along a sweep",
     examples = { 'case { distance = "150 ± 3 pc", rim_radius = "0.3 ± 0.01 au" }:sensitivity "rim_size_angle"' },
