@@ -88,7 +88,7 @@ local function given_cell(made, name)
   if not value and not row then return { text = "not given", word = true } end
   if not value then
     value = core.raw(made, name)
-    return { text = without_unit(text.brief(value), unit_of(name)) .. (core.row(row).kind == "assumed" and " assumed" or " derived"), word = true, value = value }
+    return { text = without_unit(text.brief(value), unit_of(name)), tail = core.row(row).kind == "assumed" and " assumed" or " derived", value = value }
   end
   return { text = without_unit(info.written[name] or text.brief(value), unit_of(name)), value = value }
 end
@@ -117,7 +117,7 @@ local function new_row(kind, name, columns, cell_of)
   local row = { kind = kind, name = name, unit = kind ~= "recipe" and unit_of(name) or nil, cells = {}, values = {}, differs = false }
   for i, column in ipairs(columns) do
     local cell = cell_of(column.case, name)
-    if i > 1 and cell.text ~= row.cells[1].text then cell.mark, row.differs = MARK, true end
+    if i > 1 and (cell.text ~= row.cells[1].text or cell.tail ~= row.cells[1].tail) then cell.mark, row.differs = MARK, true end
     row.cells[i], row.values[column.name] = cell, cell.value
   end
   return row

@@ -23,8 +23,8 @@ static lac_distribution distribution_at(lua_State *L, int index) {
   return distributions[luaL_checkoption(L, index, NULL, kinds)];
 }
 
-/* first_order_shares(y, {quantities}, {"normal", "uniform" or "any", ...}): a list of shares, a list of their errors, the number of defined draws;
-   nil where these are too few. */
+/* first_order_shares(y, {quantities}, {"normal", "uniform" or "any", ...}): a list of shares, a list of their errors, the number of defined
+   draws; nil where these are too few. */
 static int first_order_shares(lua_State *L) {
   luaL_checktype(L, 2, LUA_TTABLE);
   luaL_checktype(L, 3, LUA_TTABLE);

@@ -159,7 +159,7 @@ end
 local function share_text(entry)
   if not entry.share then return entry.varies and "—" or "no error bar" end
   local value, error_bar = ("%.1f"):format(100 * entry.share), ("%.1f"):format(100 * entry.error)
-  return error_bar == "0.0" and value .. " %" or value .. " ± " .. error_bar .. " %"
+  return error_bar == "0.0" and value .. " %" or value .. " ± " .. error_bar .. " %" -- no bar: below 0.05 %
 end
 
 local function signed(pattern, value)
@@ -212,7 +212,7 @@ local function shares_table(s)
   local with_slope = not verdict and not is_magnitude(s.name)
   if with_slope then column("slope", function(entry) return entry.slope and signed("%.2f", entry.slope) or "—" end) end
   if not verdict then column("10\u{a0}%\u{a0}more makes\u{a0}it", function(entry) return change_text(entry, s.name) end) end
-  column("given", function(entry) return short(text.given(s.case, entry.name)) end, true)
+  column("given", function(entry) return entry.assumed and text.quantity(entry.value) .. ", assumed" or short(text.given(s.case, entry.name)) end, true)
   local _, _, _, _, size = core.facts(s.answer)
   if s.defined then
     lines[#lines + 1] = ("What several givens do only together carries %.1f %% of the variance; estimated from %d draws%s."):format(100 * math.max(0, s.interactions),
@@ -223,7 +223,7 @@ local function shares_table(s)
     if rarer < ROUGH then lines[#lines + 1] = ("Only %d draw%s otherwise than the others: the shares are rough."):format(rarer, rarer == 1 and " is" or "s are") end
   end
   if with_slope then lines[#lines + 1] = "The slope is d ln " .. s.name .. " / d ln of the given, with every given at its median." end
-  if #left_out > 0 then lines[#lines + 1] = (verdict and "Less than 0.5 % each: " or "Hardly matters: ") .. list_or_count(left_out) .. "." end
+  if #left_out > 0 and (s.defined or not verdict) then lines[#lines + 1] = (verdict and "Less than 0.5 % each: " or "Hardly matters: ") .. list_or_count(left_out) .. "." end
   return whole, lines
 end
 
@@ -306,7 +306,7 @@ local function check_axes(name, answer)
   end
 end
 
--- The givens along the chain of a name, each with its value.
+-- The givens along the chain of a name, each with its value. (Assumed values join them where they have a slope.)
 local function entries_of(self, name)
   local entries = {}
   for _, step in ipairs(core.steps(self, name)) do
@@ -336,10 +336,12 @@ function core.case_methods.sensitivity(self, word)
     if number_of(core.lowest(answer)) == number_of(core.highest(answer)) then s.constant = true
     else s.interactions, s.defined = share_out(answer, s.givens) end
   end
-  for _, entry in ipairs(s.givens) do
-    if not verdict then entry.slope, entry.more = follow(median, name, entry.name, number_of(median_of(entry.value)), y) end
-  end
-  if verdict and y == y then
+  if not verdict then
+    for _, row in ipairs(case.assumptions(self, name)) do
+      s.givens[#s.givens + 1] = { name = row.gives, value = core.raw(median, row.gives), varies = false, assumed = true }
+    end
+    for _, entry in ipairs(s.givens) do entry.slope, entry.more = follow(median, name, entry.name, number_of(median_of(entry.value)), y) end
+  elseif y == y then
     s.yes = y == 1
     s.turns, s.not_turning = turns_of(self, median, name, s.givens)
     s.recipes = recipes_of(median, name, s.yes)

@@ -7,7 +7,7 @@
 -- left = true for texts that begin below each other },
 -- rows { name, texts, cells, rule = true for a rule above it }, cells { share } of a verdict or { value, upper, lower } in the column's unit (no errors: a single
 -- number) or { missing = true } or { text }, word = true where a text has no place below
--- the numbers, mark = "*" besides where one is to stand behind it, and notes { heading, lines (texts, or lists whose first text heads the others) }. A column belongs to the group of its left neighbour where the name is the same.
+-- the numbers, tail = a word behind a number, mark = "*" where one is to stand behind all, and notes { heading, lines (texts, or lists whose first text heads the others) }. A column belongs to the group of its left neighbour where the name is the same.
 local core = ...
 local format = core.part "lacuna.format"
 
@@ -58,6 +58,7 @@ local function aligned(cells, flush_left)
     if flush_left or cell.word then words = math.max(words, format.width(lefts[i]))
     else
       lefts[i], rights[i] = parts(lefts[i])
+      rights[i] = rights[i] .. (cell.tail or "")
       left, right = math.max(left, format.width(lefts[i])), math.max(right, format.width(rights[i]))
     end
     if cell.mark then marks = math.max(marks, 1 + format.width(cell.mark)) end

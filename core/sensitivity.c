@@ -1,7 +1,8 @@
 /* SPDX-License-Identifier: GPL-3.0-or-later */
 /* First-order variance shares from one ensemble. The naive way, averages of y in bins of each input by itself, has all the scatter of the
-   other inputs in it: some hundredths with ten thousand draws. Here all inputs are fitted at once, products of two besides, so that only what
-   neither catches scatters; and the fitted functions' variances are integrals over the inputs' distributions, where those are known. */
+   other inputs in it: some hundredths with ten thousand draws. Here all inputs are fitted at once, products of two besides, so that only
+   what neither catches scatters; and the fitted functions' variances are integrals over the inputs' distributions, where those are known.
+ */
 #include "lacuna/sensitivity.h"
 
 #include <math.h>
@@ -10,23 +11,31 @@
 #include <string.h>
 
 /* Hermite's polynomials of high degree hang on a few draws far out: above the fifth, ten thousand draws don't settle their coefficients. */
-enum { HIGHEST_DEGREE = 12, HIGHEST_OF_NORMAL = 5, MOST_TERMS = 120, MOST_BINS = 200, DRAWS_A_TERM = 10, DRAWS_A_BIN = 50, POLL_EVERY = 1024 };
+enum {
+  HIGHEST_DEGREE = 12,
+  HIGHEST_OF_NORMAL = 5,
+  MOST_TERMS = 120,
+  MOST_BINS = 200,
+  DRAWS_A_TERM = 10,
+  DRAWS_A_BIN = 50,
+  POLL_EVERY = 1024
+};
 
 typedef struct {
   lac_work *work;
   size_t n, inputs, terms, bins; /* n: defined draws */
-  size_t *first; /* of each input, then of the products of two: the first term; the terms' number + 1 behind the last */
-  bool whole;                            /* all draws are defined: the inputs are distributed as they were given */
+  size_t *first;                 /* of each input, then of the products of two: the first term; the terms' number + 1 behind the last */
+  bool whole;                    /* all draws are defined: the inputs are distributed as they were given */
   const lac_share_input *x;
   const double *y;
-  size_t *index;   /* of the defined draws */
-  double *ranks;   /* of each input without a distribution: its place between 0 and 1; n for each input */
-  double *centre;  /* of each input: the mean of its first polynomial, so that products of two hold nothing of one alone */
-  double *gram;    /* normal equations: (terms + 2)^2, of 1, the terms and y, lower triangle */
-  double *fit;     /* coefficients of 1 and the terms */
-  double *means;   /* of the terms over the draws */
-  double *basis;   /* 1, the terms and y at one draw */
-  double mean;     /* of y, taken off before anything else */
+  size_t *index;  /* of the defined draws */
+  double *ranks;  /* of each input without a distribution: its place between 0 and 1; n for each input */
+  double *centre; /* of each input: the mean of its first polynomial, so that products of two hold nothing of one alone */
+  double *gram;   /* normal equations: (terms + 2)^2, of 1, the terms and y, lower triangle */
+  double *fit;    /* coefficients of 1 and the terms */
+  double *means;  /* of the terms over the draws */
+  double *basis;  /* 1, the terms and y at one draw */
+  double mean;    /* of y, taken off before anything else */
 } problem;
 
 /* Polynomials 1 .. degree, orthonormal: of Hermite over the standard normal distribution, of Legendre over that from 0 to 1. */
@@ -102,7 +111,7 @@ static lac_status rank_draws(problem *p, size_t input) {
   return LAC_OK;
 }
 
-/* 0 by nature where all draws are there. */
+/* The means are 0 by nature where all draws are there. */
 static lac_status find_centres(problem *p) {
   for (size_t t = 0; t < p->n && !p->whole; t++) {
     if (stopped(p, t)) return LAC_INTERRUPTED;
@@ -177,15 +186,15 @@ static double residual(const problem *p) {
 }
 
 typedef struct {
-  double left;               /* variance that the polynomials leave */
-  double *variance, *noise;  /* of each input's polynomial and of the products; what the scatter of their coefficients adds to it */
-  double *binned;            /* of the bins' means of what is left, for each input */
-  double *own;               /* influence of one draw on each variance */
-  double *sums, *counts;     /* of the bins: inputs x bins */
+  double left;              /* variance that the polynomials leave */
+  double *variance, *noise; /* of each input's polynomial and of the products; what the scatter of their coefficients adds to it */
+  double *binned;           /* of the bins' means of what is left, for each input */
+  double *own;              /* influence of one draw on each variance */
+  double *sums, *counts;    /* of the bins: inputs x bins */
 } variances;
 
 static size_t bin_of(const problem *p, size_t input, size_t draw) {
-  const size_t bin = (size_t)(place(p, input, draw) * (double)p->bins);
+  const size_t bin = (size_t)fmax(0, place(p, input, draw) * (double)p->bins);
   return bin < p->bins ? bin : p->bins - 1;
 }
 
@@ -282,7 +291,8 @@ static void choose_terms(problem *p) {
   if (p->bins < degree + 1) p->bins = degree + 1;
 }
 
-lac_status lac_first_order_shares(lac_work *work, size_t n, const double *y, size_t inputs, const lac_share_input *x, lac_share *shares, size_t *defined) {
+lac_status lac_first_order_shares(lac_work *work, size_t n, const double *y, size_t inputs, const lac_share_input *x, lac_share *shares,
+                                  size_t *defined) {
   problem p = {.work = work, .inputs = inputs, .x = x, .y = y, .index = malloc((n + inputs + 2) * sizeof *p.index)};
   if (p.index == NULL) return LAC_NO_MEMORY;
   for (size_t t = 0; t < n; t++)
@@ -301,7 +311,8 @@ lac_status lac_first_order_shares(lac_work *work, size_t n, const double *y, siz
   if (room != NULL) {
     p.ranks = room, p.gram = p.ranks + inputs * p.n, p.fit = p.gram + width * width, p.means = p.fit + width, p.basis = p.means + width;
     variances v = {.variance = p.basis + width};
-    v.noise = v.variance + inputs + 1, v.binned = v.noise + inputs + 1, v.own = v.binned + inputs + 1, p.centre = v.own + inputs + 1, v.sums = p.centre + inputs + 1, v.counts = v.sums + bins;
+    v.noise = v.variance + inputs + 1, v.binned = v.noise + inputs + 1, v.own = v.binned + inputs + 1;
+    p.centre = v.own + inputs + 1, v.sums = p.centre + inputs + 1, v.counts = v.sums + bins;
     status = shares_with(&p, &v, shares);
   }
   free(room);

@@ -18,11 +18,19 @@ say("gap width on the sky", star.gap_size_angle)
 say("rim resolved by the array?", star.rim_resolved_by_array)
 say("gap resolved by the array?", star.gap_resolved_by_array)
 
--- A what-if is the same case with other givens.
+-- A what-if is the same case with other givens; several stand side by side, what differs from the case as it is marked.
 print ""
-say("gap, with a shortest baseline of 8 m", star:with { shortest_baseline = "8 m" }.gap_resolved_by_array)
-say("gap, with the planet at 2 au", star:with { planet_semi_major_axis = "2 au" }.gap_resolved_by_array)
-say("rim, if two elements are wanted", star:with { elements_required = 2 }.rim_resolved_by_array)
+print(compare(star, {
+  { name = "8 m shortest", shortest_baseline = "8 m" },
+  { name = "planet at 2 au", planet_semi_major_axis = "2 au" },
+  { name = "two elements", elements_required = 2 },
+}, { "gap_size_angle", "gap_resolved_by_array", "rim_resolved_by_array" }))
+
+-- What carries the error bar, how the answer follows each given, and what alone would turn the verdict.
+print ""
+print(star:sensitivity "gap_size_angle")
+print ""
+print(star:sensitivity "gap_resolved_by_array")
 
 -- A sweep asks for many values at once.
 print "\nRim diameter in elements of the array, by projected baseline:"

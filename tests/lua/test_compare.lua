@@ -9,7 +9,7 @@ local uncertain = c:with { distance = "150 ± 3 pc" }
 
 local function cell(result, name, column)
   for _, row in ipairs(result.rows) do
-    if row.name == name then return row.cells[column].text, row.cells[column].mark, row.differs end
+    if row.name == name then return row.cells[column].text .. (row.cells[column].tail or ""), row.cells[column].mark, row.differs end
   end
 end
 
