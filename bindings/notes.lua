@@ -334,6 +334,46 @@ local function set_on_command_line(study)
   return words ~= "" and { words .. "; before what the study says" } or {}
 end
 
+-- Between which points of its one sweep a verdict's share crosses one half: the value there, on the line between them; in the sweep's unit.
+local function turns_at(cell, sweep)
+  for i = 2, #cell.shares do
+    local before, after = cell.shares[i - 1] - 0.5, cell.shares[i] - 0.5
+    if (before < 0) ~= (after < 0) then
+      return sweep.values[i - 1] + (sweep.values[i] - sweep.values[i - 1]) * before / (before - after), after >= 0
+    end
+  end
+end
+
+-- "rim_resolved_by_array: from 95 m up for Marrow 3, ..." for a study along one sweep.
+local function where_verdicts_turn(study)
+  local sweep = study.sweeps and #study.sweeps == 1 and study.sweeps[1]
+  if not sweep then return {} end
+  local columns = ordered()
+  for_cells(study, function(column, row, cell)
+    if not cell.shares then return end
+    local value, up = turns_at(cell, sweep)
+    local words = value and ("%s %s"):format(up and "from" or "up to", format.with_unit(format.number(value, 3), sweep.unit_text))
+      or cell.shares[1] >= 0.5 and "all along" or "nowhere"
+    table.insert(at(at(columns, column.label), words), row.name)
+  end)
+  local said = {}
+  for label, words in each(columns) do
+    local parts = { label }
+    for where, names in each(words) do parts[#parts + 1] = where .. " for " .. named(names, study) end
+    said[#said + 1] = #parts > 3 and { label, table.concat(parts, ", ", 2) } or parts
+  end
+  return said
+end
+
+local function along_sweeps(study)
+  local said = {}
+  for _, sweep in ipairs(study.sweeps or {}) do
+    said[#said + 1] = ("%s from %s to %s, %d points"):format(sweep.name, format.number(sweep.values[1]),
+      format.with_unit(format.number(sweep.values[#sweep.values]), sweep.unit_text), #sweep.values)
+  end
+  return #said > 0 and { table.concat(said, " and ") .. "; the table shows the lowest … the highest value along it, the CSV file each point" } or {}
+end
+
 local function givens_for_all(study)
   local said = {}
   for _, group in ipairs(study.groups) do
@@ -362,6 +402,8 @@ function notes.of(study)
     { heading = "Failed", lines = failed_targets(study) },
     { heading = "Not derived (—)", lines = not_derived(study) },
     { heading = "Why not (yes in less than half of the draws; medians)", lines = why_not(study) },
+    { heading = "Along a sweep", lines = along_sweeps(study) },
+    { heading = "Yes in half of the draws and more", lines = where_verdicts_turn(study) },
     { heading = "With another recipe", lines = over_recipes(study) },
     { heading = "Not all targets use the same recipes", lines = unlike_recipes(study, used) },
     { heading = "Outside a recipe's range of validity", lines = outside_validity(study) },

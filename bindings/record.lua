@@ -309,7 +309,7 @@ local function fill(plan, column, cases, made)
   if cell.missing or column.hidden then return cell end
   local steps = steps_of(plan, self, number, column.name)
   cell.steps = steps.words
-  if column.verdict and cell.share < 0.5 then cell.failing = failing(self, column.name) end
+  if column.verdict and not cell.axes and cell.share < 0.5 then cell.failing = failing(self, column.name) end
   made[number] = made[number] or { outside = {}, cases = {} }
   cell.outside = outside_validity(self, steps, made[number].outside)
   cell.others = over_recipes(column, self, steps, cell, quantity, made[number].cases)
