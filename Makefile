@@ -55,7 +55,7 @@ program_libs = $(LUA_LIBS) $(STATIC_LIBS) -lm
 # ---- Files ----
 
 core_sources = $(wildcard core/*.c)
-program_sources = $(addprefix bindings/,program.c options.c interrupt.c input.c repl.c prompt.c lines.c history.c completion.c)
+program_sources = $(addprefix bindings/,program.c options.c interrupt.c workers.c input.c repl.c prompt.c lines.c history.c completion.c)
 module_sources = $(filter-out $(program_sources),$(wildcard bindings/*.c))
 lua_sources = $(wildcard bindings/*.lua)
 test_sources = $(wildcard tests/test_*.c)

@@ -4,7 +4,7 @@
 local core = ...
 local case = core.part "lacuna.case"
 local format = core.part "lacuna.format"
-local study = core.part "lacuna.study"
+local records = core.part "lacuna.record"
 local tables = core.part "lacuna.table"
 local text = core.part "lacuna.text"
 
@@ -106,10 +106,10 @@ end
 local function answer_cell(made, name)
   local quantity = core.raw(made, name)
   if quantity and over_points(quantity) then return { text = without_unit(text.brief(quantity), unit_of(name)), value = quantity } end
-  local cell = study.cell_of(made, name, function(found) return found end)
+  local cell = records.cell_of(made, name)
   cell.text = tables.cell_text(cell)
   if (cell.undefined or 0) > 0 then cell.text = cell.text .. (" (%s undefined)"):format(format.percent(cell.undefined)) end
-  return { text = cell.text, value = cell.quantity, missing = cell.reason }
+  return { text = cell.text, value = quantity, missing = cell.reason }
 end
 
 -- Makes one row: a cell for each column, marked where it differs from the first's as printed.
@@ -214,7 +214,7 @@ local function as_text(columns, rows, notes)
     whole.rows[i] = { name = label(row), cells = row.cells, rule = row.kind == "answer" and last ~= "answer" and i > 1 }
     last = row.kind
   end
-  return tables.text(whole, core.terminal_width() or study.WIDTH)
+  return tables.text(whole, core.terminal_width() or tables.WIDTH)
 end
 
 local function compare(self, variants, asks)

@@ -13,7 +13,6 @@ local HARDLY = 0.005                -- a share or a slope below it is left out o
 local ROUGH = 200                   -- draws of a verdict that differ from the others: the shares are rough where there are fewer
 local STEP, MORE = 1e-3, 0.1        -- relative: of the differences for a slope; of "10 % more"
 local FACTOR = 10                   -- to either side of a value: how far a turn is looked for
-local WIDTH = 100                   -- of the output where no terminal says otherwise
 
 -- The median case: every given at its median -----------------------------------------------------------------------------------------
 
@@ -281,7 +280,7 @@ end
 
 local metatable = { __name = "sensitivity" }
 function metatable.__tostring(s)
-  local columns = core.terminal_width() or WIDTH
+  local columns = core.terminal_width() or tables.WIDTH
   local pages = { show.page(answer_lines(s)) }
   local shares, lines = shares_table(s)
   if #shares.rows > 0 then pages[#pages + 1] = tables.text(shares, columns) end

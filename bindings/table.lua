@@ -6,12 +6,12 @@
 -- with columns { name (or heading = a text as it stands), entry = row of the glossary, verdict, group = heading over it or nil, unit (VOUnits), unit_text, unit_tex,
 -- left = true for texts that begin below each other },
 -- rows { name, texts, cells, rule = true for a rule above it }, cells { share } of a verdict or { value, upper, lower } in the column's unit (no errors: a single
--- number) or { missing = true } or { text }, word = true where a text has no place below
+-- number) or { missing = true } or { text }, or along sweeps as in record.lua (then the table has sweeps = { { name, unit, values } }), word = true where a text has no place below
 -- the numbers, tail = a word behind a number, mark = "*" where one is to stand behind all, and notes { heading, lines (texts, or lists whose first text heads the others) }. A column belongs to the group of its left neighbour where the name is the same.
 local core = ...
 local format = core.part "lacuna.format"
 
-local tables = {}
+local tables = { WIDTH = 100 } -- of a table where no terminal says otherwise
 local GAP, MISSING = "  ", "—"
 local NO_BREAK = "\u{a0}"
 
@@ -35,9 +35,27 @@ tables.wrapped = wrapped
 -- A name or text from a file may have line breaks.
 local function on_one_line(text) return (text:gsub("%s*[\n\r\t\v\f]%s*", " ")) end
 
-local function cell_text(cell)
+local function lowest_and_highest(list)
+  local low, high = math.huge, -math.huge
+  for _, value in ipairs(list) do
+    if value == value then low, high = math.min(low, value), math.max(high, value) end
+  end
+  return low, high
+end
+
+-- Along a sweep a cell is written from its lowest to its highest value, each by `write` as a cell of its own.
+local function range_of(cell, write, between)
+  local what = cell.shares and "share" or "value"
+  local low, high = lowest_and_highest(cell.shares or cell.values)
+  low, high = write { [what] = low }, write { [what] = high }
+  return low == high and low or low .. between .. high
+end
+
+local cell_text
+function cell_text(cell)
   if cell.text then return cell.text end
   if cell.missing then return MISSING end
+  if cell.axes then return range_of(cell, cell_text, " … ") end
   if cell.share then return cell.share == 1 and "yes" or cell.share == 0 and "no" or format.percent(cell.share) end
   return cell.upper and format.with_error(cell.value, cell.upper, cell.lower) or format.number(cell.value)
 end
@@ -216,9 +234,48 @@ end
 
 local function digits(value) return value and value == value and ("%.7g"):format(value) or "" end
 
--- One line a target: its texts, then a value, an upper and a lower error a column, or the share of a verdict.
+-- The points of a grid over sweeps, the last running fastest: each a list of places, one a sweep.
+local function grid_of(sweeps)
+  local points = { {} }
+  for _, sweep in ipairs(sweeps) do
+    local longer = {}
+    for _, point in ipairs(points) do
+      for place = 1, #sweep.values do longer[#longer + 1] = table.move(point, 1, #point, 1, {}) longer[#longer][#point + 1] = place end
+    end
+    points = longer
+  end
+  return points
+end
+
+-- A cell at one point of the grid: along each of its own axes, in their order, the sweep's place.
+function tables.at_point(cell, sweeps, point)
+  if not cell.axes then return cell end
+  local index = 0
+  for _, name in ipairs(cell.axes) do
+    for i, sweep in ipairs(sweeps) do
+      if sweep.name == name then index = index * #sweep.values + point[i] - 1 end
+    end
+  end
+  index = index + 1
+  if cell.shares then return { share = cell.shares[index] } end
+  return { value = cell.values[index], upper = cell.uppers and cell.uppers[index], lower = cell.lowers and cell.lowers[index] }
+end
+
+local function csv_fields(whole, row, sweeps, point)
+  local fields = { row.name }
+  for _, text in ipairs(whole.texts) do fields[#fields + 1] = row.texts[text] or "" end
+  for i, sweep in ipairs(sweeps) do fields[#fields + 1] = digits(sweep.values[point[i]]) end
+  for i, column in ipairs(whole.columns) do
+    local cell = tables.at_point(row.cells[i], sweeps, point)
+    for _, part in ipairs(column.verdict and { "share" } or { "value", "upper", "lower" }) do fields[#fields + 1] = digits(cell[part]) end
+  end
+  return fields
+end
+
+-- One line a target, along sweeps one a target and point: its texts, then a value, an upper and a lower error a column, or the share of a verdict.
 function tables.csv(whole)
-  local header = { "name", table.unpack(whole.texts) }
+  local header, sweeps = { "name", table.unpack(whole.texts) }, whole.sweeps or {}
+  for _, sweep in ipairs(sweeps) do header[#header + 1] = sweep.name .. (sweep.unit == "1" and "" or " [" .. sweep.unit .. "]") end
   for _, column in ipairs(whole.columns) do
     local name = (column.group and column.group .. " " or "") .. column.name
     local unit = column.unit == "1" and "" or " [" .. column.unit .. "]"
@@ -227,18 +284,9 @@ function tables.csv(whole)
       for _, what in ipairs { "", " upper error", " lower error" } do header[#header + 1] = name .. what .. unit end
     end
   end
-  local lines = { csv_line(header) }
+  local lines, points = { csv_line(header) }, grid_of(sweeps)
   for _, row in ipairs(whole.rows) do
-    local fields = { row.name }
-    for _, text in ipairs(whole.texts) do fields[#fields + 1] = row.texts[text] or "" end
-    for i, column in ipairs(whole.columns) do
-      local cell = row.cells[i]
-      if column.verdict then fields[#fields + 1] = digits(cell.share)
-      else
-        for _, part in ipairs { "value", "upper", "lower" } do fields[#fields + 1] = digits(cell[part]) end
-      end
-    end
-    lines[#lines + 1] = csv_line(fields)
+    for _, point in ipairs(points) do lines[#lines + 1] = csv_line(csv_fields(whole, row, sweeps, point)) end
   end
   return table.concat(lines, "\n") .. "\n"
 end
@@ -266,8 +314,10 @@ local function escaped(text)
   return (text:gsub(utf8.charpattern, function(character) return #character > 1 and beyond_ascii[character] or nil end))
 end
 
-local function cell_tex(cell)
+local cell_tex
+function cell_tex(cell)
   if cell.missing then return "---" end
+  if cell.axes then return range_of(cell, cell_tex, " to ") end
   if cell.share then return cell.share == 1 and "yes" or cell.share == 0 and "no" or format.percent_tex(cell.share) end
   return cell.upper and format.with_error_tex(cell.value, cell.upper, cell.lower) or format.number_tex(cell.value)
 end

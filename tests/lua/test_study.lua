@@ -136,9 +136,17 @@ t.test("given twice, and contradictory givens", function()
   local head = "name,distance [pc]\nMarrow 3,15\n"
   refuses(head, ':1: column "distance [pc]": distance is given twice, here and in the study\'s given', { given = { distance = "15 pc" } })
   refuses(head, ':1: column "distance [pc]": distance is given twice, here and in variant "near"', { variants = { { name = "near", given = { distance = "15 pc" }, ask = { "parallax" } } } })
-  local ok, trouble = pcall(of_file, "name,distance [pc],parallax [mas]\nTarn,100,10\nMarrow 3,100,11\n", { ask = { "distance" } })
-  t.equal(ok, false)
-  t.equal(trouble:find(path "stars.csv" .. ":3: contradictory givens: ", 1, true), 1, trouble)
+  refuses("name,distance [pc],parallax [mas]\nMarrow 3,100,11\n", ":2: contradictory givens: distance = 100 pc, but parallax = 11 mas gives 90.91 pc (by parallax)", { ask = { "distance" } })
+end)
+
+t.test("a target that fails is told in its row, and the others stand", function()
+  local study = of_file("name,distance [pc],parallax [mas]\nTarn,100,10\nMarrow 3,100,11\nTarn 2,,10\n", { ask = { "distance" } })
+  t.close(study.rows[1].cells[1].value, 100, 1e-15)
+  t.close(study.rows[3].cells[1].value, 100, 1e-15)
+  t.equal(study.rows[2].failed:find(path "stars.csv" .. ":3: contradictory givens: ", 1, true), 1, study.rows[2].failed)
+  t.equal(study.rows[2].cells[1].missing, true)
+  t.equal(printed:find("Failed\n  Marrow 3: " .. path "stars.csv" .. ":3:", 1, true) ~= nil, true, printed)
+  t.raises(function() return study.rows[2].case end, "contradictory givens")
 end)
 
 -- What a study with these fields raises, with the script's line before it.
@@ -160,7 +168,7 @@ t.test("a study that is not one", function()
   complains({ targets = one, ask = { "plx" } }, "study: ask: unknown name 'plx'; it is called parallax here")
   complains({ targets = one, ask = { "parallax", "parallax" } }, "study: ask: parallax is asked twice")
   complains({ targets = one, ask = { "band" } }, "study: ask: band is an object; there is nothing to derive")
-  complains({ targets = one, ask = { "parallax" }, variant = {} }, "study: there is no 'variant' here; there are ask, csv, given, latex, targets, title, using, variants")
+  complains({ targets = one, ask = { "parallax" }, variant = {} }, "study: there is no 'variant' here; there are also, ask, csv, given, latex, sort, targets, title, using, variants, where")
   complains({ targets = one, ask = { "parallax" }, given = { stellar_mass = "3 pc" } }, "study: stellar_mass wants a mass (in Msun); got 3 pc")
   complains({ targets = one, ask = { "parallax" }, given = { stellar_mass = lacuna.sweep("1 Msun", "2 Msun", 3) } },
     "study: stellar_mass wants one value or an error bar in a study, not one along stellar_mass; make it variants")
@@ -274,6 +282,64 @@ t.test("LaTeX: one booktabs table, its special characters escaped, its braces an
     t.equal(select(2, line:gsub("\\&", ""):gsub("&", "")), columns - 1, line)
   end
   t.equal(content:find "[^\\]%%[^ ]" == nil, true, "no bare percent sign")
+end)
+
+local function names_of(study)
+  local names = {}
+  for i, row in ipairs(study.rows) do names[i] = row.name end
+  return names
+end
+
+t.test("sorted as the study says; what is missing comes last", function()
+  t.equal(names_of(study_of_stars { sort = "name" }), { "Drumlin 30", "Marrow 3", "Tarn, 12" })
+  t.equal(names_of(study_of_stars { sort = { "name", descending = true } }), { "Tarn, 12", "Marrow 3", "Drumlin 30" })
+  t.equal(names_of(study_of_stars { sort = "rim_size_angle" }), { "Tarn, 12", "Marrow 3", "Drumlin 30" })
+  t.equal(names_of(study_of_stars { sort = { "rim_size_angle", descending = true } }), { "Marrow 3", "Tarn, 12", "Drumlin 30" })
+  local study = study_of_stars { sort = { "distance", descending = true } } -- not asked: worked out, and not shown
+  t.equal(names_of(study), { "Drumlin 30", "Marrow 3", "Tarn, 12" })
+  t.equal(#study.columns, 2)
+  t.equal(study.hidden[1].name, "distance")
+end)
+
+t.test("filtered as the study says", function()
+  t.equal(names_of(study_of_stars { where = { "rim_size_angle", above = "1 mas" } }), { "Marrow 3" })
+  t.equal(names_of(study_of_stars { where = { { "rim_size_angle", below = "1 mas" }, { "distance", below = "0.1 kpc" } } }), { "Tarn, 12" })
+  t.equal(names_of(study_of_stars { where = { "rim_resolved_by_array", below = 0.5 } }), { "Tarn, 12" })
+  local variants = { { name = "short", given = { shortest_baseline = "15 m" }, ask = { "recoverable_scale" } } }
+  t.equal(#study_of_stars { variants = variants, where = { "recoverable_scale", variant = "short", above = "1 mas" } }.rows, 3)
+  complains({ targets = stars, ask = asked, given = instrument, where = { "rim_size_angle", above = "1 arcsec" } }, "study: no target passes the filter, rim_size_angle above 1 arcsec; 3 were worked out")
+  complains({ targets = stars, ask = asked, where = { "rim_size_angle", over = "1 mas" } }, "study: where: there is no 'over' here; there are above, below, variant")
+  complains({ targets = stars, ask = asked, where = { "rim_size_angle" } }, "study: where: rim_size_angle wants above = ... or below = ...")
+  complains({ targets = stars, ask = asked, where = { "rim_size_angle", above = "1 au" } }, "study: where: rim_size_angle wants an angle (in mas); got 1 au")
+  complains({ targets = stars, ask = asked, where = { "rim_resolved_by_array", above = "1" } }, 'study: where: of rim_resolved_by_array a share of draws is wanted, from 0 to 1; got "1"')
+  complains({ targets = stars, ask = asked, sort = { "rim_size_angel" } }, "study: sort: unknown name 'rim_size_angel'; did you mean rim_size_angle, ring_size_angle, gap_size_angle?")
+  complains({ targets = stars, ask = asked, sort = { "rim_size_angle", variant = "far" } }, 'study: sort: there is no variant "far"')
+end)
+
+t.test("values of a name for all targets: shown, worked out besides, or now", function()
+  local study = study_of_stars { also = { "rim_radius" } }
+  t.equal(study:values "rim_size_angle"[1], study.rows[1].cells[1])
+  t.close(study:values "rim_radius"[2].value, 0.02, 1e-15)
+  t.close(study:values "distance"[2].value, 60, 1e-15)
+  local far = study:values "distance"[3]
+  t.close(far.value, median(study.rows[3].case.distance, "pc"), 1e-14)
+  t.equal(far.low95 < far.value - far.lower and far.high95 > far.value + far.upper, true)
+  t.raises(function() study:values "distanse" end, "values: unknown name 'distanse'; did you mean distance")
+  t.raises(function() study:values("distance", "far") end, 'the study has no variant "far"')
+end)
+
+t.test("cases are made anew when they are asked for, and let go", function()
+  local study = study_of_stars { variants = { { name = "long", given = { shortest_baseline = "15 m" }, ask = asked } } }
+  local first = study.rows[1].case.distance:value "pc"
+  collectgarbage()
+  t.equal(study.rows[1].case.distance:value "pc", first)
+  local kept = setmetatable({ study.rows[1].case }, { __mode = "v" })
+  collectgarbage()
+  t.equal(kept[1], nil)
+  local names = {}
+  for name, c in pairs(study.rows[1].variants) do names[name] = c.shortest_baseline:value "m" end
+  t.equal(names, { long = 15 })
+  t.equal(study.rows[1].variants.short, nil)
 end)
 
 t.test("files are whole or absent", function()
