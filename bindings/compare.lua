@@ -63,7 +63,7 @@ local function changed_case(self, variant)
   end)
   if ok then return made end
   if type(made) ~= "string" then error(made, 0) end
-  refuse(': variant "%s": %s', variant.name, core.part "lacuna.targets".bare(made))
+  refuse(': variant "%s": %s', variant.name, records.bare(made))
 end
 
 -- Rows -------------------------------------------------------------------------------------------------------------------------------
