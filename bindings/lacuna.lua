@@ -109,7 +109,7 @@ lacuna.spread = words_of("spread", {
 lacuna.sweep = words_of("sweep", { log = core.sweep_log }, function(_, ...) return core.sweep(...) end)
 
 -- Parts that many runs don't need are loaded when they are first asked for.
-later = { help = "lacuna.help", recipes = "lacuna.help", study = "lacuna.study", dust = "lacuna.dust", material = "lacuna.dust" }
+later = { help = "lacuna.help", recipes = "lacuna.help", study = "lacuna.study", figure = "lacuna.figure", dust = "lacuna.dust", material = "lacuna.dust" }
 
 local function look_up(_, word)
   if type(word) ~= "string" then return nil end

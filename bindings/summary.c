@@ -101,6 +101,13 @@ static int summary_spread(lua_State *L) {
   return quantiles(L, "spread_of", "draw", 3, (const double[]){(1 - share) / 2, 0.5, (1 + share) / 2});
 }
 
+/* bands_of(q): the ends of the central 95 and 68 % and the median in rising order, at once; for figures. */
+static int summary_bands(lua_State *L) {
+  static const double p[] = {0.025, 0.158655253931457, 0.5, 0.841344746068543, 0.975};
+  lua_settop(L, 1);
+  return quantiles(L, "bands_of", "draw", 5, p);
+}
+
 static int summary_quantile(lua_State *L) {
   const double p = luaL_checknumber(L, 2);
   if (!(p >= 0 && p <= 1)) lac_error(L, "quantile wants a share between 0 and 1; got %f", p);
@@ -111,7 +118,7 @@ void lac_open_summary(lua_State *L) {
   static const luaL_Reg functions[] = {
       {"mean", summary_mean}, {"deviation", summary_deviation}, {"median", summary_median}, {"interval", summary_interval},
       {"quantile", summary_quantile}, {"chance", summary_chance}, {"undefined", summary_undefined}, {"lowest", summary_least},
-      {"highest", summary_greatest}, {"spread_of", summary_spread}, {NULL, NULL},
+      {"highest", summary_greatest}, {"spread_of", summary_spread}, {"bands_of", summary_bands}, {NULL, NULL},
   };
   luaL_setfuncs(L, functions, 0);
 }

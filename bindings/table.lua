@@ -197,6 +197,7 @@ local function csv_line(fields)
 end
 
 local function digits(value) return value and value == value and ("%.7g"):format(value) or "" end
+tables.csv_line, tables.digits = csv_line, digits -- for figures too
 
 -- One line a target: its texts, then a value, an upper and a lower error a column, or the share of a verdict.
 function tables.csv(whole)
