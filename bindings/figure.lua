@@ -97,7 +97,7 @@ end
 local SPECTRUM = { "stellar_flux_density", "rim_flux_density", "disc_flux_density", "total_flux_density" }
 
 local function spectrum(f)
-  f.along = f.along or { wavelength = core.sweep_log("0.3 um", "2 mm", 120) }
+  f.along = f.along or { wavelength = core.sweep_log("0.3 um", "2 mm", 60) }
   f.case = f.case:with(f.along)
   if not f.show then
     local names = {}
@@ -116,6 +116,7 @@ local function visibility(f)
     f.along = { projected_baseline = core.sweep("1 m", core.quantity(1.5 * longest, "m"), 100) }
   end
   f.case = f.case:with(f.along)
+  f.log = f.log or ""
 end
 
 local function settle_case(f)

@@ -12,7 +12,7 @@ local format = core.part "lacuna.format"
 local contour = core.part "lacuna.contour"
 
 local data = {}
-local WIDE = 30 -- an axis whose numbers span more than this factor is logarithmic
+local WIDE = 30 -- results that span more than this factor get a logarithmic axis; a sweep gets one where it goes in equal ratios
 local HALF, LIKELY = 0.5, { 0.16, 0.84 } -- where a verdict turns, and the ends of the central 68 %
 
 local function complain(form, ...) core.raise("figure: " .. form:format(...)) end
@@ -53,10 +53,15 @@ function data.range(...)
   return low, high
 end
 
-local function wants_log(asked, letter, values)
-  if asked then return asked:find(letter, 1, true) ~= nil end
+local function is_wide(values)
   local low, high = data.range(values)
-  return low ~= nil and low > 0 and (in_equal_ratios(values) or high > WIDE * low)
+  return low ~= nil and low > 0 and high > WIDE * low
+end
+
+-- Whether an axis is logarithmic: as asked, else by its numbers.
+local function is_log(asked, letter, by_itself)
+  if asked then return asked:find(letter, 1, true) ~= nil end
+  return by_itself
 end
 
 -- Sweeps --------------------------------------------------------------------------------------------------------------------------
@@ -110,9 +115,16 @@ local function draws_of(quantity)
   end
 end
 
+-- A quantity of a case, its elements kept where there is room, since quantiles are found in several passes.
+local function kept(self, name)
+  local quantity = self[name]
+  local _, _, _, _, size = core.facts(quantity)
+  return size * 8 <= core.settings().memory * 1048576 / 8 and core.store(quantity) or quantity
+end
+
 -- One name along the sweep: a verdict's share, or the median and its bands.
 local function series_of(self, name, axis, sweep, order)
-  local quantity = self[name]
+  local quantity = kept(self, name)
   local draws = draws_of(quantity)
   if axis.verdict then
     local shares = draws and core.chance(quantity) or quantity
@@ -234,7 +246,7 @@ local function marks_of(bands, axis)
     local band = core.band(named)
     local at = core.value(band.wavelength, axis.unit)
     local half = band.width and core.value(band.width, axis.unit) / 2
-    marks[i] = { label = band.name or "", at = at, low = half and at - half or at, high = half and at + half or at }
+    marks[i] = { label = type(named) == "string" and named or band.name or "", at = at, low = half and at - half or at, high = half and at + half or at }
   end
   return marks
 end
@@ -253,7 +265,7 @@ function data.curve(f, sweep)
     end
   end
   if not data.range(all) then complain("%s is undefined all along %s", f.show[1], sweep.name) end
-  x.log, y.log = wants_log(f.log, "x", values), not y.verdict and wants_log(f.log, "y", all)
+  x.log, y.log = is_log(f.log, "x", in_equal_ratios(values)), not y.verdict and is_log(f.log, "y", is_wide(all))
   if f.bands and x.name ~= "wavelength" then complain("bands are marked along wavelength; this goes along %s", sweep.name) end
   return { x = x, y = y, values = values, series = series, levels = levels_of(f, f.case, f.show, y, sweep, order), marks = marks_of(f.bands, x), draws = series[1].draws }
 end
@@ -306,7 +318,7 @@ function data.map(f, sweeps)
   d.x_values, x_order = rising(across, d.x)
   d.y_values, y_order = rising(up, d.y)
   if #d.x_values < 2 or #d.y_values < 2 then complain "a map wants two points or more along each sweep" end
-  d.x.log, d.y.log = wants_log(f.log, "x", d.x_values), wants_log(f.log, "y", d.y_values)
+  d.x.log, d.y.log = is_log(f.log, "x", in_equal_ratios(d.x_values)), is_log(f.log, "y", in_equal_ratios(d.y_values))
   local function on_grid(quantity, factor) return grid(quantity, factor, across, x_order, up, y_order) end
   local quantity = f.case[name]
   d.draws = draws_of(quantity)
@@ -435,8 +447,7 @@ function data.plane(f, study)
   for letter, axis in pairs { x = d.x, y = d.y } do
     local values = {}
     for i, p in ipairs(d.points) do values[i] = p[letter] end
-    local low, high = data.range(values)
-    if f.log then axis.log = f.log:find(letter, 1, true) ~= nil else axis.log = low > 0 and high > WIDE * low end
+    axis.log = is_log(f.log, letter, is_wide(values))
     axis.low, axis.high = span(d.points, letter, axis.log)
   end
   d.lines = {}

@@ -188,17 +188,22 @@ end
 
 local function draws_in_words(figure) return ("%d draws, seed %d"):format(figure.data.draws, figure.seed) end
 
+-- What is given and matters for what is shown, but for what the axes and the curves vary.
 local function given_in_words(figure)
-  local parts, skip = {}, { [figure.data.x.name] = true, [figure.data.y.name or ""] = figure.kind == "map" }
-  for _, s in ipairs(figure.data.series or {}) do if s.each then skip[s.each.name] = true end end
-  local info = core.info(figure.case)
-  for _, name in ipairs(core.names()) do
-    if not skip[name] then
-      if info.givens[name] then parts[#parts + 1] = ("%s = %s"):format(name:gsub("_", " "), text.given(figure.case, name)) end
-      if info.objects[name] then parts[#parts + 1] = ("%s = %s"):format(name, tostring(info.objects[name])) end
+  local d, skip, parts = figure.data, {}, {}
+  for _, axis in ipairs { d.x, figure.kind == "map" and d.y or nil } do skip[axis.name] = true end
+  for _, s in ipairs(d.series or {}) do if s.each then skip[s.each.name] = true end end
+  local names = { d.verdict, table.unpack(figure.shown) }
+  if not d.verdict then names = figure.shown end
+  for _, shown in ipairs(names) do
+    for _, step in ipairs(core.steps(figure.case, shown)) do
+      if not step.row and not skip[step.name] then
+        skip[step.name] = true
+        parts[#parts + 1] = ("%s = %s"):format(step.name:gsub("_", " "), text.given(figure.case, step.name))
+      end
     end
   end
-  return "Given: " .. table.concat(parts, ", ") .. "."
+  return #parts > 0 and "Given: " .. table.concat(parts, ", ") .. "." or nil
 end
 
 local caption = {}

@@ -10,10 +10,12 @@ local core = ...
 local equation = core.part "lacuna.equation"
 local format = core.part "lacuna.format"
 local svg = core.part "lacuna.svg"
+local data = core.part "lacuna.figure_data"
 
 local gnuplot = {}
 local FONT = "DejaVu Sans" -- Debian's gnuplot always brings it along; elsewhere the nearest that fontconfig knows
 local POINT = 25.4 / 72 -- mm
+local LETTERS, SMALL, SMALLEST = 8, 7, 6 -- points: of axes; of ticks and legends; of points' names
 local BLACK, GREY = "#000000", "#6e6e6e"
 local colours = { "#0072b2", "#d55e00", "#009e73", "#cc79a7", "#e69f00", "#56b4e9", "#000000" }
 local dashes = { "solid", "(14,5)", "(5,4)", "(14,4,3,4)", "(2,3)", "(22,6)", "(14,4,3,4,3,4)" }
@@ -46,51 +48,81 @@ local function marked_unit(unit_text)
   return marked
 end
 
--- How wide a marked text is, in points: letters of the font are about 0.6 em wide.
+-- How wide a marked text is, in points: letters and digits of the font are about 0.62 em wide, taken together.
 local function width_of(marked, points)
   local bare = marked:gsub("{/:Italic (.-)}", "%1"):gsub("[{}@_^\\]", "")
-  return 0.6 * points * format.width(bare)
+  return 0.62 * points * format.width(bare)
 end
 
--- "projected baseline B (m)"; the symbol alone where that is too long for the axis.
+-- "projected baseline B (m)", in two lines where one is too long for the axis. What a share is of stands in the legend.
 local function axis_label(axis, room)
-  local words = literal(axis.words_of_share or axis.words or "")
-  local unit = axis.unit_text ~= "" and " (" .. marked_unit(axis.unit_text) .. ")" or ""
-  local symbol = axis.name and not axis.verdict and core.find(axis.name) and marked_symbol(axis.name) or nil
-  local whole = words .. (symbol and " " .. symbol or "") .. unit
-  if symbol and width_of(whole, 8) > room then return symbol .. unit end
-  return whole
+  if axis.verdict then return { "share of draws" } end
+  local unit = axis.unit_text ~= "" and "(" .. marked_unit(axis.unit_text) .. ")" or ""
+  local symbol = axis.name and core.find(axis.name) and marked_symbol(axis.name) or ""
+  local after = symbol .. (symbol ~= "" and unit ~= "" and " " or "") .. unit
+  local words = literal(axis.words or "")
+  local whole = words .. (words ~= "" and after ~= "" and " " or "") .. after
+  if after == "" or width_of(whole, LETTERS) <= room then return { whole } end
+  return { words, after }
 end
 
 local function number(value) return value == value and ("%.9g"):format(value) or "NaN" end
 
 -- What is given, as "λ = 1.65 µm".
-local function given_label(name, value) return marked_symbol(name) .. " = " .. literal(value):gsub("%f[%a]u(%a)", "µ%1") end
+local function given_label(name, value) return marked_symbol(name) .. " = " .. marked_unit(literal(value)) end
 
 -- The script's lines -------------------------------------------------------------------------------------------------------------------
 
 local script = {}
 script.__index = script
 
-local function new_script() return setmetatable({ lines = {}, plots = {}, blocks = 0 }, script) end
+local function new_script() return setmetatable({ lines = {}, plots = {}, legend = {}, blocks = 0, labels = 0 }, script) end
 
 function script:add(form, ...) self.lines[#self.lines + 1] = select("#", ...) > 0 and form:format(...) or form end
 
--- A block of data, of lists of equal length; returns its name.
-function script:block(...)
+function script:new_block()
   self.blocks = self.blocks + 1
-  local name, columns = "$data" .. self.blocks, { ... }
-  self:add(name .. " << END")
+  self:add("$data%d << END", self.blocks)
+  return "$data" .. self.blocks
+end
+
+function script:add_rows(columns)
   for i = 1, #columns[1] do
     local fields = {}
     for j, column in ipairs(columns) do fields[j] = number(column[i]) end
     self:add((table.concat(fields, " ")))
   end
+end
+
+-- A block of data, of lists of equal length; returns its name.
+function script:block(...)
+  local name = self:new_block()
+  self:add_rows { ... }
   self:add "END"
   return name
 end
 
-function script:plot(form, ...) self.plots[#self.plots + 1] = form:format(...) end
+-- Lines with blank lines between them, in one block.
+function script:lines_block(lines)
+  local name = self:new_block()
+  for _, line in ipairs(lines) do
+    self:add_rows { line.x, line.y }
+    self:add ""
+  end
+  self:add "END"
+  return name
+end
+
+function script:plot(form, ...) self.plots[#self.plots + 1] = form:format(...) .. " notitle" end
+
+-- An entry of the legend: a marked text after a sample, { line = dash, colour, width }, { band = colour } or { point = shape }.
+function script:explain(title, sample) self.legend[#self.legend + 1] = { title = title, sample = sample } end
+
+-- A marked text; the place and the rest as gnuplot has them.
+function script:label(words, form, ...)
+  self.labels = self.labels + 1
+  self:add("set label %d %s at %s front", self.labels, quoted(words), form:format(...))
+end
 
 function script:text()
   return table.concat(self.lines, "\n") .. "\nplot " .. table.concat(self.plots, ", \\\n  ") .. "\n"
@@ -98,9 +130,9 @@ end
 
 -- Axes ----------------------------------------------------------------------------------------------------------------------------
 
--- Ticks of a logarithmic axis: powers of ten where there are many, else also the 2 and 5 of each, written out.
+-- Ticks of a logarithmic axis: powers of ten where there are many, else also the 2 and 5 of each, written out. Also the labels.
 local function log_ticks(low, high)
-  local decades, ticks = math.log(high / low, 10), {}
+  local decades, ticks, labels = math.log(high / low, 10), {}, {}
   for exponent = math.floor(math.log(low, 10)), math.ceil(math.log(high, 10)) do
     for digit = 1, 9 do
       local value = tonumber(("%de%d"):format(digit, exponent))
@@ -108,21 +140,113 @@ local function log_ticks(low, high)
         local major = digit == 1 and (decades < 8 or exponent % 2 == 0) or decades < 2 and (digit == 2 or digit == 5) or decades < 0.6
         local label = major and (decades < 5 and value >= 1e-4 and value < 1e6 and ("%g"):format(value) or ("10^{%d}"):format(exponent))
         if decades >= 5 and digit > 1 then label = nil end
+        labels[#labels + 1] = label or nil
         if label or decades < 8 then ticks[#ticks + 1] = label and ("'%s' %g"):format(label, value) or ("'' %g 1"):format(value) end
       end
     end
   end
-  return table.concat(ticks, ", ")
+  return "(" .. table.concat(ticks, ", ") .. ")", labels
 end
 
--- The range of an axis and, where it is logarithmic, its ticks. Without a range gnuplot chooses.
-function script:axis(letter, axis, low, high, room)
-  self:add("set %slabel %s", letter, quoted(axis_label(axis, room)))
-  if low then self:add("set %srange [%s:%s]", letter, number(low), number(high)) end
-  if axis.log then
-    self:add("set logscale %s", letter)
-    self:add("set %stics (%s)", letter, log_ticks(low, high))
+-- Ticks of a linear axis: multiples of 1, 2 or 5 of a power of ten, so far apart that the labels have room. Also the labels.
+local function linear_ticks(low, high, room, across)
+  local power = 10 ^ math.floor(math.log(high - low, 10) - 2)
+  for _, factor in ipairs { 1, 2, 5, 10, 20, 50, 100, 200, 500, 1000 } do
+    local step, labels, widest = power * factor, {}, 0
+    for k = math.ceil(low / step - 1e-9), math.floor(high / step + 1e-9) do
+      labels[#labels + 1] = ("%g"):format(k * step)
+      widest = math.max(widest, width_of(labels[#labels], SMALL))
+    end
+    if #labels * (across and widest + 8 or 20) <= room or factor == 1000 then return number(step), labels end
   end
+end
+
+local function ticks_of(axis, range, room, across)
+  if axis.log then return log_ticks(range[1], range[2]) end
+  return linear_ticks(range[1], range[2], room, across)
+end
+
+local function widest_of(labels, points)
+  local widest = 0
+  for _, label in ipairs(labels) do widest = math.max(widest, width_of(label, points)) end
+  return widest
+end
+
+function script:axis(letter, axis, range, ticks)
+  self:add("set %srange [%s:%s]", letter, number(range[1]), number(range[2]))
+  if axis.log then self:add("set logscale %s", letter) end
+  self:add("set %stics %s", letter, ticks)
+end
+
+-- The legend's rows: entries side by side while they fit; each row with its width.
+local SAMPLE, LINE = 22, 10 -- the width of a sample with its gaps, the height of a line of text
+local function rows_of(legend, width)
+  local rows = {}
+  for _, entry in ipairs(legend) do
+    entry.width = SAMPLE + width_of(entry.title, SMALL)
+    local row = rows[#rows]
+    if not row or row.width + 8 + entry.width > width then
+      row = { width = -8 }
+      rows[#rows + 1] = row
+    end
+    row[#row + 1], row.width = entry, row.width + 8 + entry.width
+  end
+  return rows
+end
+
+-- Draws the legend over the plot, in points of the whole figure.
+function script:add_legend(rows, middle, width, height)
+  local count = 0
+  for i, row in ipairs(rows) do
+    local x, y = math.max(4, math.min(middle - row.width / 2, width - 2 - row.width)), height - 1 - LINE * (i - 0.5)
+    for _, entry in ipairs(row) do
+      local sample = entry.sample
+      local function across(form, from, to, ...)
+        count = count + 1
+        self:add(form, count, (x + from) / width, (y - (sample.band and 3 or 0)) / height, (x + to) / width, (y + (sample.band and 3 or 0)) / height, ...)
+      end
+      if sample.line then across("set arrow %d from screen %.4f, screen %.4f to screen %.4f, screen %.4f nohead linecolor rgb '%s' linewidth %g dashtype %s front", 0, 18, sample.colour, sample.width, sample.line)
+      elseif sample.band then across("set object %d rectangle from screen %.4f, screen %.4f to screen %.4f, screen %.4f fillcolor rgb '%s' fillstyle solid noborder", 2, 18, sample.band)
+      else self:label("", "screen %.4f, screen %.4f point linecolor rgb '%s' pointtype %d pointsize 0.5", (x + 14) / width, y / height, BLACK, sample.point) end
+      self:label(entry.title, "screen %.4f, screen %.4f left font ',%d'", (x + SAMPLE) / width, y / height, SMALL)
+      x = x + entry.width + 8
+    end
+  end
+end
+
+-- Margins are set from what stands in them, all in points, so that the room that is left is known: for names beside points, say.
+-- self.ranges = { x, y, cb (the colours' or nil) }, each { low, high }. Returns the room of the axes { width, height }.
+local COLOURS = 9 -- the width of the bar of colours
+function script:lay_out(d, width, height)
+  local rows = rows_of(self.legend, width - 8)
+  local top, bottom = #rows > 0 and 4 + #rows * LINE or 8, 28
+  local tall = height - top - bottom
+  local y_ticks, y_labels = ticks_of(d.y, self.ranges.y, tall, false)
+  local y_label = axis_label(d.y, tall)
+  local left, right = 10 + 11 * #y_label + widest_of(y_labels, SMALL), 10
+  local cb_ticks, cb_labels, cb_label
+  if self.ranges.cb then
+    cb_ticks, cb_labels = ticks_of(d.z, self.ranges.cb, tall, false)
+    cb_label = axis_label(d.z, tall)
+    right = COLOURS + 18 + widest_of(cb_labels, SMALL) + 11 * #cb_label
+  end
+  local wide = width - left - right
+  self:add("set lmargin at screen %.4f", left / width)
+  self:add("set rmargin at screen %.4f", 1 - right / width)
+  self:add("set bmargin at screen %.4f", bottom / height)
+  self:add("set tmargin at screen %.4f", 1 - top / height)
+  self:axis("x", d.x, self.ranges.x, (ticks_of(d.x, self.ranges.x, wide, true)))
+  self:axis("y", d.y, self.ranges.y, y_ticks)
+  local middle, half_way = (left + wide / 2) / width, (bottom + tall / 2) / height
+  self:label(table.concat(axis_label(d.x, wide), " "), "screen %.4f, screen %.4f center", middle, 7 / height)
+  for i, line in ipairs(y_label) do self:label(line, "screen %.4f, screen %.4f center rotate by 90", (11 * i - 4) / width, half_way) end
+  if self.ranges.cb then
+    self:axis("cb", d.z, self.ranges.cb, cb_ticks)
+    self:add("set colorbox user origin screen %.4f, screen %.4f size screen %.4f, screen %.4f", (left + wide + 6) / width, bottom / height, COLOURS / width, tall / height)
+    for i, line in ipairs(cb_label) do self:label(line, "screen %.4f, screen %.4f center rotate by 90", 1 - (11 * (#cb_label - i) + 7) / width, half_way) end
+  end
+  self:add_legend(rows, left + wide / 2, width, height)
+  return { wide, tall }
 end
 
 -- Curves --------------------------------------------------------------------------------------------------------------------------
@@ -134,66 +258,95 @@ local function tint(colour, share)
   return "#" .. table.concat(mixed)
 end
 
-local function positive(value, log) return not log or value > 0 end
+-- The range of the y axis: all that is drawn, and zero where it is near. A logarithmic one is left downwards by bands that go far.
+local FAR, DEEPEST = 10, 1e8
+local function linear_range(d)
+  local lists = {}
+  for _, s in ipairs(d.series) do
+    for _, name in ipairs { "values", "low95", "high95" } do lists[#lists + 1] = s[name] end
+  end
+  for _, level in ipairs(d.levels) do lists[#lists + 1] = level.values end
+  local low, high = data.range(table.unpack(lists))
+  if high == low then low, high = low - math.abs(low) / 2 - 1e-300, high + math.abs(high) / 2 + 1e-300 end
+  local room = 0.05 * (high - low)
+  return { low >= 0 and low < 0.3 * high and 0 or low - room, high + room * (#d.marks > 0 and 3 or 1) }
+end
 
--- The range of the y axis, where gnuplot would not choose well: of shares, and of logarithmic axes (which bands may leave downwards).
-local function y_range(d)
-  if d.y.verdict then return -0.02, 1.02 end
-  if not d.y.log then return nil end
-  local low, high
+local function log_range(d)
+  local low, high = math.huge, 0
+  local function take(value, least)
+    if value and value > least then low, high = math.min(low, value), math.max(high, value) end
+  end
   for _, s in ipairs(d.series) do
     for i, value in ipairs(s.values) do
-      if value > 0 then
-        low, high = math.min(low or value, value), math.max(high or value, s.high68 and s.high68[i] or value)
-        local below = s.low68 and s.low68[i] or value
-        if below > value / 10 then low = math.min(low, below) end
-      end
+      take(value, 0)
+      take(s.high95 and s.high95[i], 0)
+      take(s.low95 and s.low95[i], math.max(value / FAR, 0))
     end
   end
   for _, level in ipairs(d.levels) do
-    if level.constant and level.constant > 0 then low, high = math.min(low, level.constant), math.max(high, level.constant) end
+    for _, value in ipairs(level.values) do take(value, 0) end
   end
-  low = math.max(low, high * 1e-8)
+  low = math.max(low, high / DEEPEST)
   local room = (high / low) ^ 0.04
-  return low / room, high * room
+  return { low / room, high * room * (#d.marks > 0 and (high / low) ^ 0.12 or 1) } -- for the marks' names
+end
+
+local function y_range(d)
+  if d.y.verdict then return { -0.02, 1.02 } end
+  return d.y.log and log_range(d) or linear_range(d)
 end
 
 local function add_bands(s, d, series, block, colour, alone)
   local shades = alone and { tint(colour, 0.22), tint(colour, 0.48) } or { "#d8" .. colour:sub(2), "#b8" .. colour:sub(2) }
   if not series.low68 then return end
   local function below(column) return d.y.log and ("($%d > 0 ? $%d : 1e-300)"):format(column, column) or tostring(column) end
-  s:plot("%s using 1:%s:6 with filledcurves fillcolor rgb '%s' %s", block, below(5), shades[1], alone and "title '95 %'" or "notitle")
-  s:plot("%s using 1:%s:4 with filledcurves fillcolor rgb '%s' %s", block, below(3), shades[2], alone and "title '68 %'" or "notitle")
-end
-
--- On which side of the plot a level's label stands: where the curve is further from it.
-local function side_of(level, d)
-  local function distance(i)
-    local value, at = d.series[1].values[i], level.values[i]
-    if value ~= value then return math.huge end
-    return d.y.log and math.abs(math.log(math.max(value, 1e-300) / at)) or math.abs(value - at)
+  s:plot("%s using 1:%s:6 with filledcurves fillcolor rgb '%s'", block, below(5), shades[1])
+  s:plot("%s using 1:%s:4 with filledcurves fillcolor rgb '%s'", block, below(3), shades[2])
+  if alone then
+    s:explain("95 %", { band = shades[1] })
+    s:explain("68 %", { band = shades[2] })
   end
-  local last = #d.values
-  return distance(1) > distance(last) and "left" or "right"
 end
 
-local function add_level(s, level, d, count)
+-- On which side of the plot a level's label stands: where the curve keeps further away from it.
+local function side_of(level, d)
+  local values, count = d.series[1].values, #d.values
+  local function measured(value, log) return log and math.log(math.max(value, 1e-300)) or value end
+  local function place(i)
+    local first, last = measured(d.values[1], d.x.log), measured(d.values[count], d.x.log)
+    return (measured(d.values[i], d.x.log) - first) / (last - first)
+  end
+  local least = { left = math.huge, right = math.huge }
+  for i, value in ipairs(values) do
+    local side = place(i) < 0.4 and "left" or place(i) > 0.6 and "right"
+    local distance = math.abs(measured(value, d.y.log) - measured(level.values[i], d.y.log))
+    if side and distance == distance then least[side] = math.min(least[side], distance) end
+  end
+  return least.left > least.right and "left" or "right"
+end
+
+local function add_level(s, level, d)
   local block = s:block(d.values, level.values)
-  s:plot("%s using 1:2 with lines linecolor rgb '%s' linewidth 1 dashtype (6,3) notitle", block, BLACK)
+  s:plot("%s using 1:2 with lines linecolor rgb '%s' linewidth 1.3 dashtype (10,6)", block, BLACK)
   local side, last = side_of(level, d), #d.values
   local label = level.name and ((level.factor == 1 and "" or "½ ") .. marked_symbol(level.name)) or ""
   if level.name and level.constant then label = label .. " = " end
   if level.constant then label = label .. format.number(level.constant, 3) .. (d.y.unit_text ~= "" and " " .. marked_unit(d.y.unit_text) or "") end
-  s:add("set label %d %s at %s, first %s %s offset %s,0.55 front", count, quoted(label), side == "left" and "graph 0.02" or "graph 0.98",
-    number(level.values[side == "left" and 1 or last]), side, "0")
+  s:label(label, "%s, first %s %s offset 0,0.6 font ',%d'", side == "left" and "graph 0.02" or "graph 0.98", number(level.values[side == "left" and 1 or last]), side, SMALL)
 end
 
-local function add_marks(s, d)
+local function add_marks(s, d, width)
   local low, high = d.values[1], d.values[#d.values]
+  local room, last, row = 7 * 0.6, -math.huge, 0
   for i, mark in ipairs(d.marks) do
     if mark.high > low and mark.low < high then
-      s:add("set object %d rectangle from %s, graph 0 to %s, graph 1 behind fillcolor rgb '#e4e4e4' fillstyle solid noborder", i, number(mark.low), number(mark.high))
-      s:add("set label %d %s at %s, graph 0.96 center font ',7' front", 100 + i, quoted(literal(mark.label)), number(mark.at))
+      -- Names that would run into the one before stand a line lower.
+      local at = (d.x.log and math.log(mark.at / low) / math.log(high / low) or (mark.at - low) / (high - low)) * width
+      row = at - last < room * (#mark.label + 1) and 1 - row or 0
+      last = at
+      s:add("set object %d rectangle from %s, graph 0 to %s, graph 1 behind fillcolor rgb '#e4e4e4' fillstyle solid noborder", 100 + i, number(mark.low), number(mark.high))
+      s:label(literal(mark.label), "%s, graph %.2f center font ',%d'", number(mark.at), 0.96 - 0.06 * row, SMALL)
     end
   end
 end
@@ -203,28 +356,34 @@ local function series_label(series, d)
   local several = false
   for _, other in ipairs(d.series) do several = several or other.name ~= series.name end
   if own then return several and literal(series.label) .. ", " .. own or own end
-  if #d.series > 1 then return literal(series.label) end
-  return d.y.verdict and "share" or "median"
+  return (#d.series > 1 or d.y.verdict) and literal(series.label) or "median"
+end
+
+-- Of several curves each has its own colour and dash; sums, which run along their greatest part, are thin and black above it.
+local sums = { total_flux_density = { BLACK, "solid", 1.1 }, observed_flux_density = { GREY, "(10,4)", 1.1 } }
+
+local function style_of(series, i, alone)
+  if not alone and sums[series.name] then return table.unpack(sums[series.name]) end
+  return colours[(i - 1) % #colours + 1], dashes[(i - 1) % #dashes + 1], 2
 end
 
 local draw = {}
 
-function draw.curve(s, d, room)
-  local alone = #d.series == 1
-  s:axis("x", d.x, d.values[1], d.values[#d.values], room[1])
-  local low, high = y_range(d)
-  s:axis("y", d.y, low, high, room[2])
-  add_marks(s, d)
-  local blocks = {}
+function draw.curve(s, d)
+  local alone, blocks = #d.series == 1, {}
+  s.ranges = { x = { d.values[1], d.values[#d.values] }, y = y_range(d) }
   for i, series in ipairs(d.series) do
     blocks[i] = series.low68 and s:block(d.values, series.values, series.low68, series.high68, series.low95, series.high95) or s:block(d.values, series.values)
-    add_bands(s, d, series, blocks[i], colours[(i - 1) % #colours + 1], alone)
+    add_bands(s, d, series, blocks[i], (style_of(series, i, alone)), alone)
   end
-  for i, level in ipairs(d.levels) do add_level(s, level, d, i) end
+  for _, level in ipairs(d.levels) do add_level(s, level, d) end
   for i, series in ipairs(d.series) do
-    local titled = alone and not series.low68 and "notitle" or "title " .. quoted(series_label(series, d))
-    s:plot("%s using 1:2 with lines linecolor rgb '%s' linewidth 2 dashtype %s %s", blocks[i], colours[(i - 1) % #colours + 1], dashes[(i - 1) % #dashes + 1], titled)
+    local colour, dash, width = style_of(series, i, alone)
+    local title = (not alone or series.low68 or d.y.verdict) and series_label(series, d) or nil
+    s:plot("%s using 1:2 with lines linecolor rgb '%s' linewidth %g dashtype %s", blocks[i], colour, width, dash)
+    if title then s:explain(title, { line = dash, colour = colour, width = width }) end
   end
+  return function(room) add_marks(s, d, room[1]) end
 end
 
 -- Maps ----------------------------------------------------------------------------------------------------------------------------
@@ -274,88 +433,98 @@ local function add_cells(s, d)
   local even = x_even and y_even
   local block = s:block(table.unpack(columns, 1, even and 3 or 7))
   -- The cells lie in the axes' own measure, on axes of their own, since images know no logarithm.
-  if even then s:plot("%s using 1:2:3 axes x2y2 with image notitle", block)
-  else s:plot("%s using 1:2:4:5:6:7:3 axes x2y2 with boxxyerror fillstyle solid noborder linecolor palette notitle", block) end
+  if even then s:plot("%s using 1:2:3 axes x2y2 with image", block)
+  else s:plot("%s using 1:2:4:5:6:7:3 axes x2y2 with boxxyerror fillstyle solid noborder linecolor palette", block) end
   local function back(value, log) return log and 10 ^ value or value end
   s:add("set x2range [%s:%s]", number(xs[1]), number(xs[#xs]))
   s:add("set y2range [%s:%s]", number(ys[1]), number(ys[#ys]))
-  return back(xs[1], d.x.log), back(xs[#xs], d.x.log), back(ys[1], d.y.log), back(ys[#ys], d.y.log)
-end
-
--- Lines with blank lines between them, in one block.
-function script:lines_block(lines)
-  self.blocks = self.blocks + 1
-  local name = "$data" .. self.blocks
-  self:add(name .. " << END")
-  for _, line in ipairs(lines) do
-    for i = 1, #line.x do self:add(number(line.x[i]) .. " " .. number(line.y[i])) end
-    self:add ""
-  end
-  self:add "END"
-  return name
+  return { back(xs[1], d.x.log), back(xs[#xs], d.x.log) }, { back(ys[1], d.y.log), back(ys[#ys], d.y.log) }
 end
 
 local function add_contours(s, d)
-  local dashed_title
+  local explained = {}
   for _, contour in ipairs(d.contours) do
     if #contour.lines > 0 then
-      local block = s:lines_block(contour.lines)
-      local title = "notitle"
-      if not contour.dashed then title = "title " .. quoted(contour.share and "half of the draws" or "just resolved")
-      elseif not dashed_title then title, dashed_title = "title '16 and 84 %'", true end
-      s:plot("%s using 1:2 with lines linecolor rgb '#ffffff' linewidth 3.5 notitle", block)
-      s:plot("%s using 1:2 with lines linecolor rgb '%s' linewidth 1.7 dashtype %s %s", block, BLACK, contour.dashed and "(5,3)" or "solid", title)
+      local block, dash = s:lines_block(contour.lines), contour.dashed and "(8,5)" or "solid"
+      s:plot("%s using 1:2 with lines linecolor rgb '#ffffff' linewidth 3.5", block)
+      s:plot("%s using 1:2 with lines linecolor rgb '%s' linewidth 1.7 dashtype %s", block, BLACK, dash)
+      if not explained[dash] then
+        explained[dash] = true
+        local title = contour.dashed and "16 and 84 %" or literal(d.verdict:gsub("_", " ") .. (contour.share and " in 50 % of draws" or " on one side"))
+        s:explain(title, { line = dash, colour = BLACK, width = 1.7 })
+      end
     end
   end
 end
 
-function draw.map(s, d, room)
-  local x_low, x_high, y_low, y_high = add_cells(s, d)
-  s:axis("x", d.x, x_low, x_high, room[1])
-  s:axis("y", d.y, y_low, y_high, room[2])
-  s:add(palette())
-  s:add("set cblabel %s", quoted(axis_label(d.z, room[2])))
+function draw.map(s, d)
   local low, high = d.z.low, d.z.high
   if d.z.verdict then low, high = 0, 1
   elseif low == high then low, high = low - math.abs(low) / 2 - 1e-9, high + math.abs(high) / 2 + 1e-9 end
-  s:add("set cbrange [%s:%s]", number(low), number(high))
-  if d.z.log then
-    s:add "set logscale cb"
-    s:add("set cbtics (%s)", log_ticks(low, high))
-  end
-  s:add "set tics front"
+  local x, y = add_cells(s, d)
+  s.ranges = { x = x, y = y, cb = { low, high } }
+  s:add(palette())
   add_contours(s, d)
 end
 
 -- Planes --------------------------------------------------------------------------------------------------------------------------
 
-local LABEL = 6 -- points high
+-- Where a point of the plane stands in the plot, in points from its lower left corner.
+local function place_of(axis, value, length)
+  local low, high = axis.low, axis.high
+  if axis.log then value, low, high = math.log(math.max(value, 1e-300)), math.log(low), math.log(high) end
+  return (value - low) / (high - low) * length
+end
 
--- Where the names of the points go: beside them, where no other point or name is; a name that fits nowhere is left out. In points of the plot.
-local function placed_names(d, room)
-  local function place(axis, value, length)
-    local low, high = axis.low, axis.high
-    if axis.log then value, low, high = math.log(value), math.log(low), math.log(high) end
-    return (value - low) / (high - low) * length
+-- A line's name stands at its right end, on the side that the line doesn't come from. Returns the box it takes.
+local function add_line_label(s, d, line, room)
+  local last
+  for i, y in ipairs(line.y) do if y == y and y >= d.y.low and y <= d.y.high and line.x[i] >= d.x.low and line.x[i] <= d.x.high * (1 + 1e-9) then last = i end end
+  if not last or not line.label then return nil end
+  local x, y = math.min(place_of(d.x, line.x[last], room[1]), room[1]) - 2, place_of(d.y, line.y[last], room[2])
+  local falls = last > 1 and line.y[last - 1] > line.y[last]
+  local middle, width = y + (falls and -6 or 6), width_of(line.label, SMALLEST)
+  if middle + SMALLEST / 2 > room[2] then middle = y - 6 end
+  s:label(literal(line.label), "graph %.4f, graph %.4f right font ',%d'", x / room[1], middle / room[2], SMALLEST)
+  return { x - width, middle - SMALLEST / 2, x, middle + SMALLEST / 2 }
+end
+
+-- Boxes along a line, so that no name stands on it.
+local function keep_clear_of(line, d, room, taken)
+  for i = 2, #line.x do
+    local x, y = place_of(d.x, line.x[i - 1], room[1]), place_of(d.y, line.y[i - 1], room[2])
+    local steps_x, steps_y = (place_of(d.x, line.x[i], room[1]) - x) / 20, (place_of(d.y, line.y[i], room[2]) - y) / 20
+    for k = 0, 19 do
+      local left, right = x + k * steps_x, x + (k + 1) * steps_x
+      local low, high = y + k * steps_y, y + (k + 1) * steps_y
+      taken[#taken + 1] = { left, math.min(low, high) - 0.5, right, math.max(low, high) + 0.5 }
+    end
   end
-  local taken, placed = {}, {}
+end
+
+-- Where the names of the points go: beside them, where no point, error bar or name is; one that fits nowhere is left out.
+local function placed_names(d, room, taken)
+  local placed, spots = {}, {}
   for i, p in ipairs(d.points) do
-    local x, y = place(d.x, p.x, room[1]), place(d.y, p.y, room[2])
-    taken[i] = { x - 3, y - 3, x + 3, y + 3, x, y }
+    local x, y = place_of(d.x, p.x, room[1]), place_of(d.y, p.y, room[2])
+    local left, right = place_of(d.x, p.x - p.x_lower, room[1]), place_of(d.x, p.x + p.x_upper, room[1])
+    local low, high = place_of(d.y, p.y - p.y_lower, room[2]), place_of(d.y, p.y + p.y_upper, room[2])
+    spots[i] = { x, y }
+    for _, box in ipairs { { x - 2.5, y - 2.5, x + 2.5, y + 2.5 }, { left, y - 1, right, y + 1 }, { x - 1, low, x + 1, high } } do taken[#taken + 1] = box end
   end
-  local function free(box, own)
+  local function free(box)
     if box[1] < 0 or box[3] > room[1] or box[2] < 0 or box[4] > room[2] then return false end
-    for i, other in ipairs(taken) do
-      if i ~= own and box[1] < other[3] and box[3] > other[1] and box[2] < other[4] and box[4] > other[2] then return false end
+    for _, other in ipairs(taken) do
+      if box[1] < other[3] and box[3] > other[1] and box[2] < other[4] and box[4] > other[2] then return false end
     end
     return true
   end
   for i, p in ipairs(d.points) do
-    local x, y, width = taken[i][5], taken[i][6], width_of(p.name, LABEL)
-    for _, try in ipairs { { 4, 5, 0 }, { 4, -5, 0 }, { -4, 5, 1 }, { -4, -5, 1 }, { 0, 8, 0.5 }, { 0, -8, 0.5 } } do
+    local x, y, width = spots[i][1], spots[i][2], width_of(p.name, SMALLEST)
+    for _, try in ipairs { { 4, 5, 0 }, { 4, -5, 0 }, { -4, 5, 1 }, { -4, -5, 1 }, { 0, 7, 0.5 }, { 0, -7, 0.5 }, { 7, 0, 0 }, { -7, 0, 1 } } do
       local left, middle = x + try[1] - try[3] * width, y + try[2]
-      local box = { left, middle - LABEL / 2, left + width, middle + LABEL / 2 }
-      if free(box, i) then
+      local box = { left, middle - SMALLEST / 2, left + width, middle + SMALLEST / 2 }
+      if free(box) then
         taken[#taken + 1] = box
         placed[#placed + 1] = { name = p.name, x = (left + width / 2) / room[1], y = middle / room[2] }
         break
@@ -366,7 +535,7 @@ local function placed_names(d, room)
 end
 
 local function add_points(s, d)
-  local groups = { { points = {}, shape = 7, title = d.verdict and "resolved in half of the draws or more" }, { points = {}, shape = 6, title = "in fewer" } }
+  local groups = { { points = {}, shape = 7, title = d.verdict and d.verdict:gsub("_", " ") .. " in ≥ 50 % of draws" }, { points = {}, shape = 6, title = "< 50 %" } }
   for _, p in ipairs(d.points) do table.insert(groups[d.verdict and not (p.share and p.share >= 0.5) and 2 or 1].points, p) end
   for _, group in ipairs(groups) do
     if #group.points > 0 then
@@ -376,24 +545,30 @@ local function add_points(s, d)
         for c, value in ipairs { p.x, p.y, low_x, p.x + p.x_upper, low_y, p.y + p.y_upper } do columns[c][i] = value end
       end
       local block = s:block(table.unpack(columns))
-      s:plot("%s using 1:2:3:4:5:6 with xyerrorbars linecolor rgb '%s' linewidth 0.8 pointtype 0 notitle", block, GREY)
-      s:plot("%s using 1:2 with points linecolor rgb '#ffffff' pointtype 7 pointsize 0.5 notitle", block)
-      s:plot("%s using 1:2 with points linecolor rgb '%s' pointtype %d pointsize 0.5 %s", block, BLACK, group.shape, group.title and "title " .. quoted(group.title) or "notitle")
+      s:plot("%s using 1:2:3:4:5:6 with xyerrorbars linecolor rgb '%s' linewidth 0.8 pointtype 0", block, GREY)
+      s:plot("%s using 1:2 with points linecolor rgb '#ffffff' pointtype 7 pointsize 0.5", block)
+      s:plot("%s using 1:2 with points linecolor rgb '%s' pointtype %d pointsize 0.5", block, BLACK, group.shape)
+      if group.title then s:explain(group.title, { point = group.shape }) end
     end
   end
 end
 
-function draw.plane(s, d, room)
-  s:axis("x", d.x, d.x.low, d.x.high, room[1])
-  s:axis("y", d.y, d.y.low, d.y.high, room[2])
+function draw.plane(s, d)
+  s.ranges = { x = { d.x.low, d.x.high }, y = { d.y.low, d.y.high } }
   for i, line in ipairs(d.lines) do
     local block = s:block(line.x, line.y)
-    s:plot("%s using 1:2 with lines linecolor rgb '%s' linewidth 1.6 dashtype %s %s", block, colours[(i - 1) % #colours + 1], dashes[i % #dashes + 1],
-      line.label and "title " .. quoted(literal(line.label)) or "notitle")
+    s:plot("%s using 1:2 with lines linecolor rgb '%s' linewidth 1.6 dashtype %s", block, colours[(i - 1) % #colours + 1], dashes[i % #dashes + 1])
   end
   add_points(s, d)
-  for i, placed in ipairs(placed_names(d, room)) do
-    s:add("set label %d %s at graph %.4f, graph %.4f center font ',%d' front", i, quoted(literal(placed.name)), placed.x, placed.y, LABEL)
+  return function(room)
+    local taken = {}
+    for _, line in ipairs(d.lines) do
+      taken[#taken + 1] = add_line_label(s, d, line, room)
+      keep_clear_of(line, d, room, taken)
+    end
+    for _, placed in ipairs(placed_names(d, room, taken)) do
+      s:label(literal(placed.name), "graph %.4f, graph %.4f center font ',%d'", placed.x, placed.y, SMALLEST)
+    end
   end
 end
 
@@ -404,13 +579,13 @@ gnuplot.formats = formats
 local PIXELS = 300 / 25.4 -- a mm of a PNG
 
 local terminals = {
-  pdf = function(width, height) return ("pdfcairo enhanced color size %.2fcm,%.2fcm font '%s,8' fontscale 1 linewidth 1 rounded"):format(width / 10, height / 10, FONT) end,
+  pdf = function(width, height) return ("pdfcairo enhanced color size %.2fcm,%.2fcm font '%s,8' fontscale 0.75 linewidth 1 rounded"):format(width / 10, height / 10, FONT) end,
   svg = function(width, height)
     return ("svg enhanced size %.1f,%.1f fixed font '%s,8' background '#ffffff' linewidth 0.5 dashlength 0.5 rounded"):format(width / POINT, height / POINT, FONT)
   end,
   png = function(width, height)
     return ("pngcairo enhanced color size %d,%d font '%s,8' fontscale %.3f linewidth 2 pointscale 2 background '#ffffff' rounded"):format(
-      math.floor(width * PIXELS + 0.5), math.floor(height * PIXELS + 0.5), FONT, 300 / 72)
+      math.floor(width * PIXELS + 0.5), math.floor(height * PIXELS + 0.5), FONT, 300 / 96)
   end,
 }
 
@@ -424,13 +599,12 @@ local function body(figure)
   s:add "reset"
   s:add "set encoding utf8"
   s:add "set border linewidth 0.8"
-  s:add "set tics scale 0.7,0.4 font ',7'"
-  s:add "set key tmargin center horizontal samplen 2 height 0.2 font ',7'"
+  s:add("set tics front scale 0.7,0.4 font ',%d'", SMALL)
   s:add "set style fill solid noborder"
-  s:add "set datafile missing '?'"
-  -- What is left for axes, in points: some 14 mm at the left and 12 below, the legend's line above; the colours of a map at the right.
-  local room = { (size[1] - 17 - (figure.kind == "map" and 16 or 0)) / POINT, (size[2] - 18) / POINT }
-  draw[figure.kind](s, figure.data, room)
+  s:add "unset key"
+  local finish = draw[figure.kind](s, figure.data)
+  local room = s:lay_out(figure.data, size[1] / POINT, size[2] / POINT)
+  if finish then finish(room) end
   return s:text()
 end
 

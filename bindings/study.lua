@@ -15,7 +15,7 @@ local WIDTH = 100 -- of the output where no terminal says otherwise
 
 -- What is asked --------------------------------------------------------------------------------------------------------------------
 
-local study_fields = { title = "string", targets = "any", given = "table", ask = "table", variants = "table", using = "table", csv = "string", latex = "string" }
+local study_fields = { title = "string", targets = "any", given = "table", ask = "table", variants = "table", using = "table", figures = "table", csv = "string", latex = "string" }
 local variant_fields = { name = "string", given = "table", ask = "table", using = "table" }
 
 local function check_fields(fields, allowed, what)
@@ -262,7 +262,7 @@ local function run(fields)
     if i % COLLECT_AFTER == 0 then collectgarbage() end
   end
   refuse_emptiness(columns, rows)
-  local study = { title = fields.title, texts = list.texts, groups = groups, columns = columns, rows = rows, collect_after = COLLECT_AFTER }
+  local study = { title = fields.title, texts = list.texts, groups = groups, columns = columns, rows = rows, figures = fields.figures, collect_after = COLLECT_AFTER }
   study.notes = core.part "lacuna.notes".of(study)
   return setmetatable(study, study_metatable)
 end
