@@ -8,7 +8,7 @@
 #include <string.h>
 
 #define CASE_TAG UINT64_C(0x4c61634361736521)
-static const char chains_key = 0, case_key = 0, handlers_key = 0, verdicts_key = 0; /* registry keys, by address */
+static const char chains_key = 0, case_key = 0, handlers_key = 0, asked_of_key = 0; /* registry keys, by address */
 
 /* Chains. */
 
@@ -172,8 +172,8 @@ static int case_finalise(lua_State *L) {
   for (int i = 0; object->values != NULL && i < object->names; i++) lac_value_drop(object->values[i]);
   free(object->values);
   object->values = NULL;
-  free(object->given);
-  object->given = NULL;
+  free(object->given), free(object->asked);
+  object->given = object->asked = NULL;
   return 0;
 }
 
@@ -184,8 +184,10 @@ static void make_room(lua_State *L, lac_case *object) {
   if (values != NULL) object->values = values;
   bool *given = values == NULL ? NULL : realloc(object->given, (size_t)names * sizeof *given);
   if (given != NULL) object->given = given;
-  if (given == NULL) lac_error(L, "%s", lac_status_words(LAC_NO_MEMORY));
-  for (int i = object->names; i < names; i++) object->values[i] = NULL, object->given[i] = false;
+  bool *asked = given == NULL ? NULL : realloc(object->asked, (size_t)names * sizeof *asked);
+  if (asked != NULL) object->asked = asked;
+  if (asked == NULL) lac_error(L, "%s", lac_status_words(LAC_NO_MEMORY));
+  for (int i = object->names; i < names; i++) object->values[i] = NULL, object->given[i] = object->asked[i] = false;
   object->names = names;
 }
 
@@ -308,18 +310,24 @@ static void raise_axes_of_case(lua_State *L, const lac_case *object) {
     }
 }
 
-/* A verdict on top of the stack remembers its case (as long as both live), so that it can say why when it is printed. */
+/* The quantity on top of the stack remembers its case (as long as both live): a verdict can say why when it is printed, a length its angle. */
 static void remember_case(lua_State *L, int object) {
-  push_registry_table(L, &verdicts_key, "k");
+  push_registry_table(L, &asked_of_key, "k");
   lua_pushvalue(L, -2);
   lua_pushvalue(L, object);
   lua_rawset(L, -3);
   lua_pop(L, 1);
 }
 
-/* case_of(verdict): the case that it was asked from, or nil. */
+/* remember_answers(case): from now on all its answers know their case. */
+static int remember_answers(lua_State *L) {
+  lac_check_case(L, 1)->remembers = true;
+  return 0;
+}
+
+/* case_of(quantity): the case that a verdict, a length or a remembered answer was asked of, or nil. */
 static int case_of(lua_State *L) {
-  push_registry_table(L, &verdicts_key, "k");
+  push_registry_table(L, &asked_of_key, "k");
   lua_pushvalue(L, 1);
   lua_rawget(L, -2);
   return 1;
@@ -342,6 +350,7 @@ static void derive(lua_State *L, lac_case *object, int id) {
 static int ask(lua_State *L, lac_case *object, int id, int object_place, int word_place) {
   if (lac_chain_row(object->chain, id) == LAC_NO_ROW) return handle(L, "not_had", object_place, word_place);
   derive(L, object, id);
+  object->asked[id] = true;
   const lac_name *name = lac_catalogue_name(lac_catalogue_of(L), id);
   const lac_dimension dimension = lac_catalogue_unit(lac_catalogue_of(L), id).dimension;
   lac_value *value = object->values[id];
@@ -350,7 +359,7 @@ static int ask(lua_State *L, lac_case *object, int id, int object_place, int wor
     if (isnan(number)) return handle(L, "undefined", object_place, word_place);
     lac_push_number(L, number, dimension, name->unit, id);
   } else lac_push_empty(L, dimension, name->unit, id)->value = lac_value_keep(value);
-  if (name->kind == LAC_VERDICT) remember_case(L, object_place);
+  if (object->remembers || name->kind == LAC_VERDICT || name->on_sky) remember_case(L, object_place);
   return 1;
 }
 
@@ -424,6 +433,18 @@ static int case_row_of(lua_State *L) {
   return 1;
 }
 
+/* asked(case): what was asked of it so far besides its givens, a list of names in the order of the glossary. */
+static int case_asked(lua_State *L) {
+  const lac_case *object = lac_check_case(L, 1);
+  lua_newtable(L);
+  for (int i = 0, count = 0; i < object->names; i++) {
+    if (!object->asked[i] || lac_chain_row(object->chain, i) < 0) continue;
+    lua_pushstring(L, lac_catalogue_name(lac_catalogue_of(L), i)->name);
+    lua_rawseti(L, 2, ++count);
+  }
+  return 1;
+}
+
 /* same_chain(a, b): whether two cases have one chain, as cases with the same given names and restrictions do. */
 static int case_same_chain(lua_State *L) {
   const lac_chain *chain = lac_check_case(L, 1)->chain;
@@ -471,8 +492,8 @@ static int set_handlers(lua_State *L) {
 
 void lac_open_case(lua_State *L) {
   static const luaL_Reg functions[] = {
-      {"given", case_given}, {"new_case", case_new}, {"raw", case_raw}, {"info", case_info}, {"steps", case_steps}, {"row_of", case_row_of}, {"same_chain", case_same_chain},
-      {"missing_sets", case_missing_sets}, {"is_case", is_case}, {"case_of", case_of}, {"set_handlers", set_handlers}, {NULL, NULL},
+      {"given", case_given}, {"new_case", case_new}, {"raw", case_raw}, {"info", case_info}, {"steps", case_steps}, {"row_of", case_row_of}, {"asked", case_asked}, {"same_chain", case_same_chain},
+      {"missing_sets", case_missing_sets}, {"is_case", is_case}, {"case_of", case_of}, {"remember_answers", remember_answers}, {"set_handlers", set_handlers}, {NULL, NULL},
   };
   luaL_setfuncs(L, functions, 0);
   lua_newtable(L); /* the metatable */

@@ -11,6 +11,8 @@ typedef struct {
   const lac_chain *chain; /* anchored as user value 1 */
   lac_value **values;   /* by id: the givens' and those derived so far; one reference each */
   bool *given;          /* by id */
+  bool *asked;          /* by id: what the user has asked for, among what was derived on the way to it */
+  bool remembers;       /* whether all its answers know their case, not verdicts and lengths alone */
 } lac_case;
 
 /* The case at index, its chain settled anew where the catalogue has grown; raises if it is none. */

@@ -122,7 +122,9 @@ end
 local function derive(self, changes, using)
   local info = core.info(self)
   local other = make(changes, info.givens, using, info)
-  core.info(other).changed = changed_recipes(self, other)
+  local changed = changed_recipes(self, other)
+  core.info(other).changed = changed
+  if #changed > 0 then core.remember_answers(other) end -- so that they can say which recipes are not those of before
   return other
 end
 
@@ -203,7 +205,7 @@ end
 function methods.missing(self, word)
   local name = name_of(word, "missing: ")
   local sets = core.missing_sets(self, name)
-  return setmetatable({ name = name, sets = sets, had = core.row_of(self, name) ~= nil }, text.missing_metatable)
+  return setmetatable({ case = self, name = name, sets = sets, had = core.row_of(self, name) ~= nil }, text.missing_metatable)
 end
 
 -- Single numbers agree within 1 %; ensembles where zero lies inside the 95 % interval of the difference.

@@ -1,5 +1,6 @@
 /* SPDX-License-Identifier: GPL-3.0-or-later */
 /* Where output goes: files that are whole or absent, and the width of the terminal. */
+#define _GNU_SOURCE /* strcasestr */
 #include <errno.h>
 #include <fcntl.h>
 #include <limits.h>
@@ -81,7 +82,32 @@ static int terminal_width(lua_State *L) {
   return 1;
 }
 
+static const char *environment(const char *name) {
+  const char *value = getenv(name);
+  return value == NULL ? "" : value;
+}
+
+/* Whether the locale's name says UTF-8, by POSIX's order of its variables. Asked of the name, not of the C library: a library has no
+   business to call setlocale, and a name that came over ssh is right about the terminal also where the locale isn't installed. */
+static bool locale_is_utf8(void) {
+  const char *name = *environment("LC_ALL") ? environment("LC_ALL") : *environment("LC_CTYPE") ? environment("LC_CTYPE") : environment("LANG");
+  return strcasestr(name, "utf-8") != NULL || strcasestr(name, "utf8") != NULL;
+}
+
+/* terminal(): what standard output is: {rows = of a terminal, else nil, colour =, ascii = whether plain characters alone are safe}. A file
+   or pipe gets no colour and the same characters wherever it is written. */
+static int terminal(lua_State *L) {
+  const bool there = isatty(STDOUT_FILENO), dumb = strcmp(environment("TERM"), "dumb") == 0 || *environment("TERM") == 0;
+  struct winsize size = {0};
+  if (there) ioctl(STDOUT_FILENO, TIOCGWINSZ, &size);
+  lua_createtable(L, 0, 3);
+  if (size.ws_row > 0) lua_pushinteger(L, size.ws_row), lua_setfield(L, -2, "rows");
+  lua_pushboolean(L, there && !dumb && *environment("NO_COLOR") == 0), lua_setfield(L, -2, "colour");
+  lua_pushboolean(L, there && (dumb || !locale_is_utf8())), lua_setfield(L, -2, "ascii");
+  return 1;
+}
+
 void lac_open_output(lua_State *L) {
-  static const luaL_Reg functions[] = {{"write_file", write_file}, {"terminal_width", terminal_width}, {NULL, NULL}};
+  static const luaL_Reg functions[] = {{"write_file", write_file}, {"terminal_width", terminal_width}, {"terminal", terminal}, {NULL, NULL}};
   luaL_setfuncs(L, functions, 0);
 }

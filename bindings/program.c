@@ -38,26 +38,26 @@ int program_load(lua_State *L, const char *text, const char *chunk_name) {
   return status;
 }
 
-/* Writes the values at its arguments' places as the module's show does. */
+/* Writes the values after its first argument as the part "show" does; the first says whether this is a conversation. */
 static int show_values(lua_State *L) {
-  lua_getfield(L, LUA_REGISTRYINDEX, LUA_LOADED_TABLE);
-  lua_getfield(L, -1, "lacuna");
-  lua_getfield(L, -1, "show");
-  lua_replace(L, -3);
-  lua_pop(L, 1);
+  lac_push_part(L, "lacuna.show");
+  lua_getfield(L, -1, "answer");
+  lua_remove(L, -2);
   lua_insert(L, 1);
   lua_call(L, lua_gettop(L) - 1, 1);
-  puts(luaL_tolstring(L, -1, NULL));
+  puts(lua_tostring(L, -1));
   return 0;
 }
 
-int program_show(lua_State *L, int from) {
+int program_show(lua_State *L, int from, bool conversation) {
   int count = lua_gettop(L) - from + 1;
   if (count == 0) return LUA_OK;
   luaL_checkstack(L, 8, "too many results");
   lua_pushcfunction(L, show_values);
   lua_insert(L, from);
-  return program_call(L, count, 0);
+  lua_pushboolean(L, conversation);
+  lua_insert(L, from + 1);
+  return program_call(L, count + 1, 0);
 }
 
 /* What a script finds under _G: the standard libraries, and the module's words, units and names. */
@@ -127,7 +127,7 @@ static int run(lua_State *L, const command_line *line) {
   luaL_checkstack(L, line->count, "too many arguments");
   for (int i = first; i < line->count; i++) lua_pushstring(L, line->rest[i]);
   status = program_call(L, lua_gettop(L) - base, line->code ? LUA_MULTRET : 0);
-  return status == LUA_OK && line->code ? program_show(L, base) : status;
+  return status == LUA_OK && line->code ? program_show(L, base, false) : status;
 }
 
 /* A failed script's exit status. One stopped by Ctrl-C ends by that signal, so that a loop of the shell's around it ends too. */

@@ -22,8 +22,9 @@ void program_forget_interruption(void);
 int program_load(lua_State *L, const char *text, const char *chunk_name);
 bool program_is_beginning(lua_State *L); /* of the message on the top of the stack */
 
-/* Prints the values from the stack's index `from` to its top as the prompt shows them, and takes them off. As program_call. */
-int program_show(lua_State *L, int from);
+/* Prints the values from the stack's index `from` to its top as the prompt shows them, and takes them off. In a conversation at a terminal
+   a screenful at once. As program_call. */
+int program_show(lua_State *L, int from, bool conversation);
 
 /* Prints the error on the top of the stack, in one line if it is one, and takes it off. Prefix: "lacuna: ", or "" at the prompt. */
 void program_report(lua_State *L, const char *prefix);

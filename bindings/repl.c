@@ -169,7 +169,7 @@ static int answer_input(lua_State *L, const sigset_t *interruption) {
   int base = lua_gettop(L);
   sigprocmask(SIG_UNBLOCK, interruption, NULL);
   int status = program_call(L, 0, LUA_MULTRET);
-  if (status == LUA_OK) status = program_show(L, base);
+  if (status == LUA_OK) status = program_show(L, base, true);
   sigprocmask(SIG_BLOCK, interruption, NULL);
   return status;
 }

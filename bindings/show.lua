@@ -1,9 +1,27 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
--- What the prompt prints, and how long lines of a page (a derivation, a page of help) are folded on a terminal.
+-- What the prompt prints: how answers are put together, how long lines of a page (a derivation, a page of help) are folded on a terminal,
+-- where there is colour, and how much is shown at once. What an answer consists of is written in answers.lua.
 local core = ...
 local format = core.part "lacuna.format"
 
 local show = {}
+
+-- Colour --------------------------------------------------------------------------------------------------------------------------
+
+-- Texts aside and texts marked stand between these until they are printed, where they become colour or nothing. Control characters have
+-- no width, so that nothing is misaligned by them.
+local ASIDE, MARKED, PLAIN = "\1", "\2", "\3"
+local escapes = { [ASIDE] = "\27[2m", [MARKED] = "\27[33m", [PLAIN] = "\27[0m" }
+
+function show.aside(text) return ASIDE .. text .. PLAIN end
+function show.marked(text) return MARKED .. text .. PLAIN end
+
+-- Whether there is colour: only on a terminal, never with NO_COLOR or on a dumb one.
+function show.colour() return core.terminal().colour end
+
+local function finished(text, colour) return (text:gsub("[\1\2\3]", colour and escapes or "")) end
+
+-- Pages ---------------------------------------------------------------------------------------------------------------------------
 
 -- A line folded at its spaces, what follows set in by two more; longer words stand alone.
 local function fold(line, columns)
@@ -29,14 +47,21 @@ function show.page(lines)
   return columns and text:gsub("[^\n]+", function(line) return fold(line, math.max(columns, 40)) end) or text
 end
 
+-- Answers -------------------------------------------------------------------------------------------------------------------------
+
 local function shown(value)
   if value == core.part "lacuna.help".help then return tostring(value()) end
-  if type(value) == "function" or type(value) == "table" and not getmetatable(value) then return "a " .. type(value) end
+  local answers = core.part "lacuna.answers"
+  if select("#", core.facts(value)) > 0 then return show.page(answers.quantity(value)) end
+  if core.is_case(value) then return show.page(answers.case(value)) end
+  if type(value) == "function" then return answers.of_function(value) end
+  if type(value) == "table" and not getmetatable(value) then return answers.table(value) end
   return tostring(value)
 end
 
--- What the prompt prints of results, a line each; of nothing found, why (as functions return nil and a message), of an answer its note.
-function show.show(...)
+-- Results as the prompt prints them, colour still marked: a line each or several; of nothing found, why (as functions return nil and a
+-- message), of an answer its note.
+local function written(...)
   local results, lines = table.pack(...), {}
   if results.n == 2 and results[1] == nil and type(results[2]) == "string" then return results[2] end
   for i = 1, results.n do
@@ -45,6 +70,34 @@ function show.show(...)
     if value ~= nil or results.n == 1 then lines[#lines + 1] = shown(value) end
   end
   return table.concat(lines, "\n")
+end
+
+-- show(value, ...): the text of values as the prompt writes them.
+function show.show(...) return finished(written(...), false) end
+
+-- What the program prints. In a conversation at a terminal no more than a screenful at once: the rest waits for more().
+local waiting
+local function screenful(text)
+  local rows = core.terminal().rows
+  local _, breaks = text:gsub("\n", "")
+  if not rows or breaks + 1 <= math.max(rows - 1, 10) then return text end
+  local keep, at = math.max(rows - 2, 9), 0
+  for _ = 1, keep do at = text:find("\n", at + 1, true) end
+  waiting = text:sub(at + 1)
+  return text:sub(1, at) .. show.aside(("… %d more lines: more()"):format(breaks + 1 - keep))
+end
+
+function show.answer(conversation, ...)
+  waiting = nil
+  local text = written(...)
+  return finished(conversation and screenful(text) or text, show.colour())
+end
+
+-- more(): what did not fit on the screen.
+function show.more()
+  if not waiting then core.raise "there is no more to show" end
+  local rest = waiting
+  return setmetatable({}, { __name = "rest", __tostring = function() return rest end })
 end
 
 return show

@@ -28,6 +28,7 @@ local function wrapped(text, columns)
   lines[#lines + 1] = line
   return lines
 end
+tables.wrapped = wrapped
 
 -- A name or text from a file may have line breaks.
 local function on_one_line(text) return (text:gsub("%s+", " ")) end

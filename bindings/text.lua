@@ -43,6 +43,7 @@ local function share(quantity)
   return core.elements(quantity)[1] ~= 0 and core.elements(quantity)[1] or 0
 end
 
+-- " (1.2 % of draws undefined)", or nothing.
 local function undefined_note(quantity)
   local axes, count = core.axes(quantity), quantity
   for i, axis in ipairs(axes) do
@@ -54,6 +55,7 @@ local function undefined_note(quantity)
   if has_draws(axes) then return (" (%s of draws undefined)"):format(format.percent(count / size)) end
   return (" (%d of %d points undefined)"):format(count, size)
 end
+text.undefined_note = undefined_note
 
 -- Median, upper and lower error of an ensemble in its display unit. Sides that differ by less than a tenth are taken as equal: with some
 -- thousands of draws each is known to a few per cent only.
@@ -65,9 +67,14 @@ function text.median_and_errors(quantity, factor)
   return median, upper, lower
 end
 
--- An ensemble along the axis draw alone: "0.46 ± 0.03".
+-- An ensemble along the axis draw alone: "0.46 ± 0.03". With infinite draws among the central 68 % there is no error bar to write.
 local function ensemble(quantity, factor)
   local median, upper, lower = text.median_and_errors(quantity, factor)
+  if not (upper < math.huge and lower < math.huge) and median == median then
+    local low, high = core.interval(quantity)
+    low, high = core.elements(low)[1] / factor, core.elements(high)[1] / factor
+    return low == high and format.number(median) or ("%s, 68 %% from %s to %s"):format(format.number(median), format.number(low), format.number(high))
+  end
   if math.max(upper, lower) <= 1e-12 * math.abs(median) then return format.number(median) end -- it doesn't depend on what is uncertain
   return format.with_error(median, upper, lower)
 end
@@ -412,18 +419,20 @@ text.why_metatable = {
   end,
 }
 
--- Why a single number is undefined: the first step that has none, with what it came from.
+-- Why a single number is undefined: the first step that has none, with what it came from. Where the name asked for lies further on, it
+-- goes before: "gap_width_angle: gap_width is undefined: ...".
 function text.undefined(self, name)
   for _, step in ipairs(core.steps(self, name)) do
     local value = core.raw(self, step.name)
     local _, _, _, number = core.facts(value)
     if number ~= number and step.row then
-      local row, inputs = core.row(step.row), {}
-      for _, input in ipairs(row.from) do inputs[#inputs + 1] = input .. " = " .. text.quantity(core.raw(self, input)) end
+      local row, inputs, outside = core.row(step.row), {}, {}
+      for _, input in ipairs(row.from) do inputs[#inputs + 1] = input .. " = " .. text.brief(core.raw(self, input)) end
+      for i, bound in ipairs(text.outside(self, row)) do outside[i] = "; " .. bound.words end
       local range = core.entry(step.name).range
       local beyond = row.from[1] == "dust" and row.from[2] == "wavelength" and core.part "lacuna.dust".beyond(core.raw(self, "dust"), core.raw(self, "wavelength"))
-      return ("%s is undefined: by %s, %s give%s no value%s"):format(step.name, row.by, table.concat(inputs, " and "), #inputs == 1 and "s" or "",
-        beyond or range ~= "any" and " that is " .. range or "")
+      return ("%s%s is undefined: by %s, %s give%s no value%s%s"):format(step.name ~= name and name .. ": " or "", step.name, row.by,
+        table.concat(inputs, " and "), #inputs == 1 and "s" or "", beyond or #outside == 0 and range ~= "any" and " that is " .. range or "", table.concat(outside))
     end
   end
   return name .. " is undefined"
@@ -440,10 +449,41 @@ local function hints(names)
   return lines
 end
 
--- What is missing in one line, as an error says it.
+-- Where on the way to a name the givens of one set are lacking: the name, its row, and which of the row's inputs can't be had. From the asked
+-- name downwards, as long as a single input is what fails.
+local function failed_branch(self, name, set)
+  local wanted = {}
+  for _, given in ipairs(set.names) do wanted[given] = true end
+  local number = set.row
+  while true do
+    local row, lacking = core.row(number), {}
+    for _, input in ipairs(row.from) do if core.row_of(self, input) == nil then lacking[#lacking + 1] = input end end
+    local further = #lacking == 1 and not wanted[lacking[1]] and core.missing_sets(self, lacking[1])[1]
+    if not further or not further.row or #further.names ~= #set.names then return name, row, lacking, wanted end
+    name, number = lacking[1], further.row
+  end
+end
+
+-- "gap_width by kanagawa_2016", where the set's givens are lacking; of the asked name itself without the name.
+local function branch_text(self, asked, set)
+  local name, row, lacking, wanted = failed_branch(self, asked, set)
+  local direct = false
+  for _, input in ipairs(lacking) do direct = direct or wanted[input] end
+  return (name ~= asked and "for " .. name .. " " or "") .. "by " .. row.by .. (direct and "" or " from " .. table.concat(lacking, ", "))
+end
+
+-- Whether all of some names are among others.
+local function within(names, others)
+  local there = {}
+  for _, name in ipairs(others) do there[name] = true end
+  for _, name in ipairs(names) do if not there[name] then return false end end
+  return true
+end
+
+-- What is missing in one line, as an error says it: each way to have the name, but none that wants more than another besides.
 function text.not_had(missing)
-  local ways = {}
-  if #missing.sets == 0 or missing.sets[1].names[1] == missing.name then
+  local ways, first = {}, missing.sets[1]
+  if not first or first.names[1] == missing.name then
     for i, number in ipairs(core.entry(missing.name).rows) do
       local row = core.row(number)
       ways[i] = table.concat(row.from, ", ") .. " (by " .. row.by .. ")"
@@ -451,8 +491,11 @@ function text.not_had(missing)
     return missing.name .. " must be given" .. (#ways == 0 and ": no relation gives it" or ", or follow from " .. table.concat(ways, ", or "))
   end
   for i, set in ipairs(missing.sets) do
-    ways[i] = table.concat(set.names, ", ")
-    if set.row then ways[i] = ways[i] .. " (by " .. core.row(set.row).by .. ")" end
+    local needless = false
+    for j = 1, i - 1 do needless = needless or within(missing.sets[j].names, set.names) end
+    if not needless then
+      ways[#ways + 1] = table.concat(set.names, ", ") .. (set.row and (" (%s)"):format(branch_text(missing.case, missing.name, set)) or "")
+    end
   end
   return missing.name .. " can't be derived from what is given; give " .. table.concat(ways, ", or ")
 end

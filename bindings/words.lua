@@ -142,6 +142,7 @@ word("settings", {
   "  Sets those named, and returns all. They hold for what is made afterwards.",
 })
 word("show", { "show(value, ...)", "  The text of values as the prompt writes them." })
+word("more", { "more()", "  At a terminal the prompt prints a screenful at once: more() prints what did not fit. Errors: nothing is left to show." })
 word("globals", { "globals(environment)", "  For the module in Lua: makes all words, units and names readable as globals there, like globals(_ENV)." })
 word("help", { "help()   help \"name\"   help \"some words\"", "  A map; one name, word or unit; a search." })
 
