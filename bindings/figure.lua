@@ -234,6 +234,24 @@ function methods.write(figure, path)
   return files
 end
 
+-- f:text(columns, lines): the figure in block characters.
+function methods.text(figure, columns, lines)
+  return part "figure_text".picture(figure, columns or core.terminal_width() or 80, lines or 18)
+end
+
+-- show(f): on a terminal in block characters; else as a file, and where, in one line.
+function figures.show(figure)
+  local columns = core.terminal_width()
+  if columns then
+    print(figure:text(math.min(columns, 100), math.min(math.max((core.terminal().rows or 24) - 4, 12), 24)))
+    return
+  end
+  local drawn, why = part "gnuplot".render { figure }
+  local file = figure.name .. (drawn and ".png" or ".csv")
+  core.write_file(file, drawn and figure.pictures.png or figure:csv())
+  print(("figure: %s: written to %s%s"):format(figure.title, file, drawn and "" or " as data, since " .. why))
+end
+
 function metatable.__tostring(figure) return ("figure: %s; show(f) draws it, f:write(\"name\") writes it"):format(figure.title) end
 
 return figures

@@ -1,11 +1,12 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
--- Figures in words and numbers: the data as CSV, a caption, and a sentence for those who don't see the picture.
+-- Figures in words and numbers: the data as CSV, a caption, a sentence for those who don't see the picture, and a picture in block characters.
 local core = ...
 local text = core.part "lacuna.text"
 local format = core.part "lacuna.format"
 local tables = core.part "lacuna.table"
 
 local words = {}
+local function textplot() return core.part "lacuna.textplot" end -- loaded when a picture is asked for
 
 local function unit_in_header(axis) return axis.unit ~= "1" and " [" .. axis.unit .. "]" or "" end
 local function header_of(axis) return axis.name .. unit_in_header(axis) .. (axis.verdict and " share" or "") end
@@ -248,6 +249,68 @@ function words.caption(figure)
   if figure.target then sentences[1] = sentences[1]:gsub("%.$", "") .. (", %s%s."):format(figure.target, figure.variant and " (" .. figure.variant .. ")" or "") end
   if figure.case then sentences[#sentences + 1] = given_in_words(figure) end
   return table.concat(sentences, " ")
+end
+
+-- Block characters ----------------------------------------------------------------------------------------------------------------
+
+local function plain_label(axis)
+  local symbol = symbol_of(axis)
+  return format.with_unit((axis.verdict and "share of draws" or axis.words or "") .. (symbol and " " .. symbol or ""), axis.unit_text ~= "" and "[" .. axis.unit_text .. "]" or "")
+end
+
+local picture = {}
+local DEEPEST = 1e8
+
+-- Values far below the others would take all of a logarithmic axis.
+local function not_too_deep(values, deepest)
+  if not values or not deepest then return values end
+  local raised = {}
+  for i, value in ipairs(values) do raised[i] = value < deepest and deepest or value end
+  return raised
+end
+
+-- Several curves stand below each other, each with what it is.
+function picture.curve(d, columns, lines)
+  local all, each = {}, math.max(lines // #d.series, 9)
+  for _, s in ipairs(d.series) do
+    if #d.series > 1 then all[#all + 1] = s.name:gsub("_", " ") .. (s.each and (" for %s = %s"):format(s.each.name:gsub("_", " "), s.each.value) or "") end
+    local given = { x = d.values, level = d.levels[1] and d.levels[1].constant, x_log = d.x.log, y_log = d.y.log, width = columns, height = each,
+      x_label = plain_label(d.x), y_label = plain_label(d.y) }
+    local _, highest = core.part "lacuna.figure_data".range(s.values)
+    for to, from in pairs { y = "values", low = "low68", high = "high68", low95 = "low95", high95 = "high95" } do
+      given[to] = not_too_deep(s[from], d.y.log and highest and highest / DEEPEST)
+    end
+    for _, line in ipairs(textplot().curve(given)) do all[#all + 1] = line end
+  end
+  return all
+end
+
+function picture.map(d, columns, lines)
+  local z = {}
+  for i = 1, #d.x_values do
+    z[i] = {}
+    for j = 1, #d.y_values do z[i][j] = d.values[j][i] end
+  end
+  return textplot().map { x = d.x_values, y = d.y_values, z = z, contour = d.z.verdict and 0.5 or nil, x_log = d.x.log, y_log = d.y.log, z_log = d.z.log,
+    width = columns, height = lines, x_label = plain_label(d.x), y_label = plain_label(d.y), z_label = plain_label(d.z) }
+end
+
+function picture.plane(d, columns, lines)
+  local given = { x = {}, y = {}, x_error = {}, y_error = {}, names = {} }
+  for i, p in ipairs(d.points) do
+    given.x[i], given.y[i], given.names[i] = p.x, p.y, p.name
+    given.x_error[i], given.y_error[i] = { p.x_upper, p.x_lower }, { p.y_upper, p.y_lower }
+  end
+  given.x_log, given.y_log, given.width, given.height = d.x.log, d.y.log, columns, lines
+  given.x_label, given.y_label = plain_label(d.x), plain_label(d.y)
+  return textplot().points(given)
+end
+
+-- The title, the picture, and a line of what is drawn.
+function words.picture(figure, columns, lines)
+  local d, all = figure.data, { figure.title }
+  for _, line in ipairs(picture[figure.kind](d, columns, lines - 1)) do all[#all + 1] = line end
+  return table.concat(all, "\n")
 end
 
 return words
