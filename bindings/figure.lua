@@ -162,8 +162,9 @@ end
 
 local function as_file_name(title) return (title:gsub("[^%w]+", "_"):gsub("^_+", ""):gsub("_+$", ""):lower()) end
 
--- figure{...}: the object.
+-- figure{...}: the object. figure(study): the list of those that the study asks for.
 function figures.figure(wanted)
+  if is_study(wanted) then return figures.of_study(wanted) end
   local f = read_fields(wanted)
   local kind, d = read_data(f)
   f.kind_drawn = kind
@@ -223,7 +224,7 @@ function figures.write(list)
       core.write_file(files[#files], contents[ending])
     end
   end
-  return files, why and why .. ": no pictures, only data (.csv) and scripts (.gp) are written" or nil
+  return files, why and why .. "; no pictures, only data (.csv) and scripts (.gp) are written" or nil
 end
 
 -- f:write("folder/name"): folder/name.pdf, .svg, .png, .csv and .gp. Returns their names.

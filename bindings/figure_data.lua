@@ -378,7 +378,7 @@ local function points_of(f, study)
   for _, row in ipairs(study.rows) do
     local x, y = cell_of(study, row, f.against, f.variant), cell_of(study, row, f.show[1], f.variant)
     local verdict = f.verdict and cell_of(study, row, f.verdict, f.variant)
-    if x.missing or y.missing then left_out[#left_out + 1] = row.name
+    if not (x.value and y.value) then left_out[#left_out + 1] = row.name
     else
       points[#points + 1] = { name = row.name, x = x.value, x_upper = x.upper or 0, x_lower = x.lower or 0, y = y.value, y_upper = y.upper or 0, y_lower = y.lower or 0,
         share = verdict and verdict.share }

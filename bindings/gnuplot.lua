@@ -333,7 +333,7 @@ local function add_level(s, level, d)
   local label = level.name and ((level.factor == 1 and "" or "½ ") .. marked_symbol(level.name)) or ""
   if level.name and level.constant then label = label .. " = " end
   if level.constant then label = label .. format.number(level.constant, 3) .. (d.y.unit_text ~= "" and " " .. marked_unit(d.y.unit_text) or "") end
-  s:label(label, "%s, first %s %s offset 0,0.6 font ',%d'", side == "left" and "graph 0.02" or "graph 0.98", number(level.values[side == "left" and 1 or last]), side, SMALL)
+  s:label(label, "%s, first %s %s offset 0,0.8 font ',%d'", side == "left" and "graph 0.02" or "graph 0.98", number(level.values[side == "left" and 1 or last]), side, SMALL)
 end
 
 local function add_marks(s, d, width)
@@ -445,13 +445,14 @@ local function add_contours(s, d)
   local explained = {}
   for _, contour in ipairs(d.contours) do
     if #contour.lines > 0 then
-      local block, dash = s:lines_block(contour.lines), contour.dashed and "(8,5)" or "solid"
+      local block = s:lines_block(contour.lines)
+      local dash, width = contour.dashed and "(8,5)" or "solid", contour.dashed and 1.6 or 1.7 -- the SVG terminal only sees a change of both
       s:plot("%s using 1:2 with lines linecolor rgb '#ffffff' linewidth 3.5", block)
-      s:plot("%s using 1:2 with lines linecolor rgb '%s' linewidth 1.7 dashtype %s", block, BLACK, dash)
+      s:plot("%s using 1:2 with lines linecolor rgb '%s' linewidth %g dashtype %s", block, BLACK, width, dash)
       if not explained[dash] then
         explained[dash] = true
         local title = contour.dashed and "16 and 84 %" or literal(d.verdict:gsub("_", " ") .. (contour.share and " in 50 % of draws" or " on one side"))
-        s:explain(title, { line = dash, colour = BLACK, width = 1.7 })
+        s:explain(title, { line = dash, colour = BLACK, width = width })
       end
     end
   end
@@ -481,7 +482,7 @@ local function add_line_label(s, d, line, room)
   local last
   for i, y in ipairs(line.y) do if y == y and y >= d.y.low and y <= d.y.high and line.x[i] >= d.x.low and line.x[i] <= d.x.high * (1 + 1e-9) then last = i end end
   if not last or not line.label then return nil end
-  local x, y = math.min(place_of(d.x, line.x[last], room[1]), room[1]) - 2, place_of(d.y, line.y[last], room[2])
+  local x, y = math.min(place_of(d.x, line.x[last], room[1]), room[1]) - 5, place_of(d.y, line.y[last], room[2])
   local falls = last > 1 and line.y[last - 1] > line.y[last]
   local middle, width = y + (falls and -6 or 6), width_of(line.label, SMALLEST)
   if middle + SMALLEST / 2 > room[2] then middle = y - 6 end
@@ -581,10 +582,10 @@ local PIXELS = 300 / 25.4 -- a mm of a PNG
 local terminals = {
   pdf = function(width, height) return ("pdfcairo enhanced color size %.2fcm,%.2fcm font '%s,8' fontscale 0.75 linewidth 1 rounded"):format(width / 10, height / 10, FONT) end,
   svg = function(width, height)
-    return ("svg enhanced size %.1f,%.1f fixed font '%s,8' background '#ffffff' linewidth 0.5 dashlength 0.5 rounded"):format(width / POINT, height / POINT, FONT)
+    return ("svg enhanced size %.1f,%.1f fixed font '%s,8' background '#ffffff' linewidth 0.5 dashlength 1.2 rounded"):format(width / POINT, height / POINT, FONT)
   end,
   png = function(width, height)
-    return ("pngcairo enhanced color size %d,%d font '%s,8' fontscale %.3f linewidth 2 pointscale 2 background '#ffffff' rounded"):format(
+    return ("pngcairo enhanced color size %d,%d font '%s,8' fontscale %.3f linewidth 2 dashlength 2 pointscale 3.5 background '#ffffff' rounded"):format(
       math.floor(width * PIXELS + 0.5), math.floor(height * PIXELS + 0.5), FONT, 300 / 96)
   end,
 }
@@ -659,7 +660,7 @@ function gnuplot.render(figures)
   for _, figure in ipairs(figures) do if not figure.pictures then wanted[#wanted + 1] = figure end end
   if #wanted == 0 then return true end
   local output, status, complaint = core.run_program({ "gnuplot", "-d" }, script_of_all(wanted), environment())
-  if not output then return nil, "gnuplot can't be run (" .. status .. ")" end
+  if not output then return nil, "gnuplot can't be run: " .. status end
   local at = 1
   for i, figure in ipairs(wanted) do
     local pictures = {}

@@ -49,7 +49,7 @@ int luaopen_lacuna(lua_State *L) {
   lac_open_solve(L);
   lac_open_csv(L);
   lac_open_output(L);
-  lac_open_run(L);
+  lac_open_run_program(L);
   lua_pushvalue(L, -1);
   lua_pushcclosure(L, load_part, 1);
   lua_pushvalue(L, -1);

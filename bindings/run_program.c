@@ -170,7 +170,7 @@ static int run_program(lua_State *L) {
   return 3;
 }
 
-void lac_open_run(lua_State *L) {
+void lac_open_run_program(lua_State *L) {
   static const luaL_Reg functions[] = {{"run_program", run_program}, {NULL, NULL}};
   luaL_setfuncs(L, functions, 0);
 }
