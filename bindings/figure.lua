@@ -170,7 +170,7 @@ function figures.figure(wanted)
   f.kind_drawn = kind
   local title = wanted.title or usual_title(f, d)
   local made = { kind = kind, title = title, name = wanted.name or as_file_name(title), width = f.width, data = d, target = f.target_name, variant = f.variant,
-    shown = f.show, seed = core.settings().seed, case = kind ~= "plane" and f.case or nil }
+    shown = f.show, seed = core.settings().seed, written = is_study(f.of) and data.written(f.of, f.variant) or {}, case = kind ~= "plane" and f.case or nil }
   return setmetatable(made, metatable)
 end
 

@@ -364,6 +364,17 @@ function data.case_of_target(study, target, variant)
   complain('no target "%s" in the study; there %s %s', tostring(target), #names == 1 and "is" or "are", table.concat(names, ", "))
 end
 
+-- Common givens as they were written: "2 ± 0.5 Mjup".
+function data.written(study, variant)
+  local all = {}
+  for _, group in ipairs(study.groups) do
+    if group.name == nil or group.name == variant then
+      for name, words in pairs(group.written or {}) do all[name] = words end
+    end
+  end
+  return all
+end
+
 -- What all targets share: the case of the study's own givens and those of the variant.
 local function common_case(study, variant, changes)
   for _, group in ipairs(study.groups) do
@@ -387,13 +398,18 @@ local function points_of(f, study)
   return points, left_out
 end
 
--- The span of an axis of the plane, with some room around its points and their errors.
-local function span(points, letter, log)
+-- The ends of the points' error bars; on a logarithmic axis those that reach zero are left out.
+local function ends_of(points, letter, log)
   local ends = {}
   for _, p in ipairs(points) do
     local value, low, high = p[letter], p[letter] - p[letter .. "_lower"], p[letter] + p[letter .. "_upper"]
     ends[#ends + 1], ends[#ends + 2] = log and low <= 0 and value or low, high
   end
+  return ends
+end
+
+-- The span of an axis of the plane, with some room around what lies on it.
+local function span(ends, log)
   local low, high = data.range(ends)
   if log then
     local room = math.max((high / low) ^ 0.08, 1.15)
@@ -448,10 +464,15 @@ function data.plane(f, study)
     local values = {}
     for i, p in ipairs(d.points) do values[i] = p[letter] end
     axis.log = is_log(f.log, letter, is_wide(values))
-    axis.low, axis.high = span(d.points, letter, axis.log)
+    axis.ends = ends_of(d.points, letter, axis.log)
+    axis.low, axis.high = span(axis.ends, axis.log)
   end
   d.lines = {}
-  for i, line in ipairs(f.lines or {}) do d.lines[i] = line_of(f, study, d.x, d.y, line, i) end
+  for i, line in ipairs(f.lines or {}) do
+    d.lines[i] = line_of(f, study, d.x, d.y, line, i)
+    for _, y in ipairs(d.lines[i].y) do if not d.y.log or y > 0 then table.insert(d.y.ends, y) end end
+  end
+  d.y.low, d.y.high = span(d.y.ends, d.y.log)
   d.draws = core.settings().draws
   return d
 end

@@ -200,7 +200,7 @@ local function given_in_words(figure)
     for _, step in ipairs(core.steps(figure.case, shown)) do
       if not step.row and not skip[step.name] then
         skip[step.name] = true
-        parts[#parts + 1] = ("%s = %s"):format(step.name:gsub("_", " "), text.given(figure.case, step.name))
+        parts[#parts + 1] = ("%s = %s"):format(step.name:gsub("_", " "), figure.written[step.name] or text.given(figure.case, step.name))
       end
     end
   end

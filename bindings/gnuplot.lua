@@ -451,7 +451,8 @@ local function add_contours(s, d)
       s:plot("%s using 1:2 with lines linecolor rgb '%s' linewidth %g dashtype %s", block, BLACK, width, dash)
       if not explained[dash] then
         explained[dash] = true
-        local title = contour.dashed and "16 and 84 %" or literal(d.verdict:gsub("_", " ") .. (contour.share and " in 50 % of draws" or " on one side"))
+        local first = next(explained, next(explained)) == nil and d.verdict:gsub("_", " ") .. " in " or "" -- said once
+        local title = literal(not contour.share and d.verdict:gsub("_", " ") .. " on one side" or first .. (contour.dashed and "16 and 84 %" or "50 % of draws"))
         s:explain(title, { line = dash, colour = BLACK, width = width })
       end
     end
