@@ -79,6 +79,7 @@ local function read_fields(wanted)
   check_fields(wanted, fields, "figure")
   check_choice("kind", wanted.kind, kinds)
   check_choice("width", wanted.width, { single = true, double = true })
+  if wanted.name and (wanted.name == "" or wanted.name:find "[/%c]") then complain("name wants a file's name without folder and ending; got %s", core.shown(wanted.name)) end
   if wanted.log and wanted.log:find "[^xy]" then complain('log wants "x", "y", "xy" or ""; got "%s"', wanted.log) end
   if not is_study(wanted.of) and not core.is_case(wanted.of) then complain("of wants a case or a study; got %s", core.shown(wanted.of)) end
   check_each(wanted.each)
@@ -160,7 +161,10 @@ local function usual_title(f, d)
   return ("%s %s %s%s"):format(what, f.kind_drawn == "plane" and "against" or "along", d.x.words, of)
 end
 
-local function as_file_name(title) return (title:gsub("[^%w]+", "_"):gsub("^_+", ""):gsub("_+$", ""):lower()) end
+local function as_file_name(title)
+  local name = title:gsub("[^%w]+", "_"):gsub("^_+", ""):gsub("_+$", ""):lower()
+  return name ~= "" and name or "figure"
+end
 
 -- figure{...}: the object. figure(study): the list of those that the study asks for.
 function figures.figure(wanted)
@@ -200,7 +204,7 @@ local function part(name) return core.part("lacuna." .. name) end
 function methods.csv(figure) return part "figure_text".csv(figure) end
 function methods.caption(figure) return part "figure_text".caption(figure) end
 function methods.alternative(figure) return part "figure_text".alternative(figure) end
-function methods.script(figure) return part "gnuplot".script(figure) end
+function methods.script(figure, name) return part "gnuplot".script(figure, name or figure.name) end
 
 -- f:svg(): the picture for a page; nil and why where gnuplot can't be run.
 function methods.svg(figure)
@@ -217,7 +221,7 @@ function figures.write(list)
   local rendered, why = part "gnuplot".render(drawn)
   for _, one in ipairs(list) do
     local figure, path = one[1], one[2]
-    local contents = { csv = figure:csv(), gp = figure:script() }
+    local contents = { csv = figure:csv(), gp = figure:script(path:match "[^/]*$") }
     for kind, picture in pairs(rendered and figure.pictures or {}) do contents[kind] = picture end
     for _, ending in ipairs(case.sorted_keys(contents)) do
       files[#files + 1] = path .. "." .. ending

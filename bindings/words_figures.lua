@@ -69,10 +69,10 @@ return {
     answers = { '"Curve along projected baseline: the median rim elements by array rises from 0.504 at 20 m to 5.04 at 200 m, passes elements required = 1 at 39.7 m."' },
   },
   {
-    name = "script", of = "figure", subject = "report", forms = { "f:script()" },
+    name = "script", of = "figure", subject = "report", forms = { "f:script()", "f:script(name)" },
     does = "The script by which gnuplot draws the figure, with the numbers inside, for changes by hand.",
     result = "a text",
-    examples = { { elements, 'f:script():match "[^.;]*"' } },
+    examples = { { elements, 'f:script():match "[^,]*"' } },
     answers = { '"# Made by Lacuna"' },
   },
   {

@@ -324,6 +324,7 @@ bad("a level of another dimension", { of = star, show = "rim_size_angle", along 
 bad("an unknown kind", { kind = "pie", of = star, show = "rim_radius", along = along }, 'figure: kind wants one of "curve", "map", "plane", "spectrum", "visibility"; got "pie"')
 bad("an unknown width", { width = "broad", of = star, show = "rim_radius", along = along }, 'figure: width wants one of "double", "single"; got "broad"')
 bad("an unknown log", { log = "both", of = star, show = "rim_radius", along = along }, 'figure: log wants "x", "y", "xy" or ""; got "both"')
+bad("a name with a folder", { name = "a/b", of = star, show = "rim_radius", along = along }, 'figure: name wants a file\'s name without folder and ending; got "a/b"')
 bad("each without values", { of = star, show = "rim_radius", along = along, each = { wavelength = "2 um" } }, 'figure: each: wavelength wants a list of values; got "2 um"')
 bad("bands along a baseline", { of = star, show = "rim_radius", along = along, bands = { "H" } }, "figure: bands are marked along wavelength; this goes along projected_baseline")
 bad("a target of a case", { of = star, target = "Alder", show = "rim_radius", along = along }, "figure: target and variant are of a study's; this is a case")

@@ -81,7 +81,7 @@ sed 's/^/# /' python.out
 
 head -n 1 one/map.csv | grep -qx 'wavelength \[um\],projected_baseline \[m\],rim_resolved_by_array share' && test "$(wc -l <one/map.csv)" = 226
 result $? "a CSV file has units in its header and a line a point"
-mkdir gp && cp one/curve.gp gp && (cd gp && gnuplot -d curve.gp) && test -s gp/rim_elements_by_array_along_projected_baseline.pdf
+mkdir gp && cp one/curve.gp gp && (cd gp && gnuplot -d curve.gp) && test -s gp/curve.pdf
 result $? "the script draws the figure by itself"
 
 cat >show.lua <<'END'
