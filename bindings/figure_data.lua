@@ -131,7 +131,7 @@ local function series_of(self, name, axis, sweep, order)
     return { name = name, draws = draws, values = along(shares, 1, sweep, order) }
   end
   local lists = {}
-  for i, part in ipairs(draws and { core.bands_of(quantity) } or { quantity }) do lists[i] = along(part, axis.factor, sweep, order) end
+  for i, part in ipairs(draws and { core.five_of(quantity) } or { quantity }) do lists[i] = along(part, axis.factor, sweep, order) end
   if not draws then return { name = name, values = lists[1] } end
   return { name = name, draws = draws, low95 = lists[1], low68 = lists[2], values = lists[3], high68 = lists[4], high95 = lists[5] }
 end
@@ -375,11 +375,14 @@ function data.written(study, variant)
   return all
 end
 
--- What all targets share: the case of the study's own givens and those of the variant.
+-- What all targets share: the case of the study's own givens and those of the variant; what was set from outside goes before.
 local function common_case(study, variant, changes)
   for _, group in ipairs(study.groups) do
     if group.name == variant then
-      return case.make({}, group.givens, group.using, { objects = group.objects }):with(changes)
+      local givens = {}
+      for name, quantity in pairs(group.givens) do givens[name] = quantity end
+      for name, quantity in pairs(study.set and study.set.givens or {}) do givens[name] = quantity end
+      return case.make({}, givens, group.using, { objects = group.objects }):with(changes)
     end
   end
 end
