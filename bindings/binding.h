@@ -118,6 +118,7 @@ void lac_open_sensitivity(lua_State *L);
 void lac_open_state(lua_State *L);
 void lac_open_csv(lua_State *L);
 void lac_open_output(lua_State *L);
+void lac_open_run_program(lua_State *L);
 
 /* A user's row: its function in Lua, called by the plan in pieces. */
 typedef struct {

@@ -11,6 +11,7 @@
 --   plain(equation, text_of)    text_of(name): plain text of a symbol ("M_p") or of a value ("5 au")
 --   mathml(equation, symbol_of) symbol_of(name): TeX, of the subset; one <math> element
 --   plain_symbol(tex)           "\\theta_{gap,arr}" as "θ_gap,arr", "M_*" as "M*"
+--   marked_symbol(tex)          the same with marks for gnuplot, "{/:Italic θ}_{gap,arr}"
 --   names(equation)             the names that stand in it, each once, in order
 --
 -- The subset: relations apart by commas; numbers, letters, [names], + - / = < > <= >= \le \ge \approx \propto \cdot \times, ( ) \left( \right) \left[ \right],
@@ -214,19 +215,56 @@ function equation.plain(either, text_of) return (renderer(plain, text_of)(tree_o
 
 local function no_names(name) error(("a symbol can't have the name [%s] in it"):format(name), 0) end
 
-function equation.plain_symbol(tex)
+-- A symbol, rendered by these kinds.
+local function symbol(kinds, tex)
   local whole = tree.parse(tex)
+  local render = renderer(kinds, no_names)
   -- Letters side by side in a symbol are one word or an increment: St, Δv.
   if whole.kind == "product" then
-    local render, parts, together = renderer(plain, no_names), {}, true
+    local parts, together = {}, true
     for i, factor in ipairs(whole) do
       parts[i] = render(factor)
       together = together and (whole.signs[i] or "") == ""
     end
     if together then return table.concat(parts) end
   end
-  return equation.plain(whole, no_names)
+  return (render(whole))
 end
+
+function equation.plain_symbol(tex) return symbol(plain, tex) end
+
+-- Text with marks for figures, as gnuplot's enhanced text has them: _{} and ^{}, with @ one above the other, and italics. What it shares with
+-- plain text is taken from there.
+
+local marked = setmetatable({}, { __index = plain })
+
+local function italic(text) return "{/:Italic " .. text .. "}" end
+
+function marked.letter(node) return italic(node.text), ATOM end
+function marked.greek(node)
+  local sign = greek[node.text:sub(2)]
+  return node.text:find "^\\%l" and italic(sign) or sign, ATOM
+end
+function marked.dot(node) return italic((plain.dot(node, renderer(plain, no_names)))), ATOM end
+
+function marked.label(node)
+  local parts = {}
+  for i, part in ipairs(node) do
+    parts[i] = part.kind == "raised" and "^{" .. renderer(plain, no_names)(part[1]) .. "}" or part.kind == "greek" and greek[part.text:sub(2)] or part.text
+  end
+  return table.concat(parts), ATOM
+end
+
+function marked.scripts(node, render)
+  local base, binds = render(node[1])
+  base = bracketed(base, binds, ATOM)
+  local below = node.below and "_{" .. render(node.below) .. "}" or ""
+  if not node.above then return base .. below, ATOM end
+  local above = "^{" .. render(node.above) .. "}"
+  return base .. (below ~= "" and "@" or "") .. above .. below, TIGHT
+end
+
+function equation.marked_symbol(tex) return symbol(marked, tex) end
 
 -- TeX.
 

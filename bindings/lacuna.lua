@@ -15,8 +15,15 @@ local lacuna = {
   chance = core.chance, undefined = core.undefined, lowest = core.lowest, highest = core.highest,
   above = core.above, below = core.below, both = core.both, either = core.either, least = core.least, greatest = core.greatest,
   sqrt = core.sqrt, abs = core.abs, exp = core.exp, log = core.log, log10 = core.log10, sin = core.sin, cos = core.cos, tan = core.tan,
-  along = core.along, show = core.part "lacuna.show".show, more = core.part "lacuna.show".more, band = core.band,
+  along = core.along, more = core.part "lacuna.show".more, band = core.band,
 }
+
+-- show(value, ...): the text of values as the prompt writes them. show(figure) draws it.
+function lacuna.show(...)
+  local first = ...
+  if type(first) == "table" and (getmetatable(first) or {}).__name == "figure" then return core.part "lacuna.figure".show(first) end
+  return core.part "lacuna.show".show(...)
+end
 
 -- Methods of quantities, with every summary among them.
 local methods = {
@@ -110,7 +117,7 @@ lacuna.sweep = words_of("sweep", { log = core.sweep_log }, function(_, ...) retu
 
 -- Parts that many runs don't need are loaded when they are first asked for.
 later = {
-  again = "lacuna.notebook", compare = "lacuna.compare", dust = "lacuna.dust", glossary = "lacuna.glossary", help = "lacuna.help",
+  again = "lacuna.notebook", compare = "lacuna.compare", dust = "lacuna.dust", figure = "lacuna.figure", glossary = "lacuna.glossary", help = "lacuna.help",
   keep = "lacuna.notebook", material = "lacuna.dust", recipes = "lacuna.recipes", study = "lacuna.study",
 }
 

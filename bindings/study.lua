@@ -17,7 +17,7 @@ local text = core.part "lacuna.text"
 
 local study_fields = {
   title = "string", targets = "any", given = "table", ask = "table", also = "table", variants = "table", using = "table", sort = "any", where = "table",
-  csv = "string", latex = "string",
+  figures = "table", csv = "string", latex = "string",
 }
 local variant_fields = { name = "string", given = "table", ask = "table", also = "table", using = "table" }
 
@@ -259,6 +259,7 @@ local function make(fields)
   local study = setmetatable({
     title = plan.title, texts = list.texts, groups = plan.groups, columns = plan.columns, hidden = plan.hidden, set = plan.set, sweeps = plan.set.sweeps,
     rows = command.shard and rows or selection.apply(plan, rows), plan = plan,
+    figures = fields.figures,
   }, study_metatable)
   study.notes = core.part "lacuna.notes".of(study)
   return study, result

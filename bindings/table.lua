@@ -233,6 +233,7 @@ local function csv_line(fields)
 end
 
 local function digits(value) return value and value == value and ("%.7g"):format(value) or "" end
+tables.csv_line, tables.digits = csv_line, digits -- for figures too
 
 -- The points of a grid over sweeps, the last running fastest: each a list of places, one a sweep.
 local function grid_of(sweeps)

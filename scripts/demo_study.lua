@@ -28,6 +28,15 @@ study {
     { name = "planet at 30 au", given = { planet_semi_major_axis = "30 au" }, ask = gap },
   },
 
+  -- What to draw for the report. help "figure" tells what else can be drawn; a target is named by target = "Marrow 3", else it is the first.
+  figures = {
+    { show = "rim_size_angle", against = "stellar_luminosity", verdict = "rim_resolved_by_array", title = "Rims on the sky, and what two baselines resolve",
+      lines = { { show = "array_resolution", label = "200 m" }, { show = "array_resolution", given = { projected_baseline = "100 m" }, label = "100 m" } } },
+    { show = "rim_elements_by_array", along = { projected_baseline = sweep("20 m", "200 m", 40) }, title = "The rim of one star by baseline" },
+    { variant = "planet at 5 au", show = "gap_resolved_by_array", title = "Which planets' gaps are resolved around one star",
+      along = { planet_semi_major_axis = sweep.log("1 au", "40 au", 24), planet_mass = sweep.log("0.3 Mjup", "10 Mjup", 24) }, x = "planet_semi_major_axis" },
+  },
+
   -- csv = "rims_and_gaps.csv",    -- the same as a file of numbers,
   -- latex = "rims_and_gaps.tex",  -- and as a table for the proposal
 }

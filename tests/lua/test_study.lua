@@ -168,7 +168,7 @@ t.test("a study that is not one", function()
   complains({ targets = one, ask = { "plx" } }, "study: ask: unknown name 'plx'; it is called parallax here")
   complains({ targets = one, ask = { "parallax", "parallax" } }, "study: ask: parallax is asked twice")
   complains({ targets = one, ask = { "band" } }, "study: ask: band is an object; there is nothing to derive")
-  complains({ targets = one, ask = { "parallax" }, variant = {} }, "study: there is no 'variant' here; there are also, ask, csv, given, latex, sort, targets, title, using, variants, where")
+  complains({ targets = one, ask = { "parallax" }, variant = {} }, "study: there is no 'variant' here; there are also, ask, csv, figures, given, latex, sort, targets, title, using, variants, where")
   complains({ targets = one, ask = { "parallax" }, given = { stellar_mass = "3 pc" } }, "study: stellar_mass wants a mass (in Msun); got 3 pc")
   complains({ targets = one, ask = { "parallax" }, given = { stellar_mass = lacuna.sweep("1 Msun", "2 Msun", 3) } },
     "study: stellar_mass wants one value or an error bar in a study, not one along stellar_mass; make it variants")

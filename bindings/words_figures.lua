@@ -1,0 +1,86 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- The words for figures. words.lua says what the fields are.
+local elements = 'f = figure{of = case{rim_radius = "0.3 au", distance = "140 ± 5 pc", wavelength = "1.65 um"}, show = "rim_elements_by_array", along = {projected_baseline = sweep("20 m", "200 m", 10)}}'
+
+return {
+  {
+    name = "figure", subject = "report", forms = {
+      "figure{of = case, show = name, along = {name = sweep}, ...}", "figure{of = study, show = name, against = name, lines = {...}, ...}",
+      "figure{kind = \"spectrum\", of = case, bands = {\"H\", \"N\"}, ...}", "figure{kind = \"visibility\", of = case, each = {wavelength = {...}}, ...}", "figure(study)",
+    },
+    does = "A figure: a curve with its bands along a sweep, a map over two, targets on a plane. A verdict is shown as its share of the draws, a quantity as its median with the central 68 and 95 %. show(f) draws it, f:write(\"name\") writes it for a proposal. figure(study) is the list of those in the study's field figures = {{...}, ...}, which take the same fields but of.",
+    arguments = {
+      { "of", "a case, or a study" },
+      { "show", "a name, or a list of names of one dimension" },
+      { "along", "one sweep for a curve, two for a map, like {projected_baseline = sweep(\"20 m\", \"330 m\", 100)}; or the case has them" },
+      { "against", "the name that goes to the right, where the targets of a study are shown" },
+      { "each", "a curve for each value of a given: {wavelength = {\"1.65 um\", \"2.2 um\"}}" },
+      { "level", "a line across: a name, or a value; if left out what the verdicts want of the quantity; false for none" },
+      { "verdict", "on a map, whose turning to draw (if left out that of what is shown); on a plane, which targets to fill" },
+      { "lines", "on a plane, a list of {show = name or function of a case, given = {...}, of = case, label = text}: what the study's common givens, swept along the plane, make of it" },
+      { "bands", "spectral bands to mark along wavelength" },
+      { "kind", "spectrum (star, rim, disc, total) or visibility (of the rim, along the baseline), with what is usual filled in" },
+      { "target, variant", "of a study, whose case; the first and the plain one if left out" },
+      { "x", "of two sweeps the one that goes to the right" },
+      { "log", "which axes are logarithmic, \"x\", \"y\", \"xy\" or \"\"; if left out those of sweeps in equal ratios and of results that span more than a factor of 30" },
+      { "title, name", "what it is called, and its files" },
+      { "width", "\"single\" (86 mm) or \"double\" (178 mm)" },
+    },
+    result = "a figure: f:write, f:svg, f:csv, f:caption, f:alternative, f:script, f:text",
+    errors = "an unknown field or name, names of different dimensions on one axis, no sweep or more than two, no target of that name",
+    examples = { { elements, "f" } },
+    answers = { "figure: rim elements by array along projected baseline; show(f) draws it, f:write(\"name\") writes it" },
+  },
+  {
+    name = "write", of = "figure", subject = "report", forms = { 'f:write("folder/name")' },
+    does = "Writes folder/name.pdf, .svg and .png by gnuplot, the numbers as .csv and gnuplot's script as .gp. Without gnuplot the last two alone, and says so. Running it again gives the same bytes; a PDF bears a date only where SOURCE_DATE_EPOCH says which.",
+    arguments = { { "folder/name", "the files' name without ending, in a folder that exists" } },
+    result = "the list of the files' names",
+    errors = "a folder that doesn't exist or can't be written",
+    examples = { { elements, "f:write(os.tmpname())[1]:match \"[a-z]*$\"" } },
+    answers = { '"csv"' },
+  },
+  {
+    name = "svg", of = "figure", subject = "report", forms = { "f:svg()" },
+    does = "The picture as SVG to stand inside a page, with ids of its own, a title and a description; nothing and why where gnuplot can't be run.",
+    result = "a text",
+    examples = { { elements, 'f:svg():match "<title.->(.-)</title>"' } },
+    answers = { '"rim elements by array along projected baseline"' },
+  },
+  {
+    name = "csv", of = "figure", subject = "report", forms = { "f:csv()" },
+    does = "The numbers behind the figure, with units in the header.",
+    result = "a text",
+    examples = { { elements, 'f:csv():match "[^,]*"' } },
+    answers = { '"projected_baseline [m]"' },
+  },
+  {
+    name = "caption", of = "figure", subject = "report", forms = { "f:caption()" },
+    does = "A caption: what is shown, of how many draws, and what was given.",
+    result = "a text",
+    examples = { { elements, "f:caption()" } },
+    answers = { '"Rim elements by array n_rim,arr along projected baseline B. Lines: medians; bands: the central 68 and 95 % of 10000 draws, seed 0. Dashed: elements required = 1. Given: distance = 140 ± 5 pc, wavelength = 1.65 µm, rim radius = 0.3 au."' },
+  },
+  {
+    name = "alternative", of = "figure", subject = "report", forms = { "f:alternative()" },
+    does = "The figure in one sentence, for those who don't see it: its ranges, and where a verdict turns.",
+    result = "a text",
+    examples = { { elements, "f:alternative()" } },
+    answers = { '"Curve along projected baseline: the median rim elements by array rises from 0.504 at 20 m to 5.04 at 200 m, passes elements required = 1 at 39.7 m."' },
+  },
+  {
+    name = "script", of = "figure", subject = "report", forms = { "f:script()", "f:script(name)" },
+    does = "The script by which gnuplot draws the figure, with the numbers inside, for changes by hand.",
+    result = "a text",
+    examples = { { elements, 'f:script():match "[^,]*"' } },
+    answers = { '"# Made by Lacuna"' },
+  },
+  {
+    name = "text", of = "figure", subject = "report", forms = { "f:text()", "f:text(columns, lines)" },
+    does = "The figure in block characters, as show(f) draws it on a terminal.",
+    arguments = { { "columns, lines", "how large; the terminal's width and 18 if left out" } },
+    result = "a text",
+    examples = { { elements, 'f:text():match "[^\\n]*"' } },
+    answers = { '"rim elements by array along projected baseline"' },
+  },
+}
