@@ -20,8 +20,8 @@ LUA_CFLAGS = -I/usr/include/lua5.4
 LUA_LIBS = -llua5.4
 CFLAGS = -g
 # In the program, what would take a millisecond to load each time is linked statically; where there are only shared libraries:
-# make STATIC_LIBS='-lreadline -lcsv -lgsl -lgslcblas'
-STATIC_LIBS = -l:libreadline.a -l:libtinfo.a -l:libcsv.a -l:libgsl.a -l:libgslcblas.a -l:libgomp.a
+# make STATIC_LIBS='-lreadline -lcsv -lnettle -lgsl -lgslcblas'
+STATIC_LIBS = -l:libreadline.a -l:libtinfo.a -l:libcsv.a -l:libnettle.a -l:libgsl.a -l:libgslcblas.a -l:libgomp.a
 
 build = build
 demo = scripts/demo_study.lua
@@ -48,7 +48,7 @@ link = $(CC) -fopenmp $(sanitizers) $(CFLAGS) $(LDFLAGS) -Wl,--as-needed
 share = $(link) -shared -Wl,-z,nodelete -Wl,-z,relro
 
 core_libs = -lgsl -lgslcblas -lm
-module_libs = -lcsv $(core_libs)
+module_libs = -lcsv -lnettle $(core_libs)
 program_libs = $(LUA_LIBS) $(STATIC_LIBS) -lm
 
 # ---- Files ----

@@ -49,6 +49,8 @@ int luaopen_lacuna(lua_State *L) {
   lac_open_solve(L);
   lac_open_csv(L);
   lac_open_output(L);
+  lac_open_digest(L);
+  lac_open_fits(L);
   lua_pushvalue(L, -1);
   lua_pushcclosure(L, load_part, 1);
   lua_pushvalue(L, -1);

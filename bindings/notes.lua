@@ -102,6 +102,8 @@ local function relations_used(study)
   return in_order
 end
 
+notes.relations_used = relations_used
+
 -- The notes ---------------------------------------------------------------------------------------------------------------------------
 
 local function not_derived(study)

@@ -1,5 +1,6 @@
 /* SPDX-License-Identifier: GPL-3.0-or-later */
-/* Where output goes: files that are whole or absent, and the width of the terminal. */
+/* Where output goes: files that are whole or absent, folders, and the width of the terminal. */
+#include <dirent.h>
 #include <errno.h>
 #include <fcntl.h>
 #include <limits.h>
@@ -81,7 +82,50 @@ static int terminal_width(lua_State *L) {
   return 1;
 }
 
+/* make_folder(path): true where it was made, false where it was there. */
+static int make_folder(lua_State *L) {
+  const char *path = luaL_checkstring(L, 1);
+  struct stat present;
+  const bool made = mkdir(path, 0777) == 0;
+  const int trouble = made ? 0 : errno;
+  if (!made && (trouble != EEXIST || stat(path, &present) != 0 || !S_ISDIR(present.st_mode)))
+    return lac_error(L, "cannot make the folder %s: %s", path, strerror(trouble));
+  lua_pushboolean(L, made);
+  return 1;
+}
+
+static int folder_finalise(lua_State *L) {
+  DIR **folder = lua_touserdata(L, 1);
+  if (*folder != NULL) closedir(*folder);
+  *folder = NULL;
+  return 0;
+}
+
+/* entries_of(path): the names in a folder, in no order; nil where there is no such folder. */
+static int entries_of(lua_State *L) {
+  const char *path = luaL_checkstring(L, 1);
+  DIR **folder = lua_newuserdatauv(L, sizeof *folder, 0);
+  *folder = NULL;
+  lua_createtable(L, 0, 1);
+  lua_pushcfunction(L, folder_finalise), lua_setfield(L, -2, "__gc");
+  lua_setmetatable(L, -2);
+  *folder = opendir(path);
+  if (*folder == NULL) return 0;
+  lua_newtable(L);
+  lua_Integer count = 0;
+  for (const struct dirent *entry; (entry = readdir(*folder)) != NULL;) {
+    if (strcmp(entry->d_name, ".") == 0 || strcmp(entry->d_name, "..") == 0) continue;
+    lua_pushstring(L, entry->d_name);
+    lua_rawseti(L, -2, ++count);
+  }
+  return 1;
+}
+
 void lac_open_output(lua_State *L) {
-  static const luaL_Reg functions[] = {{"write_file", write_file}, {"terminal_width", terminal_width}, {NULL, NULL}};
+  static const luaL_Reg functions[] = {
+      {"write_file", write_file}, {"make_folder", make_folder}, {"entries_of", entries_of}, {"terminal_width", terminal_width}, {NULL, NULL},
+  };
   luaL_setfuncs(L, functions, 0);
+  lua_pushliteral(L, LAC_VERSION);
+  lua_setfield(L, -2, "version");
 }

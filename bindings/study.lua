@@ -15,7 +15,7 @@ local WIDTH = 100 -- of the output where no terminal says otherwise
 
 -- What is asked --------------------------------------------------------------------------------------------------------------------
 
-local study_fields = { title = "string", targets = "any", given = "table", ask = "table", variants = "table", using = "table", csv = "string", latex = "string" }
+local study_fields = { title = "string", targets = "any", given = "table", ask = "table", variants = "table", using = "table", csv = "string", latex = "string", derive = "string" }
 local variant_fields = { name = "string", given = "table", ask = "table", using = "table" }
 
 local function check_fields(fields, allowed, what)
@@ -247,6 +247,8 @@ function study_metatable.__tostring(study) return ("study of %d target%s, %d col
 function study_metatable.__index.table(study, columns) return tables.text(study, columns or core.terminal_width() or WIDTH) end
 function study_metatable.__index.csv(study) return tables.csv(study) end
 function study_metatable.__index.latex(study) return tables.latex(study) end
+-- s:report(folder): writes the report and returns what was written, which prints itself.
+function study_metatable.__index.report(study, folder, facts) return core.part "lacuna.report".write(study, folder, facts or study.facts) end
 
 local function run(fields)
   check_fields(fields, study_fields, "study")
@@ -262,7 +264,7 @@ local function run(fields)
     if i % COLLECT_AFTER == 0 then collectgarbage() end
   end
   refuse_emptiness(columns, rows)
-  local study = { title = fields.title, texts = list.texts, groups = groups, columns = columns, rows = rows, collect_after = COLLECT_AFTER }
+  local study = { facts = { inputs = type(fields.targets) == "string" and { find_file(fields.targets) } or {} }, derive = fields.derive, title = fields.title, texts = list.texts, groups = groups, columns = columns, rows = rows, collect_after = COLLECT_AFTER }
   study.notes = core.part "lacuna.notes".of(study)
   return setmetatable(study, study_metatable)
 end

@@ -1,5 +1,5 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
--- Tables of results as aligned text, CSV and LaTeX (booktabs). A table is
+-- Tables of results as aligned text, CSV, Markdown and LaTeX (booktabs). A table is
 --
 --   { title = text or nil, texts = { headers of the texts carried along }, columns = {...}, rows = {...}, notes = {...} }
 --
@@ -28,6 +28,8 @@ local function wrapped(text, columns)
   lines[#lines + 1] = line
   return lines
 end
+
+tables.wrapped = wrapped
 
 -- A name or text from a file may have line breaks.
 local function on_one_line(text) return (text:gsub("%s+", " ")) end
@@ -196,31 +198,95 @@ local function csv_line(fields)
   return table.concat(fields, ",")
 end
 
-local function digits(value) return value and value == value and ("%.7g"):format(value) or "" end
+-- What VOUnits and the FITS standard have no unit for, in the nearest that they have.
+local standard_units = { Msun = { "solMass" }, Rsun = { "solRad" }, Lsun = { "solLum" }, Mjup = { "solMass" }, Mearth = { "solMass" }, Rjup = { "solRad" }, Rearth = { "solRad" } }
 
--- One line a target: its texts, then a value, an upper and a lower error a column, or the share of a verdict.
-function tables.csv(whole)
-  local header = { "name", table.unpack(whole.texts) }
-  for _, column in ipairs(whole.columns) do
-    local name = (column.group and column.group .. " " or "") .. column.name
-    local unit = column.unit == "1" and "" or " [" .. column.unit .. "]"
-    if column.verdict then header[#header + 1] = name .. " share"
+-- A unit as VOUnits has it, and how many of these one of it is: 1 Msun/yr is 1 solMass/yr.
+local function standard_unit(unit)
+  local written = unit:gsub("%a+", function(word) return standard_units[word] and standard_units[word][1] end)
+  return written, core.unit_facts(unit) / core.unit_facts(written)
+end
+
+-- A cell's value, upper and lower error as texts.
+local function number_fields(cell, scale)
+  if cell.missing then return "", "", "" end
+  if not cell.upper then return ("%.7g"):format(cell.value * scale), "", "" end
+  return format.rounded(cell.value * scale, cell.upper * scale, cell.lower * scale)
+end
+
+-- The columns of a file of numbers: each { name, group, part = what it is of the column ("" for its value), unit in VOUnits or nil, texts = true
+-- of texts, column (none of names and texts), and one text a row }. A verdict has its words and its share of the draws.
+function tables.fields(whole)
+  local fields = {}
+  local function add(field) fields[#fields + 1] = field return field end
+  local names = add { name = "name", texts = true }
+  for i, row in ipairs(whole.rows) do names[i] = row.name end
+  for _, text in ipairs(whole.texts) do
+    local field = add { name = text, texts = true }
+    for i, row in ipairs(whole.rows) do field[i] = row.texts[text] or "" end
+  end
+  for number, column in ipairs(whole.columns) do
+    local function part(what, unit, texts) return add { name = column.name, group = column.group, part = what, unit = unit, texts = texts, column = column } end
+    if column.verdict then
+      local words, share = part("verdict", nil, true), part("share", nil)
+      for i, row in ipairs(whole.rows) do
+        local cell = row.cells[number]
+        words[i], share[i] = cell.missing and "" or cell_text(cell), cell.share and ("%.7g"):format(cell.share) or ""
+      end
     else
-      for _, what in ipairs { "", " upper error", " lower error" } do header[#header + 1] = name .. what .. unit end
+      local unit, scale
+      if column.unit == "1" then scale = 1 else unit, scale = standard_unit(column.unit) end
+      local value, upper, lower = part("", unit), part("upper error", unit), part("lower error", unit)
+      for i, row in ipairs(whole.rows) do value[i], upper[i], lower[i] = number_fields(row.cells[number], scale) end
     end
   end
-  local lines = { csv_line(header) }
+  return fields
+end
+
+-- One line a target: its texts, then a value, an upper and a lower error a column, or the words and the share of a verdict.
+function tables.csv(whole)
+  local fields, lines, header = tables.fields(whole), {}, {}
+  for i, field in ipairs(fields) do
+    header[i] = (field.group and field.group .. " " or "") .. field.name .. (field.part and field.part ~= "" and " " .. field.part or "") ..
+      (field.unit and " [" .. field.unit .. "]" or "")
+  end
+  lines[1] = csv_line(header)
+  for row = 1, #whole.rows do
+    local cells = {}
+    for i, field in ipairs(fields) do cells[i] = field[row] end
+    lines[row + 1] = csv_line(cells)
+  end
+  return table.concat(lines, "\n") .. "\n"
+end
+
+-- Markdown --------------------------------------------------------------------------------------------------------------------------
+
+local function markdown_cell(text) return (on_one_line(text):gsub("[\\|`*_<>%[%]]", "\\%0")) end
+
+-- A pipe table, as most readers of Markdown show it; group and unit stand in the headings.
+function tables.markdown(whole)
+  local function line(cells) return "| " .. table.concat(cells, " | ") .. " |" end
+  local headings, rules, lines = { "Star" }, { "---" }, {}
+  for _, text in ipairs(whole.texts) do headings[#headings + 1], rules[#rules + 1] = markdown_cell(text), "---" end
+  for _, column in ipairs(whole.columns) do
+    local words = (column.group and column.group .. ": " or "") .. column.name:gsub("_", " ") .. (column.unit_text ~= "" and " (" .. column.unit_text .. ")" or "")
+    headings[#headings + 1], rules[#rules + 1] = markdown_cell(words), "---:"
+  end
+  if whole.title then lines[1] = "**" .. markdown_cell(whole.title) .. "**\n" end
+  lines[#lines + 1] = line(headings)
+  lines[#lines + 1] = line(rules)
   for _, row in ipairs(whole.rows) do
-    local fields = { row.name }
-    for _, text in ipairs(whole.texts) do fields[#fields + 1] = row.texts[text] or "" end
-    for i, column in ipairs(whole.columns) do
-      local cell = row.cells[i]
-      if column.verdict then fields[#fields + 1] = digits(cell.share)
-      else
-        for _, part in ipairs { "value", "upper", "lower" } do fields[#fields + 1] = digits(cell[part]) end
-      end
+    local cells = { markdown_cell(row.name) }
+    for _, text in ipairs(whole.texts) do cells[#cells + 1] = markdown_cell(row.texts[text] or "") end
+    for _, cell in ipairs(row.cells) do cells[#cells + 1] = cell_text(cell) end
+    lines[#lines + 1] = line(cells)
+  end
+  for _, note in ipairs(whole.notes) do
+    lines[#lines + 1] = "\n**" .. markdown_cell(note.heading) .. "**\n"
+    for _, one in ipairs(note.lines) do
+      lines[#lines + 1] = "- " .. markdown_cell(type(one) == "string" and one or one[1])
+      for i = 2, type(one) == "table" and #one or 0 do lines[#lines + 1] = "  - " .. markdown_cell(one[i]) end
     end
-    lines[#lines + 1] = csv_line(fields)
   end
   return table.concat(lines, "\n") .. "\n"
 end
@@ -247,6 +313,8 @@ local function escaped(text)
   text = on_one_line(text):gsub("[\\{}$&#%%_~^<>]", special):gsub("^[%[*]", "{%0}")
   return (text:gsub(utf8.charpattern, function(character) return #character > 1 and beyond_ascii[character] or nil end))
 end
+
+tables.escaped_tex = escaped
 
 local function cell_tex(cell)
   if cell.missing then return "---" end

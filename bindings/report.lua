@@ -1,0 +1,168 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- The report: a folder with all that a proposal takes from a study. Every file is whole or absent; the page and the manifest are written last,
+-- so a folder with a manifest is a whole report. The same study gives the same bytes: no times, no machine and no paths stand in it.
+--
+--   write(study, folder, facts)   facts = { study_file = path, inputs = { paths }, command = { words }, seed, draws }: all may be left out.
+--                                 Returns { folder, files = { names }, missing = { what could not be written, and why } }, which prints itself.
+local core = ...
+local bibliography = core.part "lacuna.bibliography"
+local derivation = core.part "lacuna.derivation"
+local document = core.part "lacuna.document"
+local feasibility = core.part "lacuna.feasibility"
+local manifest = core.part "lacuna.manifest"
+local tables = core.part "lacuna.table"
+
+local report = {}
+
+-- Files ------------------------------------------------------------------------------------------------------------------------------
+
+local writer = {}
+writer.__index = writer
+
+local function new_writer(folder) return setmetatable({ folder = folder, files = {}, missing = {} }, writer) end
+
+function writer.path(self, name) return self.folder .. "/" .. name end
+
+-- Notes a file of the report for the manifest.
+function writer.add(self, name, content) self.files[#self.files + 1] = { name = name, digest = core.sha256(content) } end
+
+function writer.write(self, name, content)
+  core.write_file(self:path(name), content)
+  self:add(name, content)
+end
+
+local function read(path)
+  local file, trouble = io.open(path, "rb")
+  if not file then core.raise("cannot open " .. trouble) end
+  local content
+  content, trouble = file:read "a"
+  file:close()
+  if not content then core.raise(("cannot read %s: %s"):format(path, trouble)) end
+  return content
+end
+
+local function base_name(path) return path:match "[^/]*$" end
+
+-- Inputs ------------------------------------------------------------------------------------------------------------------------------
+
+-- Where an input stands in the report: as it stands beside the study's file, so that the copy of the study finds it.
+local function place_of(path, study_file, taken)
+  local folder = study_file and study_file:match "^(.*/)" or ""
+  local inside = path:sub(1, #folder) == folder and path:sub(#folder + 1) or path
+  if inside:find "^/" or inside:find "%.%./" or inside:find "^%./" then inside = base_name(path) end
+  local place, number = inside, 1
+  while taken[place] do
+    number = number + 1
+    place = number .. "_" .. inside
+  end
+  taken[place] = true
+  return place
+end
+
+-- The study's file and what it reads: { name, content, is_study }.
+local function read_inputs(facts)
+  local inputs, taken = {}, {}
+  local function take(path, is_study)
+    inputs[#inputs + 1] = { name = "inputs/" .. place_of(path, facts.study_file, taken), content = read(path), is_study = is_study }
+  end
+  if facts.study_file then take(facts.study_file, true) end
+  for _, path in ipairs(facts.inputs or {}) do take(path, false) end
+  return inputs
+end
+
+local function write_inputs(out, inputs)
+  if #inputs > 0 then core.make_folder(out:path "inputs") end
+  for _, input in ipairs(inputs) do
+    local folder = out.folder
+    for part in input.name:gmatch "([^/]+)/" do
+      folder = folder .. "/" .. part
+      core.make_folder(folder)
+    end
+    out:write(input.name, input.content)
+  end
+end
+
+-- Tables ------------------------------------------------------------------------------------------------------------------------------
+
+local function write_tables(out, study, facts)
+  out:write("table.csv", tables.csv(study))
+  out:write("table.md", tables.markdown(study))
+  out:write("table.tex", tables.latex(study))
+  local bytes, trouble = core.part "lacuna.fits_table".of(study, facts)
+  facts.has_fits = bytes ~= nil
+  if bytes then out:write("table.fits", bytes) else out.missing[#out.missing + 1] = "table.fits: " .. trouble end
+end
+
+-- Figures -----------------------------------------------------------------------------------------------------------------------------
+
+-- The figures' files, and for the page and the document what each is: { svg, caption, alternative, file }. Where one can't be drawn, the
+-- report goes on without it.
+local function write_figures(out, study)
+  local drawn = {}
+  if #(study.figures or {}) == 0 then return drawn end
+  core.make_folder(out:path "figures")
+  for number, figure in ipairs(study.figures) do
+    local stem = "figures/figure_" .. number
+    local ok, trouble = pcall(function()
+      local one = { svg = figure:svg(), caption = figure:caption(), alternative = figure:alternative(), stem = stem }
+      figure:write(out:path(stem))
+      drawn[#drawn + 1] = one
+    end)
+    if not ok then out.missing[#out.missing + 1] = ("figure %d: %s"):format(number, tostring(trouble)) end
+  end
+  local names = core.entries_of(out:path "figures") or {}
+  table.sort(names)
+  for _, name in ipairs(names) do out:add("figures/" .. name, read(out:path("figures/" .. name))) end
+  return drawn
+end
+
+-- The whole -----------------------------------------------------------------------------------------------------------------------------
+
+local function remove_mark(out)
+  for _, name in ipairs { "manifest.txt", "index.html" } do os.remove(out:path(name)) end
+end
+
+local function complete(facts)
+  local settings, inputs = core.settings(), read_inputs(facts)
+  local date, fixed = manifest.date()
+  local whole = { date = date, date_fixed = fixed, seed = facts.seed or settings.seed, draws = facts.draws or settings.draws, version = core.version, inputs = inputs }
+  for _, input in ipairs(inputs) do if input.is_study then whole.script = input.name end end
+  whole.command = manifest.command(facts.command, whole.script)
+  return whole
+end
+
+local function write_all(out, study, facts)
+  local row, chains = derivation.of_study(study)
+  local cited, composed = bibliography.new(), feasibility.of(study, facts)
+  core.make_folder(out.folder)
+  remove_mark(out)
+  write_inputs(out, facts.inputs)
+  write_tables(out, study, facts)
+  local drawn = write_figures(out, study)
+  out:write("feasibility.txt", feasibility.plain(composed))
+  out:write("feasibility.tex", feasibility.tex(composed, cited))
+  out:write("derivations.tex", document.derivations(row, chains, cited))
+  out:write("references.bib", cited:bibtex())
+  out:write("report.tex", document.whole(study.title or "Report of a study", drawn, facts.date))
+  local page = core.part "lacuna.page".of(study, { facts = facts, row = row, chains = chains, composed = composed, figures = drawn, missing = out.missing })
+  out:write("index.html", page)
+  core.write_file(out:path "manifest.txt", manifest.text(facts, out.files))
+end
+
+local written_metatable = { __name = "report" }
+function written_metatable.__tostring(written)
+  local lines = { ("report in %s: %d files; open %s/index.html"):format(written.folder, #written.files, written.folder) }
+  for _, missing in ipairs(written.missing) do lines[#lines + 1] = "  left out: " .. missing end
+  return table.concat(lines, "\n")
+end
+
+function report.write(study, folder, facts)
+  local out = new_writer((folder:gsub("(.)/+$", "%1")))
+  write_all(out, study, complete(facts or {}))
+  local names = {}
+  for i, file in ipairs(out.files) do names[i] = file.name end
+  names[#names + 1] = "manifest.txt"
+  return setmetatable({ folder = out.folder, files = names, missing = out.missing }, written_metatable)
+end
+
+return report
