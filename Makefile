@@ -54,7 +54,7 @@ program_libs = $(LUA_LIBS) $(STATIC_LIBS) -lm
 # ---- Files ----
 
 core_sources = $(wildcard core/*.c)
-program_sources = bindings/program.c bindings/options.c bindings/interrupt.c bindings/repl.c
+program_sources = bindings/program.c bindings/options.c bindings/interrupt.c bindings/repl.c bindings/workers.c
 module_sources = $(filter-out $(program_sources),$(wildcard bindings/*.c))
 lua_sources = $(wildcard bindings/*.lua)
 test_sources = $(wildcard tests/test_*.c)

@@ -4,6 +4,7 @@
 #include <string.h>
 
 #include "binding.h"
+#include "nearest.h"
 
 static void set_string(lua_State *L, const char *key, const char *text) {
   if (text == NULL) return;
@@ -325,9 +326,15 @@ static int catalogue_add_relation(lua_State *L) {
   return status == LAC_OK ? 0 : raise_from_adding(L, status, &row);
 }
 
+/* edits(a, b): how many slips of the finger make one word of the other. */
+static int word_edits(lua_State *L) {
+  lua_pushinteger(L, lac_edits(luaL_checkstring(L, 1), luaL_checkstring(L, 2)));
+  return 1;
+}
+
 void lac_open_catalogue(lua_State *L) {
   static const luaL_Reg functions[] = {
-      {"find", catalogue_find}, {"nearest", catalogue_nearest}, {"names", catalogue_names}, {"entry", catalogue_entry}, {"row", catalogue_row}, {"bounds", catalogue_bounds}, {"given_like", catalogue_given_like},
+      {"find", catalogue_find}, {"edits", word_edits}, {"nearest", catalogue_nearest}, {"names", catalogue_names}, {"entry", catalogue_entry}, {"row", catalogue_row}, {"bounds", catalogue_bounds}, {"given_like", catalogue_given_like},
       {"source", catalogue_source}, {"add_name", catalogue_add_name}, {"add_relation", catalogue_add_relation}, {NULL, NULL},
   };
   luaL_setfuncs(L, functions, 0);

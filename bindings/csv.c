@@ -107,15 +107,17 @@ static void parse(lua_State *L, reader *r, const char *name, const char *text, s
     lac_error(L, "%s:%I: malformed CSV: a quoted field of the row that starts here is never closed", name, r->row_line);
 }
 
-/* read_csv(path, name): a list of rows, each a list of texts with `line` = where it starts. Errors call the file by name. */
+/* read_csv(path, name, text): a list of rows, each a list of texts with `line` = where it starts. Errors call the file by name. The text, if
+   it is given, stands for the file's. */
 static int read_csv(lua_State *L) {
   enum { READER = 3, TEXT, ROWS };           /* places on the stack; the open row, while there is one, is above them */
   static const char mark[] = "\xEF\xBB\xBF"; /* of UTF-8; some programs write it */
   const char *path = luaL_checkstring(L, 1), *name = luaL_optstring(L, 2, path);
-  lua_settop(L, 2);
+  lua_settop(L, 3);
   reader *r = push_reader(L);
   r->L = L;
-  push_text(L, r, path, name);
+  lua_insert(L, READER);
+  if (!lua_isstring(L, TEXT)) lua_pop(L, 1), push_text(L, r, path, name);
   lua_newtable(L);
   r->list = ROWS;
   size_t length;

@@ -104,8 +104,22 @@ local function mapped(list, f)
   return items
 end
 
--- The derivations, what they assume, the recipes, and what others would have given.
-function document.derivations(row, chains, cited)
+-- Notes on all targets, but those that stand here with their citations.
+local shown_otherwise = { Assumed = true, Recipes = true }
+
+local function add_notes(lines, notes)
+  for _, note in ipairs(notes) do
+    if not shown_otherwise[note.heading] then
+      add_list(lines, escaped(note.heading), mapped(note.lines, function(line)
+        if type(line) == "string" then return escaped(verdicts.words_of(line)) end
+        return escaped(verdicts.words_of(line[1] .. ": " .. table.concat(line, "; ", 2)))
+      end))
+    end
+  end
+end
+
+-- The derivations for one target, what they assume, the recipes, what others would have given; and the study's notes on all targets.
+function document.derivations(study, row, chains, cited)
   local lines, seen = { "\\section*{Derivations for " .. escaped(row.name) .. "}" }, {}
   for _, one in ipairs(chains) do add_chain(lines, one, seen, cited) end
   add_list(lines, "Assumptions", mapped(derivation.assumptions(chains), function(step)
@@ -118,13 +132,14 @@ function document.derivations(row, chains, cited)
     return ("%s%s with %s by %s instead of %s: %s."):format(found.column.group and escaped(found.column.group) .. ": " or "", words(found.chain.name),
       words(other.name), recipe_tex(other.row, cited), words(other.instead_of), escaped(other.value))
   end), "What is given allows no other recipe.")
+  add_notes(lines, study.notes)
   return table.concat(lines, "\n") .. "\n"
 end
 
 -- The document that takes the parts in.
 function document.whole(title, figures, date)
   local lines = {
-    "\\documentclass[10pt,a4paper]{article}", "\\usepackage[T1]{fontenc}", "\\usepackage[utf8]{inputenc}", "\\usepackage{booktabs}",
+    "\\documentclass[10pt,a4paper]{article}", "\\usepackage[utf8]{inputenc}", "\\usepackage{booktabs}",
   }
   if #figures > 0 then lines[#lines + 1] = "\\usepackage{graphicx}" end
   local function add(line) lines[#lines + 1] = line end

@@ -117,6 +117,19 @@ static int quantity_store(lua_State *L) {
   return 1;
 }
 
+/* detached(q): the same quantity; what is stored for it is not stored for q, and goes with it. For the Lua side. */
+static int quantity_detached(lua_State *L) {
+  const lac_quantity *quantity = lac_check_bound(L, 1, "detached");
+  lua_settop(L, 1);
+  if (quantity->value == NULL) return 1;
+  lac_quantity *copy = lac_push_empty(L, quantity->dimension, quantity->unit, quantity->name);
+  const lac_range all = {-INFINITY, INFINITY, true, true};
+  const lac_status status = lac_value_clipped(quantity->value, all, &copy->value);
+  if (status == LAC_TOO_MANY) lua_settop(L, 1); /* an expression as deep as may be: stored for both */
+  else lac_state_end(L, status);
+  return 1;
+}
+
 /* q:at{axis = index, ...}: the quantity at those points (from 1) of its axes; axes not named stay. */
 static int quantity_at(lua_State *L) {
   lac_quantity *quantity = lac_check_bound(L, 1, "at");
@@ -255,7 +268,7 @@ static int unit_named(lua_State *L) {
 void lac_open_elements(lua_State *L) {
   static const luaL_Reg functions[] = {
       {"as", quantity_as}, {"value", quantity_value}, {"at", quantity_at}, {"axes", quantity_axes}, {"elements", quantity_elements},
-      {"store", quantity_store}, {"stored", quantity_stored}, {"like", quantity_like}, {"along_axes", quantity_along_axes},
+      {"store", quantity_store}, {"detached", quantity_detached}, {"stored", quantity_stored}, {"like", quantity_like}, {"along_axes", quantity_along_axes},
       {"facts", quantity_facts}, {"dimension", quantity_dimension}, {"unit_facts", unit_facts}, {"unit", unit_named}, {NULL, NULL},
   };
   luaL_setfuncs(L, functions, 0);

@@ -3,7 +3,7 @@
 -- recipes, what they suppose and the range over recipes. No verdict stands in it without these.
 --
 --   of(study, chains, facts)    a text: { paragraphs = { { sentences } }, cited = rows }; chains as derivation.of_study gives them
---   givens_of(group, first)     what is given for all targets in a group, as a list of texts
+--   givens_of(group, study)     what is given for all targets in a group, as a list of texts
 --   paragraphs(text)            as plain text, one line a paragraph
 --   plain(text)                 the whole as plain text, lines of at most 100 columns
 --   tex(text, cited)            as LaTeX that cites a bibliography's keys
@@ -49,13 +49,15 @@ local function targets_sentence(study)
   return ("The sample has %d targets: %s."):format(#names, verdicts.list(names, 12))
 end
 
--- What is given for all targets of a group, "wavelength 1.65 um, ...".
-local function givens_of(group, first)
-  local parts = {}
+-- What is given for all targets of a group, "wavelength 1.65 um" and so on. What the command line sets goes before it, and stands with the first.
+local function givens_of(group, study)
+  local parts, first, set = {}, study.groups[1], study.set
   for _, name in ipairs(core.names()) do
+    local own = set.givens[name] or set.objects[name]
     local written = group.own[name] and group.written[name]
     local object = group.objects[name]
-    if object and not (first and first.objects[name] == object) then written = tostring(object) end
+    if object and (group == first or first.objects[name] ~= object) then written = tostring(object) end
+    if own then written = group == first and (set.written[name] or tostring(own)) end
     if written then parts[#parts + 1] = words_of(name) .. " " .. written end
   end
   return parts
@@ -64,14 +66,14 @@ end
 feasibility.givens_of = givens_of
 
 local function givens_sentence(study)
-  local parts = givens_of(study.groups[1])
+  local parts = givens_of(study.groups[1], study)
   if #parts == 0 then return nil end
   return ("For all of them we take %s."):format(verdicts.list(parts, #parts)):gsub("^For all of them we", #study.rows == 1 and "We" or "%0")
 end
 
 local function draws_sentence(study, facts)
   if not verdicts.has_draws(study) then return "No given has an error bar; all numbers are single ones." end
-  return ("The error bars are carried through all relations by %d draws (seed %d): an error is half the central 68 %% of them or one side of it, and a fraction is one of all draws.")
+  return ("The error bars are carried through all relations by %d draws (seed %d): errors span the central 68 %% of them, and a share is one of all draws.")
     :format(facts.draws, facts.seed)
 end
 
@@ -115,35 +117,33 @@ local function recipes_of_quantity(study, number, column)
   return #parts > 0 and "; " .. table.concat(parts, ", ") or ""
 end
 
-local function quantity_sentence(study, number, column)
+local function quantity_sentence(study, number, column, known)
   local low, high, count = ends_of(study, number)
   if count == 0 then return nil end
   local name = words_of(column.name)
-  local said = column.meaning_said and "" or (" (%s)"):format(words_of(column.entry.meaning))
+  local said = known and "" or (" (%s)"):format(words_of(column.entry.meaning))
   local others = recipes_of_quantity(study, number, column)
   if count == 1 or low == high then
     return ("The %s%s of %s is %s%s."):format(name, said, low.name, value_text(low.cells[number], column), others)
   end
-  return ("The %s%s runs from %s (%s) to %s (%s)%s%s."):format(name, said, value_text(low.cells[number], column), low.name,
-    value_text(high.cells[number], column), high.name, count < #study.rows and (" among the %d targets for which it can be derived"):format(count) or "", others)
+  return ("The %s%s runs from %s (%s) to %s (%s)%s."):format(name, said, value_text(low.cells[number], column), low.name,
+    value_text(high.cells[number], column), high.name, others)
 end
 
 -- Verdicts ---------------------------------------------------------------------------------------------------------------------------
 
-local function with_shares(rows)
-  local parts = {}
-  for i, row in ipairs(rows) do parts[i] = ("%s (%s)"):format(row.name, format.percent(row.cell.share)) end
-  return parts
-end
-
--- "in at least 90 % of the draws for all 12 targets; in 45 % for Lumbric 2; in at most 10 % for ..."
+-- "in at least 90 % of the draws for 3 of the 12 targets (A, B and C), in 45 % for Lumbric 2 and in at most 10 % for the others"
 local function by_share(one, all)
-  local parts = {}
-  if #one.yes > 0 then parts[#parts + 1] = ("in at least %s of the draws for %s"):format(format.percent(verdicts.MOSTLY), verdicts.count(one.yes, all)) end
-  if #one.between > 0 then
-    parts[#parts + 1] = ("in a fraction of the draws that leaves it open for %s"):format(verdicts.list(with_shares(one.between)))
+  local parts, open = {}, {}
+  local draws = " of the draws"
+  local function add(words, who)
+    parts[#parts + 1] = words .. draws .. " for " .. who
+    draws = ""
   end
-  if #one.no > 0 then parts[#parts + 1] = ("in at most %s of the draws for %s"):format(format.percent(verdicts.HARDLY), verdicts.count(one.no, all)) end
+  if #one.yes > 0 then add("in at least " .. format.percent(verdicts.MOSTLY), verdicts.count(one.yes, all)) end
+  for i, row in ipairs(one.between) do open[i] = ("%s%s for %s"):format(format.percent(row.cell.share), #parts == 0 and i == 1 and draws or "", row.name) end
+  if #open > 0 then parts[#parts + 1], draws = "in " .. verdicts.list(open), "" end
+  if #one.no > 0 then add("in at most " .. format.percent(verdicts.HARDLY), verdicts.count(one.no, all)) end
   return table.concat(parts, "; ")
 end
 
@@ -160,79 +160,103 @@ local function single_share(row)
   return row.cell.share == 1 and "in all of the draws" or ("in %s of the draws"):format(format.percent(row.cell.share))
 end
 
--- What other recipes would make of a verdict.
-local function recipes_of_verdict(one)
-  local changed, unchanged = {}, {}
-  for _, recipe in ipairs(one.recipes) do
-    if #recipe.names == 0 then unchanged[#unchanged + 1] = verdicts.recipe_words(recipe.words)
-    else
-      changed[#changed + 1] = ("with %s the answer changes for %s"):format(verdicts.recipe_words(recipe.words),
-        recipe.asked == 1 and recipe.names[1] or ("%d of %d (%s)"):format(#recipe.names, recipe.asked, verdicts.list(recipe.names)))
-    end
-  end
-  local parts = {}
-  if #changed > 0 then parts[1] = table.concat(changed, ", ") end
-  if #unchanged > 0 then
-    parts[#parts + 1] = ("%s %s no answer across one half"):format(verdicts.list(unchanged), plural(#unchanged, "moves", "move"))
-  end
-  if #parts == 0 then return "Over the recipes: what is given allows no other published recipe on the way to this." end
-  return "Over the recipes: " .. table.concat(parts, "; ") .. "."
-end
-
 local function reason_sentence(one)
   if #one.reasons == 0 then return nil end
   local parts = {}
   for i = 1, math.min(2, #one.reasons) do
     local reason = one.reasons[i]
-    parts[i] = words_of(reason.words) .. (#one.no + #one.between > 1 and (" (%d %s)"):format(reason.count, plural(reason.count, "target")) or "")
+    parts[i] = verdicts.reason_words(reason.words) .. (#one.no + #one.between > 1 and (" (%d %s)"):format(reason.count, plural(reason.count, "target")) or "")
   end
   return ("Where it is not resolved, %s."):format(verdicts.list(parts))
 end
 
-local function missing_sentence(one)
-  if #one.missing == 0 then return nil end
-  local reasons = {}
-  for _, row in ipairs(one.missing) do reasons[row.cell.reason] = true end
-  local reason = next(reasons)
-  return ("It could not be derived for %s%s."):format(verdicts.list(verdicts.names_of(one.missing)), next(reasons, reason) and "" or " (" .. words_of(reason) .. ")")
-end
-
--- A verdict is never said without its range over recipes.
 local function verdict_sentences(study, one, draws)
   local known, all = #one.yes + #one.between + #one.no, #study.rows
-  if known == 0 then return { capital(one.words) .. ": this could not be derived for any target." } end
+  if known == 0 then return {} end
   local answer
   if not draws then answer = without_draws(one, all)
   elseif all == 1 then answer = ("%s %s"):format(one.words, single_share(one.yes[1] or one.between[1] or one.no[1]))
   else answer = one.words .. " " .. by_share(one, all) end
-  return present(capital(answer) .. ".", reason_sentence(one), missing_sentence(one), recipes_of_verdict(one))
+  return present(capital(answer) .. ".", reason_sentence(one))
 end
 
--- Everything asked of one group of columns, quantities before verdicts.
-local function group_paragraph(study, group, of_verdicts, draws, said)
-  local sentences = {}
-  local function add(sentence) if sentence then sentences[#sentences + 1] = sentence end end
-  if group.name then
-    local parts = givens_of(group, study.groups[1])
-    add(("%s%s:"):format(capital(group.name), #parts > 0 and " (" .. verdicts.list(parts, #parts) .. ")" or ""))
-  end
-  for number, column in ipairs(study.columns) do
-    if column.group == group.name and not column.verdict then
-      add(quantity_sentence(study, number, setmetatable({ meaning_said = said[column.name] }, { __index = column })))
-      said[column.name] = true
+-- What other recipes would make of the verdicts of a group: no verdict is said without it.
+local function recipes_sentence(group_verdicts)
+  local changed, order, moved = {}, {}, {}
+  for _, one in ipairs(group_verdicts) do
+    for _, recipe in ipairs(one.recipes) do
+      if not moved[recipe.words] then order[#order + 1] = recipe.words end
+      moved[recipe.words] = moved[recipe.words] or "no"
+      if #recipe.names > 0 then
+        moved[recipe.words] = "yes"
+        changed[#changed + 1] = ("with %s, whether %s changes for %s"):format(verdicts.recipe_words(recipe.words), one.words,
+          recipe.asked == 1 and recipe.names[1] or ("%d of %d targets (%s)"):format(#recipe.names, recipe.asked, verdicts.list(recipe.names)))
+      end
     end
   end
-  for _, one in ipairs(of_verdicts) do
-    if one.column.group == group.name then
-      for _, sentence in ipairs(verdict_sentences(study, one, draws)) do add(sentence) end
+  if #order == 0 then return "What is given allows no other published recipe on the way to this." end
+  local unchanged = {}
+  for _, words in ipairs(order) do if moved[words] == "no" then unchanged[#unchanged + 1] = verdicts.recipe_words(words) end end
+  if #unchanged > 0 then changed[#changed + 1] = ("%s would change no answer%s"):format(verdicts.list(unchanged), #changed > 0 and " here" or "") end
+  return "Over the recipes: " .. table.concat(changed, "; ") .. "."
+end
+
+-- Which targets are left out, where and why: those of which nothing in the group could be derived once, the others by name.
+local function missing_sentences(study, columns)
+  local sentences, wholly = {}, {}
+  for _, row in ipairs(study.rows) do
+    local missing, reason = {}, nil
+    for _, number in ipairs(columns) do
+      local cell = row.cells[number]
+      if cell.missing then missing[#missing + 1], reason = words_of(study.columns[number].name), cell.reason end
     end
+    if #missing > 0 then
+      local key = (#missing == #columns and "" or verdicts.list(missing)) .. "\0" .. reason
+      if not wholly[key] then
+        wholly[key] = { names = {}, what = #missing < #columns and verdicts.list(missing), reason = reason }
+        sentences[#sentences + 1] = wholly[key]
+      end
+      table.insert(wholly[key].names, row.name)
+    end
+  end
+  for i, one in ipairs(sentences) do
+    sentences[i] = ("For %s %s could not be derived (%s)."):format(verdicts.list(one.names), one.what or "this", words_of(one.reason))
   end
   return sentences
 end
 
+-- Everything asked of one group of columns, quantities before verdicts.
+local function group_paragraph(study, group, of_verdicts, draws, said)
+  local sentences, columns, own = {}, {}, {}
+  local function add(sentence) if sentence then sentences[#sentences + 1] = sentence end end
+  if group.name then
+    local parts = givens_of(group, study)
+    add(("%s%s:"):format(capital(group.name), #parts > 0 and " (" .. verdicts.list(parts, #parts) .. ")" or ""))
+  end
+  for number, column in ipairs(study.columns) do
+    if column.group == group.name then
+      columns[#columns + 1] = number
+      if not column.verdict then
+        add(quantity_sentence(study, number, column, said[column.name]))
+        said[column.name] = true
+      end
+    end
+  end
+  for _, one in ipairs(of_verdicts) do
+    if one.column.group == group.name then
+      local answered = verdict_sentences(study, one, draws)
+      if #answered > 0 then own[#own + 1] = one end
+      for _, sentence in ipairs(answered) do add(sentence) end
+    end
+  end
+  for _, sentence in ipairs(missing_sentences(study, columns)) do add(sentence) end
+  if #own > 0 then add(recipes_sentence(own)) end
+  return #columns > 0 and sentences or {}
+end
+
 -- What it rests on -------------------------------------------------------------------------------------------------------------------
 
--- "sublimation radius by grey grains (Monnier & Millan-Gabet 2002)", each recipe once with all the names it gives.
+-- "gap width after Kanagawa et al. 2016", each recipe once with all the names it gives: those that are published, and common practice.
 local function recipe_parts(used, cite)
   local order, by_recipe = {}, {}
   for _, name in ipairs(used.keys) do
@@ -245,12 +269,15 @@ local function recipe_parts(used, cite)
       end
     end
   end
-  local parts = {}
-  for i, key in ipairs(order) do
+  local published, practice = {}, {}
+  for _, key in ipairs(order) do
     local entry = by_recipe[key]
-    parts[i] = ("%s by %s%s"):format(verdicts.list(entry, 3), words_of(entry.row.by), " (" .. cite(entry.row) .. ")")
+    local what, by = verdicts.list(entry, 3), words_of(entry.row.by)
+    if not bibliography.short(entry.row) then practice[#practice + 1] = what .. " (" .. by .. ")"
+    elseif entry.row.by:find "_%d%d%d%d" then published[#published + 1] = what .. " after " .. cite(entry.row)
+    else published[#published + 1] = what .. " by " .. by .. " after " .. cite(entry.row) end
   end
-  return parts
+  return published, practice
 end
 
 local function assumption_parts(used, cite)
@@ -266,12 +293,13 @@ end
 
 local function basis_paragraph(study, cite)
   local used = notes.relations_used(study)
-  local recipes, assumed = recipe_parts(used, cite), assumption_parts(used, cite)
-  return {
-    #recipes > 0 and ("These numbers rest on the %s %s; what each supposes stands with the derivations."):format(plural(#recipes, "recipe"), table.concat(recipes, "; ")) or
-      "All of these numbers follow by definition from what is given.",
-    #assumed > 0 and ("Assumed, as not measured for these targets: %s."):format(verdicts.list(assumed, #assumed)) or "Nothing is assumed besides.",
-  }
+  local published, practice = recipe_parts(used, cite)
+  local assumed = assumption_parts(used, cite)
+  return present(
+    #published > 0 and ("These numbers rest on the %s %s."):format(plural(#published, "recipe"), table.concat(published, "; ")),
+    #practice > 0 and ("Common practice, without a published source, %s %s."):format(plural(#practice, "is", "are"), table.concat(practice, "; ")),
+    #published + #practice == 0 and "All of these numbers follow by definition from what is given." or "What each supposes stands with the derivations.",
+    #assumed > 0 and ("Assumed, as not measured for %s: %s."):format(#study.rows == 1 and "the target" or "these targets", verdicts.list(assumed, #assumed)) or "Nothing is assumed.")
 end
 
 local function detection_paragraph(study)

@@ -11,31 +11,20 @@ function manifest.date()
   return os.date("!%Y-%m-%d", epoch and math.tointeger(epoch) or nil), epoch ~= nil
 end
 
--- Options that change what is computed; the others (threads, shards, where the report goes) don't, and are left out.
-local kept = { ["--set"] = true, ["--only"] = true, ["--seed"] = true, ["--draws"] = true }
-
 local function quoted(word)
   if word:find "^[%w%._/=:+-]+$" then return word end
   return "'" .. word:gsub("'", "'\\''") .. "'"
 end
 
--- The command that makes the report again from its own folder of inputs.
-function manifest.command(command, script)
+-- The command that makes the report again from the folder's inputs: only what changes the results stands in it, not how they were made
+-- (threads, parts of a shared job). nil where the study came from no file.
+function manifest.command(given, script, settings)
   if not script then return nil end
-  local words, i = { "lacuna", quoted(script) }, 1
-  while command and i <= #command do
-    local name, value = command[i]:match "^(%-%-[%w-]+)=(.*)$"
-    name = name or command[i]
-    if kept[name] then
-      if not value then
-        i = i + 1
-        value = command[i] or ""
-      end
-      words[#words + 1] = name .. " " .. quoted(value)
-    end
-    i = i + 1
+  local words = { "lacuna", ("--seed %d --draws %d"):format(settings.seed, settings.draws), quoted(script) }
+  for _, option in ipairs { "set", "only" } do
+    for _, value in ipairs(given[option] or {}) do words[#words + 1] = "--" .. option .. " " .. quoted(value) end
   end
-  words[#words + 1] = "--out report"
+  words[#words + 1] = "--out ../again"
   return table.concat(words, " ")
 end
 

@@ -1,10 +1,11 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- What stands below a study's table: what could not be derived, why a verdict is no, what other recipes would change, the recipes
--- with their sources, what is assumed and supposed, and how far the answer goes. Each note is { heading, lines }.
+-- with their sources, what is assumed and supposed, and how far the answer goes. Each note is { heading, lines }. All comes from the
+-- targets' records: no case is needed.
 local core = ...
-local case = core.part "lacuna.case"
 local equation = core.part "lacuna.equation"
 local format = core.part "lacuna.format"
+local records = core.part "lacuna.record"
 local text = core.part "lacuna.text"
 
 local notes = {}
@@ -60,39 +61,36 @@ local function labelled(columns)
   return table.concat(said, "; ")
 end
 
--- The cases of a study share few chains. ---------------------------------------------------------------------------------------------
+-- What the records say ----------------------------------------------------------------------------------------------------------------
 
--- The steps to a name in a case, each with its row as a table; found once for all cases with the same given names and recipes.
-local function steps_of(study, self, group, name)
-  local key = group .. " " .. name .. " " .. table.concat(case.sorted_keys(core.info(self).givens), " ")
-  study.steps = study.steps or {}
-  local steps = study.steps[key]
-  if not steps then
-    steps = core.steps(self, name)
-    for _, step in ipairs(steps) do step.relation = step.row and core.row(step.row) end
-    study.steps[key] = steps
-  end
-  return steps
-end
-
--- Calls visit(column, row, cell, case) for each cell that has a value.
+-- Calls visit(column, row, cell) for each cell that has a value.
 local function for_cells(study, visit)
   for i, column in ipairs(study.columns) do
     for _, row in ipairs(study.rows) do
-      if not row.cells[i].missing then visit(column, row, row.cells[i], row.made[column.group_number]) end
+      if not row.cells[i].missing then visit(column, row, row.cells[i]) end
     end
   end
 end
 
--- The relations used: name -> recipe -> { relation, targets }, in the order of the glossary.
-local function relations_used(study)
+local function relation_by(name, by)
+  for _, number in ipairs(core.entry(name).rows) do
+    local row = core.row(number)
+    if row.by == by then return row end
+  end
+end
+
+-- The relations used: name -> recipe ("given" without one) -> { relation, targets }, in the order of the glossary.
+function notes.relations_used(study)
   local used = {}
-  for_cells(study, function(column, row, _, self)
-    for _, step in ipairs(steps_of(study, self, column.group_number, column.name)) do
-      used[step.name] = used[step.name] or ordered()
-      local by = at(used[step.name], step.relation and step.relation.by or "given")
-      by.relation = step.relation
-      at(by, row.name, function() return true end)
+  for_cells(study, function(_, row, cell)
+    for name, by in cell.steps:gmatch "([%w_]+) ([%w_]+)" do
+      used[name] = used[name] or ordered()
+      local entry = at(used[name], by, function()
+        local made = ordered()
+        made.relation = by ~= "given" and relation_by(name, by) or nil
+        return made
+      end)
+      at(entry, row.name, function() return true end)
     end
   end)
   local in_order = ordered()
@@ -102,8 +100,6 @@ local function relations_used(study)
   return in_order
 end
 
-notes.relations_used = relations_used
-
 -- The notes ---------------------------------------------------------------------------------------------------------------------------
 
 local function not_derived(study)
@@ -111,7 +107,7 @@ local function not_derived(study)
   for i, column in ipairs(study.columns) do
     for _, row in ipairs(study.rows) do
       local cell = row.cells[i]
-      if cell.missing then
+      if cell.missing and not cell.failed then
         local key = cell.reason .. "\0" .. row.name
         local entry = at(reasons, key)
         entry.reason, entry.name = cell.reason, row.name
@@ -129,26 +125,6 @@ local function not_derived(study)
   return said
 end
 
--- A condition in words: "gap_elements_by_array below elements_required", or as it should be.
-local function condition_words(c, sign)
-  return ("%s%s %s %s"):format(c.factor == 1 and "" or c.factor .. " × ", c.left, sign, c.right)
-end
-
-local function representative(quantity)
-  local _, factor, unit = text.display_unit(quantity)
-  return format.number(core.elements(core.median(quantity))[1] / factor, 2), unit
-end
-
--- Of a verdict that mostly is no: the conditions that fail in half of the draws or more, or else the one that fails most often.
-local function failing(self, name)
-  local conditions, found, worst = text.conditions(self, name), {}, nil
-  for _, c in ipairs(conditions) do
-    if c.failed >= 0.5 then found[#found + 1] = c end
-    if not worst or c.failed > worst.failed then worst = c end
-  end
-  return #found > 0 and found or { worst }
-end
-
 -- "Marrow 3 (0.18), Veyra 77 (0.4)"; where there are many, the range and their names.
 local function who_fails(list, study)
   local names, each_value, low, high = {}, {}, math.huge, -math.huge
@@ -160,16 +136,20 @@ local function who_fails(list, study)
   return ("%s to %s for %s"):format(format.number(low), format.number(high), named(names, study))
 end
 
+local function failed_targets(study)
+  local said = {}
+  for _, row in ipairs(study.rows) do
+    if row.failed then said[#said + 1] = ("%s: %s"):format(row.name, row.failed) end
+  end
+  return said
+end
+
 local function why_not(study)
   local columns = ordered()
-  for_cells(study, function(column, row, cell, self)
-    if not column.verdict or cell.share >= 0.5 then return end
-    for _, c in ipairs(failing(self, column.name)) do
-      local right, unit = representative(c.right_value)
-      local words = condition_words(c, c.greater and "<" or ">") .. " " .. format.with_unit(right, unit)
-      local left = representative(c.left_value * c.factor)
-      local reason = at(at(columns, column.label), words)
-      reason[#reason + 1] = { name = row.name, value = left }
+  for_cells(study, function(column, row, cell)
+    for _, c in ipairs(cell.failing or {}) do
+      local reason = at(at(columns, column.label), c.words)
+      reason[#reason + 1] = { name = row.name, value = c.left }
     end
   end)
   local said = {}
@@ -195,52 +175,7 @@ local function unlike_recipes(study, used)
   return said
 end
 
--- Whether a recipe merely leaves out what is known: its inputs are some of the other's.
-local function leaves_out(row, taken)
-  if #row.from >= #taken.from then return false end
-  local has = {}
-  for _, name in ipairs(taken.from) do has[name] = true end
-  for _, name in ipairs(row.from) do if not has[name] then return false end end
-  return true
-end
-
--- Recipes that stand beside those taken on the way to a name.
-local function alternatives(study, self, column)
-  local steps = steps_of(study, self, column.group_number, column.name)
-  if not steps.alternatives then
-    steps.alternatives = {}
-    for _, step in ipairs(steps) do
-      if step.relation and core.entry(step.name).kind ~= "verdict" then
-        for i, row in ipairs(case.live_rows(self, step.name)) do
-          if i > 1 and row.kind ~= "definition" and row.kind ~= "assumed" and not leaves_out(row, step.relation) then
-            table.insert(steps.alternatives, { name = step.name, by = row.by, instead_of = step.relation.by })
-          end
-        end
-      end
-    end
-  end
-  return steps.alternatives
-end
-
-local function by_recipe(self, other, made)
-  local key = other.name .. " " .. other.by
-  if made[key] == nil then made[key] = case.by_recipe(self, other.name, other.by) or false end
-  return made[key]
-end
-
-local function is_magnitude(column) return core.entry(column.name).unit == "mag" end
-
--- What changes for one cell: the median's factor (of a magnitude: its difference), or whether the verdict crosses one half.
-local function add_change(change, column, row, cell, value)
-  if column.verdict then
-    change.asked = change.asked + 1
-    if (core.elements(core.chance(value))[1] >= 0.5) ~= (cell.share >= 0.5) then change.names[#change.names + 1] = row.name end
-  else
-    local before, after = core.elements(core.median(cell.quantity))[1], core.elements(core.median(value))[1]
-    local by = is_magnitude(column) and after - before or after / before
-    if by == by and math.abs(by) < math.huge then change.low, change.high = math.min(change.low, by), math.max(change.high, by) end
-  end
-end
+local function is_magnitude(column) return column.unit == "mag" end
 
 local function change_words(column, change, study)
   if column.verdict then
@@ -258,24 +193,23 @@ local function change_words(column, change, study)
   return ("%s × %s"):format(column.label, low == high and low or low .. " to " .. high)
 end
 
+-- One cell's change among those of its column.
+local function add_change(change, row, one)
+  if one.flips ~= nil then
+    change.asked = change.asked + 1
+    if one.flips then change.names[#change.names + 1] = row.name end
+  elseif one.low then change.low, change.high = math.min(change.low, one.low), math.max(change.high, one.high) end
+end
+
 local function over_recipes(study)
   local others = ordered()
-  for number, row in ipairs(study.rows) do -- star by star, so that the cases made on the way can go
-    local made = {}
+  for _, row in ipairs(study.rows) do
     for i, column in ipairs(study.columns) do
-      local cell, self = row.cells[i], row.made[column.group_number]
-      made[self] = made[self] or {}
-      for _, other in ipairs(cell.missing and {} or alternatives(study, self, column)) do
-        local changed = by_recipe(self, other, made[self])
-        local value = changed and core.raw(changed, column.name)
-        if value then
-          local of_recipe = at(others, ("%s by %s instead of %s"):format(other.name, other.by, other.instead_of))
-          local change = at(of_recipe, column, function() return { asked = 0, names = {}, low = math.huge, high = -math.huge } end)
-          add_change(change, column, row, cell, value)
-        end
+      for _, one in ipairs(row.cells[i].others or {}) do
+        local change = at(at(others, one.recipe), column, function() return { asked = 0, names = {}, low = math.huge, high = -math.huge } end)
+        add_change(change, row, one)
       end
     end
-    if number % study.collect_after == 0 then collectgarbage() end
   end
   local said, nothing = {}, {}
   for recipe, changes in each(others) do
@@ -342,7 +276,7 @@ local function meaning_of_verdicts(study, used)
         local words = {}
         for i, condition in ipairs(entry.relation and entry.relation.conditions or {}) do
           local c = text.parse_condition(condition)
-          words[i] = condition_words(c, c.sign)
+          words[i] = records.condition_words(c, c.sign)
         end
         local line = generic(column.name .. ": " .. table.concat(words, ", and "), column.name)
         if entry.relation and entry.relation.unchecked then line = line .. "; not checked: " .. generic(entry.relation.unchecked, column.name) end
@@ -356,12 +290,8 @@ end
 
 local function outside_validity(study)
   local found = ordered()
-  for_cells(study, function(column, row, _, self)
-    for _, step in ipairs(steps_of(study, self, column.group_number, column.name)) do
-      for _, outside in ipairs(step.relation and text.outside(self, step.relation) or {}) do
-        at(at(found, outside.words), row.name, function() return true end)
-      end
-    end
+  for_cells(study, function(_, row, cell)
+    for _, words in ipairs(cell.outside or {}) do at(at(found, words), row.name, function() return true end) end
   end)
   local said = {}
   for words, names in each(found) do said[#said + 1] = words .. "; outside for " .. named(names.keys, study) end
@@ -385,15 +315,34 @@ local function undefined_draws(study)
   return said
 end
 
+-- "distance = 120 pc, band = H"; what is set on the command line stands in a note of its own.
+local function givens_in_words(givens, written, objects, set)
+  local parts = {}
+  for _, name in ipairs(core.names()) do
+    if not (set.givens[name] or set.objects[name]) then
+      if givens[name] then parts[#parts + 1] = name .. (written[name]:find "^from " and " " or " = ") .. written[name] end
+      if objects[name] then parts[#parts + 1] = name .. " = " .. tostring(objects[name]) end
+    end
+  end
+  return table.concat(parts, ", ")
+end
+
+local nothing_set = { givens = {}, objects = {} }
+
+local function set_on_command_line(study)
+  local words = givens_in_words(study.set.givens, study.set.written, study.set.objects, nothing_set)
+  return words ~= "" and { words .. "; before what the study says" } or {}
+end
+
 local function givens_for_all(study)
   local said = {}
   for _, group in ipairs(study.groups) do
-    local parts = {}
-    for _, name in ipairs(core.names()) do
-      if group.own[name] then parts[#parts + 1] = name .. (group.written[name]:find "^from " and " " or " = ") .. group.written[name] end
-      if group.objects[name] and not (group.name and study.groups[1].objects[name]) then parts[#parts + 1] = name .. " = " .. tostring(group.objects[name]) end
+    local objects = {}
+    for name, object in pairs(group.objects) do
+      if not (group.name and study.groups[1].objects[name]) then objects[name] = object end
     end
-    if #parts > 0 then said[#said + 1] = (group.name and group.name .. ": " or "") .. table.concat(parts, ", ") end
+    local words = givens_in_words(group.own, group.written, objects, study.set)
+    if words ~= "" then said[#said + 1] = (group.name and group.name .. ": " or "") .. words end
   end
   return said
 end
@@ -408,8 +357,9 @@ end
 
 -- The notes of a study, empty ones left out.
 function notes.of(study)
-  local used = relations_used(study)
+  local used = notes.relations_used(study)
   local list = {
+    { heading = "Failed", lines = failed_targets(study) },
     { heading = "Not derived (—)", lines = not_derived(study) },
     { heading = "Why not (yes in less than half of the draws; medians)", lines = why_not(study) },
     { heading = "With another recipe", lines = over_recipes(study) },
@@ -417,6 +367,7 @@ function notes.of(study)
     { heading = "Outside a recipe's range of validity", lines = outside_validity(study) },
     { heading = "Undefined draws", lines = undefined_draws(study) },
     { heading = "Resolved means", lines = meaning_of_verdicts(study, used) },
+    { heading = "Set on the command line", lines = set_on_command_line(study) },
     { heading = "Given for all targets", lines = givens_for_all(study) },
     { heading = "Assumed", lines = assumed(study, used) },
     { heading = "Recipes", lines = recipes(used) },

@@ -12,6 +12,12 @@ const option options[] = {
     {"--seed", "N", "a whole number", OPTION_SETTING, "key of the random draws; the same seed gives the same draws, on any number of threads"},
     {"--draws", "N", "a whole number", OPTION_SETTING, "how many draws stand for an error bar"},
     {"--threads", "N", "a whole number", OPTION_SETTING, "how many processor cores to use"},
+    {"--out", "DIR", "a folder", OPTION_STUDY, "write the study's report into this folder"},
+    {"--set", "NAME=VALUE", "NAME=VALUE", OPTION_STUDY, "give this in the study, whatever its file says: 'distance=120 pc', or 'baseline=20 m:330 m:100' for 100 values between; as often as need be"},
+    {"--only", "NAME", "a target's name", OPTION_STUDY, "of the study's targets this one; as often as need be"},
+    {"--resume", NULL, NULL, OPTION_STUDY, "go on with a run into --out that was stopped"},
+    {"--force", NULL, NULL, OPTION_STUDY, "write into --out though it isn't empty"},
+    {"--shard", "K/N", "K/N, like 3/16,", OPTION_STUDY, "work out the K-th of N parts of the targets into --out; merge puts them together"},
     {"--help", NULL, NULL, OPTION_LEAVE, "print this and leave"},
     {"--version", NULL, NULL, OPTION_LEAVE, "print the version and leave"},
     {NULL, NULL, NULL, OPTION_LEAVE, NULL},
@@ -19,6 +25,7 @@ const option options[] = {
 
 static const char head[] = "Usage: lacuna [OPTION...] [FILE.lua [ARGUMENT...]]\n"
                            "       lacuna [OPTION...] -e CODE [ARGUMENT...]\n"
+                           "       lacuna merge DIR... --out DIR\n"
                            "What can be resolved around a young star: runs a script, a line of code, or,\n"
                            "alone at a terminal, a conversation (help() tells more there).\n"
                            "\n"
@@ -101,8 +108,8 @@ int command_line_read(command_line *line, char **argument) {
       continue;
     }
     if (one->kind == OPTION_LEAVE) return leave(one);
-    if (text == NULL && argument[1]) text = *++argument;
-    if (text == NULL) return fprintf(stderr, "lacuna: %s wants %s after it; got nothing\n", one->name, one->wants), WRONG_USAGE;
+    if (one->argument && text == NULL && argument[1]) text = *++argument;
+    if (one->argument && text == NULL) return fprintf(stderr, "lacuna: %s wants %s after it; got nothing\n", one->name, one->wants), WRONG_USAGE;
     if (one->kind == OPTION_CODE) return line->code = text, take_rest(line, argument + 1), -1;
     line->given[line->given_count++] = (given_option){.option = one, .text = text};
   }

@@ -10,6 +10,7 @@ enum { FAILED = 1, WRONG_USAGE = 2 };
 
 typedef enum {
   OPTION_SETTING, /* of the module, by the option's name */
+  OPTION_STUDY,   /* of a study, handed on by the option's name */
   OPTION_CODE,    /* ends the options: the words after it are the code's arguments */
   OPTION_LEAVE,   /* prints something and leaves */
 } option_kind;

@@ -71,6 +71,45 @@ static int write_file(lua_State *L) {
   return good ? 0 : lac_error(L, "cannot write %s: %s", path, strerror(errno));
 }
 
+/* make_folder(path): nothing where it is there already. */
+static int make_folder(lua_State *L) {
+  const char *path = luaL_checkstring(L, 1);
+  struct stat present;
+  if (mkdir(path, 0777) == 0 || (errno == EEXIST && stat(path, &present) == 0 && S_ISDIR(present.st_mode))) return 0;
+  return lac_error(L, "cannot make the folder %s: %s", path, strerror(errno));
+}
+
+/* The open folder belongs to a userdata, so that a lack of memory on the way doesn't lose it. */
+static int close_folder(lua_State *L) {
+  DIR **folder = lua_touserdata(L, 1);
+  if (*folder != NULL) closedir(*folder);
+  *folder = NULL;
+  return 0;
+}
+
+/* folder_entries(path): the names in it, in no order. */
+static int folder_entries(lua_State *L) {
+  const char *path = luaL_checkstring(L, 1);
+  lua_settop(L, 1);
+  DIR **folder = lua_newuserdatauv(L, sizeof *folder, 0);
+  *folder = NULL;
+  lua_createtable(L, 0, 1);
+  lua_pushcfunction(L, close_folder), lua_setfield(L, -2, "__gc");
+  lua_setmetatable(L, 2);
+  lua_newtable(L);
+  *folder = opendir(path);
+  if (*folder == NULL) return lac_error(L, "cannot read the folder %s: %s", path, strerror(errno));
+  lua_Integer count = 0;
+  for (const struct dirent *entry; (entry = readdir(*folder)) != NULL;) {
+    if (strcmp(entry->d_name, ".") == 0 || strcmp(entry->d_name, "..") == 0) continue;
+    lua_pushstring(L, entry->d_name);
+    lua_rawseti(L, 3, ++count);
+  }
+  closedir(*folder);
+  *folder = NULL;
+  return 1;
+}
+
 /* terminal_width(): COLUMNS where it is set, else the width of the terminal on standard output, else nil. */
 static int terminal_width(lua_State *L) {
   const char *columns = getenv("COLUMNS");
@@ -82,49 +121,8 @@ static int terminal_width(lua_State *L) {
   return 1;
 }
 
-/* make_folder(path): true where it was made, false where it was there. */
-static int make_folder(lua_State *L) {
-  const char *path = luaL_checkstring(L, 1);
-  struct stat present;
-  const bool made = mkdir(path, 0777) == 0;
-  const int trouble = made ? 0 : errno;
-  if (!made && (trouble != EEXIST || stat(path, &present) != 0 || !S_ISDIR(present.st_mode)))
-    return lac_error(L, "cannot make the folder %s: %s", path, strerror(trouble));
-  lua_pushboolean(L, made);
-  return 1;
-}
-
-static int folder_finalise(lua_State *L) {
-  DIR **folder = lua_touserdata(L, 1);
-  if (*folder != NULL) closedir(*folder);
-  *folder = NULL;
-  return 0;
-}
-
-/* entries_of(path): the names in a folder, in no order; nil where there is no such folder. */
-static int entries_of(lua_State *L) {
-  const char *path = luaL_checkstring(L, 1);
-  DIR **folder = lua_newuserdatauv(L, sizeof *folder, 0);
-  *folder = NULL;
-  lua_createtable(L, 0, 1);
-  lua_pushcfunction(L, folder_finalise), lua_setfield(L, -2, "__gc");
-  lua_setmetatable(L, -2);
-  *folder = opendir(path);
-  if (*folder == NULL) return 0;
-  lua_newtable(L);
-  lua_Integer count = 0;
-  for (const struct dirent *entry; (entry = readdir(*folder)) != NULL;) {
-    if (strcmp(entry->d_name, ".") == 0 || strcmp(entry->d_name, "..") == 0) continue;
-    lua_pushstring(L, entry->d_name);
-    lua_rawseti(L, -2, ++count);
-  }
-  return 1;
-}
-
 void lac_open_output(lua_State *L) {
-  static const luaL_Reg functions[] = {
-      {"write_file", write_file}, {"make_folder", make_folder}, {"entries_of", entries_of}, {"terminal_width", terminal_width}, {NULL, NULL},
-  };
+  static const luaL_Reg functions[] = {{"write_file", write_file}, {"make_folder", make_folder}, {"folder_entries", folder_entries}, {"terminal_width", terminal_width}, {NULL, NULL}};
   luaL_setfuncs(L, functions, 0);
   lua_pushliteral(L, LAC_VERSION);
   lua_setfield(L, -2, "version");

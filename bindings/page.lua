@@ -78,6 +78,12 @@ local function bar(one, all)
   return all > 1 and '<div class="bar" aria-hidden="true">' .. table.concat(parts) .. "</div>" or ""
 end
 
+-- "Is the rim resolved by the array?"
+local function question(words)
+  local subject, rest = words:match "^(.-) is (.*)$"
+  return subject and ("Is %s %s?"):format(subject, rest) or words:gsub("^%l", string.upper) .. "?"
+end
+
 local function answer(one, draws, all)
   local lines = {}
   local function add(kind, words, names)
@@ -95,7 +101,7 @@ local function answer(one, draws, all)
   local recipes = #one.yes + #one.between + #one.no == 0 and "" or #changed > 0 and "Another recipe: " .. table.concat(changed, "; ") .. "."
     or #one.recipes > 0 and "No other recipe changes it." or "No other recipe can be had from what is given."
   return ('<div class="answer">\n<p class="question">%s</p>\n%s\n<dl>%s</dl>\n<p class="small">%s</p>\n</div>')
-    :format(html((one.words:gsub("^%l", string.upper):gsub("^(.-) is ", "%1 "))), bar(one, all), table.concat(lines), recipes)
+    :format(html(question(one.words)), bar(one, all), table.concat(lines), recipes)
 end
 
 local function answers(study)
@@ -234,7 +240,7 @@ end
 local function common_givens(study)
   local items = {}
   for _, group in ipairs(study.groups) do
-    local given = feasibility.givens_of(group, group.name and study.groups[1])
+    local given = feasibility.givens_of(group, study)
     if #given > 0 then items[#items + 1] = html((group.name and group.name .. ": " or "") .. table.concat(given, ", ")) end
   end
   return #items > 0 and "<p>Given for all targets:</p>\n" .. item_list(items) or ""

@@ -102,6 +102,79 @@ static int make_settings(lua_State *L, const command_line *line) {
   return 0;
 }
 
+/* The command line of a study (command.lua). */
+
+/* Pushes that table's function, a field of it. */
+static void push_command(lua_State *L, const char *field) {
+  lac_push_part(L, "lacuna.command");
+  lua_getfield(L, -1, field);
+  lua_remove(L, -2);
+}
+
+static const char *base_name(const char *path) {
+  const char *slash = strrchr(path, '/');
+  return slash ? slash + 1 : path;
+}
+
+/* Fills it, from the line at place 1. Raises where an option isn't right. */
+static int fill_command(lua_State *L) {
+  const command_line *line = lua_touserdata(L, 1);
+  lac_push_part(L, "lacuna.command");
+  program_open_workers(L);
+  lua_pushboolean(L, true), lua_setfield(L, -2, "program");
+  lua_pushliteral(L, LAC_VERSION), lua_setfield(L, -2, "version");
+  lua_createtable(L, 0, 2);
+  if (!line->code && line->count && strcmp(line->rest[0], "-") != 0) {
+    lua_pushstring(L, base_name(line->rest[0])), lua_setfield(L, -2, "name");
+    lua_pushstring(L, line->rest[0]), lua_setfield(L, -2, "path");
+  }
+  lua_setfield(L, -2, "script");
+  lua_newtable(L);
+  for (int i = 1; i < line->count; i++) lua_pushstring(L, line->rest[i]), lua_rawseti(L, -2, i);
+  lua_setfield(L, -2, "arguments");
+  for (int i = 0; i < line->given_count; i++) {
+    if (line->given[i].option->kind != OPTION_STUDY) continue;
+    push_command(L, "take");
+    lua_pushstring(L, line->given[i].option->name);
+    lua_pushstring(L, line->given[i].text);
+    lua_call(L, 2, 0);
+  }
+  push_command(L, "check");
+  lua_call(L, 0, 0);
+  return 0;
+}
+
+static int read_command(lua_State *L, command_line *line) {
+  lua_pushcfunction(L, fill_command);
+  lua_pushlightuserdata(L, line);
+  if (lua_pcall(L, 1, 0, 0) == LUA_OK) return 0;
+  program_report(L, "lacuna: ");
+  return WRONG_USAGE;
+}
+
+/* The exit status after a script that went well: a study may have had something to say that is no error of the script's. */
+static int close_command(lua_State *L) {
+  push_command(L, "close");
+  if (lua_pcall(L, 0, 2, 0) != LUA_OK) return program_report(L, "lacuna: "), FAILED;
+  const int status = (int)lua_tointeger(L, -2);
+  if (status != 0) program_report(L, "lacuna: ");
+  else lua_pop(L, 1);
+  lua_pop(L, 1);
+  return status;
+}
+
+static bool is_merge(const command_line *line) { return !line->code && line->count > 0 && strcmp(line->rest[0], "merge") == 0; }
+
+/* Its arguments are the folders of merge. */
+static int run_merge(lua_State *L) {
+  lac_push_part(L, "lacuna.merge");
+  lua_getfield(L, -1, "run");
+  lua_replace(L, -2);
+  lua_insert(L, 1);
+  lua_call(L, lua_gettop(L) - 1, 0);
+  return 0;
+}
+
 /* The table `arg`: the script's name at 0, its arguments from 1. */
 static void set_arguments(lua_State *L, const command_line *line) {
   int shift = line->code ? 1 : 0;
@@ -121,6 +194,7 @@ static void set_arguments(lua_State *L, const command_line *line) {
 static int run(lua_State *L, const command_line *line) {
   int status, first = line->code ? 0 : 1;
   if (line->code) status = program_load(L, line->code, "=-e");
+  else if (is_merge(line)) status = (lua_pushcfunction(L, run_merge), LUA_OK);
   else status = luaL_loadfile(L, line->count && strcmp(line->rest[0], "-") != 0 ? line->rest[0] : NULL);
   if (status != LUA_OK) return status;
   int base = lua_gettop(L);
@@ -154,12 +228,14 @@ static int run_program(command_line *line) {
   lua_pushcfunction(L, open_libraries);
   if (lua_pcall(L, 0, 0, 0) != LUA_OK) return failed(L);
   int status = make_settings(L, line);
+  if (status == 0) status = read_command(L, line);
   if (status != 0) return lua_close(L), status;
   bool conversation = line->code == NULL && line->count == 0 && isatty(STDIN_FILENO);
   program_catch_interrupts(L, conversation);
   set_arguments(L, line);
   if (conversation) program_repl(L);
   else if (run(L, line) != LUA_OK) status = failed(L);
+  else status = close_command(L);
   lua_close(L);
   return status;
 }

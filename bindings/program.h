@@ -28,6 +28,9 @@ int program_show(lua_State *L, int from);
 /* Prints the error on the top of the stack, in one line if it is one, and takes it off. Prefix: "lacuna: ", or "" at the prompt. */
 void program_report(lua_State *L, const char *prefix);
 
+/* Adds to the table on top of the stack what runs a study in several processes and tells how far it is. */
+void program_open_workers(lua_State *L);
+
 /* The conversation at a terminal, until Ctrl-D. */
 void program_repl(lua_State *L);
 

@@ -2,8 +2,11 @@
 -- The report: a folder with all that a proposal takes from a study. Every file is whole or absent; the page and the manifest are written last,
 -- so a folder with a manifest is a whole report. The same study gives the same bytes: no times, no machine and no paths stand in it.
 --
---   write(study, folder, facts)   facts = { study_file = path, inputs = { paths }, command = { words }, seed, draws }: all may be left out.
---                                 Returns { folder, files = { names }, missing = { what could not be written, and why } }, which prints itself.
+--   write(study, folder, facts)   facts = { study_file = path, inputs = { paths }, texts = { [path] = what was read }, command = { set, only =
+--                                 lists of texts }, settings = { seed, draws }, version }: all may be left out
+--   ask(study, folder, options, facts)   the same, where a script asks for it: a folder with files is refused but with { force = true }
+--
+-- Both return { folder, files = { names }, missing = { what could not be written, and why } }, which prints itself.
 local core = ...
 local bibliography = core.part "lacuna.bibliography"
 local derivation = core.part "lacuna.derivation"
@@ -41,6 +44,14 @@ local function read(path)
   return content
 end
 
+-- Notes a file for the manifest that somebody else has put there.
+function writer.add_present(self, name)
+  local file = io.open(self:path(name), "rb")
+  if not file then return end
+  file:close()
+  self:add(name, read(self:path(name)))
+end
+
 local function base_name(path) return path:match "[^/]*$" end
 
 -- Inputs ------------------------------------------------------------------------------------------------------------------------------
@@ -63,7 +74,8 @@ end
 local function read_inputs(facts)
   local inputs, taken = {}, {}
   local function take(path, is_study)
-    inputs[#inputs + 1] = { name = "inputs/" .. place_of(path, facts.study_file, taken), content = read(path), is_study = is_study }
+    local content = facts.texts and facts.texts[path] or read(path)
+    inputs[#inputs + 1] = { name = "inputs/" .. place_of(path, facts.study_file, taken), content = content, is_study = is_study }
   end
   if facts.study_file then take(facts.study_file, true) end
   for _, path in ipairs(facts.inputs or {}) do take(path, false) end
@@ -84,10 +96,19 @@ end
 
 -- Tables ------------------------------------------------------------------------------------------------------------------------------
 
+-- Notes that belong below the table in print; the others stand with the derivations.
+local below_table = { ["Not derived (—)"] = true, ["Failed"] = true, ["Undefined draws"] = true, ["How far this goes"] = true }
+
+local function with_notes(study, wanted)
+  local notes = {}
+  for _, note in ipairs(study.notes) do if wanted(note.heading) then notes[#notes + 1] = note end end
+  return setmetatable({ notes = notes }, { __index = study })
+end
+
 local function write_tables(out, study, facts)
   out:write("table.csv", tables.csv(study))
   out:write("table.md", tables.markdown(study))
-  out:write("table.tex", tables.latex(study))
+  out:write("table.tex", tables.latex(with_notes(study, function(heading) return below_table[heading] end)))
   local bytes, trouble = core.part "lacuna.fits_table".of(study, facts)
   facts.has_fits = bytes ~= nil
   if bytes then out:write("table.fits", bytes) else out.missing[#out.missing + 1] = "table.fits: " .. trouble end
@@ -110,7 +131,7 @@ local function write_figures(out, study)
     end)
     if not ok then out.missing[#out.missing + 1] = ("figure %d: %s"):format(number, tostring(trouble)) end
   end
-  local names = core.entries_of(out:path "figures") or {}
+  local names = core.folder_entries(out:path "figures")
   table.sort(names)
   for _, name in ipairs(names) do out:add("figures/" .. name, read(out:path("figures/" .. name))) end
   return drawn
@@ -123,11 +144,11 @@ local function remove_mark(out)
 end
 
 local function complete(facts)
-  local settings, inputs = core.settings(), read_inputs(facts)
+  local settings, inputs = facts.settings or core.settings(), read_inputs(facts)
   local date, fixed = manifest.date()
-  local whole = { date = date, date_fixed = fixed, seed = facts.seed or settings.seed, draws = facts.draws or settings.draws, version = core.version, inputs = inputs }
+  local whole = { date = date, date_fixed = fixed, seed = settings.seed, draws = settings.draws, version = facts.version or core.version, inputs = inputs }
   for _, input in ipairs(inputs) do if input.is_study then whole.script = input.name end end
-  whole.command = manifest.command(facts.command, whole.script)
+  whole.command = manifest.command(facts.command or {}, whole.script, settings)
   return whole
 end
 
@@ -141,10 +162,11 @@ local function write_all(out, study, facts)
   local drawn = write_figures(out, study)
   out:write("feasibility.txt", feasibility.plain(composed))
   out:write("feasibility.tex", feasibility.tex(composed, cited))
-  out:write("derivations.tex", document.derivations(row, chains, cited))
+  out:write("derivations.tex", document.derivations(with_notes(study, function(heading) return not below_table[heading] end), row, chains, cited))
   out:write("references.bib", cited:bibtex())
   out:write("report.tex", document.whole(study.title or "Report of a study", drawn, facts.date))
   local page = core.part "lacuna.page".of(study, { facts = facts, row = row, chains = chains, composed = composed, figures = drawn, missing = out.missing })
+  out:add_present "records"
   out:write("index.html", page)
   core.write_file(out:path "manifest.txt", manifest.text(facts, out.files))
 end
@@ -154,6 +176,15 @@ function written_metatable.__tostring(written)
   local lines = { ("report in %s: %d files; open %s/index.html"):format(written.folder, #written.files, written.folder) }
   for _, missing in ipairs(written.missing) do lines[#lines + 1] = "  left out: " .. missing end
   return table.concat(lines, "\n")
+end
+
+function report.ask(study, folder, options, facts)
+  if type(folder) ~= "string" or folder == "" then core.raise("report wants a folder's name, like s:report(\"report\"); got " .. core.shown(folder)) end
+  core.make_folder(folder)
+  if not (options and options.force) and #core.folder_entries(folder) > 0 then
+    core.raise(("%s exists and is not empty; s:report(%q, {force = true}) writes into it"):format(folder, folder))
+  end
+  return report.write(study, folder, facts)
 end
 
 function report.write(study, folder, facts)

@@ -1,22 +1,26 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- study{}: a list of targets, what is common to them, variants, and what to ask: a table with error bars, and below it the reasons,
 -- recipes and assumptions. Each target makes one case, and one more for each variant; a column is a name asked of one of these.
+-- Here are its fields and the object it returns; record.lua works out one target, run.lua all of them.
 local core = ...
 local case = core.part "lacuna.case"
+local command = core.part "lacuna.command"
+local records = core.part "lacuna.record"
+local run = core.part "lacuna.run"
+local selection = core.part "lacuna.selection"
 local tables = core.part "lacuna.table"
 local targets = core.part "lacuna.targets"
 local text = core.part "lacuna.text"
 
--- Ensembles up to this length are kept once computed, as the table, the reasons and the comparisons all read them; in all no more
--- than so many numbers (200 MB), so that a list of a thousand stars passes too.
-local LONGEST_KEPT, MOST_KEPT = 100000, 25000000
-local COLLECT_AFTER = 50 -- stars: the core's memory behind dead cases is not seen by Lua's collector
 local WIDTH = 100 -- of the output where no terminal says otherwise
 
 -- What is asked --------------------------------------------------------------------------------------------------------------------
 
-local study_fields = { title = "string", targets = "any", given = "table", ask = "table", variants = "table", using = "table", csv = "string", latex = "string", derive = "string" }
-local variant_fields = { name = "string", given = "table", ask = "table", using = "table" }
+local study_fields = {
+  title = "string", targets = "any", given = "table", ask = "table", also = "table", variants = "table", using = "table", sort = "any", where = "table",
+  csv = "string", latex = "string", derive = "string",
+}
+local variant_fields = { name = "string", given = "table", ask = "table", also = "table", using = "table" }
 
 local function check_fields(fields, allowed, what)
   for _, word in ipairs(case.sorted_keys(fields)) do
@@ -47,7 +51,7 @@ local function read_givens(given, what)
     else
       local as_written = text.as_written(name, given[word])
       local ok, value = pcall(core.given, name, given[word])
-      if not ok then error(what .. ": " .. targets.bare(value), 0) end
+      if not ok then error(what .. ": " .. records.bare(value), 0) end
       for _, axis in ipairs(core.axes(value)) do
         if axis.name ~= "draw" then error(("%s: %s wants one value or an error bar in a study, not one along %s; make it variants"):format(what, name, axis.name), 0) end
       end
@@ -57,12 +61,12 @@ local function read_givens(given, what)
   return givens, objects, written
 end
 
-local function read_ask(ask, what)
+local function read_ask(ask, what, field)
   local names, seen = {}, {}
   for i, word in ipairs(ask or {}) do
-    local name = name_for(word, what .. ": ask")
-    if core.entry(name).kind == "object" then error(("%s: ask: %s is an object; there is nothing to derive"):format(what, name), 0) end
-    if seen[name] then error(("%s: ask: %s is asked twice"):format(what, name), 0) end
+    local name = name_for(word, ("%s: %s"):format(what, field))
+    if core.entry(name).kind == "object" then error(("%s: %s: %s is an object; there is nothing to derive"):format(what, field, name), 0) end
+    if seen[name] then error(("%s: %s: %s is asked twice"):format(what, field, name), 0) end
     seen[name] = true
     names[i] = name
   end
@@ -78,12 +82,7 @@ local function read_using(using, what)
   return recipes
 end
 
-local function both(a, b)
-  local all = {}
-  for key, value in pairs(a) do all[key] = value end
-  for key, value in pairs(b) do all[key] = value end
-  return all
-end
+local both = records.both
 
 local function refuse_twice(givens, others, where)
   for _, name in ipairs(case.sorted_keys(givens)) do
@@ -98,7 +97,8 @@ local function read_group(fields, common, what)
   return {
     name = common and fields.name or nil,
     givens = both(common and common.givens or {}, givens), own = givens, written = written, objects = both(common and common.objects or {}, objects),
-    using = both(common and common.using or {}, read_using(fields.using, what)), ask = read_ask(fields.ask, what),
+    using = both(common and common.using or {}, read_using(fields.using, what)),
+    ask = read_ask(fields.ask, what, "ask"), also = read_ask(fields.also, what, "also"),
   }
 end
 
@@ -127,95 +127,21 @@ local function refuse_givens_of_targets(list, groups)
   end
 end
 
--- Cases and cells -----------------------------------------------------------------------------------------------------------------
-
--- A keeper of one study's ensembles: a function that keeps a quantity while there is room, and returns it.
-local function new_keeper()
-  local room = math.min(MOST_KEPT, core.settings().memory * 1048576 / 8 / 4) -- a quarter of what is allowed at most
-  return function(quantity)
-    local _, _, _, _, size = core.facts(quantity)
-    if size > LONGEST_KEPT or size > room then return quantity end
-    room = room - size
-    return core.store(quantity)
-  end
-end
-
-local function keep_all(givens, keep)
-  for _, quantity in pairs(givens) do keep(quantity) end
-end
-
-local function make_case(target, group)
-  local info = { target = target.name, objects = both(group.objects, target.objects) }
-  local ok, made = pcall(case.make, {}, both(group.givens, target.givens), group.using, info)
-  if not ok then error(("%s: %s%s"):format(target.where, group.name and ('in variant "%s": '):format(group.name) or "", targets.bare(made)), 0) end
-  return made
-end
-
-local function contains(names, others)
-  local has = {}
-  for _, name in ipairs(names) do has[name] = true end
-  for _, name in ipairs(others) do if not has[name] then return false end end
-  return true
-end
-
--- "for want of stellar_mass, or of planet_star_mass_ratio"
-local function what_is_missing(self, name)
-  local sets = core.missing_sets(self, name)
-  if #sets == 0 then return "must be given: no relation gives it" end
-  local ways = {}
-  for i, set in ipairs(sets) do
-    local more = false
-    for j = 1, i - 1 do more = more or contains(set.names, sets[j].names) end
-    if not more and #ways < 3 then ways[#ways + 1] = table.concat(set.names, " and ") end
-  end
-  return "for want of " .. table.concat(ways, ", or of ")
-end
-
-local function cell_of(self, name, keep)
-  if core.row_of(self, name) == nil then return { missing = true, reason = what_is_missing(self, name) } end
-  local quantity = keep(core.raw(self, name))
-  local _, _, factor, number, size = core.facts(quantity)
-  local undefined = core.elements(core.undefined(quantity))[1]
-  if undefined == size then return { missing = true, reason = size == 1 and text.undefined(self, name) or "undefined in all draws" } end
-  local cell = { quantity = quantity, undefined = undefined / size }
-  if core.entry(name).kind == "verdict" then cell.share = core.elements(core.chance(quantity))[1]
-  elseif size == 1 then cell.value = number / factor
-  else cell.value, cell.upper, cell.lower = text.median_and_errors(quantity, factor) end
-  return cell
-end
-
-local function make_columns(groups)
-  local columns = {}
-  for number, group in ipairs(groups) do
-    for _, name in ipairs(group.ask) do
-      local entry = core.entry(name)
-      local _, tex, plain = core.unit_facts(entry.unit)
-      columns[#columns + 1] = {
-        name = name, entry = entry, verdict = entry.kind == "verdict", group = group.name, group_number = number, unit = entry.unit,
-        unit_text = entry.unit == "1" and "" or plain, unit_tex = tex, label = (group.name and group.name .. ": " or "") .. name,
-      }
-    end
-  end
-  return columns
-end
-
-local function make_row(target, groups, columns, keep)
-  keep_all(target.givens, keep)
-  local row = { name = target.name, texts = target.texts, target = target, made = {}, variants = {}, cells = {} }
-  for number, group in ipairs(groups) do
-    row.made[number] = make_case(target, group)
-    if group.name then row.variants[group.name] = row.made[number] end
-  end
-  row.case = row.made[1]
-  for i, column in ipairs(columns) do row.cells[i] = cell_of(row.made[column.group_number], column.name, keep) end
-  return row
-end
-
+-- With nothing at all to show there is something wrong with the whole: one line says what.
 local function refuse_emptiness(columns, rows)
+  local failed
   for _, row in ipairs(rows) do
     for _, cell in ipairs(row.cells) do if not cell.missing then return end end
+    failed = failed or row.failed
   end
+  if failed then error(failed, 0) end
   error(("study: nothing that is asked can be derived for any target: %s of %s, %s"):format(columns[1].label, rows[1].name, rows[1].cells[1].reason), 0)
+end
+
+local function refuse_unknown_target(name, list)
+  if name == nil then return end
+  for _, target in ipairs(list) do if target.name == name then return end end
+  error(('study: derive: there is no target "%s"'):format(name), 0)
 end
 
 -- Files and the study itself ------------------------------------------------------------------------------------------------------
@@ -231,7 +157,9 @@ local function script_folder()
   return ""
 end
 
+-- Where a file of that name stands: its path, and its text where a run that is put together has brought it along.
 local function find_file(name)
+  if command.inputs[name] then return name, command.inputs[name] end
   if name:sub(1, 1) == "/" then return name end
   local beside_script = script_folder() .. name
   local file = io.open(beside_script, "rb")
@@ -240,59 +168,139 @@ local function find_file(name)
   return beside_script
 end
 
-local study_metatable = { __name = "study", __index = {} }
+-- Rows ------------------------------------------------------------------------------------------------------------------------------
+
+-- row.case, row.variants[name] and row.made[number] are made anew whenever they are asked for, and kept only as long as somebody has them.
+local function lazy_cases(plan, target)
+  local cases = setmetatable({}, { __mode = "v" })
+  local function case_in(number)
+    local made = cases[number] or records.case_in(plan, target, number)
+    cases[number] = made
+    return made
+  end
+  local variants = setmetatable({}, {
+    __index = function(_, name) return plan.numbers[name] and case_in(plan.numbers[name]) end,
+    __pairs = function()
+      local number = 1
+      return function()
+        number = number + 1
+        if plan.groups[number] then return plan.groups[number].name, case_in(number) end
+      end
+    end,
+  })
+  local made = setmetatable({}, { __index = function(_, number) return plan.groups[number] and case_in(number) end, __len = function() return #plan.groups end })
+  return { __index = function(_, word)
+    if word == "case" then return case_in(1) end
+    return word == "variants" and variants or word == "made" and made or nil
+  end }
+end
+
+local function new_row(plan, target, record)
+  local row = { name = record.name, texts = record.texts, target = target, failed = record.failed, cells = {}, hidden = {} }
+  for i, cell in ipairs(record.cells) do
+    local list = i <= #plan.columns and row.cells or row.hidden
+    list[#list + 1] = cell
+  end
+  return setmetatable(row, lazy_cases(plan, target))
+end
+
+-- The study object --------------------------------------------------------------------------------------------------------------------
+
+local methods = {}
+local study_metatable = { __name = "study", __index = methods }
 function study_metatable.__tostring(study) return ("study of %d target%s, %d column%s"):format(#study.rows, #study.rows == 1 and "" or "s", #study.columns, #study.columns == 1 and "" or "s") end
 
 -- s:table(columns): the table and its notes as text, at most so many columns wide.
-function study_metatable.__index.table(study, columns) return tables.text(study, columns or core.terminal_width() or WIDTH) end
-function study_metatable.__index.csv(study) return tables.csv(study) end
-function study_metatable.__index.latex(study) return tables.latex(study) end
--- s:report(folder): writes the report and returns what was written, which prints itself.
-function study_metatable.__index.report(study, folder, facts) return core.part "lacuna.report".write(study, folder, facts or study.facts) end
+function methods.table(study, columns) return tables.text(study, columns or core.terminal_width() or WIDTH) end
+function methods.csv(study) return tables.csv(study) end
+function methods.latex(study) return tables.latex(study) end
 
-local function run(fields)
+-- s:report(folder, {force = true}): writes the whole report; force: into a folder that has files already. Returns what was written.
+function methods.report(study, folder, options) return core.part "lacuna.report".ask(study, folder, options, run.facts(study.result)) end
+
+local function listed(study, name, variant)
+  for field, columns in pairs { cells = study.columns, hidden = study.hidden } do
+    for i, column in ipairs(columns) do
+      if column.name == name and column.group == variant then return field, i end
+    end
+  end
+end
+
+-- s:values(name, variant): the cells of a name, one for each row, whether the table shows it or not; what was not asked is worked out now.
+function methods.values(study, word, variant)
+  local name = case.name_of(word, "values: ")
+  local number = variant == nil and 1 or study.plan.numbers[variant]
+  if not number then core.raise(('values: the study has no variant "%s"'):format(tostring(variant))) end
+  local field, place = listed(study, name, variant)
+  local cells = {}
+  for i, row in ipairs(study.rows) do
+    if field then cells[i] = row[field][place]
+    elseif row.failed then cells[i] = row.cells[1]
+    else cells[i] = records.cell_of(row.made[number], name) end
+  end
+  return cells
+end
+
+-- Making one ------------------------------------------------------------------------------------------------------------------------
+
+local function new_plan(fields)
   check_fields(fields, study_fields, "study")
   if fields.targets == nil then error("study wants targets = the name of a CSV file, or a list of tables", 0) end
-  local groups = read_groups(fields)
+  local plan = { title = fields.title, groups = read_groups(fields), numbers = {}, steps = {} }
+  for number, group in ipairs(plan.groups) do if group.name then plan.numbers[group.name] = number end end
+  selection.read(plan, fields.sort, fields.where)
+  plan.set = command.overrides()
+  plan.columns, plan.hidden = records.columns(plan.groups, "ask"), records.columns(plan.groups, "also")
+  plan.all = table.move(plan.hidden, 1, #plan.hidden, #plan.columns + 1, { table.unpack(plan.columns) })
+  return plan
+end
+
+local function make(fields)
+  local plan = new_plan(fields)
   local list = targets.read(fields.targets, find_file)
-  refuse_givens_of_targets(list, groups)
-  local keep = new_keeper()
-  for _, group in ipairs(groups) do keep_all(group.own, keep) end
-  local columns, rows = make_columns(groups), {}
-  for i, target in ipairs(list) do
-    rows[i] = make_row(target, groups, columns, keep)
-    if i % COLLECT_AFTER == 0 then collectgarbage() end
+  refuse_givens_of_targets(list, plan.groups)
+  for _, givens in ipairs { plan.groups[1].own, plan.set.givens } do
+    for _, quantity in pairs(givens) do records.keep(quantity) end
   end
-  refuse_emptiness(columns, rows)
-  local study = { facts = { inputs = type(fields.targets) == "string" and { find_file(fields.targets) } or {} }, derive = fields.derive, title = fields.title, texts = list.texts, groups = groups, columns = columns, rows = rows, collect_after = COLLECT_AFTER }
+  local result = run.all(plan, list)
+  local rows = {}
+  for i, record in ipairs(result.records) do rows[i] = new_row(plan, result.targets[i], record) end
+  if not command.shard then refuse_emptiness(plan.columns, rows) end
+  refuse_unknown_target(fields.derive, list)
+  local study = setmetatable({
+    title = plan.title, texts = list.texts, groups = plan.groups, columns = plan.columns, hidden = plan.hidden, set = plan.set, sweeps = plan.set.sweeps,
+    rows = command.shard and rows or selection.apply(plan, rows), plan = plan, result = result, derive = fields.derive,
+  }, study_metatable)
   study.notes = core.part "lacuna.notes".of(study)
-  return setmetatable(study, study_metatable)
+  return study, result
 end
 
 -- Calls f(fields) as pcall does. Thousands of short computations are quicker without the threads meeting after each; the bits are the same.
 local function on_one_thread(f, fields)
   local settings = core.settings()
-  if settings.draws > LONGEST_KEPT then return pcall(f, fields) end
+  local long = settings.draws > records.LONGEST_KEPT
+  command.threads = long and 1 or settings.threads -- processes; many draws keep all cores busy by themselves
+  if long then return pcall(f, fields) end
   core.settings { threads = 1 }
-  local ok, result = pcall(f, fields)
+  local ok, study, result = pcall(f, fields)
   core.settings { threads = settings.threads }
-  return ok, result
+  return ok, study, result
 end
 
--- study{title =, targets =, given =, ask =, variants =, using =, csv =, latex =}: prints the table; returns an object with rows
--- (name, case, variants[name] = case) and the methods table(), csv(), latex(). Files are whole or absent.
+-- study{title =, targets =, given =, ask =, also =, variants =, using =, sort =, where =, csv =, latex =, derive =}: prints the table; returns an
+-- object with rows (name, cells, case, variants[name] = case) and the methods table(), csv(), latex(), report(), values(). Files are whole or absent.
 local function new_study(fields)
   if type(fields) ~= "table" then core.raise("study wants a table {targets = ..., ask = ...}; got " .. type(fields)) end
-  local ok, study = on_one_thread(run, fields)
+  local ok, study, result = on_one_thread(make, fields)
   if not ok and type(study) == "string" and study:find "^study[: ]" then core.raise(study) end
   if not ok then error(study, 0) end
   for _, output in ipairs { "csv", "latex" } do
-    if fields[output] then
+    if fields[output] and not command.shard then
       local written, trouble = pcall(core.write_file, fields[output], study[output](study))
-      if not written then core.raise(targets.bare(trouble)) end
+      if not written then core.raise(records.bare(trouble)) end
     end
   end
-  print(study:table())
+  run.close(study, result)
   return study
 end
 

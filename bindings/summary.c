@@ -83,8 +83,10 @@ static int quantiles(lua_State *L, const char *what, const char *axis, int count
 
 static int summary_median(lua_State *L) { return quantiles(L, "median", luaL_optstring(L, 2, "draw"), 1, (const double[]){0.5}); }
 
+#define ONE_SIGMA 0.682689492137086 /* of a normal distribution within one standard deviation */
+
 static double share_argument(lua_State *L, int index, const char *what) {
-  double share = luaL_optnumber(L, index, 0.682689492137086); /* of a normal distribution within one standard deviation */
+  double share = luaL_optnumber(L, index, ONE_SIGMA);
   if (!(share > 0 && share < 1)) lac_error(L, "%s wants a share between 0 and 1; got %f", what, share);
   return share;
 }
@@ -101,6 +103,11 @@ static int summary_spread(lua_State *L) {
   return quantiles(L, "spread_of", "draw", 3, (const double[]){(1 - share) / 2, 0.5, (1 + share) / 2});
 }
 
+/* five_of(q): the ends of the central 95 % and 68 % with the median between, from low to high. */
+static int summary_five(lua_State *L) {
+  return quantiles(L, "five_of", "draw", 5, (const double[]){0.025, (1 - ONE_SIGMA) / 2, 0.5, (1 + ONE_SIGMA) / 2, 0.975});
+}
+
 static int summary_quantile(lua_State *L) {
   const double p = luaL_checknumber(L, 2);
   if (!(p >= 0 && p <= 1)) lac_error(L, "quantile wants a share between 0 and 1; got %f", p);
@@ -111,7 +118,7 @@ void lac_open_summary(lua_State *L) {
   static const luaL_Reg functions[] = {
       {"mean", summary_mean}, {"deviation", summary_deviation}, {"median", summary_median}, {"interval", summary_interval},
       {"quantile", summary_quantile}, {"chance", summary_chance}, {"undefined", summary_undefined}, {"lowest", summary_least},
-      {"highest", summary_greatest}, {"spread_of", summary_spread}, {NULL, NULL},
+      {"highest", summary_greatest}, {"spread_of", summary_spread}, {"five_of", summary_five}, {NULL, NULL},
   };
   luaL_setfuncs(L, functions, 0);
 }

@@ -327,19 +327,62 @@ local function heading_tex(column)
   return "\\shortstack{" .. escaped((column.name:gsub("_", " "):gsub(" by ", "\0by "))):gsub("\0", "\\\\") .. "}"
 end
 
+-- A table environment takes so many rows, and columns up to a width that text of \small has on a page.
+local MOST_ROWS, WIDEST, MOST_FLOATS = 45, 100, 10
+
+-- What stands beside the names: texts and columns, each with its width in characters.
+local function parts_of(whole)
+  local list = {}
+  for _, text in ipairs(whole.texts) do
+    local width = format.width(text)
+    for _, row in ipairs(whole.rows) do width = math.max(width, format.width(on_one_line(row.texts[text] or ""))) end
+    list[#list + 1] = { text = text, width = width }
+  end
+  for i, column in ipairs(whole.columns) do
+    local cells = {}
+    for j, row in ipairs(whole.rows) do cells[j] = row.cells[i] end
+    list[#list + 1] = { column = column, number = i, group = column.group, width = laid_out(column, cells).width }
+  end
+  return list
+end
+
+-- The parts in tables side by side: a group that fits into one table is not cut.
+local function tables_of(whole)
+  local names_width, list, found, room = 0, parts_of(whole), {}, 0
+  for _, row in ipairs(whole.rows) do names_width = math.max(names_width, format.width(on_one_line(row.name))) end
+  local function width_from(i)
+    local width, group = 0, list[i].group
+    repeat
+      width = width + #GAP + list[i].width
+      i = i + 1
+    until not list[i] or not group or list[i].group ~= group
+    return width
+  end
+  for i, part in ipairs(list) do
+    local starts = i == 1 or part.group ~= list[i - 1].group or not part.group
+    local wanted = starts and math.min(width_from(i), WIDEST - names_width) or #GAP + part.width
+    if #found == 0 or wanted > room then
+      found[#found + 1] = {}
+      room = WIDEST - names_width
+    end
+    table.insert(found[#found], part)
+    room = room - #GAP - part.width
+  end
+  return found
+end
+
 -- The row of group headings over the columns, with its rules; nil where there is no group.
-local function groups_tex(whole, before)
-  local cells, rules, i = {}, {}, 1
-  while i <= #whole.columns do
-    local last = i
-    while last < #whole.columns and whole.columns[last + 1].group == whole.columns[i].group do last = last + 1 end
-    local group = whole.columns[i].group
+local function groups_tex(parts)
+  local cells, rules, i = { "" }, {}, 1
+  while i <= #parts do
+    local last, group = i, parts[i].group
+    while last < #parts and parts[last + 1].group == group do last = last + 1 end
     cells[#cells + 1] = ("\\multicolumn{%d}{c}{%s}"):format(last - i + 1, group and escaped(group) or "")
-    if group then rules[#rules + 1] = ("\\cmidrule(lr){%d-%d}"):format(before + i, before + last) end
+    if group then rules[#rules + 1] = ("\\cmidrule(lr){%d-%d}"):format(i + 1, last + 1) end
     i = last + 1
   end
   if #rules == 0 then return nil end
-  return ("& "):rep(before) .. table.concat(cells, " & ") .. " \\\\ " .. table.concat(rules, " ")
+  return table.concat(cells, " & ") .. " \\\\ " .. table.concat(rules, " ")
 end
 
 local function notes_tex(notes)
@@ -354,40 +397,50 @@ local function notes_tex(notes)
   return lines
 end
 
--- A table environment, for a document that loads booktabs.
-function tables.latex(whole)
-  local texts = whole.texts
-  local before = 1 + #texts
-  local lines = {
-    "% needs \\usepackage{booktabs}", "\\begin{table*}", "\\centering\\small",
-    whole.title and "\\caption{" .. escaped(whole.title) .. "}" or "% \\caption{...}",
-    "\\begin{tabular}{" .. ("l"):rep(before) .. ("r"):rep(#whole.columns) .. "}", "\\toprule",
-  }
-  local function add(line) lines[#lines + 1] = line end
+-- The tabular with some parts of some rows.
+local function add_tabular(add, whole, parts, first, last)
   local function add_row(fields) add(table.concat(fields, " & ") .. " \\\\") end
-  local groups = groups_tex(whole, before)
-  if groups then add(groups) end
-  local headings, units = { "Star" }, { "" }
-  for _, text in ipairs(texts) do headings[#headings + 1], units[#units + 1] = escaped(text), "" end
-  for _, column in ipairs(whole.columns) do
-    headings[#headings + 1] = heading_tex(column)
-    units[#units + 1] = column.unit == "1" and "" or "($" .. column.unit_tex .. "$)"
+  local form, headings, units = "l", { "Star" }, { "" }
+  for i, part in ipairs(parts) do
+    form = form .. (part.text and "l" or "r")
+    headings[i + 1] = part.text and escaped(part.text) or heading_tex(part.column)
+    units[i + 1] = (part.text or part.column.unit == "1") and "" or "($" .. part.column.unit_tex .. "$)"
   end
+  add("\\begin{tabular}{" .. form .. "}\n\\toprule")
+  local groups = groups_tex(parts)
+  if groups then add(groups) end
   add_row(headings)
   add_row(units)
   add "\\midrule"
-  for _, row in ipairs(whole.rows) do
-    local fields = { escaped(row.name) }
-    for _, text in ipairs(texts) do fields[#fields + 1] = escaped(row.texts[text] or "") end
-    for _, cell in ipairs(row.cells) do fields[#fields + 1] = cell_tex(cell) end
+  for i = first, last do
+    local row, fields = whole.rows[i], { escaped(whole.rows[i].name) }
+    for j, part in ipairs(parts) do fields[j + 1] = part.text and escaped(row.texts[part.text] or "") or cell_tex(row.cells[part.number]) end
     add_row(fields)
   end
-  add "\\bottomrule"
-  add "\\end{tabular}"
-  add "\\par\\medskip\\begin{minipage}{\\textwidth}\\footnotesize"
-  for _, line in ipairs(notes_tex(whole.notes)) do add(line) end
-  add "\\end{minipage}"
-  add "\\end{table*}"
+  add "\\bottomrule\n\\end{tabular}"
+end
+
+-- Table environments, for a document that loads booktabs: one, or several where one would be too wide or too long; the notes stand below the last.
+function tables.latex(whole)
+  local lines, all, count = { "% needs \\usepackage{booktabs}" }, tables_of(whole), 0
+  local function add(line) lines[#lines + 1] = line end
+  for first = 1, #whole.rows, MOST_ROWS do
+    local last = math.min(first + MOST_ROWS - 1, #whole.rows)
+    for number, parts in ipairs(all) do
+      count = count + 1
+      local continued = count > 1 and " (continued)" or ""
+      add "\\begin{table*}\n\\centering\\small"
+      add(whole.title and "\\caption{" .. escaped(whole.title) .. continued .. "}" or "% \\caption{...}")
+      add_tabular(add, whole, parts, first, last)
+      if last == #whole.rows and number == #all and #whole.notes > 0 then
+        add "\\par\\medskip\\begin{minipage}{\\textwidth}\\footnotesize"
+        for _, line in ipairs(notes_tex(whole.notes)) do add(line) end
+        add "\\end{minipage}"
+      end
+      add "\\end{table*}"
+      if count % MOST_FLOATS == 0 then add "\\clearpage" end
+    end
+  end
   return table.concat(lines, "\n") .. "\n"
 end
 

@@ -7,18 +7,12 @@
 -- not given. A column without a unit whose header is far from every name of the glossary is a text, carried along.
 local core = ...
 local case = core.part "lacuna.case"
+local bare = core.part "lacuna.record".bare
 
 local targets = {}
 
 -- Errors start with their place in the file, or with "study:", which study puts the script's line before.
 local function complain(form, ...) error(form:format(...), 0) end
-
--- An error's text without the script's line, where it begins with that.
-local function bare(message)
-  local _, here = pcall(core.raise, "")
-  return message:sub(1, #here) == here and message:sub(#here + 1) or message
-end
-targets.bare = bare
 
 -- Calls f; an error of its becomes one at `where`.
 local function at(where, f, ...)
@@ -207,8 +201,8 @@ local function is_blank(row)
   return true
 end
 
-local function from_file(path, file)
-  local ok, rows = pcall(core.read_csv, path, file)
+local function from_file(file, path, text)
+  local ok, rows = pcall(core.read_csv, path, file, text)
   if not ok then complain("%s", bare(rows)) end
   if #rows == 0 then complain("%s: the file is empty; its first line names the columns", file) end
   local list, names = { texts = {}, places = {} }, {}
@@ -226,6 +220,7 @@ local function from_file(path, file)
       list[#list + 1] = target
     end
   end
+  list.input = { name = file, path = path, text = text }
   if #list == 0 then complain("%s: no targets; the file has a header line alone", file) end
   return list
 end
@@ -273,7 +268,7 @@ end
 
 -- The targets of a study. `find_file` says where a file of that name stands.
 function targets.read(given, find_file)
-  if type(given) == "string" then return from_file(find_file(given), given) end
+  if type(given) == "string" then return from_file(given, find_file(given)) end
   if type(given) == "table" then return from_list(given) end
   error("study wants targets = the name of a CSV file, or a list of tables; got " .. type(given), 0)
 end

@@ -55,14 +55,18 @@ local function undefined_note(quantity)
   return (" (%d of %d points undefined)"):format(count, size)
 end
 
--- Median, upper and lower error of an ensemble in its display unit. Sides that differ by less than a tenth are taken as equal: with some
+-- Median, upper and lower error from the ends of the central 68 %. Sides that differ by less than a tenth are taken as equal: with some
 -- thousands of draws each is known to a few per cent only.
-function text.median_and_errors(quantity, factor)
-  local low, median, high = core.spread_of(quantity)
-  low, median, high = core.elements(low)[1] / factor, core.elements(median)[1] / factor, core.elements(high)[1] / factor
+function text.errors_of(low, median, high)
   local upper, lower = high - median, median - low
   if math.abs(upper - lower) < 0.1 * math.max(upper, lower) then upper, lower = (upper + lower) / 2, (upper + lower) / 2 end
   return median, upper, lower
+end
+
+-- The same of an ensemble in its display unit.
+function text.median_and_errors(quantity, factor)
+  local low, median, high = core.spread_of(quantity)
+  return text.errors_of(core.elements(low)[1] / factor, core.elements(median)[1] / factor, core.elements(high)[1] / factor)
 end
 
 -- An ensemble along the axis draw alone: "0.46 ± 0.03".

@@ -7,14 +7,17 @@
 --   words_of(name)      "gap_width" as "gap width"
 --   list(names, most)   "A", "A and B", "A, B and C", "A, B and 9 others"
 --   count(some, all)    "Marrow 3", "both targets", "all 12 targets", "3 of the 12 targets (A, B and C)"
---   recipe_words(words) "array_resolution by fringe instead of half_fringe" as it is said in a sentence
+--   recipe_name(name, by)   "Kanagawa et al. 2016" of a recipe that is called after its paper, else "half fringe"
+--   recipe_words(words) "gap_width by kanagawa_2016 instead of ..." as it is said in a sentence
+--   reason_words(words) "rim_elements_by_array < elements_required 1" likewise
 local core = ...
+local bibliography = core.part "lacuna.bibliography"
 local verdicts = {}
 
 local MOSTLY, HARDLY = 0.9, 0.1 -- shares of draws from which, and up to which, one word will do
 verdicts.MOSTLY, verdicts.HARDLY = MOSTLY, HARDLY
 
-function verdicts.words_of(name) return (name:gsub("_", " ")) end
+function verdicts.words_of(name) return (name:gsub("semi_major", "semi-major"):gsub("_", " ")) end
 
 function verdicts.list(names, most)
   if #names == 1 then return names[1] end
@@ -32,15 +35,39 @@ verdicts.names_of = names_of
 
 function verdicts.count(some, all)
   if #some == 0 then return all == 1 and "no target" or "none of the " .. all .. " targets" end
-  if all == 1 then return some[1].name end
+  if #some == 1 then return some[1].name end
   if #some == all then return all == 2 and "both targets" or "all " .. all .. " targets" end
   return ("%d of the %d targets (%s)"):format(#some, all, verdicts.list(names_of(some)))
+end
+
+function verdicts.recipe_name(name, by)
+  if by:find "_%d%d%d%d" then
+    for _, number in ipairs(core.entry(name).rows) do
+      local row = core.row(number)
+      if row.by == by and bibliography.short(row) then return bibliography.short(row) end
+    end
+  end
+  return verdicts.words_of(by)
 end
 
 function verdicts.recipe_words(words)
   local name, by, instead = words:match "^([%w_]+) by ([%w_]+) instead of ([%w_]+)$"
   if not name then return verdicts.words_of(words) end
-  return ("%s by %s instead of %s"):format(verdicts.words_of(name), verdicts.words_of(by), verdicts.words_of(instead))
+  return ("the %s by %s instead of %s"):format(verdicts.words_of(name), verdicts.recipe_name(name, by), verdicts.recipe_name(name, instead))
+end
+
+-- The conditions of being resolved, by what a structure is compared with.
+local reasons_by_limit = {
+  elements_required = function(structure, limit) return ("fewer than %s resolution element%s across the %s"):format(limit, limit == "1" and " lies" or "s lie", structure) end,
+  recoverable_scale = function(structure, limit) return ("the %s is larger than the recoverable scale of %s"):format(structure, limit) end,
+  array_field = function(structure, limit) return ("the %s reaches beyond the array's field of %s"):format(structure, limit) end,
+  inner_working_angle = function(structure, limit) return ("the %s lies inside the inner working angle of %s"):format(structure, limit) end,
+}
+
+function verdicts.reason_words(words)
+  local structure, limit, value = words:match "(%l+)_[%l_]+ [<>] ([%l_]+) (.*)$"
+  if structure and reasons_by_limit[limit] then return reasons_by_limit[limit](structure, value) end
+  return verdicts.words_of(words)
 end
 
 -- "the rim is resolved by the array"
