@@ -29,6 +29,11 @@ local function numbers_for(self, right_side)
   return inputs
 end
 
+-- An equation's numbers to four digits: 1.0289939699622 is 1.029.
+local function shortened(written)
+  return written and written:gsub("%d+%.%d%d%d%d+", function(digits) return format.number(tonumber(digits), 4) end)
+end
+
 local function step_of(self, step)
   local value = core.raw(self, step.name)
   if not step.row then
@@ -38,11 +43,16 @@ local function step_of(self, step)
   end
   local row = core.row(step.row)
   if row.kind == "assumed" then return { name = step.name, kind = "assumed", value = text.quantity(value), row = row } end
-  local right_side = text.right_side(row)
+  local right_side = shortened(text.right_side(row))
   return {
     name = step.name, kind = "derived", value = text.brief(value), row = row, right_side = right_side,
-    equation = row.equation ~= "" and row.equation or nil, inputs = right_side and numbers_for(self, right_side), warnings = text.warnings(self, row),
+    equation = row.equation ~= "" and shortened(row.equation) or nil, inputs = right_side and numbers_for(self, right_side), warnings = text.warnings(self, row),
   }
+end
+
+-- Whether it is a choice, and not the same with less known: a verdict with fewer conditions, say.
+local function is_another_recipe(self, other)
+  return core.entry(other.name).kind ~= "verdict" and not core.part "lacuna.record".leaves_out(other.row, core.row(core.row_of(self, other.name)))
 end
 
 function derivation.of(self, name)
@@ -55,8 +65,8 @@ function derivation.of(self, name)
     conditions, chain.unchecked = text.conditions(self, name)
     for i, condition in ipairs(conditions) do chain.conditions[i] = text.condition(condition) end
   end
-  for i, other in ipairs(case.over_recipes(self, name)) do
-    chain.others[i] = { name = other.name, row = other.row, instead_of = other.instead_of, value = text.brief(other.value) }
+  for _, other in ipairs(case.over_recipes(self, name)) do
+    if is_another_recipe(self, other) then chain.others[#chain.others + 1] = { name = other.name, row = other.row, instead_of = other.instead_of, value = text.brief(other.value) } end
   end
   return chain
 end

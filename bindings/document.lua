@@ -17,7 +17,7 @@ local function recipe_tex(row, cited)
   if row.source == "definition" then return "by definition" end
   local key, place = cited:key(row), row.place and "[" .. escaped(row.place):gsub("[%[%]]", "{%0}") .. "]" or ""
   local source = key and ("\\cite%s{%s}"):format(place, key) .. (row.from_memory and " (formula from memory)" or "") or escaped(text.source(row))
-  return ("%s, %s"):format(words(row.by), source)
+  return row.kind == "assumed" and source or ("%s, %s"):format(words(row.by), source)
 end
 
 -- Left and right side of an equation, at its first sign of equality; nil where it has none.
@@ -33,15 +33,23 @@ local function display(step)
   if not left then return equation and "\\[ " .. equation .. " \\]" or nil end
   local lines = { left .. " &=& \\displaystyle " .. right }
   if numbers then lines[#lines + 1] = " &=& \\displaystyle " .. numbers end
-  return "\\[ \\begin{array}{rcl}\n" .. table.concat(lines, " \\\\[1ex]\n") .. "\n\\end{array} \\]"
+  return "\\[ \\begin{array}{rcl}\n" .. table.concat(lines, " \\\\[3ex]\n") .. "\n\\end{array} \\]"
+end
+
+-- What is given on the way, in one item.
+local function add_givens(lines, steps, cited)
+  local parts = {}
+  for _, step in ipairs(steps) do
+    if step.kind == "given" then
+      local key = step.source_id and cited:key { source = step.source_id }
+      parts[#parts + 1] = ("%s %s%s"):format(words(step.name), escaped(step.value), key and " (zero point: \\cite{" .. key .. "})" or "")
+    end
+  end
+  if #parts > 0 then lines[#lines + 1] = "\\item Given: " .. table.concat(parts, "; ") .. "." end
 end
 
 local function add_step(lines, step, cited)
   local function add(line) lines[#lines + 1] = line end
-  if step.kind == "given" then
-    local key = step.source_id and cited:key { source = step.source_id }
-    return add(("\\item %s: %s, given%s."):format(words(step.name), escaped(step.value), key and " (zero point: \\cite{" .. key .. "})" or ""))
-  end
   if step.kind == "assumed" then
     return add(("\\item %s: %s, assumed (%s)%s."):format(words(step.name), escaped(step.value), recipe_tex(step.row, cited),
       step.row.supposes and "; " .. escaped(step.row.supposes) or ""))
@@ -50,7 +58,7 @@ local function add_step(lines, step, cited)
     step.row.supposes and "; supposes " .. escaped(step.row.supposes) or ""))
   local shown = display(step)
   if shown then add(shown) end
-  for _, warning in ipairs(step.warnings) do add("Beware: " .. escaped(warning) .. ".") end
+  for _, warning in ipairs(step.warnings) do add("Beware: " .. escaped(verdicts.in_words(warning)) .. ".") end
 end
 
 -- The steps of a chain that did not stand in one before.
@@ -75,13 +83,14 @@ local function add_chain(lines, one, seen, cited)
   if #steps < #chain.steps then add "What leads there besides stands above." end
   if #steps > 0 then
     add "\\begin{itemize}"
-    for _, step in ipairs(steps) do add_step(lines, step, cited) end
+    add_givens(lines, steps, cited)
+    for _, step in ipairs(steps) do if step.kind ~= "given" then add_step(lines, step, cited) end end
     add "\\end{itemize}"
   end
   if #chain.conditions > 0 then
     add "Its conditions:\n\\begin{itemize}"
-    for _, condition in ipairs(chain.conditions) do add("\\item " .. escaped(verdicts.words_of(condition)) .. ".") end
-    if chain.unchecked then add("\\item Not checked: " .. escaped(verdicts.words_of(chain.unchecked)) .. ".") end
+    for _, condition in ipairs(chain.conditions) do add("\\item " .. escaped(verdicts.in_words(condition)) .. ".") end
+    if chain.unchecked then add("\\item Not checked: " .. escaped(verdicts.in_words(chain.unchecked)) .. ".") end
     add "\\end{itemize}"
   end
   add ""
@@ -111,8 +120,8 @@ local function add_notes(lines, notes)
   for _, note in ipairs(notes) do
     if not shown_otherwise[note.heading] then
       add_list(lines, escaped(note.heading), mapped(note.lines, function(line)
-        if type(line) == "string" then return escaped(verdicts.words_of(line)) end
-        return escaped(verdicts.words_of(line[1] .. ": " .. table.concat(line, "; ", 2)))
+        if type(line) == "string" then return escaped(verdicts.in_words(line)) end
+        return escaped(verdicts.in_words(line[1] .. ": " .. table.concat(line, "; ", 2)))
       end))
     end
   end

@@ -396,7 +396,7 @@ function mathml.product(node, render, symbol_of)
   for i, factor in ipairs(node) do
     local text, binds = render(factor)
     local sign = node.signs[i]
-    if i > 1 then parts[#parts + 1] = sign ~= "" and operator(products[sign]) or is_unit(factor) and thin_space or invisible_times end
+    if i > 1 then parts[#parts + 1] = sign ~= "" and operator(products[sign]) or is_unit(factor) and thin_space or values and operator "·" or invisible_times end
     parts[#parts + 1] = mathml_bracketed(text, binds, sign == "/" and TIGHT or VALUE)
   end
   return element("mrow", table.unpack(parts)), PRODUCT

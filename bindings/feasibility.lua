@@ -121,7 +121,7 @@ local function quantity_sentence(study, number, column, known)
   local low, high, count = ends_of(study, number)
   if count == 0 then return nil end
   local name = words_of(column.name)
-  local said = known and "" or (" (%s)"):format(words_of(column.entry.meaning))
+  local said = known and "" or (" (%s)"):format(verdicts.in_words(column.entry.meaning))
   local others = recipes_of_quantity(study, number, column)
   if count == 1 or low == high then
     return ("The %s%s of %s is %s%s."):format(name, said, low.name, value_text(low.cells[number], column), others)
@@ -190,14 +190,15 @@ local function recipes_sentence(group_verdicts)
       if #recipe.names > 0 then
         moved[recipe.words] = "yes"
         changed[#changed + 1] = ("with %s, whether %s changes for %s"):format(verdicts.recipe_words(recipe.words), one.words,
-          recipe.asked == 1 and recipe.names[1] or ("%d of %d targets (%s)"):format(#recipe.names, recipe.asked, verdicts.list(recipe.names)))
+          recipe.asked == 1 and recipe.names[1] .. (recipe.low == 1 and " to yes" or recipe.low == 0 and " to no" or ", to " .. format.percent(recipe.low) .. " of the draws")
+            or ("%d of %d targets (%s)"):format(#recipe.names, recipe.asked, verdicts.list(recipe.names)))
       end
     end
   end
   if #order == 0 then return "What is given allows no other published recipe on the way to this." end
   local unchanged = {}
   for _, words in ipairs(order) do if moved[words] == "no" then unchanged[#unchanged + 1] = verdicts.recipe_words(words) end end
-  if #unchanged > 0 then changed[#changed + 1] = ("%s would change no answer%s"):format(verdicts.list(unchanged), #changed > 0 and " here" or "") end
+  if #unchanged > 0 then changed[#changed + 1] = ("%s would move no answer across one half of the draws%s"):format(verdicts.list(unchanged), #changed > 0 and " here" or "") end
   return "Over the recipes: " .. table.concat(changed, "; ") .. "."
 end
 
@@ -220,7 +221,7 @@ local function missing_sentences(study, columns)
     end
   end
   for i, one in ipairs(sentences) do
-    sentences[i] = ("For %s %s could not be derived (%s)."):format(verdicts.list(one.names), one.what or "this", words_of(one.reason))
+    sentences[i] = ("For %s %s could not be derived (%s)."):format(verdicts.list(one.names), one.what or "this", verdicts.in_words(one.reason))
   end
   return sentences
 end

@@ -31,8 +31,8 @@ local function item_list(items)
 end
 
 -- A table that scrolls inside its own box. head and rows: lists of cells in HTML; the first cell of a row heads it.
-local function plain_table(label, head, rows)
-  local lines = { ('<div class="scroll" tabindex="0" role="region" aria-label="%s">\n<table>\n<thead><tr>'):format(html(label)) }
+local function plain_table(label, head, rows, class)
+  local lines = { ('<div class="scroll" tabindex="0" role="region" aria-label="%s">\n<table class="%s">\n<thead><tr>'):format(html(label), class or "words") }
   for _, cell in ipairs(head) do lines[#lines + 1] = element('th scope="col"', cell) end
   lines[#lines + 1] = "</tr></thead>\n<tbody>"
   for _, row in ipairs(rows) do
@@ -148,7 +148,7 @@ local function results(study)
     "<tr>" .. table.concat(heads) .. "</tr></thead>\n<tbody>" }
   for _, row in ipairs(study.rows) do
     local cells = { element('th scope="row"', html(row.name)) }
-    for _, name in ipairs(study.texts) do cells[#cells + 1] = element("td", html(row.texts[name] or "")) end
+    for _, name in ipairs(study.texts) do cells[#cells + 1] = element('td class="text"', html(row.texts[name] or "")) end
     for i, column in ipairs(study.columns) do cells[#cells + 1] = result_cell(column, row.cells[i]) end
     lines[#lines + 1] = "<tr>" .. table.concat(cells) .. "</tr>"
   end
@@ -172,7 +172,7 @@ local function step_html(step)
     local numbers = derivation.numbers_mathml(step)
     if numbers then add('<div class="equation">%s</div>', (numbers:gsub("^(<math[^>]*>)", "%1<mo>=</mo>"))) end
     add('<p class="small">%s%s</p>', source_of(step.row), step.row.supposes and "; supposes " .. html(step.row.supposes) or "")
-    for _, warning in ipairs(step.warnings) do add('<p class="small"><strong>Beware:</strong> %s</p>', html(warning)) end
+    for _, warning in ipairs(step.warnings) do add('<p class="small"><strong>Beware:</strong> %s</p>', html(verdicts.in_words(warning))) end
   end
   return table.concat(lines)
 end
@@ -186,8 +186,8 @@ local function chain_html(one)
   add("<ol class=\"steps\">\n" .. table.concat(steps, "\n") .. "\n</ol>")
   if #chain.conditions > 0 then
     local conditions = {}
-    for i, condition in ipairs(chain.conditions) do conditions[i] = html(words_of(condition)) end
-    if chain.unchecked then conditions[#conditions + 1] = "not checked: " .. html(words_of(chain.unchecked)) end
+    for i, condition in ipairs(chain.conditions) do conditions[i] = html(verdicts.in_words(condition)) end
+    if chain.unchecked then conditions[#conditions + 1] = "not checked: " .. html(verdicts.in_words(chain.unchecked)) end
     add("<p>Its conditions:</p>\n" .. item_list(conditions))
   end
   if #chain.others > 0 then
@@ -197,7 +197,7 @@ local function chain_html(one)
     end
     add("<p>With another recipe:</p>\n" .. item_list(others))
   end
-  return ("<details>\n<summary>%s = %s</summary>\n%s\n</details>"):format(html(words_of(chain.name)), html(chain.value:match "^[^:]*"), table.concat(parts, "\n"))
+  return ("<details>\n<summary>%s: %s</summary>\n%s\n</details>"):format(html(words_of(chain.name)), html(chain.value:match "^[^:]*"), table.concat(parts, "\n"))
 end
 
 local function derivations(parts)
@@ -234,7 +234,7 @@ local function givens_table(study)
     rows[i] = { html(row.name) }
     for j, name in ipairs(names) do rows[i][j + 1] = texts[i][name] and html(texts[i][name]) or "—" end
   end
-  return plain_table("Givens of the targets", head, rows)
+  return plain_table("Givens of the targets", head, rows, "values")
 end
 
 local function common_givens(study)
@@ -305,11 +305,11 @@ local function notes_html(study)
     if not shown_elsewhere[note.heading] then
       local items = {}
       for i, line in ipairs(note.lines) do
-        if type(line) == "string" then items[i] = html(words_of(line))
+        if type(line) == "string" then items[i] = html(verdicts.in_words(line))
         else
           local inner = {}
-          for j = 2, #line do inner[j - 1] = html(words_of(line[j])) end
-          items[i] = html(words_of(line[1])) .. item_list(inner)
+          for j = 2, #line do inner[j - 1] = html(verdicts.in_words(line[j])) end
+          items[i] = html(verdicts.in_words(line[1])) .. item_list(inner)
         end
       end
       parts[#parts + 1] = element("h3", html(note.heading)) .. "\n" .. item_list(items)

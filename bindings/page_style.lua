@@ -36,7 +36,8 @@ th, td { padding: 0.25rem 0.6rem; text-align: left; vertical-align: top; border-
 thead th { vertical-align: bottom; border-bottom: 2px solid var(--soft); }
 th.group { text-align: center; border-bottom-width: 1px; }
 .results .number, .results th.number { text-align: right; }
-.results td.number, tbody th { white-space: nowrap; }
+.results td.number, .values td, tbody th { white-space: nowrap; }
+td.text { min-width: 8rem; }
 tbody th { font-weight: 600; position: sticky; left: 0; background: var(--paper); }
 td.yes { background: var(--yes-tint); }
 td.between { background: var(--between-tint); }
@@ -45,7 +46,7 @@ summary { cursor: pointer; }
 .steps li { margin: 0.8rem 0; }
 .steps p { margin: 0.15rem 0; }
 .equation { overflow-x: auto; padding: 0.25rem 0 0.25rem 1.2rem; }
-math { font-size: 1.1rem; }
+math { font-size: 1.1rem; math-style: normal; }
 pre { background: var(--box); padding: 0.8rem; font-size: 0.85rem; line-height: 1.4; }
 .draft { background: var(--box); padding: 0.2rem 1rem; border-radius: 4px; }
 figure { margin: 1rem 0; }

@@ -410,7 +410,7 @@ local function add_tabular(add, whole, parts, first, last)
   local groups = groups_tex(parts)
   if groups then add(groups) end
   add_row(headings)
-  add_row(units)
+  if table.concat(units) ~= "" then add_row(units) end
   add "\\midrule"
   for i = first, last do
     local row, fields = whole.rows[i], { escaped(whole.rows[i].name) }

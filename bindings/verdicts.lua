@@ -5,6 +5,7 @@
 --   of(study)           a list of { column, words = "the rim is resolved by the array", whole = without draws, yes, between, no, missing = lists of
 --                       { name, cell }, recipes = { { words, asked, names = of targets whose verdict changes, low, high = shares } }, reasons }
 --   words_of(name)      "gap_width" as "gap width"
+--   in_words(sentence)  the same of all names in it
 --   list(names, most)   "A", "A and B", "A, B and C", "A, B and 9 others"
 --   count(some, all)    "Marrow 3", "both targets", "all 12 targets", "3 of the 12 targets (A, B and C)"
 --   recipe_name(name, by)   "Kanagawa et al. 2016" of a recipe that is called after its paper, else "half fringe"
@@ -18,6 +19,11 @@ local MOSTLY, HARDLY = 0.9, 0.1 -- shares of draws from which, and up to which, 
 verdicts.MOSTLY, verdicts.HARDLY = MOSTLY, HARDLY
 
 function verdicts.words_of(name) return (name:gsub("semi_major", "semi-major"):gsub("_", " ")) end
+
+-- A sentence with names in it, without their underscores; symbols like M_p keep theirs.
+function verdicts.in_words(sentence)
+  return (sentence:gsub("%f[%w]%a%a%w*_[%w_]+", verdicts.words_of):gsub("…_", "… "):gsub("%f[%w]%l%l%w*_[%w_]+", verdicts.words_of))
+end
 
 function verdicts.list(names, most)
   if #names == 1 then return names[1] end
