@@ -2,9 +2,10 @@
 # make            the program, the Lua module, the shared and the static library, in build/
 # make try        all that the main job needs, packages included, then the demo study
 # make check      all tests, then all again under the address and undefined-behaviour sanitizers
+# make check-page what readers see: pages in headless Chromium, LaTeX compiled
 # make bench      measures against what is required
 # make install    PREFIX=/usr/local, DESTDIR= for packagers; make uninstall
-# make packages   installs what try, check and bench need (Debian); elsewhere names what is missing
+# make packages   installs what try, check, check-page and bench need (Debian); elsewhere names what is missing
 # make clean
 # V=1 shows the commands.
 
@@ -73,7 +74,7 @@ bench_programs = $(patsubst tests/%.c,$(build)/tests/%,$(bench_sources))
 
 # ---- Targets ----
 
-.PHONY: all tests try check bench packages install uninstall clean
+.PHONY: all tests try check check-page bench packages install uninstall clean
 .DELETE_ON_ERROR:
 .SECONDARY:
 
@@ -93,13 +94,18 @@ check:
 	@$(MAKE) --no-print-directory build=$(build)/san sanitize=yes tests
 	@tests/run $(build) $(build)/san
 
+check-page:
+	@.ci/packages try check check-page
+	@$(MAKE) --no-print-directory all
+	@tests/run $(build) tests/page/test_*.py
+
 bench:
 	@.ci/packages try check bench
 	@$(MAKE) --no-print-directory all $(bench_programs)
 	@tests/bench/run $(build)
 
 packages:
-	@.ci/packages try check bench
+	@.ci/packages try check check-page bench
 
 clean:
 	rm -rf $(build)
