@@ -14,6 +14,8 @@ local notes = {}
 
 local function ordered() return { keys = {}, values = {} } end
 
+local function yes() return true end
+
 local function at(list, key, make)
   if list.values[key] == nil then
     list.keys[#list.keys + 1] = key
@@ -47,11 +49,11 @@ local function labelled(columns)
   for _, column in ipairs(columns) do
     local group = column.group or ""
     local names = at(names_of, group)
-    at(names, column.name, function() return true end)
+    at(names, column.name, yes)
   end
   for group, names in each(names_of) do
     local groups = at(by_names, table.concat(names.keys, ", "))
-    at(groups, group, function() return true end)
+    at(groups, group, yes)
   end
   local said = {}
   for names, groups in each(by_names) do
@@ -79,18 +81,29 @@ local function relation_by(name, by)
   end
 end
 
+-- The steps that a cell's text tells, as { name, by } in turn: read once for all cells with the same.
+local function steps_of(texts, text)
+  if not texts[text] then
+    local steps = {}
+    for name, by in text:gmatch "([%w_]+) ([%w_]+)" do steps[#steps + 1] = { name = name, by = by } end
+    texts[text] = steps
+  end
+  return texts[text]
+end
+
 -- The relations used: name -> recipe ("given" without one) -> { relation, targets }, in the order of the glossary.
 function notes.relations_used(study)
-  local used = {}
+  local used, texts = {}, {}
   for_cells(study, function(_, row, cell)
-    for name, by in cell.steps:gmatch "([%w_]+) ([%w_]+)" do
-      used[name] = used[name] or ordered()
-      local entry = at(used[name], by, function()
-        local made = ordered()
-        made.relation = by ~= "given" and relation_by(name, by) or nil
-        return made
-      end)
-      at(entry, row.name, function() return true end)
+    for _, step in ipairs(steps_of(texts, cell.steps)) do
+      local recipes = used[step.name] or ordered()
+      used[step.name] = recipes
+      local entry = recipes.values[step.by]
+      if not entry then
+        entry = at(recipes, step.by)
+        entry.relation = step.by ~= "given" and relation_by(step.name, step.by) or nil
+      end
+      if not entry.values[row.name] then at(entry, row.name, yes) end
     end
   end)
   local in_order = ordered()
@@ -229,7 +242,7 @@ local function recipes(used)
       local row = entry.relation
       if row and row.kind ~= "definition" and row.kind ~= "assumed" and row.source ~= "definition" then
         local names = at(by_source, text.recipe(row) .. (row.supposes and "; supposes " .. row.supposes or ""))
-        at(names, name, function() return true end)
+        at(names, name, yes)
       end
     end
   end
@@ -291,7 +304,7 @@ end
 local function outside_validity(study)
   local found = ordered()
   for_cells(study, function(_, row, cell)
-    for _, words in ipairs(cell.outside or {}) do at(at(found, words), row.name, function() return true end) end
+    for _, words in ipairs(cell.outside or {}) do at(at(found, words), row.name, yes) end
   end)
   local said = {}
   for words, names in each(found) do said[#said + 1] = words .. "; outside for " .. named(names.keys, study) end

@@ -143,7 +143,7 @@ local function serially(plan, targets, todo, take)
   local collect = collector()
   for _, place in ipairs(todo) do
     local record = records.of(plan, targets[place])
-    take(place, record, file.encode(record))
+    take(place, record)
     collect()
   end
   return 0
@@ -182,7 +182,7 @@ function run.all(plan, list)
   local bar = progress.new(#targets, #targets - #todo)
   local children = work_out(plan, targets, todo, function(place, record, text)
     made[place] = record
-    if folder then folder.handle:append(text) end
+    if folder then folder.handle:append(text or file.encode(record)) end
     bar:step()
   end, bar)
   return { records = made, targets = targets, folder = folder, bar = bar, children = children, input = list.input }
