@@ -132,10 +132,11 @@ end
 
 -- Verdicts ---------------------------------------------------------------------------------------------------------------------------
 
+local function what_shares_are_of(study) return #(study.sweeps or {}) > 0 and " of the draws and points" or " of the draws" end
+
 -- "in at least 90 % of the draws for 3 of the 12 targets (A, B and C), in 45 % for Lumbric 2 and in at most 10 % for the others"
-local function by_share(one, all)
+local function by_share(one, all, draws)
   local parts, open = {}, {}
-  local draws = " of the draws"
   local function add(words, who)
     parts[#parts + 1] = words .. draws .. " for " .. who
     draws = ""
@@ -155,9 +156,9 @@ local function without_draws(one, all)
   return ("%s is %s for %s, and not for %s"):format(subject, verb, verdicts.count(one.yes, all), verdicts.count(one.no, all))
 end
 
-local function single_share(row)
-  if row.cell.share == 0 then return "in none of the draws" end
-  return row.cell.share == 1 and "in all of the draws" or ("in %s of the draws"):format(format.percent(row.cell.share))
+local function single_share(row, study)
+  local share = row.cell.share
+  return (share == 0 and "in none" or share == 1 and "in all" or "in " .. format.percent(share)) .. what_shares_are_of(study)
 end
 
 local function reason_sentence(one)
@@ -175,8 +176,8 @@ local function verdict_sentences(study, one, draws)
   if known == 0 then return {} end
   local answer
   if not draws then answer = without_draws(one, all)
-  elseif all == 1 then answer = ("%s %s"):format(one.words, single_share(one.yes[1] or one.between[1] or one.no[1]))
-  else answer = one.words .. " " .. by_share(one, all) end
+  elseif all == 1 then answer = ("%s %s"):format(one.words, single_share(one.yes[1] or one.between[1] or one.no[1], study))
+  else answer = one.words .. " " .. by_share(one, all, what_shares_are_of(study)) end
   return present(capital(answer) .. ".", reason_sentence(one))
 end
 

@@ -210,12 +210,15 @@ local function stands_in(ranges, code)
 end
 
 local function columns_of(code)
-  if code < 0x20 or code >= 0x7f and code < 0xa0 or stands_in(no_width, code) then return 0 end
+  if code < 0x20 or code >= 0x7f and code < 0xa0 then return 0 end
+  if code < no_width[1][1] then return 1 end
+  if stands_in(no_width, code) then return 0 end
   return stands_in(two_columns, code) and 2 or 1
 end
 
 -- Bytes that are no UTF-8 count as one column each.
 function format.width(text)
+  if not text:find "[^ -~]" then return #text end
   local columns, at = 0, 1
   while at <= #text do
     local _, bad = utf8.len(text, at)

@@ -47,7 +47,7 @@ local function prepare(folders)
   for _, text in ipairs(head.only) do command.take("--only", text) end
   for _, input in ipairs(head.inputs) do command.inputs[input.name] = input.text end
   core.settings { seed = head.seed, draws = head.draws }
-  command.script = head.script
+  command.script, command.arguments = head.script, head.arguments
   return head
 end
 

@@ -14,6 +14,8 @@ local notes = {}
 
 local function ordered() return { keys = {}, values = {} } end
 
+local function yes() return true end
+
 local function at(list, key, make)
   if list.values[key] == nil then
     list.keys[#list.keys + 1] = key
@@ -47,11 +49,11 @@ local function labelled(columns)
   for _, column in ipairs(columns) do
     local group = column.group or ""
     local names = at(names_of, group)
-    at(names, column.name, function() return true end)
+    at(names, column.name, yes)
   end
   for group, names in each(names_of) do
     local groups = at(by_names, table.concat(names.keys, ", "))
-    at(groups, group, function() return true end)
+    at(groups, group, yes)
   end
   local said = {}
   for names, groups in each(by_names) do
@@ -79,18 +81,29 @@ local function relation_by(name, by)
   end
 end
 
+-- The steps that a cell's text tells, as { name, by } in turn: read once for all cells with the same.
+local function steps_of(texts, text)
+  if not texts[text] then
+    local steps = {}
+    for name, by in text:gmatch "([%w_]+) ([%w_]+)" do steps[#steps + 1] = { name = name, by = by } end
+    texts[text] = steps
+  end
+  return texts[text]
+end
+
 -- The relations used: name -> recipe ("given" without one) -> { relation, targets }, in the order of the glossary.
 function notes.relations_used(study)
-  local used = {}
+  local used, texts = {}, {}
   for_cells(study, function(_, row, cell)
-    for name, by in cell.steps:gmatch "([%w_]+) ([%w_]+)" do
-      used[name] = used[name] or ordered()
-      local entry = at(used[name], by, function()
-        local made = ordered()
-        made.relation = by ~= "given" and relation_by(name, by) or nil
-        return made
-      end)
-      at(entry, row.name, function() return true end)
+    for _, step in ipairs(steps_of(texts, cell.steps)) do
+      local recipes = used[step.name] or ordered()
+      used[step.name] = recipes
+      local entry = recipes.values[step.by]
+      if not entry then
+        entry = at(recipes, step.by)
+        entry.relation = step.by ~= "given" and relation_by(step.name, step.by) or nil
+      end
+      if not entry.values[row.name] then at(entry, row.name, yes) end
     end
   end)
   local in_order = ordered()
@@ -229,7 +242,7 @@ local function recipes(used)
       local row = entry.relation
       if row and row.kind ~= "definition" and row.kind ~= "assumed" and row.source ~= "definition" then
         local names = at(by_source, text.recipe(row) .. (row.supposes and "; supposes " .. row.supposes or ""))
-        at(names, name, function() return true end)
+        at(names, name, yes)
       end
     end
   end
@@ -291,7 +304,7 @@ end
 local function outside_validity(study)
   local found = ordered()
   for_cells(study, function(_, row, cell)
-    for _, words in ipairs(cell.outside or {}) do at(at(found, words), row.name, function() return true end) end
+    for _, words in ipairs(cell.outside or {}) do at(at(found, words), row.name, yes) end
   end)
   local said = {}
   for words, names in each(found) do said[#said + 1] = words .. "; outside for " .. named(names.keys, study) end
@@ -334,6 +347,46 @@ local function set_on_command_line(study)
   return words ~= "" and { words .. "; before what the study says" } or {}
 end
 
+-- Between which points of its one sweep a verdict's share crosses one half: the value there, on the line between them; in the sweep's unit.
+local function turns_at(cell, sweep)
+  for i = 2, #cell.shares do
+    local before, after = cell.shares[i - 1] - 0.5, cell.shares[i] - 0.5
+    if (before < 0) ~= (after < 0) then
+      return sweep.values[i - 1] + (sweep.values[i] - sweep.values[i - 1]) * before / (before - after), after >= 0
+    end
+  end
+end
+
+-- "rim_resolved_by_array: from 95 m up for Marrow 3, ..." for a study along one sweep.
+local function where_verdicts_turn(study)
+  local sweep = study.sweeps and #study.sweeps == 1 and study.sweeps[1]
+  if not sweep then return {} end
+  local columns = ordered()
+  for_cells(study, function(column, row, cell)
+    if not cell.shares then return end
+    local value, up = turns_at(cell, sweep)
+    local words = value and ("%s %s"):format(up and "from" or "up to", format.with_unit(format.number(value, 3), sweep.unit_text))
+      or cell.shares[1] >= 0.5 and "all along" or "nowhere"
+    table.insert(at(at(columns, column.label), words), row.name)
+  end)
+  local said = {}
+  for label, words in each(columns) do
+    local parts = { label }
+    for where, names in each(words) do parts[#parts + 1] = where .. " for " .. named(names, study) end
+    said[#said + 1] = #parts > 3 and { label, table.concat(parts, ", ", 2) } or parts
+  end
+  return said
+end
+
+local function along_sweeps(study)
+  local said = {}
+  for _, sweep in ipairs(study.sweeps or {}) do
+    said[#said + 1] = ("%s from %s to %s, %d points"):format(sweep.name, format.number(sweep.values[1]),
+      format.with_unit(format.number(sweep.values[#sweep.values]), sweep.unit_text), #sweep.values)
+  end
+  return #said > 0 and { table.concat(said, " and ") .. "; the table shows the lowest … the highest value along it, the CSV file each point" } or {}
+end
+
 local function givens_for_all(study)
   local said = {}
   for _, group in ipairs(study.groups) do
@@ -362,6 +415,8 @@ function notes.of(study)
     { heading = "Failed", lines = failed_targets(study) },
     { heading = "Not derived (—)", lines = not_derived(study) },
     { heading = "Why not (yes in less than half of the draws; medians)", lines = why_not(study) },
+    { heading = "Along a sweep", lines = along_sweeps(study) },
+    { heading = "Yes in half of the draws and more", lines = where_verdicts_turn(study) },
     { heading = "With another recipe", lines = over_recipes(study) },
     { heading = "Not all targets use the same recipes", lines = unlike_recipes(study, used) },
     { heading = "Outside a recipe's range of validity", lines = outside_validity(study) },

@@ -156,7 +156,7 @@ local function add_shares(cell, quantity, names, draws)
   cell.share = total / #cell.shares
 end
 
--- What a case says of a name, as a cell; and the quantity.
+-- What a case says of a name, as a cell.
 local function cell_of(self, name)
   if core.row_of(self, name) == nil then return { missing = true, reason = what_is_missing(self, name) } end
   local quantity = keep(core.raw(self, name))
@@ -168,7 +168,7 @@ local function cell_of(self, name)
   end
   local cell = { undefined = undefined / size }
   if core.entry(name).kind == "verdict" then add_shares(cell, quantity, names, draws) else add_values(cell, quantity, factor, names, draws) end
-  return cell, quantity
+  return cell
 end
 records.cell_of = cell_of
 
@@ -274,12 +274,12 @@ local function share_of(quantity)
 end
 
 -- What changes: the medians' factors (of a magnitude: their differences), from the lowest to the highest; or whether a verdict crosses one half.
-local function change_of(column, cell, quantity, value)
+local function change_of(column, cell, value)
   if column.verdict then
     local share = share_of(value)
     return { flips = (share >= 0.5) ~= (cell.share >= 0.5), share = share }
   end
-  local before, after = core.elements(core.median(quantity)), core.elements(core.median(value))
+  local before, after = cell.values or { cell.value }, in_unit(core.median(value), column.entry.factor)
   local low, high = math.huge, -math.huge
   for i = 1, #after do
     local was = before[#before == 1 and 1 or i]
@@ -289,13 +289,13 @@ local function change_of(column, cell, quantity, value)
   return low <= high and { low = low, high = high } or {}
 end
 
-local function over_recipes(column, self, steps, cell, quantity, made)
+local function over_recipes(column, self, steps, cell, made)
   local found
   for _, other in ipairs(alternatives(self, steps)) do
     local changed = by_recipe(self, other, made)
     local value = changed and core.raw(changed, column.name)
     if value then
-      local change = change_of(column, cell, quantity, value)
+      local change = change_of(column, cell, value)
       change.recipe = other.words
       found = found or {}
       found[#found + 1] = change
@@ -310,14 +310,14 @@ end
 local function fill(plan, column, cases, made)
   local number = column.group_number
   local self = cases[number]
-  local cell, quantity = cell_of(self, column.name)
+  local cell = cell_of(self, column.name)
   if cell.missing or column.hidden then return cell end
   local steps = steps_of(plan, self, number, column.name)
   cell.steps = steps.words
-  if column.verdict and cell.share < 0.5 then cell.failing = failing(self, column.name) end
+  if column.verdict and not cell.axes and cell.share < 0.5 then cell.failing = failing(self, column.name) end
   made[number] = made[number] or { outside = {}, cases = {} }
   cell.outside = outside_validity(self, steps, made[number].outside)
-  cell.others = over_recipes(column, self, steps, cell, quantity, made[number].cases)
+  cell.others = over_recipes(column, self, steps, cell, made[number].cases)
   return cell
 end
 

@@ -116,24 +116,28 @@ end
 
 -- Figures -----------------------------------------------------------------------------------------------------------------------------
 
--- The figures' files, and for the page and the document what each is: { svg, caption, alternative, file }. Where one can't be drawn, the
--- report goes on without it.
+-- The figures as objects: a study may have them described only.
+local function figures_of(study)
+  local list = study.figures or {}
+  if #list == 0 or (getmetatable(list[1]) or {}).__name == "figure" then return list end
+  return core.part "lacuna.figure".of_study(study)
+end
+
+-- The figures' files, and for the page and the document what each is: { svg, caption, alternative, file }. Where they can't be drawn, the report
+-- goes on with their data alone.
 local function write_figures(out, study)
-  local drawn = {}
-  if #(study.figures or {}) == 0 then return drawn end
+  local list, wanted, drawn = figures_of(study), {}, {}
+  if #list == 0 then return drawn end
   core.make_folder(out:path "figures")
-  for number, figure in ipairs(study.figures) do
-    local stem = "figures/figure_" .. number
-    local ok, trouble = pcall(function()
-      local one = { svg = figure:svg(), caption = figure:caption(), alternative = figure:alternative(), stem = stem }
-      figure:write(out:path(stem))
-      drawn[#drawn + 1] = one
-    end)
-    if not ok then out.missing[#out.missing + 1] = ("figure %d: %s"):format(number, tostring(trouble)) end
+  for i, figure in ipairs(list) do wanted[i] = { figure, out:path("figures/" .. figure.name) } end
+  local files, why = core.part "lacuna.figure".write(wanted)
+  for _, file in ipairs(files) do out:add_present(file:sub(#out.folder + 2)) end
+  if why then out.missing[#out.missing + 1] = "figures: " .. why end
+  for _, figure in ipairs(list) do
+    if not why then
+      drawn[#drawn + 1] = { svg = figure:svg(), caption = figure:caption(), alternative = figure:alternative(), file = "figures/" .. figure.name }
+    end
   end
-  local names = core.folder_entries(out:path "figures")
-  table.sort(names)
-  for _, name in ipairs(names) do out:add("figures/" .. name, read(out:path("figures/" .. name))) end
   return drawn
 end
 

@@ -9,7 +9,7 @@ local records = core.part "lacuna.record"
 
 local run = {}
 local FEW = 4 -- targets, for which no processes are started
-local COLLECT_AFTER = 20 -- targets: the core's memory behind dead cases is not seen by Lua's collector
+local COLLECT_AFTER = 50000 -- draws of targets: the core's memory behind dead cases is not seen by Lua's collector
 
 -- Which targets -----------------------------------------------------------------------------------------------------------------------
 
@@ -129,22 +129,31 @@ end
 
 -- Working out -------------------------------------------------------------------------------------------------------------------------
 
+-- Collects garbage now and then; called once a target.
+local function collector()
+  local every, count = math.max(1, COLLECT_AFTER // core.settings().draws), 0
+  return function()
+    count = count + 1
+    if count % every == 0 then collectgarbage() end
+  end
+end
+
 -- One after the other in this process.
 local function serially(plan, targets, todo, take)
-  for i, place in ipairs(todo) do
+  local collect = collector()
+  for _, place in ipairs(todo) do
     local record = records.of(plan, targets[place])
-    take(place, record, file.encode(record))
-    if i % COLLECT_AFTER == 0 then collectgarbage() end
+    take(place, record)
+    collect()
   end
   return 0
 end
 
 -- In processes of their own, which hand back texts. Returned: the memory that these took at most, in MB.
 local function in_processes(plan, targets, todo, take, bar)
-  local count = 0
+  local collect = collector()
   local function work(i)
-    count = count + 1
-    if count % COLLECT_AFTER == 0 then collectgarbage() end
+    collect()
     return file.encode(records.of(plan, targets[todo[i]]))
   end
   local function taken(i, text) take(todo[i], file.decode(text), text) end
@@ -173,7 +182,7 @@ function run.all(plan, list)
   local bar = progress.new(#targets, #targets - #todo)
   local children = work_out(plan, targets, todo, function(place, record, text)
     made[place] = record
-    if folder then folder.handle:append(text) end
+    if folder then folder.handle:append(text or file.encode(record)) end
     bar:step()
   end, bar)
   return { records = made, targets = targets, folder = folder, bar = bar, children = children, input = list.input }

@@ -5,7 +5,7 @@
 --
 -- with columns { name, entry = row of the glossary, verdict, group = heading over it or nil, unit (VOUnits), unit_text, unit_tex },
 -- rows { name, texts, cells }, cells { share } of a verdict or { value, upper, lower } in the column's unit (no errors: a single
--- number) or { missing = true }, and notes { heading, lines (texts, or lists whose first text heads the others) }. A column belongs to the group of its left neighbour where the name is the same.
+-- number) or { missing = true }, along sweeps as in record.lua, sweeps or nil = { { name, unit, values } }, and notes { heading, lines (texts, or lists whose first text heads the others) }. A column belongs to the group of its left neighbour where the name is the same.
 local core = ...
 local format = core.part "lacuna.format"
 
@@ -34,8 +34,26 @@ tables.wrapped = wrapped
 -- A name or text from a file may have line breaks.
 local function on_one_line(text) return (text:gsub("%s+", " ")) end
 
-local function cell_text(cell)
+local function lowest_and_highest(list)
+  local low, high = math.huge, -math.huge
+  for _, value in ipairs(list) do
+    if value == value then low, high = math.min(low, value), math.max(high, value) end
+  end
+  return low, high
+end
+
+-- Along a sweep a cell is written from its lowest to its highest value, each by `write` as a cell of its own.
+local function range_of(cell, write, between)
+  local what = cell.shares and "share" or "value"
+  local low, high = lowest_and_highest(cell.shares or cell.values)
+  low, high = write { [what] = low }, write { [what] = high }
+  return low == high and low or low .. between .. high
+end
+
+local cell_text
+function cell_text(cell)
   if cell.missing then return MISSING end
+  if cell.axes then return range_of(cell, cell_text, " … ") end
   if cell.share then return cell.share == 1 and "yes" or cell.share == 0 and "no" or format.percent(cell.share) end
   return cell.upper and format.with_error(cell.value, cell.upper, cell.lower) or format.number(cell.value)
 end
@@ -201,60 +219,97 @@ end
 -- What VOUnits and the FITS standard have no unit for, in the nearest that they have.
 local standard_units = { Msun = { "solMass" }, Rsun = { "solRad" }, Lsun = { "solLum" }, Mjup = { "solMass" }, Mearth = { "solMass" }, Rjup = { "solRad" }, Rearth = { "solRad" } }
 
--- A unit as VOUnits has it, and how many of these one of it is: 1 Msun/yr is 1 solMass/yr.
+-- A unit as VOUnits has it, and how many of these one of it is: 1 Msun/yr is 1 solMass/yr. nil for plain numbers.
 local function standard_unit(unit)
+  if unit == "1" then return nil, 1 end
   local written = unit:gsub("%a+", function(word) return standard_units[word] and standard_units[word][1] end)
   return written, core.unit_facts(unit) / core.unit_facts(written)
 end
 
+local function digits(value) return value and value == value and ("%.7g"):format(value) or "" end
+
 -- A cell's value, upper and lower error as texts.
 local function number_fields(cell, scale)
-  if cell.missing then return "", "", "" end
-  if not cell.upper then return ("%.7g"):format(cell.value * scale), "", "" end
+  if not cell.value then return "", "", "" end
+  if not cell.upper then return digits(cell.value * scale), "", "" end
   return format.rounded(cell.value * scale, cell.upper * scale, cell.lower * scale)
 end
 
--- The columns of a file of numbers: each { name, group, part = what it is of the column ("" for its value), unit in VOUnits or nil, texts = true
--- of texts, column (none of names and texts), and one text a row }. A verdict has its words and its share of the draws.
+-- The points of a grid over sweeps, the last running fastest: each a list of places, one a sweep.
+local function grid_of(sweeps)
+  local points = { {} }
+  for _, sweep in ipairs(sweeps) do
+    local longer = {}
+    for _, point in ipairs(points) do
+      for place = 1, #sweep.values do longer[#longer + 1] = table.move(point, 1, #point, 1, {}) longer[#longer][#point + 1] = place end
+    end
+    points = longer
+  end
+  return points
+end
+
+-- A cell at one point of the grid: along each of its own axes, in their order, the sweep's place.
+function tables.at_point(cell, sweeps, point)
+  if not cell.axes then return cell end
+  local index = 0
+  for _, name in ipairs(cell.axes) do
+    for i, sweep in ipairs(sweeps) do
+      if sweep.name == name then index = index * #sweep.values + point[i] - 1 end
+    end
+  end
+  index = index + 1
+  if cell.shares then return { share = cell.shares[index] } end
+  return { value = cell.values[index], upper = cell.uppers and cell.uppers[index], lower = cell.lowers and cell.lowers[index] }
+end
+
+-- The columns of a file of numbers, one line a target, along sweeps one a target and point: each { name, group, part = what it is of the column
+-- (nil for its value), unit in VOUnits or nil, texts = true of texts, entry of the glossary (none of names and texts), and one text a line }.
+-- A verdict has its words and its share of the draws.
 function tables.fields(whole)
-  local fields = {}
-  local function add(field) fields[#fields + 1] = field return field end
-  local names = add { name = "name", texts = true }
-  for i, row in ipairs(whole.rows) do names[i] = row.name end
-  for _, text in ipairs(whole.texts) do
-    local field = add { name = text, texts = true }
-    for i, row in ipairs(whole.rows) do field[i] = row.texts[text] or "" end
+  local fields, sweeps, lines = {}, whole.sweeps or {}, {}
+  for _, row in ipairs(whole.rows) do
+    for _, point in ipairs(grid_of(sweeps)) do lines[#lines + 1] = { row = row, point = point } end
+  end
+  local function add(field, text_of)
+    for i, line in ipairs(lines) do field[i] = text_of(line.row, line.point) end
+    fields[#fields + 1] = field
+  end
+  add({ name = "name", texts = true }, function(row) return row.name end)
+  for _, text in ipairs(whole.texts) do add({ name = text, texts = true }, function(row) return row.texts[text] or "" end) end
+  for i, sweep in ipairs(sweeps) do
+    local unit, scale = standard_unit(sweep.unit)
+    add({ name = sweep.name, unit = unit, entry = core.entry(sweep.name) }, function(_, point) return digits(sweep.values[point[i]] * scale) end)
   end
   for number, column in ipairs(whole.columns) do
-    local function part(what, unit, texts) return add { name = column.name, group = column.group, part = what, unit = unit, texts = texts, column = column } end
+    local unit, scale = standard_unit(column.unit)
+    local function part(what, texts, text_of)
+      add({ name = column.name, group = column.group, part = what, unit = unit, texts = texts, entry = column.entry }, function(row, point)
+        return text_of(tables.at_point(row.cells[number], sweeps, point))
+      end)
+    end
     if column.verdict then
-      local words, share = part("verdict", nil, true), part("share", nil)
-      for i, row in ipairs(whole.rows) do
-        local cell = row.cells[number]
-        words[i], share[i] = cell.missing and "" or cell_text(cell), cell.share and ("%.7g"):format(cell.share) or ""
-      end
+      part("verdict", true, function(cell) return cell.missing and "" or cell_text(cell) end)
+      part("share", false, function(cell) return digits(cell.share) end)
     else
-      local unit, scale
-      if column.unit == "1" then scale = 1 else unit, scale = standard_unit(column.unit) end
-      local value, upper, lower = part("", unit), part("upper error", unit), part("lower error", unit)
-      for i, row in ipairs(whole.rows) do value[i], upper[i], lower[i] = number_fields(row.cells[number], scale) end
+      part(nil, false, function(cell) return (number_fields(cell, scale)) end)
+      part("upper error", false, function(cell) return (select(2, number_fields(cell, scale))) end)
+      part("lower error", false, function(cell) return (select(3, number_fields(cell, scale))) end)
     end
   end
   return fields
 end
 
--- One line a target: its texts, then a value, an upper and a lower error a column, or the words and the share of a verdict.
+-- One line a target and point: its texts, then a value, an upper and a lower error a column, or the words and the share of a verdict.
 function tables.csv(whole)
   local fields, lines, header = tables.fields(whole), {}, {}
   for i, field in ipairs(fields) do
-    header[i] = (field.group and field.group .. " " or "") .. field.name .. (field.part and field.part ~= "" and " " .. field.part or "") ..
-      (field.unit and " [" .. field.unit .. "]" or "")
+    header[i] = (field.group and field.group .. " " or "") .. field.name .. (field.part and " " .. field.part or "") .. (field.unit and " [" .. field.unit .. "]" or "")
   end
   lines[1] = csv_line(header)
-  for row = 1, #whole.rows do
+  for line = 1, #fields[1] do
     local cells = {}
-    for i, field in ipairs(fields) do cells[i] = field[row] end
-    lines[row + 1] = csv_line(cells)
+    for i, field in ipairs(fields) do cells[i] = field[line] end
+    lines[line + 1] = csv_line(cells)
   end
   return table.concat(lines, "\n") .. "\n"
 end
@@ -316,8 +371,10 @@ end
 
 tables.escaped_tex = escaped
 
-local function cell_tex(cell)
+local cell_tex
+function cell_tex(cell)
   if cell.missing then return "---" end
+  if cell.axes then return range_of(cell, cell_tex, " to ") end
   if cell.share then return cell.share == 1 and "yes" or cell.share == 0 and "no" or format.percent_tex(cell.share) end
   return cell.upper and format.with_error_tex(cell.value, cell.upper, cell.lower) or format.number_tex(cell.value)
 end

@@ -29,8 +29,19 @@ static uint64_t median_of_three(uint64_t a, uint64_t b, uint64_t c) {
   return c < a ? a : c > b ? b : c;
 }
 
+/* Swaps the least key to the start, without a branch on what is compared. */
+static uint64_t least_first(uint64_t *keys, size_t start, size_t n) {
+  uint64_t least = keys[start];
+  size_t place = start;
+  for (size_t i = start; i < n; i++) least = keys[i] < least ? keys[i] : least;
+  while (keys[place] != least) place++;
+  keys[place] = keys[start];
+  return keys[start] = least;
+}
+
 /* Hoare's selection (1961, Communications of the ACM 4, 321). Where pivots turn out badly, what is left is sorted. */
 uint64_t lac_select(uint64_t *keys, size_t start, size_t n, size_t rank) {
+  if (rank == start) return least_first(keys, start, n);
   ptrdiff_t left = (ptrdiff_t)start, right = (ptrdiff_t)n - 1;
   const ptrdiff_t wanted = (ptrdiff_t)rank;
   for (int rounds = 0; left < right; rounds++) {
