@@ -49,6 +49,9 @@ local function targets_sentence(study)
   return ("The sample has %d targets: %s."):format(#names, verdicts.list(names, 12))
 end
 
+-- "20 m:330 m:6" of the command line in words.
+local function swept(written) return (written:gsub("^%s*(.-)%s*:%s*(.-)%s*:%s*(%d+)%s*$", "from %1 to %2 (%3 values)")) end
+
 -- What is given for all targets of a group, "wavelength 1.65 um" and so on. What the command line sets goes before it, and stands with the first.
 local function givens_of(group, study)
   local parts, first, set = {}, study.groups[1], study.set
@@ -57,7 +60,7 @@ local function givens_of(group, study)
     local written = group.own[name] and group.written[name]
     local object = group.objects[name]
     if object and (group == first or first.objects[name] ~= object) then written = tostring(object) end
-    if own then written = group == first and (set.written[name] or tostring(own)) end
+    if own then written = group == first and swept(set.written[name] or tostring(own)) end
     if written then parts[#parts + 1] = words_of(name) .. " " .. written end
   end
   return parts
@@ -124,7 +127,7 @@ local function quantity_sentence(study, number, column, known)
   local said = known and "" or (" (%s)"):format(verdicts.in_words(column.entry.meaning))
   local others = recipes_of_quantity(study, number, column)
   if count == 1 or low == high then
-    return ("The %s%s of %s is %s%s."):format(name, said, low.name, value_text(low.cells[number], column), others)
+    return ("The %s%s%s is %s%s."):format(name, said, #study.rows > 1 and " of " .. low.name or "", value_text(low.cells[number], column), others)
   end
   return ("The %s%s runs from %s (%s) to %s (%s)%s."):format(name, said, value_text(low.cells[number], column), low.name,
     value_text(high.cells[number], column), high.name, others)
