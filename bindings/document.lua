@@ -152,13 +152,13 @@ function document.whole(title, figures, date)
   }
   if #figures > 0 then lines[#lines + 1] = "\\usepackage{graphicx}" end
   local function add(line) lines[#lines + 1] = line end
-  add "\\setlength{\\oddsidemargin}{-8mm} \\setlength{\\textwidth}{175mm} \\setlength{\\topmargin}{-15mm} \\setlength{\\textheight}{245mm}"
+  add "\\setlength{\\oddsidemargin}{-9mm} \\setlength{\\textwidth}{178mm} \\setlength{\\topmargin}{-15mm} \\setlength{\\textheight}{245mm}"
   add "\\sloppy"
   add("\\title{" .. escaped(title) .. "}")
   add("\\date{" .. date .. "}")
   add "\\begin{document}\n\\maketitle\n\\section*{Technical feasibility}\n\\input{feasibility}\n\\input{table}"
   for _, figure in ipairs(figures) do
-    add("\\begin{figure}\n\\centering\\includegraphics[width=0.8\\textwidth]{" .. figure.file .. "}\n\\caption{" .. escaped(figure.caption) .. "}\n\\end{figure}")
+    add("\\begin{figure}\n\\centering\\includegraphics{" .. figure.file .. "}\n\\caption{" .. escaped(figure.caption) .. "}\n\\end{figure}")
   end
   add "\\input{derivations}\n\\bibliographystyle{unsrt}\n\\bibliography{references}\n\\end{document}"
   return table.concat(lines, "\n") .. "\n"

@@ -50,7 +50,7 @@ math { font-size: 1.1rem; math-style: normal; }
 pre { background: var(--box); padding: 0.8rem; font-size: 0.85rem; line-height: 1.4; }
 .draft { background: var(--box); padding: 0.2rem 1rem; border-radius: 4px; }
 figure { margin: 1rem 0; }
-figure svg { max-width: 100%; height: auto; }
+figure svg { display: block; width: 38rem; max-width: 100%; height: auto; }
 @media print {
   :root { --paper: #fff; --ink: #000; --soft: #333; --line: #999; --box: #fff; --link: #000; --yes-tint: #fff; --between-tint: #fff; }
   body { max-width: none; padding: 0; font-size: 10pt; }

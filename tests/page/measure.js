@@ -30,6 +30,21 @@ function behind(view, element, canvas) {
   return layers.reverse().reduce((below, layer) => over(layer, below), canvas);
 }
 
+// In a drawing, also the rectangles drawn before it on which it stands whole.
+function behindInDrawing(view, element, canvas) {
+  const drawing = element.closest("svg"), box = element.getBoundingClientRect();
+  let below = behind(view, drawing, canvas);
+  for (const shape of drawing.querySelectorAll("rect")) {
+    if (!(shape.compareDocumentPosition(element) & Node.DOCUMENT_POSITION_FOLLOWING)) break;
+    const ground = shape.getBoundingClientRect(), style = view.getComputedStyle(shape);
+    if (shape.closest("defs, clipPath, mask") || ground.left > box.left || ground.right < box.right || ground.top > box.top || ground.bottom < box.bottom) continue;
+    const fill = rgba(style.fill);
+    fill[3] *= style.fillOpacity * style.opacity;
+    below = over(fill, below);
+  }
+  return below;
+}
+
 // ---- The page ----
 
 function described(element) {
@@ -55,8 +70,9 @@ function poorContrast(view, page, list) {
   const dark = view.matchMedia("(prefers-color-scheme: dark)").matches && view.getComputedStyle(page.documentElement).colorScheme.includes("dark");
   const canvas = dark ? [0.07, 0.07, 0.07, 1] : [1, 1, 1, 1], found = [];
   for (const element of list) {
-    const style = view.getComputedStyle(element), back = behind(view, element, canvas);
-    const ink = rgba(element instanceof view.SVGElement ? style.fill : style.color);
+    const style = view.getComputedStyle(element), drawn = element instanceof view.SVGElement;
+    const back = drawn ? behindInDrawing(view, element, canvas) : behind(view, element, canvas);
+    const ink = rgba(drawn ? style.fill : style.color);
     ink[3] *= +style.opacity;
     const ratio = contrast(over(ink, back), back);
     if (!(ratio >= LEAST)) found.push(`${ratio.toFixed(2)}: ${described(element)}`);

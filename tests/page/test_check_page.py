@@ -15,6 +15,7 @@ SOUND = """<!DOCTYPE html>
 <body><h1>A page</h1><p class="soft">Soft text, <a href="#below">a link below</a>, <a href="beside.html#there">one beside</a>.</p>
 <h2 id="below">Below</h2><img alt="a dot" src="data:image/gif;base64,R0lGODlhAQABAAAAACwAAAAAAQABAAA=">
 <svg width="10" height="10" aria-label="a square"><rect width="9" height="9"/></svg>
+<svg width="90" height="30" aria-label="words on white"><rect width="90" height="30" fill="#fff"/><text x="5" y="20" fill="#333">Drawn</text></svg>
 <div style="overflow-x:auto"><table style="width:60rem"><tr><th scope="col">Head</th></tr><tr><td>Cell</td></tr></table></div>
 </body></html>
 """
@@ -33,6 +34,7 @@ DEFECTS = [
     ("<h2 id=\"below\">Below</h2>", '<h3 id="below">Below</h3>', "headings in order", "skips a level"),
     ("<svg ", '<p id="twice">A</p><p id="twice">B</p><svg ', "no id twice", "twice"),
     ('<th scope="col">', "<th>", "tables have headers with scope", "without scope"),
+    ('fill="#333">Drawn', 'fill="#aaa">Drawn', "contrast of 4.5, dark, phone", "Drawn"),
     ("</body>", "<table><tr><td>bare</td></tr></table></body>", "tables have headers with scope", "no header"),
     ('<div style="overflow-x:auto">', "<div>", "not wider than 390 px, light", "table"),
     ("</body>", '<img alt="far" src="http://example.invalid/far.png"></body>', "asks for nothing else, dark", "example.invalid"),
