@@ -194,7 +194,7 @@ local function recipes_sentence(group_verdicts)
       if #recipe.names > 0 then
         moved[recipe.words] = "yes"
         changed[#changed + 1] = ("with %s, whether %s changes for %s"):format(verdicts.recipe_words(recipe.words), one.words,
-          recipe.asked == 1 and recipe.names[1] .. (recipe.low == 1 and " to yes" or recipe.low == 0 and " to no" or ", to " .. format.percent(recipe.low) .. " of the draws")
+          recipe.asked == 1 and recipe.names[1] .. (recipe.low == 1 and ", to yes" or recipe.low == 0 and ", to no" or ", to " .. format.percent(recipe.low) .. " of the draws")
             or ("%d of %d targets (%s)"):format(#recipe.names, recipe.asked, verdicts.list(recipe.names)))
       end
     end
