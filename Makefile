@@ -1,6 +1,6 @@
 # SPDX-License-Identifier: GPL-3.0-or-later
 # make            the program, the Lua module, the shared and the static library, in build/
-# make try        all that the main job needs, packages included, then the demo study
+# make try        all that the main job needs, packages included, then the demo study and its report
 # make check      all tests, then all again under the address and undefined-behaviour sanitizers
 # make check-page what readers see: pages in headless Chromium, LaTeX compiled
 # make bench      measures against what is required
@@ -86,7 +86,7 @@ try:
 	@.ci/packages try
 	@$(MAKE) --no-print-directory all
 	@echo
-	$(build)/lacuna $(demo)
+	$(build)/lacuna $(demo) --out $(build)/report --force
 
 check:
 	@.ci/packages try check

@@ -121,7 +121,7 @@ end
 function appender:append(text)
   local ok, trouble = self.handle:write(framed(text))
   if ok then ok, trouble = self.handle:flush() end
-  if not ok then error(("cannot write %s: %s"):format(self.path, trouble), 0) end
+  if not ok then error(("cannot write %s: %s; what is done is kept there, and --resume goes on"):format(self.path, trouble), 0) end
 end
 
 function appender:close() self.handle:close() end

@@ -198,12 +198,6 @@ local function put_in_order(result)
   core.write_file(result.folder.path, file.whole(result.folder.head, texts))
 end
 
-local function has_part(name)
-  local ok, part = pcall(core.part, name)
-  if ok then return part end
-  if not tostring(part):find("no part '" .. name .. "'", 1, true) then error(part, 0) end
-end
-
 -- What the report tells of the run. Where a host made the study, or a line of code, there is no file of it.
 function run.facts(result)
   local script, input, settings = command.script or {}, result.input, core.settings()
@@ -215,14 +209,6 @@ function run.facts(result)
   }
   if input then facts.inputs[1], facts.texts[input.path] = input.path, input.text end
   return facts
-end
-
-local function write_report(study, result)
-  local report = has_part "lacuna.report"
-  if report then return report.write(study, command.out, run.facts(result)) end
-  for name, text in pairs { ["table.txt"] = study:table(100) .. "\n", ["table.csv"] = study:csv(), ["table.tex"] = study:latex() } do
-    core.write_file(command.out .. "/" .. name, text)
-  end
 end
 
 local function count_failed(result)
@@ -241,11 +227,11 @@ end
 function run.close(study, result)
   count_failed(result)
   result.bar:close(summary(result), result.children)
-  if result.folder then
-    put_in_order(result)
-    if not command.shard then write_report(study, result) end
-  end
-  if not command.shard then print(study:table()) end
+  if result.folder then put_in_order(result) end
+  if command.shard then return end
+  local report = result.folder and core.part "lacuna.report".write(study, command.out, run.facts(result))
+  print(study:table())
+  if report then io.stderr:write(tostring(report), "\n") end
 end
 
 return run

@@ -284,6 +284,64 @@ t.test("LaTeX: one booktabs table, its special characters escaped, its braces an
   t.equal(content:find "[^\\]%%[^ ]" == nil, true, "no bare percent sign")
 end)
 
+local function names_of(study)
+  local names = {}
+  for i, row in ipairs(study.rows) do names[i] = row.name end
+  return names
+end
+
+t.test("sorted as the study says; what is missing comes last", function()
+  t.equal(names_of(study_of_stars { sort = "name" }), { "Drumlin 30", "Marrow 3", "Tarn, 12" })
+  t.equal(names_of(study_of_stars { sort = { "name", descending = true } }), { "Tarn, 12", "Marrow 3", "Drumlin 30" })
+  t.equal(names_of(study_of_stars { sort = "rim_size_angle" }), { "Tarn, 12", "Marrow 3", "Drumlin 30" })
+  t.equal(names_of(study_of_stars { sort = { "rim_size_angle", descending = true } }), { "Marrow 3", "Tarn, 12", "Drumlin 30" })
+  local study = study_of_stars { sort = { "distance", descending = true } } -- not asked: worked out, and not shown
+  t.equal(names_of(study), { "Drumlin 30", "Marrow 3", "Tarn, 12" })
+  t.equal(#study.columns, 2)
+  t.equal(study.hidden[1].name, "distance")
+end)
+
+t.test("filtered as the study says", function()
+  t.equal(names_of(study_of_stars { where = { "rim_size_angle", above = "1 mas" } }), { "Marrow 3" })
+  t.equal(names_of(study_of_stars { where = { { "rim_size_angle", below = "1 mas" }, { "distance", below = "0.1 kpc" } } }), { "Tarn, 12" })
+  t.equal(names_of(study_of_stars { where = { "rim_resolved_by_array", below = 0.5 } }), { "Tarn, 12" })
+  local variants = { { name = "short", given = { shortest_baseline = "15 m" }, ask = { "recoverable_scale" } } }
+  t.equal(#study_of_stars { variants = variants, where = { "recoverable_scale", variant = "short", above = "1 mas" } }.rows, 3)
+  complains({ targets = stars, ask = asked, given = instrument, where = { "rim_size_angle", above = "1 arcsec" } }, "study: no target passes the filter, rim_size_angle above 1 arcsec; 3 were worked out")
+  complains({ targets = stars, ask = asked, where = { "rim_size_angle", over = "1 mas" } }, "study: where: there is no 'over' here; there are above, below, variant")
+  complains({ targets = stars, ask = asked, where = { "rim_size_angle" } }, "study: where: rim_size_angle wants above = ... or below = ...")
+  complains({ targets = stars, ask = asked, where = { "rim_size_angle", above = "1 au" } }, "study: where: rim_size_angle wants an angle (in mas); got 1 au")
+  complains({ targets = stars, ask = asked, where = { "rim_resolved_by_array", above = "1" } }, 'study: where: of rim_resolved_by_array a share of draws is wanted, from 0 to 1; got "1"')
+  complains({ targets = stars, ask = asked, sort = { "rim_size_angel" } }, "study: sort: unknown name 'rim_size_angel'; did you mean rim_size_angle, ring_size_angle, gap_size_angle?")
+  complains({ targets = stars, ask = asked, sort = { "rim_size_angle", variant = "far" } }, 'study: sort: there is no variant "far"')
+end)
+
+t.test("values of a name for all targets: shown, worked out besides, or now", function()
+  local study = study_of_stars { also = { "rim_radius" } }
+  t.equal(study:values "rim_size_angle"[1], study.rows[1].cells[1])
+  t.close(study:values "rim_radius"[2].value, 0.02, 1e-15)
+  t.close(study:values "distance"[2].value, 60, 1e-15)
+  local far = study:values "distance"[3]
+  t.close(far.value, median(study.rows[3].case.distance, "pc"), 1e-14)
+  t.equal(far.low95 < far.value - far.lower and far.high95 > far.value + far.upper, true)
+  t.raises(function() study:values "distanse" end, "values: unknown name 'distanse'; did you mean distance")
+  t.raises(function() study:values("distance", "far") end, 'the study has no variant "far"')
+end)
+
+t.test("cases are made anew when they are asked for, and let go", function()
+  local study = study_of_stars { variants = { { name = "long", given = { shortest_baseline = "15 m" }, ask = asked } } }
+  local first = study.rows[1].case.distance:value "pc"
+  collectgarbage()
+  t.equal(study.rows[1].case.distance:value "pc", first)
+  local kept = setmetatable({ study.rows[1].case }, { __mode = "v" })
+  collectgarbage()
+  t.equal(kept[1], nil)
+  local names = {}
+  for name, c in pairs(study.rows[1].variants) do names[name] = c.shortest_baseline:value "m" end
+  t.equal(names, { long = 15 })
+  t.equal(study.rows[1].variants.short, nil)
+end)
+
 t.test("files are whole or absent", function()
   write("kept.csv", "before")
   t.raises(function() quietly { targets = {}, ask = asked, csv = path "kept.csv" } end, "empty")
