@@ -1,11 +1,12 @@
 # SPDX-License-Identifier: GPL-3.0-or-later
 # make            the program, the Lua module, the shared and the static library, in build/
-# make try        all that the main job needs, packages included, then the demo study
+# make try        all that the main job needs, packages included, then the demo study and its report
 # make check      all tests, then all again under the address and undefined-behaviour sanitizers
+# make check-page what readers see: pages in headless Chromium, LaTeX compiled
 # make bench      measures against what is required
 # make docs       the guide, the reference manual and the manual pages, in build/docs/ (generated from the program's own tables)
 # make install    PREFIX=/usr/local, DESTDIR= for packagers; make uninstall
-# make packages   installs what try, check, docs and bench need (Debian); elsewhere names what is missing
+# make packages   installs what try, check, check-page, docs and bench need (Debian); elsewhere names what is missing
 # make clean
 # V=1 shows the commands.
 
@@ -21,8 +22,8 @@ LUA_CFLAGS = -I/usr/include/lua5.4
 LUA_LIBS = -llua5.4
 CFLAGS = -g
 # In the program, what would take a millisecond to load each time is linked statically; where there are only shared libraries:
-# make STATIC_LIBS='-lreadline -lcsv -lgsl -lgslcblas'
-STATIC_LIBS = -l:libreadline.a -l:libtinfo.a -l:libcsv.a -l:libgsl.a -l:libgslcblas.a -l:libgomp.a
+# make STATIC_LIBS='-lreadline -lcsv -lnettle -lgsl -lgslcblas'
+STATIC_LIBS = -l:libreadline.a -l:libtinfo.a -l:libcsv.a -l:libnettle.a -l:libgsl.a -l:libgslcblas.a -l:libgomp.a
 
 build = build
 demo = scripts/demo_study.lua
@@ -49,7 +50,7 @@ link = $(CC) -fopenmp $(sanitizers) $(CFLAGS) $(LDFLAGS) -Wl,--as-needed
 share = $(link) -shared -Wl,-z,nodelete -Wl,-z,relro
 
 core_libs = -lgsl -lgslcblas -lm
-module_libs = -lcsv $(core_libs)
+module_libs = -lcsv -lnettle $(core_libs)
 program_libs = $(LUA_LIBS) $(STATIC_LIBS) -lm
 
 # ---- Files ----
@@ -76,7 +77,7 @@ bench_programs = $(patsubst tests/%.c,$(build)/tests/%,$(bench_sources))
 
 man_pages = $(build)/docs/lacuna.1 $(build)/docs/lacuna.3
 
-.PHONY: all tests try check docs bench packages install uninstall clean
+.PHONY: all tests try check check-page docs bench packages install uninstall clean
 .DELETE_ON_ERROR:
 .SECONDARY:
 
@@ -88,13 +89,18 @@ try:
 	@.ci/packages try
 	@$(MAKE) --no-print-directory all
 	@echo
-	$(build)/lacuna $(demo)
+	$(build)/lacuna $(demo) --out $(build)/report --force
 
 check:
 	@.ci/packages try check
 	@$(MAKE) --no-print-directory all tests
 	@$(MAKE) --no-print-directory build=$(build)/san sanitize=yes tests
 	@tests/run $(build) $(build)/san
+
+check-page: docs
+	@.ci/packages try check check-page
+	@$(MAKE) --no-print-directory all
+	@tests/run $(build) tests/page/test_*.py
 
 docs: $(man_pages)
 	@.ci/packages docs
@@ -106,7 +112,7 @@ bench:
 	@tests/bench/run $(build)
 
 packages:
-	@.ci/packages try check docs bench
+	@.ci/packages try check check-page docs bench
 
 clean:
 	rm -rf $(build)

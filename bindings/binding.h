@@ -119,6 +119,8 @@ void lac_open_state(lua_State *L);
 void lac_open_csv(lua_State *L);
 void lac_open_output(lua_State *L);
 void lac_open_run_program(lua_State *L);
+void lac_open_digest(lua_State *L);
+void lac_open_fits(lua_State *L);
 
 /* A user's row: its function in Lua, called by the plan in pieces. */
 typedef struct {

@@ -190,7 +190,7 @@ local function by_recipe(self, name, by)
 end
 case.by_recipe = by_recipe
 
--- What other recipes along the chain of a name would give: a list of {name, by, value}, one recipe changed at a time.
+-- What other recipes along the chain of a name would give: a list of {name, by, row, value, instead_of}, one recipe changed at a time.
 function case.over_recipes(self, name)
   local others = {}
   for _, step in ipairs(core.steps(self, name)) do
@@ -201,7 +201,7 @@ function case.over_recipes(self, name)
         if row.kind ~= "definition" and row.kind ~= "assumed" then
           local other = by_recipe(self, step.name, row.by)
           local value = other and core.raw(other, name)
-          if value then others[#others + 1] = { name = step.name, by = row.by, value = value, instead_of = rows[1].by } end
+          if value then others[#others + 1] = { name = step.name, by = row.by, row = row, value = value, instead_of = rows[1].by } end
         end
       end
     end

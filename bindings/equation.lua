@@ -7,9 +7,9 @@
 -- caller for each name's symbol, or, in plain text, for its value just as well, and set brackets where the answer needs them.
 --
 --   parse(text)                 the tree; an error with the position for anything outside the subset. All below take text or tree.
---   tex(equation, symbol_of)    symbol_of(name): TeX
+--   tex(equation, symbol_of)    symbol_of(name): TeX of a symbol or of a value ("5\\,\\mathrm{au}")
 --   plain(equation, text_of)    text_of(name): plain text of a symbol ("M_p") or of a value ("5 au")
---   mathml(equation, symbol_of) symbol_of(name): TeX, of the subset; one <math> element
+--   mathml(equation, symbol_of) symbol_of(name): TeX, of the subset; or nil and a value in MathML; one <math> element
 --   plain_symbol(tex)           "\\theta_{gap,arr}" as "θ_gap,arr", "M_*" as "M*"
 --   marked_symbol(tex)          the same with marks for gnuplot, "{/:Italic θ}_{gap,arr}"
 --   names(equation)             the names that stand in it, each once, in order
@@ -333,8 +333,8 @@ function tex.root(node, render) return "\\sqrt{" .. render(node[1]) .. "}", ATOM
 function tex.dot(node, render) return "\\dot{" .. render(node[1]) .. "}", ATOM end
 function tex.fraction(node, render) return "\\frac{" .. render(node[1]) .. "}{" .. render(node[2]) .. "}", TIGHT end
 
-function tex.product(node, render)
-  local text = ""
+function tex.product(node, render, symbol_of)
+  local text, values = "", has_value(node, symbol_of)
   for i, factor in ipairs(node) do
     local part, binds = render(factor)
     local sign = node.signs[i]
@@ -343,7 +343,7 @@ function tex.product(node, render)
     elseif sign == "/" then sign = "/"
     elseif sign ~= "" then sign = " " .. sign .. " "
     elseif is_unit(factor) then sign = "\\,"
-    elseif text:find("%d$") and part:find("^%d") then sign = " \\cdot "
+    elseif values or text:find("%d$") and part:find("^%d") then sign = " \\cdot "
     else sign = " " end
     text = text .. sign .. part
   end
@@ -384,7 +384,8 @@ function mathml.word(node)
   return '<mi mathvariant="' .. (node.command == "mathcal" and "script" or "normal") .. '">' .. node.text .. "</mi>", ATOM
 end
 function mathml.name(node, _, symbol_of)
-  local symbol = symbol_of(node.text)
+  local symbol, value = symbol_of(node.text)
+  if value then return value, value:find "^<mn>[%d.]+</mn>$" and ATOM or VALUE end
   local inside = renderer(mathml, no_names)(equation.parse(symbol))
   return element("mrow", inside), tex_binds_of(symbol)
 end
@@ -428,12 +429,12 @@ function mathml.root(node, render) return element("msqrt", (render(node[1]))), A
 function mathml.dot(node, render) return element("mover", (render(node[1])), operator("˙")), ATOM end
 function mathml.fraction(node, render) return element("mfrac", (render(node[1])), (render(node[2]))), TIGHT end
 
-function mathml.product(node, render)
-  local parts = {}
+function mathml.product(node, render, symbol_of)
+  local parts, values = {}, has_value(node, function(name) return select(2, symbol_of(name)) and "1" or "" end)
   for i, factor in ipairs(node) do
     local text, binds = render(factor)
     local sign = node.signs[i]
-    if i > 1 then parts[#parts + 1] = sign ~= "" and operator(products[sign]) or is_unit(factor) and thin_space or invisible_times end
+    if i > 1 then parts[#parts + 1] = sign ~= "" and operator(products[sign]) or is_unit(factor) and thin_space or values and operator "·" or invisible_times end
     parts[#parts + 1] = mathml_bracketed(text, binds, sign == "/" and TIGHT or VALUE)
   end
   return element("mrow", table.unpack(parts)), PRODUCT

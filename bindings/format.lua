@@ -4,6 +4,7 @@
 --
 --   number(value, digits)               "0.346", "1500", "2.4e-11"; 4 significant digits where none are asked for
 --   with_error(value, upper, lower)     "0.46 ± 0.03", "0.46 +0.05 -0.02", "(2.4 ± 0.2)e-11"
+--   rounded(value, upper, lower)        "0.46", "0.05", "0.02": the same digits as separate fields, for files of numbers
 --   percent(fraction)                   "83 %", "0.4 %", "> 99.9 %"; 100 % is said of all, 0 % of none
 --   number_tex, with_error_tex, percent_tex   the same in TeX
 --   with_unit(text, unit)               "0.46 ± 0.03 au"
@@ -133,6 +134,16 @@ function format.with_error(value, upper, lower)
   local text, above, below, exponent = error_parts(value, upper, lower)
   text = below and text .. " +" .. above .. " -" .. below or text .. " ± " .. above
   return exponent and "(" .. text .. ")e" .. exponent or text
+end
+
+-- Value, upper and lower error as three fields that a program can read; "" for what is undefined.
+function format.rounded(value, upper, lower)
+  if undefined(value) then return "", "", "" end
+  if no_error_bar(value, upper, lower) then return ("%.7g"):format(value), "", "" end
+  if far_apart(value, upper, lower) then return ("%.15g"):format(value), ("%.2g"):format(upper), ("%.2g"):format(lower) end
+  local text, above, below, exponent = error_parts(value, upper, lower)
+  local power = exponent and "e" .. exponent or ""
+  return text .. power, above .. power, (below or above) .. power
 end
 
 function format.with_error_tex(value, upper, lower)

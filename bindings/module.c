@@ -60,6 +60,8 @@ int luaopen_lacuna(lua_State *L) {
   lac_open_sensitivity(L);
   lac_open_csv(L);
   lac_open_output(L);
+  lac_open_digest(L);
+  lac_open_fits(L);
   lac_open_run_program(L);
   lua_pushcfunction(L, has_part);
   lua_setfield(L, -2, "has_part");

@@ -16,16 +16,16 @@ function objects.take(name, value)
     kind or (type(value) == "table" and "a table" or tostring(value))))
 end
 
--- Where an object's numbers come from, if it says: of a built-in band, the zero point.
+-- Where an object's numbers come from, if it says: in words, and the source's id. Of a built-in band: the zero point.
 local sources = {}
 function sources.band(band)
   local _, id = core.band_facts(band)
-  return id and "zero point: " .. core.part "lacuna.text".source { source = id }
+  if id then return "zero point: " .. core.part "lacuna.text".source { source = id }, id end
 end
 
 function objects.source(object)
   local of_kind = sources[core.object_type(object)]
-  return of_kind and of_kind(object)
+  if of_kind then return of_kind(object) end
 end
 
 return objects

@@ -1,5 +1,5 @@
 /* SPDX-License-Identifier: GPL-3.0-or-later */
-/* Where output goes: files that are whole or absent, and the width of the terminal. */
+/* Where output goes: files that are whole or absent, folders, and the width of the terminal. */
 #define _GNU_SOURCE /* strcasestr */
 #include <dirent.h>
 #include <errno.h>

@@ -9,7 +9,7 @@
 --   along a sweep { axes = names, values, uppers, lowers } or { axes, shares, share = of all } instead, lists in the order of the axes;
 -- and with each: undefined = share of draws, steps = "distance given, stellar_luminosity flux_and_distance, ..." on the way to it, and where
 -- there is something to say: failing = { { words, left } } (of a verdict that mostly is no), outside = { words } (of a recipe's range),
--- others = { { recipe, low, high } or { recipe, flips } } (what another recipe would change).
+-- others = { { recipe, low, high } or { recipe, flips, share } } (what another recipe would change).
 local core = ...
 local case = core.part "lacuna.case"
 local format = core.part "lacuna.format"
@@ -56,7 +56,8 @@ end
 -- The case of a target in one group: what is set on the command line goes before the target's own, that before the group's.
 local function make_case(plan, target, number, givens)
   local group, set = plan.groups[number], plan.set
-  local info = { target = target.name, objects = both(both(group.objects, target.objects), set.objects) }
+  local written = both(both(both(plan.groups[1].written, group.written), target.written), set.written)
+  local info = { target = target.name, objects = both(both(group.objects, target.objects), set.objects), written = written }
   local ok, made = pcall(case.make, {}, both(both(group.givens, givens), set.givens), group.using, info)
   if not ok then error(("%s: %s%s"):format(target.where, group.name and ('in variant "%s": '):format(group.name) or "", records.bare(made)), 0) end
   return made
@@ -241,6 +242,7 @@ local function leaves_out(row, taken)
   for _, name in ipairs(row.from) do if not has[name] then return false end end
   return true
 end
+records.leaves_out = leaves_out
 
 -- Recipes that stand beside those taken on the way to a name.
 local function alternatives(self, steps)
@@ -273,7 +275,10 @@ end
 
 -- What changes: the medians' factors (of a magnitude: their differences), from the lowest to the highest; or whether a verdict crosses one half.
 local function change_of(column, cell, value)
-  if column.verdict then return { flips = (share_of(value) >= 0.5) ~= (cell.share >= 0.5) } end
+  if column.verdict then
+    local share = share_of(value)
+    return { flips = (share >= 0.5) ~= (cell.share >= 0.5), share = share }
+  end
   local before, after = cell.values or { cell.value }, in_unit(core.median(value), column.entry.factor)
   local low, high = math.huge, -math.huge
   for i = 1, #after do

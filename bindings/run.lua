@@ -198,30 +198,17 @@ local function put_in_order(result)
   core.write_file(result.folder.path, file.whole(result.folder.head, texts))
 end
 
-local function has_part(name)
-  local ok, part = pcall(core.part, name)
-  if ok then return part end
-  if not tostring(part):find("no part '" .. name .. "'", 1, true) then error(part, 0) end
-end
-
--- What the report tells of the run.
-local function facts_of(result)
-  local script, input, settings = command.script, result.input, core.settings()
+-- What the report tells of the run. Where a host made the study, or a line of code, there is no file of it.
+function run.facts(result)
+  local script, input, settings = command.script or {}, result.input, core.settings()
+  local study_file = script.path or script.text and script.name
   local facts = {
-    study_file = script.path or script.name, inputs = {}, texts = { [script.path or script.name] = script.text },
+    study_file = study_file, inputs = {}, texts = { [study_file or ""] = script.text },
     command = { set = set_texts(), only = command.only }, settings = { seed = settings.seed, draws = settings.draws },
     version = command.version, elapsed = result.bar.elapsed, peak_memory = result.bar.peak,
   }
   if input then facts.inputs[1], facts.texts[input.path] = input.path, input.text end
   return facts
-end
-
-local function write_report(study, result)
-  local report = has_part "lacuna.report"
-  if report then return report.write(study, command.out, facts_of(result)) end
-  for name, text in pairs { ["table.txt"] = study:table(100) .. "\n", ["table.csv"] = study:csv(), ["table.tex"] = study:latex() } do
-    core.write_file(command.out .. "/" .. name, text)
-  end
 end
 
 local function count_failed(result)
@@ -240,11 +227,11 @@ end
 function run.close(study, result)
   count_failed(result)
   result.bar:close(summary(result), result.children)
-  if result.folder then
-    put_in_order(result)
-    if not command.shard then write_report(study, result) end
-  end
-  if not command.shard then print(study:table()) end
+  if result.folder then put_in_order(result) end
+  if command.shard then return end
+  local report = result.folder and core.part "lacuna.report".write(study, command.out, run.facts(result))
+  print(study:table())
+  if report then io.stderr:write(tostring(report), "\n") end
 end
 
 return run

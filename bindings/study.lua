@@ -17,7 +17,7 @@ local text = core.part "lacuna.text"
 
 local study_fields = {
   title = "string", targets = "any", given = "table", ask = "table", also = "table", variants = "table", using = "table", sort = "any", where = "table",
-  figures = "table", csv = "string", latex = "string",
+  figures = "table", csv = "string", latex = "string", derive = "string",
 }
 local variant_fields = { name = "string", given = "table", ask = "table", also = "table", using = "table" }
 
@@ -137,6 +137,12 @@ local function refuse_emptiness(columns, rows)
   error(("study: nothing that is asked can be derived for any target: %s of %s, %s"):format(columns[1].label, rows[1].name, rows[1].cells[1].reason), 0)
 end
 
+local function refuse_unknown_target(name, list)
+  if name == nil then return end
+  for _, target in ipairs(list) do if target.name == name then return end end
+  error(('study: derive: there is no target "%s"'):format(name), 0)
+end
+
 -- Files and the study itself ------------------------------------------------------------------------------------------------------
 
 -- The folder of the script that runs: of the nearest function on the stack that comes from a file.
@@ -208,6 +214,9 @@ function methods.table(study, columns) return tables.text(study, columns or core
 function methods.csv(study) return tables.csv(study) end
 function methods.latex(study) return tables.latex(study) end
 
+-- s:report(folder, {force = true}): writes the whole report; force: into a folder that has files already. Returns what was written.
+function methods.report(study, folder, options) return core.part "lacuna.report".ask(study, folder, options, run.facts(study.result)) end
+
 local function listed(study, name, variant)
   for field, columns in pairs { cells = study.columns, hidden = study.hidden } do
     for i, column in ipairs(columns) do
@@ -256,9 +265,10 @@ local function make(fields)
   local rows = {}
   for i, record in ipairs(result.records) do rows[i] = new_row(plan, result.targets[i], record) end
   if not command.shard then refuse_emptiness(plan.columns, rows) end
+  refuse_unknown_target(fields.derive, list)
   local study = setmetatable({
     title = plan.title, texts = list.texts, groups = plan.groups, columns = plan.columns, hidden = plan.hidden, set = plan.set, sweeps = plan.set.sweeps,
-    rows = command.shard and rows or selection.apply(plan, rows), plan = plan,
+    rows = command.shard and rows or selection.apply(plan, rows), plan = plan, result = result, derive = fields.derive,
     figures = fields.figures,
   }, study_metatable)
   study.notes = core.part "lacuna.notes".of(study)
@@ -277,8 +287,8 @@ local function on_one_thread(f, fields)
   return ok, study, result
 end
 
--- study{title =, targets =, given =, ask =, also =, variants =, using =, sort =, where =, csv =, latex =}: prints the table; returns an
--- object with rows (name, cells, case, variants[name] = case) and the methods table(), csv(), latex(), values(). Files are whole or absent.
+-- study{title =, targets =, given =, ask =, also =, variants =, using =, sort =, where =, csv =, latex =, derive =}: prints the table; returns an
+-- object with rows (name, cells, case, variants[name] = case) and the methods table(), csv(), latex(), report(), values(). Files are whole or absent.
 local function new_study(fields)
   if type(fields) ~= "table" then core.raise("study wants a table {targets = ..., ask = ...}; got " .. type(fields)) end
   local ok, study, result = on_one_thread(make, fields)

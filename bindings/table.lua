@@ -1,5 +1,5 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
--- Tables of results as aligned text, CSV and LaTeX (booktabs). A table is
+-- Tables of results as aligned text, CSV, Markdown and LaTeX (booktabs). A table is
 --
 --   { title = text or nil, texts = { headers of the texts carried along }, columns = {...}, rows = {...}, notes = {...} }
 --
@@ -30,6 +30,8 @@ local function wrapped(text, columns)
   lines[#lines + 1] = line
   return lines
 end
+tables.wrapped = wrapped
+
 tables.wrapped = wrapped
 
 -- A name or text from a file may have line breaks.
@@ -232,8 +234,25 @@ local function csv_line(fields)
   return table.concat(fields, ",")
 end
 
+-- What VOUnits and the FITS standard have no unit for, in the nearest that they have.
+local standard_units = { Msun = { "solMass" }, Rsun = { "solRad" }, Lsun = { "solLum" }, Mjup = { "solMass" }, Mearth = { "solMass" }, Rjup = { "solRad" }, Rearth = { "solRad" } }
+
+-- A unit as VOUnits has it, and how many of these one of it is: 1 Msun/yr is 1 solMass/yr. nil for plain numbers.
+local function standard_unit(unit)
+  if unit == "1" then return nil, 1 end
+  local written = unit:gsub("%a+", function(word) return standard_units[word] and standard_units[word][1] end)
+  return written, core.unit_facts(unit) / core.unit_facts(written)
+end
+
 local function digits(value) return value and value == value and ("%.7g"):format(value) or "" end
 tables.csv_line, tables.digits = csv_line, digits -- for figures too
+
+-- A cell's value, upper and lower error as texts.
+local function number_fields(cell, scale)
+  if not cell.value then return "", "", "" end
+  if not cell.upper then return digits(cell.value * scale), "", "" end
+  return format.rounded(cell.value * scale, cell.upper * scale, cell.lower * scale)
+end
 
 -- The points of a grid over sweeps, the last running fastest: each a list of places, one a sweep.
 local function grid_of(sweeps)
@@ -262,32 +281,86 @@ function tables.at_point(cell, sweeps, point)
   return { value = cell.values[index], upper = cell.uppers and cell.uppers[index], lower = cell.lowers and cell.lowers[index] }
 end
 
-local function csv_fields(whole, row, sweeps, point)
-  local fields = { row.name }
-  for _, text in ipairs(whole.texts) do fields[#fields + 1] = row.texts[text] or "" end
-  for i, sweep in ipairs(sweeps) do fields[#fields + 1] = digits(sweep.values[point[i]]) end
-  for i, column in ipairs(whole.columns) do
-    local cell = tables.at_point(row.cells[i], sweeps, point)
-    for _, part in ipairs(column.verdict and { "share" } or { "value", "upper", "lower" }) do fields[#fields + 1] = digits(cell[part]) end
+-- The columns of a file of numbers, one line a target, along sweeps one a target and point: each { name, group, part = what it is of the column
+-- (nil for its value), unit in VOUnits or nil, texts = true of texts, entry of the glossary (none of names and texts), and one text a line }.
+-- A verdict has its words and its share of the draws.
+function tables.fields(whole)
+  local fields, sweeps, lines = {}, whole.sweeps or {}, {}
+  for _, row in ipairs(whole.rows) do
+    for _, point in ipairs(grid_of(sweeps)) do lines[#lines + 1] = { row = row, point = point } end
+  end
+  local function add(field, text_of)
+    for i, line in ipairs(lines) do field[i] = text_of(line.row, line.point) end
+    fields[#fields + 1] = field
+  end
+  add({ name = "name", texts = true }, function(row) return row.name end)
+  for _, text in ipairs(whole.texts) do add({ name = text, texts = true }, function(row) return row.texts[text] or "" end) end
+  for i, sweep in ipairs(sweeps) do
+    local unit, scale = standard_unit(sweep.unit)
+    add({ name = sweep.name, unit = unit, entry = core.entry(sweep.name) }, function(_, point) return digits(sweep.values[point[i]] * scale) end)
+  end
+  for number, column in ipairs(whole.columns) do
+    local unit, scale = standard_unit(column.unit)
+    local function part(what, texts, text_of)
+      add({ name = column.name, group = column.group, part = what, unit = unit, texts = texts, entry = column.entry }, function(row, point)
+        return text_of(tables.at_point(row.cells[number], sweeps, point))
+      end)
+    end
+    if column.verdict then
+      part("verdict", true, function(cell) return cell.missing and "" or cell_text(cell) end)
+      part("share", false, function(cell) return digits(cell.share) end)
+    else
+      part(nil, false, function(cell) return (number_fields(cell, scale)) end)
+      part("upper error", false, function(cell) return (select(2, number_fields(cell, scale))) end)
+      part("lower error", false, function(cell) return (select(3, number_fields(cell, scale))) end)
+    end
   end
   return fields
 end
 
--- One line a target, along sweeps one a target and point: its texts, then a value, an upper and a lower error a column, or the share of a verdict.
+-- One line a target and point: its texts, then a value, an upper and a lower error a column, or the words and the share of a verdict.
 function tables.csv(whole)
-  local header, sweeps = { "name", table.unpack(whole.texts) }, whole.sweeps or {}
-  for _, sweep in ipairs(sweeps) do header[#header + 1] = sweep.name .. (sweep.unit == "1" and "" or " [" .. sweep.unit .. "]") end
-  for _, column in ipairs(whole.columns) do
-    local name = (column.group and column.group .. " " or "") .. column.name
-    local unit = column.unit == "1" and "" or " [" .. column.unit .. "]"
-    if column.verdict then header[#header + 1] = name .. " share"
-    else
-      for _, what in ipairs { "", " upper error", " lower error" } do header[#header + 1] = name .. what .. unit end
-    end
+  local fields, lines, header = tables.fields(whole), {}, {}
+  for i, field in ipairs(fields) do
+    header[i] = (field.group and field.group .. " " or "") .. field.name .. (field.part and " " .. field.part or "") .. (field.unit and " [" .. field.unit .. "]" or "")
   end
-  local lines, points = { csv_line(header) }, grid_of(sweeps)
+  lines[1] = csv_line(header)
+  for line = 1, #fields[1] do
+    local cells = {}
+    for i, field in ipairs(fields) do cells[i] = field[line] end
+    lines[line + 1] = csv_line(cells)
+  end
+  return table.concat(lines, "\n") .. "\n"
+end
+
+-- Markdown --------------------------------------------------------------------------------------------------------------------------
+
+local function markdown_cell(text) return (on_one_line(text):gsub("[\\|`*_<>%[%]]", "\\%0")) end
+
+-- A pipe table, as most readers of Markdown show it; group and unit stand in the headings.
+function tables.markdown(whole)
+  local function line(cells) return "| " .. table.concat(cells, " | ") .. " |" end
+  local headings, rules, lines = { "Star" }, { "---" }, {}
+  for _, text in ipairs(whole.texts) do headings[#headings + 1], rules[#rules + 1] = markdown_cell(text), "---" end
+  for _, column in ipairs(whole.columns) do
+    local words = (column.group and column.group .. ": " or "") .. column.name:gsub("_", " ") .. (column.unit_text ~= "" and " (" .. column.unit_text .. ")" or "")
+    headings[#headings + 1], rules[#rules + 1] = markdown_cell(words), "---:"
+  end
+  if whole.title then lines[1] = "**" .. markdown_cell(whole.title) .. "**\n" end
+  lines[#lines + 1] = line(headings)
+  lines[#lines + 1] = line(rules)
   for _, row in ipairs(whole.rows) do
-    for _, point in ipairs(points) do lines[#lines + 1] = csv_line(csv_fields(whole, row, sweeps, point)) end
+    local cells = { markdown_cell(row.name) }
+    for _, text in ipairs(whole.texts) do cells[#cells + 1] = markdown_cell(row.texts[text] or "") end
+    for _, cell in ipairs(row.cells) do cells[#cells + 1] = cell_text(cell) end
+    lines[#lines + 1] = line(cells)
+  end
+  for _, note in ipairs(whole.notes) do
+    lines[#lines + 1] = "\n**" .. markdown_cell(note.heading) .. "**\n"
+    for _, one in ipairs(note.lines) do
+      lines[#lines + 1] = "- " .. markdown_cell(type(one) == "string" and one or one[1])
+      for i = 2, type(one) == "table" and #one or 0 do lines[#lines + 1] = "  - " .. markdown_cell(one[i]) end
+    end
   end
   return table.concat(lines, "\n") .. "\n"
 end
@@ -315,6 +388,8 @@ local function escaped(text)
   return (text:gsub(utf8.charpattern, function(character) return #character > 1 and beyond_ascii[character] or nil end))
 end
 
+tables.escaped_tex = escaped
+
 local cell_tex
 function cell_tex(cell)
   if cell.missing then return "---" end
@@ -328,19 +403,62 @@ local function heading_tex(column)
   return "\\shortstack{" .. escaped((column.name:gsub("_", " "):gsub(" by ", "\0by "))):gsub("\0", "\\\\") .. "}"
 end
 
+-- A table environment takes so many rows, and columns up to a width that text of \small has on a page.
+local MOST_ROWS, WIDEST, MOST_FLOATS = 45, 100, 10
+
+-- What stands beside the names: texts and columns, each with its width in characters.
+local function parts_of(whole)
+  local list = {}
+  for _, text in ipairs(whole.texts) do
+    local width = format.width(text)
+    for _, row in ipairs(whole.rows) do width = math.max(width, format.width(on_one_line(row.texts[text] or ""))) end
+    list[#list + 1] = { text = text, width = width }
+  end
+  for i, column in ipairs(whole.columns) do
+    local cells = {}
+    for j, row in ipairs(whole.rows) do cells[j] = row.cells[i] end
+    list[#list + 1] = { column = column, number = i, group = column.group, width = laid_out(column, cells).width }
+  end
+  return list
+end
+
+-- The parts in tables side by side: a group that fits into one table is not cut.
+local function tables_of(whole)
+  local names_width, list, found, room = 0, parts_of(whole), {}, 0
+  for _, row in ipairs(whole.rows) do names_width = math.max(names_width, format.width(on_one_line(row.name))) end
+  local function width_from(i)
+    local width, group = 0, list[i].group
+    repeat
+      width = width + #GAP + list[i].width
+      i = i + 1
+    until not list[i] or not group or list[i].group ~= group
+    return width
+  end
+  for i, part in ipairs(list) do
+    local starts = i == 1 or part.group ~= list[i - 1].group or not part.group
+    local wanted = starts and math.min(width_from(i), WIDEST - names_width) or #GAP + part.width
+    if #found == 0 or wanted > room then
+      found[#found + 1] = {}
+      room = WIDEST - names_width
+    end
+    table.insert(found[#found], part)
+    room = room - #GAP - part.width
+  end
+  return found
+end
+
 -- The row of group headings over the columns, with its rules; nil where there is no group.
-local function groups_tex(whole, before)
-  local cells, rules, i = {}, {}, 1
-  while i <= #whole.columns do
-    local last = i
-    while last < #whole.columns and whole.columns[last + 1].group == whole.columns[i].group do last = last + 1 end
-    local group = whole.columns[i].group
+local function groups_tex(parts)
+  local cells, rules, i = { "" }, {}, 1
+  while i <= #parts do
+    local last, group = i, parts[i].group
+    while last < #parts and parts[last + 1].group == group do last = last + 1 end
     cells[#cells + 1] = ("\\multicolumn{%d}{c}{%s}"):format(last - i + 1, group and escaped(group) or "")
-    if group then rules[#rules + 1] = ("\\cmidrule(lr){%d-%d}"):format(before + i, before + last) end
+    if group then rules[#rules + 1] = ("\\cmidrule(lr){%d-%d}"):format(i + 1, last + 1) end
     i = last + 1
   end
   if #rules == 0 then return nil end
-  return ("& "):rep(before) .. table.concat(cells, " & ") .. " \\\\ " .. table.concat(rules, " ")
+  return table.concat(cells, " & ") .. " \\\\ " .. table.concat(rules, " ")
 end
 
 local function notes_tex(notes)
@@ -355,40 +473,50 @@ local function notes_tex(notes)
   return lines
 end
 
--- A table environment, for a document that loads booktabs.
-function tables.latex(whole)
-  local texts = whole.texts
-  local before = 1 + #texts
-  local lines = {
-    "% needs \\usepackage{booktabs}", "\\begin{table*}", "\\centering\\small",
-    whole.title and "\\caption{" .. escaped(whole.title) .. "}" or "% \\caption{...}",
-    "\\begin{tabular}{" .. ("l"):rep(before) .. ("r"):rep(#whole.columns) .. "}", "\\toprule",
-  }
-  local function add(line) lines[#lines + 1] = line end
+-- The tabular with some parts of some rows.
+local function add_tabular(add, whole, parts, first, last)
   local function add_row(fields) add(table.concat(fields, " & ") .. " \\\\") end
-  local groups = groups_tex(whole, before)
-  if groups then add(groups) end
-  local headings, units = { "Star" }, { "" }
-  for _, text in ipairs(texts) do headings[#headings + 1], units[#units + 1] = escaped(text), "" end
-  for _, column in ipairs(whole.columns) do
-    headings[#headings + 1] = heading_tex(column)
-    units[#units + 1] = column.unit == "1" and "" or "($" .. column.unit_tex .. "$)"
+  local form, headings, units = "l", { "Star" }, { "" }
+  for i, part in ipairs(parts) do
+    form = form .. (part.text and "l" or "r")
+    headings[i + 1] = part.text and escaped(part.text) or heading_tex(part.column)
+    units[i + 1] = (part.text or part.column.unit == "1") and "" or "($" .. part.column.unit_tex .. "$)"
   end
+  add("\\begin{tabular}{" .. form .. "}\n\\toprule")
+  local groups = groups_tex(parts)
+  if groups then add(groups) end
   add_row(headings)
-  add_row(units)
+  if table.concat(units) ~= "" then add_row(units) end
   add "\\midrule"
-  for _, row in ipairs(whole.rows) do
-    local fields = { escaped(row.name) }
-    for _, text in ipairs(texts) do fields[#fields + 1] = escaped(row.texts[text] or "") end
-    for _, cell in ipairs(row.cells) do fields[#fields + 1] = cell_tex(cell) end
+  for i = first, last do
+    local row, fields = whole.rows[i], { escaped(whole.rows[i].name) }
+    for j, part in ipairs(parts) do fields[j + 1] = part.text and escaped(row.texts[part.text] or "") or cell_tex(row.cells[part.number]) end
     add_row(fields)
   end
-  add "\\bottomrule"
-  add "\\end{tabular}"
-  add "\\par\\medskip\\begin{minipage}{\\textwidth}\\footnotesize"
-  for _, line in ipairs(notes_tex(whole.notes)) do add(line) end
-  add "\\end{minipage}"
-  add "\\end{table*}"
+  add "\\bottomrule\n\\end{tabular}"
+end
+
+-- Table environments, for a document that loads booktabs: one, or several where one would be too wide or too long; the notes stand below the last.
+function tables.latex(whole)
+  local lines, all, count = { "% needs \\usepackage{booktabs}" }, tables_of(whole), 0
+  local function add(line) lines[#lines + 1] = line end
+  for first = 1, #whole.rows, MOST_ROWS do
+    local last = math.min(first + MOST_ROWS - 1, #whole.rows)
+    for number, parts in ipairs(all) do
+      count = count + 1
+      local continued = count > 1 and " (continued)" or ""
+      add "\\begin{table*}\n\\centering\\small"
+      add(whole.title and "\\caption{" .. escaped(whole.title) .. continued .. "}" or "% \\caption{...}")
+      add_tabular(add, whole, parts, first, last)
+      if last == #whole.rows and number == #all and #whole.notes > 0 then
+        add "\\par\\medskip\\begin{minipage}{\\textwidth}\\footnotesize"
+        for _, line in ipairs(notes_tex(whole.notes)) do add(line) end
+        add "\\end{minipage}"
+      end
+      add "\\end{table*}"
+      if count % MOST_FLOATS == 0 then add "\\clearpage" end
+    end
+  end
   return table.concat(lines, "\n") .. "\n"
 end
 

@@ -7,6 +7,7 @@
 -- not given. A column without a unit whose header is far from every name of the glossary is a text, carried along.
 local core = ...
 local case = core.part "lacuna.case"
+local text = core.part "lacuna.text"
 local bare = core.part "lacuna.record".bare
 
 local targets = {}
@@ -171,7 +172,7 @@ local function sort_cells(row, columns, target, place)
 end
 
 local function read_row(row, columns, file)
-  local target = { where = ("%s:%d"):format(file, row.line), givens = {}, objects = {}, texts = {} }
+  local target = { where = ("%s:%d"):format(file, row.line), givens = {}, written = {}, objects = {}, texts = {} }
   local function place(column) return column_place(file, row.line, column.header) end
   local quantities, order = sort_cells(row, columns, target, place)
   if target.name == "" then complain('%s:%d: column "name": a target wants a name', file, row.line) end
@@ -181,7 +182,9 @@ local function read_row(row, columns, file)
       local one = cells.error or cells["upper error"] or cells["lower error"]
       complain("%s: an error without its value; got %s", place(one.column), one.cell)
     end
-    target.givens[name] = at(place(cells.value.column), core.given, name, read_quantity(cells, place), target.name)
+    local value = read_quantity(cells, place)
+    target.written[name] = text.as_written(name, value)
+    target.givens[name] = at(place(cells.value.column), core.given, name, value, target.name)
   end
   return target
 end
@@ -233,6 +236,7 @@ local function take_field(target, word, value, list)
     if core.entry(name).kind == "object" then target.objects[name] = core.part "lacuna.objects".take(name, value)
     else
       target.givens[name] = at(target.where, core.given, name, value, target.name)
+      target.written[name] = text.as_written(name, value)
       list.places[name] = list.places[name] or target.where
     end
   elseif type(value) == "string" and not nearly_a_name(word) then
@@ -254,7 +258,7 @@ local function from_list(given)
     if type(name) ~= "string" or name == "" then error(("study: target %d wants name = a text; got %s"):format(i, tostring(name)), 0) end
     if names[name] then error(('study: there are two targets "%s", %d and %d'):format(name, names[name], i), 0) end
     names[name] = i
-    local target = { name = name, where = ('study: target "%s"'):format(name), givens = {}, objects = {}, texts = {} }
+    local target = { name = name, where = ('study: target "%s"'):format(name), givens = {}, written = {}, objects = {}, texts = {} }
     for _, word in ipairs(case.sorted_keys(fields)) do
       if type(word) ~= "string" then error(("%s: wants name = value; got the value %s without a name"):format(target.where, tostring(fields[word])), 0) end
       if word ~= "name" then take_field(target, word, fields[word], list) end

@@ -235,29 +235,52 @@ end
 
 -- Equations -----------------------------------------------------------------------------------------------------------------------
 
+-- The length that an angle is the angle of, or nil.
+local function length_of(name)
+  local length = name:match "^(.+)_angle$"
+  return length and core.find(length) == length and core.entry(length).on_sky and length or nil
+end
+
 -- The symbol of a name in plain text; that of an angle is θ of the length.
 function text.symbol(name)
-  local length = name:match "^(.+)_angle$"
-  if length and core.find(length) == length and core.entry(length).on_sky then return "θ(" .. text.symbol(length) .. ")" end
+  local length = length_of(name)
+  if length then return "θ(" .. text.symbol(length) .. ")" end
   return equation.plain_symbol(core.entry(name).symbol)
+end
+
+-- The same in the TeX that equations are written in.
+function text.symbol_tex(name)
+  local length = length_of(name)
+  return length and "\\theta(" .. text.symbol_tex(length) .. ")" or core.entry(name).symbol
 end
 local symbol_of = text.symbol
 
--- One representative number of a quantity, for putting into an equation.
-local function representative(quantity)
-  if core.object_type(quantity) then return tostring(quantity) end
-  local _, factor, unit = display_unit(quantity)
+-- One representative number of a quantity in its display unit, and that unit's plain text and TeX: what is put into an equation.
+function text.representative(quantity)
+  local name, factor, unit = display_unit(quantity)
   local reduced = quantity
   for _, axis in ipairs(core.axes(quantity)) do reduced = axis.name == "draw" and core.median(reduced) or core.at(reduced, { [axis.name] = 1 }) end
-  return format.with_unit(format.number(core.elements(reduced)[1] / factor), unit)
+  return core.elements(reduced)[1] / factor, unit, unit ~= "" and select(2, core.unit_facts(name)) or nil
+end
+
+local function representative(quantity)
+  if core.object_type(quantity) then return tostring(quantity) end
+  local number, unit = text.representative(quantity)
+  return format.with_unit(format.number(number), unit)
+end
+
+-- The side of a row's equation that numbers can be put into; conditions are listed with their numbers by themselves.
+function text.right_side(row)
+  if not row.equation or #row.from == 0 or #row.conditions > 0 then return nil end
+  return row.equation:match "^.-=(.*)$"
 end
 
 -- The equation of a row, and again with the case's numbers in it.
 local function equation_lines(self, row)
   if not row.equation or row.equation == "" then return {} end
   local lines = { equation.plain(row.equation, symbol_of) }
-  local with_numbers = row.equation:match "^.-=(.*)$"
-  if with_numbers and #row.from > 0 and #row.conditions == 0 then -- conditions are listed with their numbers by themselves
+  local with_numbers = text.right_side(row)
+  if with_numbers then
     lines[2] = "= " .. equation.plain(with_numbers, function(name)
       local value = core.raw(self, name)
       return value and representative(value) or symbol_of(name)
@@ -400,12 +423,12 @@ local function add_alternatives(lines, self, name)
 end
 
 -- Which numbers stand in the equations, where a quantity has more than one.
-local function put_in(value)
+function text.put_in(value)
   local which = {}
   for _, axis in ipairs(core.axes(value)) do
     which[#which + 1] = axis.name == "draw" and "medians of the draws" or "the first point of " .. axis.name
   end
-  return #which > 0 and "  numbers put in: " .. table.concat(which, ", ") or nil
+  return #which > 0 and "numbers put in: " .. table.concat(which, ", ") or nil
 end
 
 text.why_metatable = {
@@ -414,7 +437,8 @@ text.why_metatable = {
     local self, name = why.case, why.name
     local value, entry = core.raw(self, name), core.entry(name)
     local lines = { ("%s = %s"):format(name, text.quantity(value)), "  " .. entry.meaning }
-    lines[3] = put_in(value)
+    local numbers = text.put_in(value)
+    lines[3] = numbers and "  " .. numbers
     lines[#lines + 1] = ""
     for _, step in ipairs(core.steps(self, name)) do add_step(lines, self, step) end
     if entry.kind == "verdict" then add_verdict(lines, self, name) end

@@ -28,10 +28,10 @@ want "an error bar" 0 "*Tarn 12 *3.33* ± 0.05* *distance = 120 ± 2 pc;*" ""
 
 "$lacuna" study.lua --set 'baseline=50 m:250 m:3' --only 'Marrow 3' >swept
 cmp -s out.csv - <<'END'
-name,projected_baseline [m],rim_size_angle [mas],rim_size_angle upper error [mas],rim_size_angle lower error [mas],rim_resolved_by_array share,fringe array_resolution [mas],fringe array_resolution upper error [mas],fringe array_resolution lower error [mas]
-Marrow 3,50,4,,,1,6.806739,,
-Marrow 3,150,4,,,1,2.268913,,
-Marrow 3,250,4,,,1,1.361348,,
+name,projected_baseline [m],rim_size_angle [mas],rim_size_angle upper error [mas],rim_size_angle lower error [mas],rim_resolved_by_array verdict,rim_resolved_by_array share,fringe array_resolution [mas],fringe array_resolution upper error [mas],fringe array_resolution lower error [mas]
+Marrow 3,50,4,,,yes,1,6.806739,,
+Marrow 3,150,4,,,yes,1,2.268913,,
+Marrow 3,250,4,,,yes,1,1.361348,,
 END
 result $? "a sweep: a line for each point" # 1.65 um over the baseline, 206264806.247 mas a radian
 grep -q '^Marrow 3 .* 1.361 … 6.807$' swept && grep -q 'projected_baseline from 50 to 250 m, 3 points' swept

@@ -1,0 +1,175 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- Derivations as data, for the page and the document of a report: for each quantity that a study asks, the chain that leads to it for one
+-- target, with the numbers to put into the equations; and what all chains rest on.
+--
+--   of(case, name)          { name, meaning, value, numbers = which stand in the equations, steps, conditions, unchecked, others }
+--   of_study(study)         the target's row, and a list of { column, case, chain }: one for each column that could be derived
+--   assumptions(chains), recipes(chains), others(chains)   each once, in the order of the chains
+--
+-- A step is { name, kind = "given", "assumed" or "derived", value (text), row (the relation; none of a given), equation, right_side,
+-- inputs = { [name] = { number, unit, unit_tex } to put in }, warnings, source = words on a given object, source_id }.
+local core = ...
+local case = core.part "lacuna.case"
+local equation = core.part "lacuna.equation"
+local format = core.part "lacuna.format"
+local text = core.part "lacuna.text"
+
+local derivation = {}
+
+-- The numbers for the names in a row's right side. Names that have none (objects) keep their symbols.
+local function numbers_for(self, right_side)
+  local inputs = {}
+  for _, name in ipairs(equation.names(right_side)) do
+    local value = core.raw(self, name)
+    if value and not core.object_type(value) then
+      local number, unit, unit_tex = text.representative(value)
+      inputs[name] = { number = number, unit = unit, unit_tex = unit_tex }
+    end
+  end
+  return inputs
+end
+
+-- An equation's numbers to four digits: 1.0289939699622 is 1.029.
+local function shortened(written)
+  return written and written:gsub("%d+%.%d%d%d%d+", function(digits) return format.number(tonumber(digits), 4) end)
+end
+
+local function step_of(self, step)
+  local value = core.raw(self, step.name)
+  if not step.row then
+    local given = { name = step.name, kind = "given", value = text.given(self, step.name) }
+    if core.object_type(value) then given.source, given.source_id = core.part "lacuna.objects".source(value) end
+    return given
+  end
+  local row = core.row(step.row)
+  if row.kind == "assumed" then return { name = step.name, kind = "assumed", value = text.quantity(value), row = row } end
+  local right_side = shortened(text.right_side(row))
+  return {
+    name = step.name, kind = "derived", value = text.brief(value), row = row, right_side = right_side,
+    equation = row.equation ~= "" and shortened(row.equation) or nil, inputs = right_side and numbers_for(self, right_side), warnings = text.warnings(self, row),
+  }
+end
+
+-- Whether it is a choice, and not the same with less known: a verdict with fewer conditions, say.
+local function is_another_recipe(self, other)
+  return core.entry(other.name).kind ~= "verdict" and not core.part "lacuna.record".leaves_out(other.row, core.row(core.row_of(self, other.name)))
+end
+
+function derivation.of(self, name)
+  local value, entry = core.raw(self, name), core.entry(name)
+  local chain = { name = name, meaning = entry.meaning, value = text.brief(value), numbers = text.put_in(value), steps = {}, conditions = {}, others = {} }
+  for i, step in ipairs(core.steps(self, name)) do chain.steps[i] = step_of(self, step) end
+  if entry.kind == "verdict" then
+    chain.value = text.with_reason(chain.value, value, name)
+    local conditions
+    conditions, chain.unchecked = text.conditions(self, name)
+    for i, condition in ipairs(conditions) do chain.conditions[i] = text.condition(condition) end
+  end
+  for _, other in ipairs(case.over_recipes(self, name)) do
+    if is_another_recipe(self, other) then chain.others[#chain.others + 1] = { name = other.name, row = other.row, instead_of = other.instead_of, value = text.brief(other.value) } end
+  end
+  return chain
+end
+
+-- The case that a column asks, of one target.
+function derivation.case_of(row, column) return column.group and row.variants[column.group] or row.case end
+
+-- The target that derivations are shown for: the one that the study names, else the first for which most is known.
+local function target_shown(study)
+  local best, most
+  for _, row in ipairs(study.rows) do
+    if row.name == study.derive then return row end
+    local known = 0
+    for _, cell in ipairs(row.cells) do if not cell.missing then known = known + 1 end end
+    if not best or known > most then best, most = row, known end
+  end
+  return best
+end
+
+function derivation.of_study(study)
+  local row, chains = target_shown(study), {}
+  for i, column in ipairs(study.columns) do
+    if not row.cells[i].missing then
+      chains[#chains + 1] = { column = column, chain = derivation.of(derivation.case_of(row, column), column.name) }
+    end
+  end
+  return row, chains
+end
+
+-- Calls visit(thing, column) for each thing of the chains that key(thing) has not been seen of.
+local function each_once(chains, things, key)
+  local seen, found = {}, {}
+  for _, one in ipairs(chains) do
+    for _, thing in ipairs(things(one.chain)) do
+      local of_thing = key(thing)
+      if of_thing and not seen[of_thing] then
+        seen[of_thing] = true
+        found[#found + 1] = thing
+      end
+    end
+  end
+  return found
+end
+
+local function steps(chain) return chain.steps end
+
+function derivation.assumptions(chains)
+  return each_once(chains, steps, function(step) return step.kind == "assumed" and step.name end)
+end
+
+-- The steps by recipes that someone chose; definitions are no choice.
+function derivation.recipes(chains)
+  return each_once(chains, steps, function(step)
+    return step.kind == "derived" and step.row.kind ~= "definition" and step.row.source ~= "definition" and step.name .. "/" .. step.row.by
+  end)
+end
+
+-- What the other recipes would have given: { label, other = {...}, value } for each column in which they differ.
+function derivation.others(chains)
+  local found = {}
+  for _, one in ipairs(chains) do
+    for _, other in ipairs(one.chain.others) do found[#found + 1] = { column = one.column, chain = one.chain, other = other } end
+  end
+  return found
+end
+
+-- Numbers in an equation -----------------------------------------------------------------------------------------------------------------
+
+-- A value for putting in, as TeX.
+local function value_tex(input)
+  return (format.with_unit_tex(format.number_tex(input.number), input.unit_tex):gsub("%$", ""))
+end
+
+-- The same as MathML: "2.4e-11" is 2.4 × 10^-11.
+local function value_mathml(input)
+  local digits, exponent = format.number(input.number):match "^([^e]*)e?(.*)$"
+  local number = "<mn>" .. digits:gsub("^-", "−") .. "</mn>"
+  if exponent ~= "" then number = number .. "<mo>×</mo><msup><mn>10</mn><mn>" .. exponent:gsub("^-", "−") .. "</mn></msup>" end
+  if input.unit == "" then return exponent == "" and number or "<mrow>" .. number .. "</mrow>" end
+  return "<mrow>" .. number .. '<mspace width="0.167em"/><mtext>' .. input.unit .. "</mtext></mrow>"
+end
+
+-- Renderings of a step's equation, and of its right side with the numbers put in (nil where there is nothing to put in).
+function derivation.equation_mathml(step) return equation.mathml(step.equation, text.symbol_tex) end
+function derivation.equation_tex(step) return equation.tex(step.equation, text.symbol_tex) end
+
+local function has_numbers(step) return step.right_side and next(step.inputs) end
+
+function derivation.numbers_mathml(step)
+  if not has_numbers(step) then return nil end
+  return equation.mathml(step.right_side, function(name)
+    local input = step.inputs[name]
+    if input then return nil, value_mathml(input) end
+    return text.symbol_tex(name)
+  end)
+end
+
+function derivation.numbers_tex(step)
+  if not has_numbers(step) then return nil end
+  return equation.tex(step.right_side, function(name)
+    local input = step.inputs[name]
+    return input and value_tex(input) or text.symbol_tex(name)
+  end)
+end
+
+return derivation

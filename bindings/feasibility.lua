@@ -1,0 +1,371 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- The "technical feasibility" of a proposal as a draft: paragraphs in plain English, composed from what a study found, with the numbers, the
+-- recipes, what they suppose and the range over recipes. No verdict stands in it without these.
+--
+--   of(study, chains, facts)    a text: { paragraphs = { { sentences } }, cited = rows }; chains as derivation.of_study gives them
+--   givens_of(group, study)     what is given for all targets in a group, as a list of texts
+--   paragraphs(text)            as plain text, one line a paragraph
+--   plain(text)                 the whole as plain text, lines of at most 100 columns
+--   tex(text, cited)            as LaTeX that cites a bibliography's keys
+local core = ...
+local bibliography = core.part "lacuna.bibliography"
+local format = core.part "lacuna.format"
+local notes = core.part "lacuna.notes"
+local tables = core.part "lacuna.table"
+local text = core.part "lacuna.text"
+local verdicts = core.part "lacuna.verdicts"
+
+local feasibility = {}
+local WIDTH = 100
+local words_of = verdicts.words_of
+
+-- Sentences may cite: a mark stands for the row whose source is meant until the text is written out.
+local function citing(cited)
+  return function(row)
+    cited[#cited + 1] = row
+    return "\1" .. #cited .. "\2"
+  end
+end
+
+local function capital(words) return (words:gsub("^%l", string.upper)) end
+
+-- The sentences that there are.
+local function present(...)
+  local sentences = {}
+  for i = 1, select("#", ...) do
+    local sentence = select(i, ...)
+    if sentence then sentences[#sentences + 1] = sentence end
+  end
+  return sentences
+end
+
+local function plural(count, one, many) return count == 1 and one or many or one .. "s" end
+
+-- Targets and instruments ------------------------------------------------------------------------------------------------------------
+
+local function targets_sentence(study)
+  local names = verdicts.names_of(study.rows)
+  if #names == 1 then return ("The target is %s."):format(names[1]) end
+  return ("The sample has %d targets: %s."):format(#names, verdicts.list(names, 12))
+end
+
+-- "20 m:330 m:6" of the command line in words.
+local function swept(written) return (written:gsub("^%s*(.-)%s*:%s*(.-)%s*:%s*(%d+)%s*$", "from %1 to %2 (%3 values)")) end
+
+-- What is given for all targets of a group, "wavelength 1.65 um" and so on. What the command line sets goes before it, and stands with the first.
+local function givens_of(group, study)
+  local parts, first, set = {}, study.groups[1], study.set
+  for _, name in ipairs(core.names()) do
+    local own = set.givens[name] or set.objects[name]
+    local written = group.own[name] and group.written[name]
+    local object = group.objects[name]
+    if object and (group == first or first.objects[name] ~= object) then written = tostring(object) end
+    if own then written = group == first and swept(set.written[name] or tostring(own)) end
+    if written then parts[#parts + 1] = words_of(name) .. " " .. written end
+  end
+  return parts
+end
+
+feasibility.givens_of = givens_of
+
+local function givens_sentence(study)
+  local parts = givens_of(study.groups[1], study)
+  if #parts == 0 then return nil end
+  return ("For all of them we take %s."):format(verdicts.list(parts, #parts)):gsub("^For all of them we", #study.rows == 1 and "We" or "%0")
+end
+
+local function draws_sentence(study, facts)
+  if not verdicts.has_draws(study) then return "No given has an error bar; all numbers are single ones." end
+  return ("The error bars are carried through all relations by %d draws (seed %d): errors span the central 68 %% of them, and a share is one of all draws.")
+    :format(facts.draws, facts.seed)
+end
+
+-- Quantities -------------------------------------------------------------------------------------------------------------------------
+
+local function value_text(cell, column)
+  return format.with_unit(tables.cell_text(cell), column.unit_text)
+end
+
+local function middle(cell)
+  if cell.value then return cell.value end
+  for _, value in ipairs(cell.values or {}) do if value == value then return value end end
+end
+
+-- The rows with the least and the greatest value of a column, and how many have one.
+local function ends_of(study, number)
+  local low, high, count = nil, nil, 0
+  for _, row in ipairs(study.rows) do
+    local value = middle(row.cells[number])
+    if value and value == value then
+      count = count + 1
+      if not low or value < middle(low.cells[number]) then low = row end
+      if not high or value > middle(high.cells[number]) then high = row end
+    end
+  end
+  return low, high, count
+end
+
+-- By how much other recipes would change a quantity: "(over the recipes, ... )".
+local function recipes_of_quantity(study, number, column)
+  local parts = {}
+  for _, recipe in ipairs(verdicts.recipes(study, number)) do
+    local magnitude = column.unit == "mag"
+    local low, high = format.number(recipe.low, 2), format.number(recipe.high, 2)
+    if magnitude then low, high = ("%+.2f"):format(recipe.low), ("%+.2f"):format(recipe.high) end
+    if recipe.low <= recipe.high and not (low == high and (low == "1" or magnitude and low:find "^.0.00$")) then
+      parts[#parts + 1] = ("with %s it would be %s"):format(verdicts.recipe_words(recipe.words),
+        magnitude and (low == high and low or low .. " to " .. high) .. " mag different" or (low == high and low or low .. " to " .. high) .. " times that")
+    end
+  end
+  return #parts > 0 and "; " .. table.concat(parts, ", ") or ""
+end
+
+local function quantity_sentence(study, number, column, known)
+  local low, high, count = ends_of(study, number)
+  if count == 0 then return nil end
+  local name = words_of(column.name)
+  local said = known and "" or (" (%s)"):format(verdicts.in_words(column.entry.meaning))
+  local others = recipes_of_quantity(study, number, column)
+  if count == 1 or low == high then
+    return ("The %s%s%s is %s%s."):format(name, said, #study.rows > 1 and " of " .. low.name or "", value_text(low.cells[number], column), others)
+  end
+  return ("The %s%s runs from %s (%s) to %s (%s)%s."):format(name, said, value_text(low.cells[number], column), low.name,
+    value_text(high.cells[number], column), high.name, others)
+end
+
+-- Verdicts ---------------------------------------------------------------------------------------------------------------------------
+
+local function what_shares_are_of(study) return #(study.sweeps or {}) > 0 and " of the draws and points" or " of the draws" end
+
+-- "in at least 90 % of the draws for 3 of the 12 targets (A, B and C), in 45 % for Lumbric 2 and in at most 10 % for the others"
+local function by_share(one, all, draws)
+  local parts, open = {}, {}
+  local function add(words, who)
+    parts[#parts + 1] = words .. draws .. " for " .. who
+    draws = ""
+  end
+  if #one.yes > 0 then add("in at least " .. format.percent(verdicts.MOSTLY), verdicts.count(one.yes, all)) end
+  for i, row in ipairs(one.between) do open[i] = ("%s%s for %s"):format(format.percent(row.cell.share), #parts == 0 and i == 1 and draws or "", row.name) end
+  if #open > 0 then parts[#parts + 1], draws = "in " .. verdicts.list(open), "" end
+  if #one.no > 0 then add("in at most " .. format.percent(verdicts.HARDLY), verdicts.count(one.no, all)) end
+  return table.concat(parts, "; ")
+end
+
+local function without_draws(one, all)
+  local subject, verb = one.words:match "^(.-) is (.*)$"
+  if not subject then subject, verb = one.words, "so" end
+  if #one.no == 0 then return ("%s is %s for %s"):format(subject, verb, verdicts.count(one.yes, all)) end
+  if #one.yes == 0 then return ("%s is not %s for %s"):format(subject, verb, #one.no == all and all > 1 and "any of the targets" or verdicts.count(one.no, all)) end
+  return ("%s is %s for %s, and not for %s"):format(subject, verb, verdicts.count(one.yes, all), verdicts.count(one.no, all))
+end
+
+local function single_share(row, study)
+  local share = row.cell.share
+  return (share == 0 and "in none" or share == 1 and "in all" or "in " .. format.percent(share)) .. what_shares_are_of(study)
+end
+
+local function reason_sentence(one)
+  if #one.reasons == 0 then return nil end
+  local parts = {}
+  for i = 1, math.min(2, #one.reasons) do
+    local reason = one.reasons[i]
+    parts[i] = verdicts.reason_words(reason.words) .. (#one.no + #one.between > 1 and (" (%d %s)"):format(reason.count, plural(reason.count, "target")) or "")
+  end
+  return ("Where it is not resolved, %s."):format(verdicts.list(parts))
+end
+
+local function verdict_sentences(study, one, draws)
+  local known, all = #one.yes + #one.between + #one.no, #study.rows
+  if known == 0 then return {} end
+  local answer
+  if not draws then answer = without_draws(one, all)
+  elseif all == 1 then answer = ("%s %s"):format(one.words, single_share(one.yes[1] or one.between[1] or one.no[1], study))
+  else answer = one.words .. " " .. by_share(one, all, what_shares_are_of(study)) end
+  return present(capital(answer) .. ".", reason_sentence(one))
+end
+
+-- What other recipes would make of the verdicts of a group: no verdict is said without it.
+local function recipes_sentence(group_verdicts)
+  local changed, order, moved = {}, {}, {}
+  for _, one in ipairs(group_verdicts) do
+    for _, recipe in ipairs(one.recipes) do
+      if not moved[recipe.words] then order[#order + 1] = recipe.words end
+      moved[recipe.words] = moved[recipe.words] or "no"
+      if #recipe.names > 0 then
+        moved[recipe.words] = "yes"
+        changed[#changed + 1] = ("with %s, whether %s changes for %s"):format(verdicts.recipe_words(recipe.words), one.words,
+          recipe.asked == 1 and recipe.names[1] .. (recipe.low == 1 and ", to yes" or recipe.low == 0 and ", to no" or ", to " .. format.percent(recipe.low) .. " of the draws")
+            or ("%d of %d targets (%s)"):format(#recipe.names, recipe.asked, verdicts.list(recipe.names)))
+      end
+    end
+  end
+  if #order == 0 then return "What is given allows no other published recipe on the way to this." end
+  local unchanged = {}
+  for _, words in ipairs(order) do if moved[words] == "no" then unchanged[#unchanged + 1] = verdicts.recipe_words(words) end end
+  if #unchanged > 0 then changed[#changed + 1] = ("%s would move no answer across one half of the draws%s"):format(verdicts.list(unchanged), #changed > 0 and " here" or "") end
+  return "Over the recipes: " .. table.concat(changed, "; ") .. "."
+end
+
+-- Which targets are left out, where and why: those of which nothing in the group could be derived once, the others by name.
+local function missing_sentences(study, columns)
+  local sentences, wholly = {}, {}
+  for _, row in ipairs(study.rows) do
+    local missing, reason = {}, nil
+    for _, number in ipairs(columns) do
+      local cell = row.cells[number]
+      if cell.missing then missing[#missing + 1], reason = words_of(study.columns[number].name), cell.reason end
+    end
+    if #missing > 0 then
+      local key = (#missing == #columns and "" or verdicts.list(missing)) .. "\0" .. reason
+      if not wholly[key] then
+        wholly[key] = { names = {}, what = #missing < #columns and verdicts.list(missing), reason = reason }
+        sentences[#sentences + 1] = wholly[key]
+      end
+      table.insert(wholly[key].names, row.name)
+    end
+  end
+  for i, one in ipairs(sentences) do
+    sentences[i] = ("For %s %s could not be derived (%s)."):format(verdicts.list(one.names), one.what or "this", verdicts.in_words(one.reason))
+  end
+  return sentences
+end
+
+-- Everything asked of one group of columns, quantities before verdicts.
+local function group_paragraph(study, group, of_verdicts, draws, said)
+  local sentences, columns, own = {}, {}, {}
+  local function add(sentence) if sentence then sentences[#sentences + 1] = sentence end end
+  if group.name then
+    local parts = givens_of(group, study)
+    add(("%s%s:"):format(capital(group.name), #parts > 0 and " (" .. verdicts.list(parts, #parts) .. ")" or ""))
+  end
+  for number, column in ipairs(study.columns) do
+    if column.group == group.name then
+      columns[#columns + 1] = number
+      if not column.verdict then
+        add(quantity_sentence(study, number, column, said[column.name]))
+        said[column.name] = true
+      end
+    end
+  end
+  for _, one in ipairs(of_verdicts) do
+    if one.column.group == group.name then
+      local answered = verdict_sentences(study, one, draws)
+      if #answered > 0 then own[#own + 1] = one end
+      for _, sentence in ipairs(answered) do add(sentence) end
+    end
+  end
+  for _, sentence in ipairs(missing_sentences(study, columns)) do add(sentence) end
+  if #own > 0 then add(recipes_sentence(own)) end
+  return #columns > 0 and sentences or {}
+end
+
+-- What it rests on -------------------------------------------------------------------------------------------------------------------
+
+-- "gap width after Kanagawa et al. 2016", each recipe once with all the names it gives: those that are published, and common practice.
+local function recipe_parts(used, cite)
+  local order, by_recipe = {}, {}
+  for _, name in ipairs(used.keys) do
+    for _, by in ipairs(used.values[name].keys) do
+      local row = used.values[name].values[by].relation
+      if row and row.kind ~= "definition" and row.kind ~= "assumed" and row.source ~= "definition" then
+        local key = row.by .. "\0" .. row.source
+        if not by_recipe[key] then order[#order + 1], by_recipe[key] = key, { row = row } end
+        table.insert(by_recipe[key], words_of(name))
+      end
+    end
+  end
+  local published, practice = {}, {}
+  for _, key in ipairs(order) do
+    local entry = by_recipe[key]
+    local what, by = verdicts.list(entry, 3), words_of(entry.row.by)
+    if not bibliography.short(entry.row) then practice[#practice + 1] = what .. " (" .. by .. ")"
+    elseif entry.row.by:find "_%d%d%d%d" then published[#published + 1] = what .. " after " .. cite(entry.row)
+    else published[#published + 1] = what .. " by " .. by .. " after " .. cite(entry.row) end
+  end
+  return published, practice
+end
+
+local function assumption_parts(used, cite)
+  local parts = {}
+  for _, name in ipairs(used.keys) do
+    for _, by in ipairs(used.values[name].keys) do
+      local row = used.values[name].values[by].relation
+      if row and row.kind == "assumed" then parts[#parts + 1] = ("%s = %s (%s)"):format(words_of(name), row.assumes, cite(row)) end
+    end
+  end
+  return parts
+end
+
+local function basis_paragraph(study, cite)
+  local used = notes.relations_used(study)
+  local published, practice = recipe_parts(used, cite)
+  local assumed = assumption_parts(used, cite)
+  return present(
+    #published > 0 and ("These numbers rest on the %s %s."):format(plural(#published, "recipe"), table.concat(published, "; ")),
+    #practice > 0 and ("Common practice, without a published source, %s %s."):format(plural(#practice, "is", "are"), table.concat(practice, "; ")),
+    #published + #practice == 0 and "All of these numbers follow by definition from what is given." or "What each supposes stands with the derivations.",
+    #assumed > 0 and ("Assumed, as not measured for %s: %s."):format(#study.rows == 1 and "the target" or "these targets", verdicts.list(assumed, #assumed)) or "Nothing is assumed.")
+end
+
+local function detection_paragraph(study)
+  local asked
+  for number, column in ipairs(study.columns) do
+    if column.name == "rim_drop_significance" and select(3, ends_of(study, number)) > 0 then asked = true end
+  end
+  return {
+    asked and "Detection is assessed for the rim alone, by the drop of its squared visibility in standard errors; whether any other structure is detected is not assessed."
+      or "Resolved means geometrically resolved. Whether a structure is also detected is not assessed here.",
+    "These are estimates of feasibility; the observatory's own documents and staff decide.",
+  }
+end
+
+function feasibility.of(study, facts)
+  local cited, said = {}, {}
+  local cite = citing(cited)
+  local of_verdicts, draws = verdicts.of(study), verdicts.has_draws(study)
+  local paragraphs = { present(targets_sentence(study), givens_sentence(study), draws_sentence(study, facts)) }
+  for _, group in ipairs(study.groups) do
+    local sentences = group_paragraph(study, group, of_verdicts, draws, said)
+    if #sentences > 0 then paragraphs[#paragraphs + 1] = sentences end
+  end
+  if #of_verdicts == 0 then paragraphs[#paragraphs][#paragraphs[#paragraphs] + 1] = "No verdict was asked: whether anything is resolved is left open." end
+  paragraphs[#paragraphs + 1] = basis_paragraph(study, cite)
+  paragraphs[#paragraphs + 1] = detection_paragraph(study)
+  return { paragraphs = paragraphs, cited = cited, by = facts.version }
+end
+
+-- Written out ------------------------------------------------------------------------------------------------------------------------
+
+local DRAFT = "Draft, to be edited: composed from the results"
+
+local function short_or_words(row) return bibliography.short(row) or text.source(row) end
+
+-- The paragraphs as plain text, each one line.
+function feasibility.paragraphs(composed)
+  local paragraphs = {}
+  for i, sentences in ipairs(composed.paragraphs) do
+    paragraphs[i] = table.concat(sentences, " "):gsub("\1(%d+)\2", function(number) return short_or_words(composed.cited[tonumber(number)]) end)
+  end
+  return paragraphs
+end
+
+function feasibility.plain(composed)
+  local paragraphs = { DRAFT .. "." }
+  for _, words in ipairs(feasibility.paragraphs(composed)) do paragraphs[#paragraphs + 1] = table.concat(tables.wrapped(words, WIDTH), "\n") end
+  return table.concat(paragraphs, "\n\n") .. "\n"
+end
+
+function feasibility.tex(composed, cited)
+  local paragraphs = { "% " .. DRAFT, "\\emph{" .. DRAFT .. ".}" }
+  for _, sentences in ipairs(composed.paragraphs) do
+    local words = tables.escaped_tex(table.concat(sentences, " "))
+    paragraphs[#paragraphs + 1] = words:gsub("\1(%d+)\2", function(number)
+      local row = composed.cited[tonumber(number)]
+      local key = cited:key(row)
+      return key and "\\cite{" .. key .. "}" or tables.escaped_tex(text.source(row))
+    end)
+  end
+  return table.concat(paragraphs, "\n\n") .. "\n"
+end
+
+return feasibility

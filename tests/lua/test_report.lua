@@ -1,0 +1,187 @@
+-- SPDX-License-Identifier: GPL-3.0-or-later
+-- Reports from Lua: what stands in the folder and in each file. Stars and instruments are invented; hashes are compared with published test
+-- vectors, files of numbers with what the study itself says.
+package.path = "tests/lua/?.lua"
+local t = require "harness"
+local lacuna = require "lacuna"
+lacuna.settings { seed = 7, draws = 2000 }
+
+local folder = os.tmpname()
+os.remove(folder)
+assert(os.execute("mkdir " .. folder))
+
+local function read(name)
+  local file = io.open(folder .. "/" .. name, "rb")
+  if not file then return nil end
+  local content = file:read "a"
+  file:close()
+  return content
+end
+
+local function quietly(fields)
+  local print_before = print
+  print = function() end
+  local ok, result = pcall(lacuna.study, fields)
+  print = print_before
+  if not ok then error(result, 0) end
+  return result
+end
+
+local stars = {
+  { name = "Marrow 3", distance = "156 ± 3 pc", bolometric_flux = "2.4e-11 ± 0.2e-11 W.m**-2", stellar_mass = "1.9 ± 0.1 Msun" },
+  { name = "Tarn <12> & co", distance = "60.1 ± 0.2 pc", bolometric_flux = "3.1e-12 ± 0.2e-12 W.m**-2", stellar_mass = "0.58 Msun", remarks = "100 % “odd”_$x$" },
+  { name = "Drumlin 30", distance = "446 +21 -17 pc" },
+}
+local array = { wavelength = "1.65 um", projected_baseline = "92 m" }
+
+local reports = 0
+local function report_of(fields, options)
+  local study = quietly { title = fields.title or "Rims & gaps", targets = fields.targets or stars, given = fields.given or array, ask = fields.ask or { "rim_size_angle", "rim_resolved_by_array" },
+    variants = fields.variants, derive = fields.derive }
+  reports = reports + 1
+  local name = "report_" .. reports
+  return name, study:report(folder .. "/" .. name, options), study
+end
+
+local function has(text, words) t.equal(text:find(words, 1, true) ~= nil, true, ("%q in:\n%s"):format(words, text)) end
+local function lacks(text, words) t.equal(text:find(words, 1, true), nil, words) end
+
+t.test("the folder: all files, the manifest last, and a word of what was written", function()
+  local name, written = report_of {}
+  for _, file in ipairs { "index.html", "table.csv", "table.md", "table.tex", "table.fits", "feasibility.txt", "feasibility.tex", "derivations.tex", "references.bib", "report.tex", "manifest.txt" } do
+    t.equal(read(name .. "/" .. file) ~= nil, true, file)
+  end
+  t.equal(written.files[#written.files], "manifest.txt")
+  t.equal(written.files[#written.files - 1], "index.html")
+  t.equal(#written.missing, 0)
+  has(tostring(written), "report in " .. folder .. "/" .. name .. ": 11 files")
+end)
+
+t.test("the same bytes again; the date of SOURCE_DATE_EPOCH or today's", function()
+  local first, second = report_of {}, (report_of {})
+  for _, file in ipairs { "index.html", "table.fits", "manifest.txt", "derivations.tex", "feasibility.txt" } do t.equal(read(first .. "/" .. file), read(second .. "/" .. file), file) end
+  has(read(first .. "/manifest.txt"), "# date: " .. os.date "!%Y-%m-%d")
+end)
+
+t.test("no path, no thread count, no time of the run in any file", function()
+  local name, written = report_of {}
+  for _, file in ipairs(written.files) do
+    local content = read(name .. "/" .. file)
+    for _, trace in ipairs { folder, "/home/", "/tmp/", "thread", os.date "%H:%M" } do lacks(content, trace) end
+  end
+end)
+
+t.test("a folder with files is refused, and taken with force", function()
+  local name, _, study = report_of {}
+  t.raises(function() study:report(folder .. "/" .. name) end, "exists and is not empty; s:report%(.*{force = true}%)")
+  study:report(folder .. "/" .. name, { force = true })
+  t.raises(function() study:report(7) end, "report wants a folder's name")
+  t.raises(function() study:report(folder .. "/no/such") end, "cannot make the folder .*: No such file or directory")
+end)
+
+t.test("Markdown: one line a target, special characters as they are", function()
+  local name = report_of {}
+  local lines = {}
+  for line in read(name .. "/table.md"):gmatch "[^\n]+" do if line:find "^| " then lines[#lines + 1] = line end end
+  t.equal(#lines, 2 + #stars)
+  has(lines[4], "| Tarn \\<12\\> & co |")
+  for _, line in ipairs(lines) do t.equal(select(2, line:gsub(" |", "")), 4, line) end
+end)
+
+t.test("units in the header of the CSV are VOUnits, and the numbers are in them", function()
+  local name, _, study = report_of { ask = { "stellar_luminosity", "planet_mass" }, given = { planet_mass = "2 ± 0.5 Mjup" } }
+  local header, first = read(name .. "/table.csv"):match "^([^\n]*)\n([^\n]*)\n"
+  has(header, "stellar_luminosity [solLum],stellar_luminosity upper error [solLum]")
+  has(header, "planet_mass [solMass]")
+  local fields = {}
+  for field in (first .. ","):gmatch "([^,]*)," do fields[#fields + 1] = field end
+  -- Jupiter's mass is 1/1047.35 of the Sun's (IAU 2009 system of constants, Luzum et al. 2011, Celest. Mech. Dyn. Astr. 110, 293, from memory)
+  t.close(tonumber(fields[#fields - 2]), study.rows[1].cells[2].value / 1047.35, 5e-3)
+end)
+
+t.test("the page escapes what targets are called, and has derivations for the target asked for", function()
+  local name = report_of { derive = "Tarn <12> & co" }
+  local page = read(name .. "/index.html")
+  has(page, "Tarn &lt;12&gt; &amp; co")
+  lacks(page, "Tarn <12>")
+  has(page, "The chains of relations for Tarn &lt;12&gt; &amp; co")
+  has(page, "<math xmlns=")
+  has(read(name .. "/derivations.tex"), "\\section*{Derivations for Tarn $<$12$>$ \\& co}")
+  t.raises(function() report_of { derive = "Tarn 13" } end, 'derive: there is no target "Tarn 13"')
+end)
+
+t.test("equations with numbers put in: products of numbers have a sign between them", function()
+  local name = report_of { derive = "Marrow 3" }
+  local page, tex = read(name .. "/index.html"), read(name .. "/derivations.tex")
+  has(page, "<mn>2</mn><mo>·</mo><mrow><mn>92</mn>") -- 2 B of the array's resolution
+  has(tex, "2 \\cdot 92\\,\\mathrm{m}")
+end)
+
+t.test("BibTeX has exactly what is cited, each author apart", function()
+  local name = report_of {}
+  local bib, cited = read(name .. "/references.bib"), {}
+  for _, file in ipairs { "feasibility.tex", "derivations.tex" } do
+    for key in read(name .. "/" .. file):gsub("\\cite%b[]", "\\cite"):gmatch "\\cite{([^}]*)}" do cited[key] = true end
+  end
+  local listed = 0
+  for key in bib:gmatch "@%a+{([^,]*)," do
+    listed = listed + 1
+    t.equal(cited[key], true, key)
+    cited[key] = nil
+  end
+  t.equal(next(cited), nil)
+  t.equal(listed > 0, true)
+  has(bib, "@article{monnier_millan_gabet_2002,\n  author    = {Monnier, J. D. and Millan-Gabet, R.},\n  journal   = {ApJ},\n  year      = {2002},\n  volume    = {579},\n  pages     = {694},\n}")
+end)
+
+t.test("the draft: one target, several, all, none; verdicts with recipes and assumptions, and none without", function()
+  local one = read(report_of { targets = { stars[1] } } .. "/feasibility.txt"):gsub("\n", " ")
+  has(one, "Draft, to be edited")
+  has(one, "The target is Marrow 3.")
+  t.equal(one:find "The rim is resolved by the array in [%d.]+ %% of the draws%." ~= nil, true, one)
+  has(one, "Over the recipes: with the array resolution by fringe instead of half fringe, whether the rim is resolved by the array changes for Marrow 3, to no")
+  has(one, "sublimation radius by grey grains after Monnier & Millan-Gabet 2002")
+  has(one, "Assumed, as not measured for the target: sublimation temperature = 1500 K")
+  has(one, "detected is not assessed")
+  local several = read(report_of {} .. "/feasibility.txt"):gsub("\n", " ")
+  has(several, "The sample has 3 targets: Marrow 3, Tarn <12> & co and Drumlin 30.")
+  has(several, "For Drumlin 30 this could not be derived (for want of")
+  local none = read(report_of { ask = { "parallax" } } .. "/feasibility.txt"):gsub("\n", " ")
+  has(none, "No verdict was asked")
+  has(none, "All of these numbers follow by definition from what is given.")
+  lacks(none, "is resolved by")
+end)
+
+t.test("the draft without error bars doesn't speak of draws", function()
+  local single = { { name = "A", distance = "100 pc", rim_radius = "0.2 au" }, { name = "B", distance = "300 pc", rim_radius = "0.1 au" } }
+  local words = read(report_of { targets = single } .. "/feasibility.txt"):gsub("\n", " ")
+  has(words, "No given has an error bar")
+  has(words, "The rim is resolved by the array for A, and not for B.")
+  lacks(words, "draws for")
+end)
+
+t.test("detection: assessed for the rim alone where its significance is asked", function()
+  local given = { wavelength = "1.65 um", projected_baseline = "92 m", baseline_position_angle = "20 deg", disc_position_angle = "40 deg", inclination = "30 deg",
+    stellar_flux_fraction = 0.4, halo_flux_fraction = 0, visibility_error = 0.02 }
+  local words = read(report_of { targets = { stars[1] }, given = given, ask = { "rim_resolved_by_array", "rim_drop_significance" } } .. "/feasibility.txt"):gsub("\n", " ")
+  has(words, "Detection is assessed for the rim alone")
+end)
+
+t.test("a user's own recipe is cited in its own words", function()
+  lacuna.relation { gives = "rim_height_ratio", by = "thumb", from = { "stellar_mass" }, function(mass) return 0.1 * mass / lacuna.Msun end, source = "A & B, private note (2031)",
+    equation = "[rim_height_ratio] = 0.1 [stellar_mass]", supposes = "a rule of thumb" }
+  local name = report_of { targets = { stars[1] }, ask = { "rim_height_ratio" } }
+  has(read(name .. "/references.bib"), "@misc{a_b_private_note_2031,")
+  has(read(name .. "/derivations.tex"), "\\cite{a_b_private_note_2031}")
+end)
+
+t.test("many targets, in the draft and in tables that fit on pages", function()
+  local many = {}
+  for i = 1, 120 do many[i] = { name = "Star " .. i, distance = 50 + i .. " pc", rim_radius = "0.1 au" } end
+  local name = report_of { targets = many, ask = { "rim_resolved_by_array" } }
+  has(read(name .. "/feasibility.txt"), "and 108 others")
+  t.equal(select(2, read(name .. "/table.tex"):gsub("\\begin{table%*}", "")), 3)
+end)
+
+os.execute("rm -r " .. folder)
+t.finish()
