@@ -82,20 +82,25 @@ local function typed(name, value)
   return ("%s = %s{%s}"):format(name, name, table.concat(fields, ", "))
 end
 
+-- Objects made once, as dust takes its time: by their fields.
+local made = {}
+local function object_of(name, fields)
+  made[fields] = made[fields] or core.part("lacuna." .. name)[name](fields)
+  return made[fields]
+end
+
 -- An example that asks for a name: line, as typed at the prompt, and answer(), what the prompt prints.
 local function example_from(name, givens)
-  local parts, values = {}, {}
+  local parts = {}
   for _, given in ipairs(core.names()) do
-    local value = givens[given]
-    if value then
-      parts[#parts + 1] = typed(given, value)
-      values[given] = type(value) == "table" and core.part("lacuna." .. given)[given](value) or value
-    end
+    if givens[given] then parts[#parts + 1] = typed(given, givens[given]) end
   end
-  return {
-    line = ("case{%s}.%s"):format(table.concat(parts, ", "), name),
-    answer = function() return core.part "lacuna.show".show(case.new(values)[name]) end,
-  }
+  local function answer()
+    local values = {}
+    for given, value in pairs(givens) do values[given] = type(value) == "table" and object_of(given, value) or value end
+    return core.part "lacuna.show".show(case.new(values)[name])
+  end
+  return { line = ("case{%s}.%s"):format(table.concat(parts, ", "), name), answer = answer }
 end
 
 -- An example that asks for what a recipe gives, from these givens and what else it starts from.
