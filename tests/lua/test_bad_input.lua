@@ -115,7 +115,7 @@ t.test("any nonsense at any door is an error, not a crash", function()
   local count = 24
   local doors = { lac.case, lac.quantity, lac.relation, lac.mean, lac.median, lac.interval, lac.quantile, lac.chance, lac.undefined, lac.above, lac.both,
     lac.sqrt, lac.sin, lac.along, lac.sweep, lac.sweep.log, lac.spread.normal, lac.spread.samples, lac.spread.log_normal, lac.help, lac.recipes, lac.rim_radius,
-    lac.least, c.with, c.using, c.why, c.missing, c.check, c.solve, (5 * lac.au).as, (5 * lac.au).value, (5 * lac.au).at, (5 * lac.au).axes, lac.show }
+    lac.least, c.with, c.using, c.why, c.missing, c.check, c.solve, c.sensitivity, lac.compare, (5 * lac.au).as, (5 * lac.au).value, (5 * lac.au).at, (5 * lac.au).axes, lac.show }
   local binary = { function(a, b) return a + b end, function(a, b) return a * b end, function(a, b) return a ^ b end, function(a, b) return a < b end,
     function(a, b) return a == b end, function(a, b) return a .. b end, function(a, b) return a[b] end, function(a, b) return c[a] end }
   for _, door in ipairs(binary) do doors[#doors + 1] = door end
