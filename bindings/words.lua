@@ -9,7 +9,8 @@
 --   forms     how it is written, a text for each way
 --   does      what it does; the first sentence is its meaning in one line
 --   arguments list of { what, meaning with unit }; result; errors: texts
---   examples  lines as typed at the prompt, or lists of such lines; each stands alone. answers: what the prompt prints for each
+--   examples  lines as typed at the prompt, or lists of such lines; each stands alone (an empty list where one would want the prompt itself)
+--   answers   what the prompt prints for each example
 --   built_in  of kinds with built-in objects: a function that returns lines about the one of a name (nil where there is none), or about all
 --   see       names of other words
 local core = ...

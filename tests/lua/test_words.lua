@@ -22,6 +22,7 @@ end
 -- Rewriting -----------------------------------------------------------------------------------------------------------------------
 
 local function written(record)
+  if #record.examples == 0 then return "{}" end
   local texts = {}
   for i, example in ipairs(record.examples) do texts[i] = ("%q"):format(answer_of(example)):gsub("\\\n", "\\n") end
   return "{ " .. table.concat(texts, ", ") .. " }"
@@ -130,7 +131,7 @@ local function defects_of(record, seen)
   seen[name] = true
   want(#record.forms > 0, "no forms")
   want(#words.one_line(name) <= 95, "its first sentence is long: " .. words.one_line(name))
-  want(record.examples and #record.examples > 0, "no example")
+  want(record.examples, "no examples; an empty list where they would want the prompt or leave files")
   want(record.result, "no result")
   local takes_something = table.concat(record.forms, "\n"):find '[({"][^)}]'
   want(not takes_something or record.arguments, "no arguments")
