@@ -27,7 +27,7 @@ lists.forms_of = forms_of
 -- The first sentence that help says of a word.
 local function one_line(word)
   local about = words.about[word]
-  return about and about[2] and match(about[2], "^%s*(.-)%.?$") or ""
+  return about and about[2] and match(about[2]:gsub("%. %u.*$", "", 1), "^%s*(.-)%.?$") or ""
 end
 
 -- What help says of a field of the table that a word takes.

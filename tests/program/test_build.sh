@@ -20,6 +20,7 @@ touch bindings/program.h
 try compiled
 want "a changed header rebuilds what uses it" 0 "bindings/interrupt.c
 bindings/program.c
+bindings/prompt.c
 bindings/repl.c" ""
 make -t >/dev/null
 
