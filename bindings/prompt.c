@@ -81,13 +81,14 @@ reply prompt_read_line(const char *prompt, const char *earlier, char **line) {
   rl_callback_handler_install(prompt, take_line);
   while (!finished) {
     struct pollfd input = {.fd = STDIN_FILENO, .events = POLLIN};
-    int ready = ppoll(&input, 1, NULL, &open);
+    const int ready = ppoll(&input, 1, NULL, &open);
+    const bool failed = ready < 0 && errno != EINTR;
     if (ready > 0) let_interruption_in(&open);
     if (program_was_interrupted()) return cancel_line(), CANCELLED;
     if (continued) take_terminal_back();
     if (resized) take_size();
     if (ready > 0) rl_callback_read_char();
-    else if (ready < 0 && errno != EINTR) return rl_callback_handler_remove(), END;
+    else if (failed) return rl_callback_handler_remove(), END;
   }
   *line = typed;
   return typed ? LINE : END;

@@ -12,7 +12,7 @@ import time
 
 LACUNA = os.environ["LACUNA"]
 PATIENCE = 30  # seconds for an answer; sanitised builds are slow
-CONTROL_C, CONTROL_D, UP, LEFT, TAB, META_ENTER = "\x03", "\x04", "\x1b[A", "\x1b[D", "\t", "\x1b\r"
+CONTROL_C, CONTROL_D, CONTROL_Z, UP, LEFT, TAB, META_ENTER = "\x03", "\x04", "\x1a", "\x1b[A", "\x1b[D", "\t", "\x1b\r"
 PASTE_BEGINS, PASTE_ENDS = "\x1b[200~", "\x1b[201~"
 PROMPT = re.compile(r"(^|\n)> $")
 results = 0
@@ -31,15 +31,16 @@ def plan():
 
 
 class Session:
-    """One program on a terminal of its own. screen: what was seen since the last typing, without terminal control; raw: with it, all of it."""
+    """One program, or another command, on a terminal of its own. screen: what was seen since the last typing, without terminal control; raw: with it, all of it."""
 
-    def __init__(self, state_folder, *options, rows=24, columns=80, **settings):
+    def __init__(self, state_folder, *options, rows=24, columns=80, command=None, **settings):
         environment = {**os.environ, "XDG_STATE_HOME": state_folder, "XDG_CONFIG_HOME": state_folder, "TERM": "xterm", "INPUTRC": "/dev/null", **settings}
         self.pid, self.terminal = pty.fork()
         if self.pid == 0:
             self.terminal = 0
             self.resize(rows, columns)
-            os.execve(LACUNA, [LACUNA, *options], environment)
+            command = command or [LACUNA, *options]
+            os.execvpe(command[0], command, environment)
         self.screen = self.raw = ""
 
     def resize(self, rows, columns):

@@ -21,6 +21,7 @@ try compiled
 want "a changed header rebuilds what uses it" 0 "bindings/input.c
 bindings/interrupt.c
 bindings/program.c
+bindings/prompt.c
 bindings/repl.c" ""
 make -t >/dev/null
 

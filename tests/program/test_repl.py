@@ -7,7 +7,7 @@ import stat
 import subprocess
 import tempfile
 
-from terminal import CONTROL_C, LACUNA, LEFT, META_ENTER, PASTE_BEGINS, PASTE_ENDS, PROMPT, TAB, UP, Session, check, plan
+from terminal import CONTROL_C, CONTROL_Z, LACUNA, LEFT, META_ENTER, PASTE_BEGINS, PASTE_ENDS, PROMPT, TAB, UP, Session, check, plan
 
 MANY_DRAWS = "--draws=10000000000"  # a minute of work
 INVENTED_STAR = 'c = case{distance = "150 pc", bolometric_flux = "2e-11 W.m**-2"}'
@@ -172,6 +172,20 @@ def resize(session):
     session.settle()
 
 
+def stop_and_go_on(folder):
+    """Ctrl-Z and fg, in a shell with job control."""
+    session = Session(folder, command=["sh", "-mc", '"$LACUNA"; echo stopped; fg'])
+    session.wait(PROMPT)
+    session.type("40 +")
+    session.wait(r"40 \+$")
+    session.type(CONTROL_Z)
+    check(session.wait("stopped"), "Ctrl-Z stops the program", session.screen)
+    session.settle()
+    session.type(" 2\r")
+    check(session.wait(r"\n42\n> $"), "and after fg the line goes on", session.screen)
+    session.leave()
+
+
 def remember(folder):
     history = os.path.join(folder, "lacuna", "history")
     check(stat.S_IMODE(os.stat(history).st_mode) == 0o600, "the history is the user's alone")
@@ -255,6 +269,7 @@ try:
     resize(session)
     check(session.leave() == 0, "Ctrl-D leaves")
     remember(folder)
+    stop_and_go_on(folder)
     without_terminal(folder)
     plain_terminals(folder)
 finally:
