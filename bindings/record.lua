@@ -301,10 +301,21 @@ end
 
 -- Records ---------------------------------------------------------------------------------------------------------------------------
 
+-- The sides of a verdict's conditions are read by the verdict, by its reasons and by what other recipes make of it: kept first.
+local function keep_sides(self, name)
+  local number = core.row_of(self, name)
+  for _, condition in ipairs(number and core.row(number).conditions or {}) do
+    local c = text.parse_condition(condition)
+    keep(core.raw(self, c.left))
+    keep(core.raw(self, c.right))
+  end
+end
+
 -- `hidden` columns are for figures: they have a value and no reasons.
 local function fill(plan, column, cases, made)
   local number = column.group_number
   local self = cases[number]
+  if column.verdict then keep_sides(self, column.name) end
   local cell = cell_of(self, column.name)
   if cell.missing or column.hidden then return cell end
   local steps = steps_of(plan, self, number, column.name)
