@@ -61,4 +61,10 @@ end
 
 function glossary.words() return core.part "lacuna.words".list() end
 
+-- The program's options; a module in another host has none.
+function glossary.options()
+  local command = core.part "lacuna.command"
+  return command.options and command.options() or {}
+end
+
 return { glossary = glossary }

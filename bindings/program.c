@@ -117,12 +117,26 @@ static const char *base_name(const char *path) {
   return slash ? slash + 1 : path;
 }
 
+/* options(): the table of options, for documents: a list of {name =, argument = or nil, meaning =}. */
+static int list_options(lua_State *L) {
+  lua_newtable(L);
+  for (const option *one = options; one->name; one++) {
+    lua_createtable(L, 0, 3);
+    lua_pushstring(L, one->name), lua_setfield(L, -2, "name");
+    lua_pushstring(L, one->argument), lua_setfield(L, -2, "argument");
+    lua_pushstring(L, one->meaning), lua_setfield(L, -2, "meaning");
+    lua_rawseti(L, -2, one - options + 1);
+  }
+  return 1;
+}
+
 /* Fills it, from the line at place 1. Raises where an option isn't right. */
 static int fill_command(lua_State *L) {
   const command_line *line = lua_touserdata(L, 1);
   lac_push_part(L, "lacuna.command");
   program_open_workers(L);
   lua_pushboolean(L, true), lua_setfield(L, -2, "program");
+  lua_pushcfunction(L, list_options), lua_setfield(L, -2, "options");
   lua_pushliteral(L, LAC_VERSION), lua_setfield(L, -2, "version");
   lua_createtable(L, 0, 2);
   if (!line->code && line->count && strcmp(line->rest[0], "-") != 0) {
