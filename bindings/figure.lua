@@ -155,7 +155,7 @@ end
 
 local function usual_title(f, d)
   local of = f.target_name and " of " .. f.target_name or ""
-  local what = (d.y.words_of_share or d.y.words or "curves"):gsub("^share of draws: ", "")
+  local what = d.y.words
   if f.kind_drawn == "map" then return ("%s over %s and %s%s"):format(d.z.words, d.x.words, d.y.words, of) end
   if f.kind == "spectrum" then return "spectral energy distribution" .. of end
   return ("%s %s %s%s"):format(what, f.kind_drawn == "plane" and "against" or "along", d.x.words, of)

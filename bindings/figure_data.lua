@@ -1,10 +1,10 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- What a figure shows, as plain numbers in the glossary's units: from a case or a study, nothing of how it is drawn.
 --
---   axis     { name, words, unit (VOUnits), unit_text, factor, verdict, log }
+--   axis     { name, words, unit (VOUnits), unit_text, factor, verdict (nil, "share" of the draws, or "yes or no" where there are none), log }
 --   curve    { x, y, values = {x ...}, series = { { name, label, values, low68, high68, low95, high95 } }, levels = { { name, values, constant } }, marks }
 --   map      { x, y, z, x_values, y_values, values = { a list of z along x for each y }, contours = { { level, dashed, lines } } }
---   plane    { x, y, points = { { name, x, x_upper, x_lower, y, y_upper, y_lower, share } }, lines = { { label, x = {...}, y = {...} } } }
+--   plane    { x, y, points = { { name, x, x_upper, x_lower, y, y_upper, y_lower, share } }, lines = { { label, words, x = {...}, y = {...} } } }
 local core = ...
 local case = core.part "lacuna.case"
 local text = core.part "lacuna.text"
@@ -27,8 +27,7 @@ function data.axis(name)
   local _, _, plain = core.unit_facts(entry.unit)
   local verdict = entry.kind == "verdict"
   return {
-    name = name, words = words_of(name), unit = entry.unit, unit_text = entry.unit == "1" and "" or plain, factor = entry.factor, verdict = verdict,
-    words_of_share = verdict and "share of draws: " .. words_of(name) or nil,
+    name = name, words = words_of(name), unit = entry.unit, unit_text = entry.unit == "1" and "" or plain, factor = entry.factor, verdict = verdict and "share" or nil,
   }
 end
 
@@ -115,6 +114,14 @@ local function draws_of(quantity)
   end
 end
 
+-- The share of a quantity's elements that are undefined: quantiles pass them over, so that it has to be said.
+local function undefined_share(quantity, draws)
+  local count, sum = draws and core.undefined(quantity) or quantity, 0
+  local elements = core.elements(count)
+  for _, value in ipairs(elements) do sum = sum + (draws and value / draws or value ~= value and 1 or 0) end
+  return sum / #elements
+end
+
 -- A quantity of a case, its elements kept where there is room, since quantiles are found in several passes.
 local function kept(self, name)
   local quantity = self[name]
@@ -132,8 +139,8 @@ local function series_of(self, name, axis, sweep, order)
   end
   local lists = {}
   for i, part in ipairs(draws and { core.five_of(quantity) } or { quantity }) do lists[i] = along(part, axis.factor, sweep, order) end
-  if not draws then return { name = name, values = lists[1] } end
-  return { name = name, draws = draws, low95 = lists[1], low68 = lists[2], values = lists[3], high68 = lists[4], high95 = lists[5] }
+  if not draws then return { name = name, values = lists[1], undefined = undefined_share(quantity) } end
+  return { name = name, draws = draws, undefined = undefined_share(quantity, draws), low95 = lists[1], low68 = lists[2], values = lists[3], high68 = lists[4], high95 = lists[5] }
 end
 
 local verdicts -- all names of verdicts, found once
@@ -221,8 +228,7 @@ local function shared_axis(names)
     if got ~= wanted or other.verdict ~= axis.verdict then complain("show: %s and %s can't stand on one axis", names[1], names[i]) end
   end
   local shared = common:gsub(" ", "_")
-  axis.name, axis.words = core.find(shared) == shared and shared or nil, common ~= "" and common or nil
-  axis.words_of_share = axis.verdict and "share of draws" or nil
+  axis.name, axis.words = core.find(shared) == shared and shared or nil, common ~= "" and common or (core.dimension(core.unit(axis.unit)))
   return axis, rest
 end
 
@@ -264,6 +270,7 @@ function data.curve(f, sweep)
       table.move(s.values, 1, #s.values, #all + 1, all)
     end
   end
+  if y.verdict and not series[1].draws then y.verdict = "yes or no" end
   if not data.range(all) then complain("%s is undefined all along %s", f.show[1], sweep.name) end
   x.log, y.log = is_log(f.log, "x", in_equal_ratios(values)), not y.verdict and is_log(f.log, "y", is_wide(all))
   if f.bands and x.name ~= "wavelength" then complain("bands are marked along wavelength; this goes along %s", sweep.name) end
@@ -322,8 +329,9 @@ function data.map(f, sweeps)
   local function on_grid(quantity, factor) return grid(quantity, factor, across, x_order, up, y_order) end
   local quantity = f.case[name]
   d.draws = draws_of(quantity)
+  if d.z.verdict and not d.draws then d.z.verdict = "yes or no" end
   local shown = d.draws and (d.z.verdict and core.chance(quantity) or core.median(quantity)) or quantity
-  d.values = on_grid(shown, d.z.factor)
+  d.values, d.undefined = on_grid(shown, d.z.factor), not d.z.verdict and undefined_share(quantity, d.draws) or nil
   d.z.low, d.z.high = data.range(table.unpack(d.values))
   if not d.z.low then complain("%s is undefined all over the map", name) end
   d.z.log = not d.z.verdict and d.z.low > 0 and d.z.high > WIDE * d.z.low
@@ -444,7 +452,8 @@ local function line_of(f, study, x, y, line, number)
   local _, got = core.dimension(quantity)
   if got ~= wanted then complain("line %d is of another dimension than %s", number, y.name) end
   if draws_of(quantity) then quantity = core.median(quantity) end
-  local sweeps, made = {}, { label = line.label or type(line.show) == "string" and words_of(line.show) or nil }
+  local words = type(line.show) == "string" and words_of(line.show) or nil
+  local sweeps, made = {}, { label = line.label or words, words = words }
   for _, axis in ipairs(core.axes(quantity)) do sweeps[#sweeps + 1] = axis end
   if #sweeps > 1 or sweeps[1] and sweeps[1].name ~= x.name then complain("line %d goes along %s; a line wants %s", number, sweeps[#sweeps].name, x.name) end
   if sweeps[1] then

@@ -220,7 +220,7 @@ local function add_contours(s, d)
       if not explained[dash] then
         explained[dash] = true
         local first = next(explained, next(explained)) == nil and d.verdict:gsub("_", " ") .. " in " or "" -- said once
-        local title = literal(not contour.share and d.verdict:gsub("_", " ") .. " on one side" or first .. (contour.dashed and "16 and 84 %" or "50 % of draws"))
+        local title = literal(not contour.share and "where " .. d.verdict:gsub("_", " ") .. " turns" or first .. (contour.dashed and "16 and 84 %" or "50 % of draws"))
         s:explain(title, { line = dash, colour = BLACK, width = width })
       end
     end

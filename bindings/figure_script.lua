@@ -43,7 +43,7 @@ end
 
 -- "projected baseline B (m)", in two lines where one is too long for the axis. What a share is of stands in the legend.
 local function axis_label(axis, room)
-  if axis.verdict then return { "share of draws" } end
+  if axis.verdict then return { axis.verdict == "share" and "share of draws" or "no (0), yes (1)" } end
   local unit = axis.unit_text ~= "" and "(" .. marked_unit(axis.unit_text) .. ")" or ""
   local symbol = axis.name and core.find(axis.name) and marked_symbol(axis.name) or ""
   local after = symbol .. (symbol ~= "" and unit ~= "" and " " or "") .. unit

@@ -110,6 +110,7 @@ local function course(d, s)
   local a, b = s.values[first], s.values[last]
   local verb = a < b and "rises" or a > b and "falls" or "goes"
   local low, high = core.part "lacuna.figure_data".range(s.values)
+  if low == high then return ("stays at %s from %s to %s"):format(in_words(a, d.y), with_unit(d.values[first], d.x), with_unit(d.values[last], d.x)) end
   local beyond = {}
   if high > math.max(a, b) then beyond[#beyond + 1] = "at most " .. in_words(high, d.y) end
   if low < math.min(a, b) then beyond[#beyond + 1] = "at least " .. in_words(low, d.y) end
@@ -118,8 +119,18 @@ local function course(d, s)
 end
 
 local function name_of_series(d, s)
-  local name = d.y.verdict and "the share of draws with " .. s.name:gsub("_", " ") or (s.low68 and "the median " or "the ") .. s.name:gsub("_", " ")
+  local before = d.y.verdict == "share" and "the share of draws with " or d.y.verdict and "whether " or s.low68 and "the median " or "the "
+  local name = before .. s.name:gsub("_", " ")
   return name .. (s.each and (" for %s = %s"):format(s.each.name:gsub("_", " "), s.each.value) or "")
+end
+
+-- The lines on a plane: "array resolution (200 m) and array resolution (100 m)".
+local function lines_in_words(d)
+  local names = {}
+  for i, line in ipairs(d.lines) do
+    names[i] = line.words and line.label ~= line.words and ("%s (%s)"):format(line.words, line.label) or line.label or "line " .. i
+  end
+  return #names > 0 and listed(names) or nil
 end
 
 local alternative = {}
@@ -143,7 +154,7 @@ function alternative.curve(d)
 end
 
 function alternative.map(d)
-  local said = ("Map of %s over %s from %s to %s and %s from %s to %s: from %s to %s"):format(d.z.words_of_share or d.z.words, d.x.words, with_unit(d.x_values[1], d.x),
+  local said = ("Map of %s over %s from %s to %s and %s from %s to %s: from %s to %s"):format((d.z.verdict == "share" and "the share of draws with " or "") .. d.z.words, d.x.words, with_unit(d.x_values[1], d.x),
     with_unit(d.x_values[#d.x_values], d.x), d.y.words, with_unit(d.y_values[1], d.y), with_unit(d.y_values[#d.y_values], d.y), in_words(d.z.low, d.z), in_words(d.z.high, d.z))
   local turn = d.contours[1]
   if not turn then return said .. "." end
@@ -169,11 +180,10 @@ function alternative.plane(d)
   local range = core.part "lacuna.figure_data".range
   local x_low, x_high = range(xs)
   local y_low, y_high = range(ys)
-  local lines = {}
-  for i, line in ipairs(d.lines) do lines[i] = line.label or "line " .. i end
+  local lines = lines_in_words(d)
   return ("%d target%s: %s from %s to %s, %s from %s to %s%s%s."):format(#d.points, #d.points == 1 and "" or "s", d.x.words, with_unit(x_low, d.x), with_unit(x_high, d.x), d.y.words,
     with_unit(y_low, d.y), with_unit(y_high, d.y), d.verdict and ("; %s in half of the draws or more for %d"):format(d.verdict:gsub("_", " "), resolved) or "",
-    #lines > 0 and "; with lines of " .. listed(lines) or "")
+    lines and "; with lines of " .. lines or "")
 end
 
 -- f:alternative(): one sentence, from the data.
@@ -184,7 +194,7 @@ function words.alternative(figure) return alternative[figure.kind](figure.data) 
 local function symbol_of(axis) return axis.name and not axis.verdict and core.find(axis.name) == axis.name and text.symbol(axis.name) or nil end
 local function named(axis)
   local symbol = symbol_of(axis)
-  return (axis.words_of_share or axis.words or "curves") .. (symbol and " " .. symbol or "")
+  return (axis.verdict == "share" and "share of draws: " or "") .. axis.words .. (symbol and " " .. symbol or "")
 end
 
 local function draws_in_words(figure) return ("%d draws, seed %d"):format(figure.data.draws, figure.seed) end
@@ -207,6 +217,10 @@ local function given_in_words(figure)
   return #parts > 0 and "Given: " .. table.concat(parts, ", ") .. "." or nil
 end
 
+local function say_undefined(add, share, of, draws)
+  if share and share > 0 then add(("%s: %s of %s undefined, and passed over"):format(of, format.percent(share), draws and "draws" or "points")) end
+end
+
 local caption = {}
 
 function caption.curve(figure, add)
@@ -219,6 +233,7 @@ function caption.curve(figure, add)
   for _, level in ipairs(d.levels) do
     add(("Dashed: %s%s"):format((level.factor ~= 1 and "half of " or "") .. (level.name and level.name:gsub("_", " ") or "the level"), level.constant and " = " .. in_words(level.constant, d.y) or ""))
   end
+  for _, s in ipairs(d.series) do say_undefined(add, s.undefined, s.name:gsub("_", " ") .. (s.each and (" for %s = %s"):format(s.each.name:gsub("_", " "), s.each.value) or ""), s.draws) end
   if #d.marks > 0 then add "Grey: spectral bands" end
 end
 
@@ -226,6 +241,7 @@ function caption.map(figure, add)
   local d = figure.data
   add(("%s over %s and %s"):format(named(d.z), named(d.x), named(d.y)))
   if d.draws then add((d.z.verdict and "Shares of " or "Medians of ") .. draws_in_words(figure)) end
+  say_undefined(add, not d.z.verdict and d.undefined, d.z.words, d.draws)
   local turn = d.contours[1]
   if turn and turn.share then add(("Solid line: %s in half of the draws; dashed: in 16 and 84 %%"):format(d.verdict:gsub("_", " ")))
   elseif turn then add(("Line: %s turns"):format(d.verdict:gsub("_", " "))) end
@@ -236,9 +252,8 @@ function caption.plane(figure, add)
   add(("%s against %s of %d target%s"):format(named(d.y), named(d.x), #d.points, #d.points == 1 and "" or "s"))
   add("Medians and central 68 % of " .. draws_in_words(figure))
   if d.verdict then add(("Filled: %s in half of the draws or more"):format(d.verdict:gsub("_", " "))) end
-  local lines = {}
-  for i, line in ipairs(d.lines) do lines[i] = line.label or "line " .. i end
-  if #lines > 0 then add("Lines: " .. listed(lines)) end
+  local lines = lines_in_words(d)
+  if lines then add("Lines: " .. lines) end
   if #d.left_out > 0 then add("Not shown, as not both can be derived: " .. listed(d.left_out)) end
 end
 
@@ -255,7 +270,7 @@ end
 
 local function plain_label(axis)
   local symbol = symbol_of(axis)
-  return format.with_unit((axis.verdict and "share of draws" or axis.words or "") .. (symbol and " " .. symbol or ""), axis.unit_text ~= "" and "[" .. axis.unit_text .. "]" or "")
+  return format.with_unit((axis.verdict == "share" and "share of draws" or axis.words) .. (symbol and " " .. symbol or ""), axis.unit_text ~= "" and "[" .. axis.unit_text .. "]" or "")
 end
 
 local picture = {}

@@ -59,7 +59,7 @@ t.test("a verdict's curve is its share", function()
     t.close(f.data.series[1].values[point], chance(star:with { projected_baseline = baseline }.rim_resolved_by_array):value(), 1e-12)
   end
   t.equal(f.data.series[1].low68, nil)
-  t.equal(f.data.y.verdict, true)
+  t.equal(f.data.y.verdict, "share")
 end)
 
 t.test("points of a sweep are drawn in rising order", function()
@@ -243,6 +243,12 @@ t.test("what is said: caption, alternative, CSV", function()
   t.close(first[6], f.data.series[1].high95[1], 1e-6)
   t.equal(figure { of = star, show = "rim_size_angle", along = { stellar_luminosity = sweep("1 Lsun", "9 Lsun", 3) }, level = false }:csv():match "^[^\n]*",
     "stellar_luminosity [Lsun],rim_size_angle [mas],rim_size_angle lower 95 % [mas],rim_size_angle lower 68 % [mas],rim_size_angle upper 68 % [mas],rim_size_angle upper 95 % [mas]")
+end)
+
+t.test("undefined draws are said in the caption", function()
+  local f = figure { of = star, show = "gap_inner_radius", along = { planet_mass = sweep { "1 Mjup", "60 Mjup" } } }
+  t.equal(f.data.series[1].values[2] ~= f.data.series[1].values[2], true, "a gap as wide as that has no inner edge")
+  t.equal(f:caption():find("Gap inner radius: 50 %% of draws undefined") ~= nil or f:caption():find("Gap inner radius: 50 %% of points undefined") ~= nil, true, f:caption())
 end)
 
 t.test("axis labels have symbol and unit from the glossary; names are no markup", function()
