@@ -307,14 +307,14 @@ local function basis_paragraph(study, cite)
     #assumed > 0 and ("Assumed, as not measured for %s: %s."):format(#study.rows == 1 and "the target" or "these targets", verdicts.list(assumed, #assumed)) or "Nothing is assumed.")
 end
 
-local function detection_paragraph(study)
+local function detection_paragraph(study, has_verdicts)
   local asked
   for number, column in ipairs(study.columns) do
     if column.name == "rim_drop_significance" and select(3, ends_of(study, number)) > 0 then asked = true end
   end
   return {
     asked and "Detection is assessed for the rim alone, by the drop of its squared visibility in standard errors; whether any other structure is detected is not assessed."
-      or "Resolved means geometrically resolved. Whether a structure is also detected is not assessed here.",
+      or (has_verdicts and "Resolved means geometrically resolved. " or "") .. "Whether a structure is also detected is not assessed here.",
     "These are estimates of feasibility; the observatory's own documents and staff decide.",
   }
 end
@@ -330,7 +330,7 @@ function feasibility.of(study, facts)
   end
   if #of_verdicts == 0 then paragraphs[#paragraphs][#paragraphs[#paragraphs] + 1] = "No verdict was asked: whether anything is resolved is left open." end
   paragraphs[#paragraphs + 1] = basis_paragraph(study, cite)
-  paragraphs[#paragraphs + 1] = detection_paragraph(study)
+  paragraphs[#paragraphs + 1] = detection_paragraph(study, #of_verdicts > 0)
   return { paragraphs = paragraphs, cited = cited, by = facts.version }
 end
 

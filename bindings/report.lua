@@ -168,7 +168,7 @@ local function write_all(out, study, facts)
   out:write("feasibility.tex", feasibility.tex(composed, cited))
   out:write("derivations.tex", document.derivations(with_notes(study, function(heading) return not below_table[heading] end), row, chains, cited))
   out:write("references.bib", cited:bibtex())
-  out:write("report.tex", document.whole(study.title or "Report of a study", drawn, facts.date))
+  out:write("report.tex", document.whole(study.title or "Report of a study", drawn, facts.date, next(cited.entries) ~= nil))
   local page = core.part "lacuna.page".of(study, { facts = facts, row = row, chains = chains, composed = composed, figures = drawn, missing = out.missing })
   out:add_present "records"
   out:write("index.html", page)
