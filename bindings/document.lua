@@ -3,12 +3,12 @@
 -- document that takes all parts in. It asks for booktabs and nothing beyond LaTeX's recommended packages.
 local core = ...
 local derivation = core.part "lacuna.derivation"
-local tables = core.part "lacuna.table"
+local table_tex = core.part "lacuna.table_tex"
 local text = core.part "lacuna.text"
 local verdicts = core.part "lacuna.verdicts"
 
 local document = {}
-local escaped = tables.escaped_tex
+local escaped = table_tex.escaped
 
 local function words(name) return escaped(verdicts.words_of(name)) end
 

@@ -12,6 +12,7 @@ local bibliography = core.part "lacuna.bibliography"
 local format = core.part "lacuna.format"
 local notes = core.part "lacuna.notes"
 local tables = core.part "lacuna.table"
+local table_tex = core.part "lacuna.table_tex"
 local text = core.part "lacuna.text"
 local verdicts = core.part "lacuna.verdicts"
 
@@ -358,11 +359,11 @@ end
 function feasibility.tex(composed, cited)
   local paragraphs = { "% " .. DRAFT, "\\emph{" .. DRAFT .. ".}" }
   for _, sentences in ipairs(composed.paragraphs) do
-    local words = tables.escaped_tex(table.concat(sentences, " "))
+    local words = table_tex.escaped(table.concat(sentences, " "))
     paragraphs[#paragraphs + 1] = words:gsub("\1(%d+)\2", function(number)
       local row = composed.cited[tonumber(number)]
       local key = cited:key(row)
-      return key and "\\cite{" .. key .. "}" or tables.escaped_tex(text.source(row))
+      return key and "\\cite{" .. key .. "}" or table_tex.escaped(text.source(row))
     end)
   end
   return table.concat(paragraphs, "\n\n") .. "\n"

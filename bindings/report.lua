@@ -13,7 +13,8 @@ local derivation = core.part "lacuna.derivation"
 local document = core.part "lacuna.document"
 local feasibility = core.part "lacuna.feasibility"
 local manifest = core.part "lacuna.manifest"
-local tables = core.part "lacuna.table"
+local table_files = core.part "lacuna.table_files"
+local table_tex = core.part "lacuna.table_tex"
 
 local report = {}
 
@@ -106,9 +107,9 @@ local function with_notes(study, wanted)
 end
 
 local function write_tables(out, study, facts)
-  out:write("table.csv", tables.csv(study))
-  out:write("table.md", tables.markdown(study))
-  out:write("table.tex", tables.latex(with_notes(study, function(heading) return below_table[heading] end)))
+  out:write("table.csv", table_files.csv(study))
+  out:write("table.md", table_files.markdown(study))
+  out:write("table.tex", table_tex.latex(with_notes(study, function(heading) return below_table[heading] end)))
   local bytes, trouble = core.part "lacuna.fits_table".of(study, facts)
   facts.has_fits = bytes ~= nil
   if bytes then out:write("table.fits", bytes) else out.missing[#out.missing + 1] = "table.fits: " .. trouble end
