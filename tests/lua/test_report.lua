@@ -161,6 +161,14 @@ t.test("the draft without error bars doesn't speak of draws", function()
   lacks(words, "draws for")
 end)
 
+t.test("the draft says what is not checked, extrapolated or undefined", function()
+  local odd = { { name = "A", distance = lacuna.spread.normal("100 pc", "60 pc"), stellar_luminosity = "0.2 Lsun" }, { name = "B", distance = "100 pc", stellar_luminosity = "20 Lsun" } }
+  local words = read(report_of { targets = odd } .. "/feasibility.txt"):gsub("\n", " ")
+  has(words, "Not checked for the answer to whether the rim is resolved by the array: size within the recoverable scale: shortest baseline not given")
+  has(words, "The recipe grey grains holds for heating luminosity from 1 to 1000 Lsun (outside for A)")
+  has(words, "Some draws are undefined for A; they count as draws that say no.")
+end)
+
 t.test("detection: assessed for the rim alone where its significance is asked", function()
   local given = { wavelength = "1.65 um", projected_baseline = "92 m", baseline_position_angle = "20 deg", disc_position_angle = "40 deg", inclination = "30 deg",
     stellar_flux_fraction = 0.4, halo_flux_fraction = 0, visibility_error = 0.02 }
