@@ -6,7 +6,7 @@
 --   cited:bibtex()        the entries, by key
 --   bibliography.short(row)    "Monnier & Millan-Gabet 2002", for text; nil for what has no source
 local core = ...
-local tables = core.part "lacuna.table"
+local table_tex = core.part "lacuna.table_tex"
 
 local bibliography = {}
 local methods = {}
@@ -93,7 +93,7 @@ end
 local function entry_bibtex(key, entry)
   local lines = {}
   local function field(name, text)
-    if text then lines[#lines + 1] = ("  %-9s = {%s},"):format(name, tables.escaped_tex(text)) end
+    if text then lines[#lines + 1] = ("  %-9s = {%s},"):format(name, table_tex.escaped(text)) end
   end
   if entry.words then
     field("key", key)

@@ -3,12 +3,12 @@
 -- document that takes all parts in. It asks for booktabs and nothing beyond LaTeX's recommended packages.
 local core = ...
 local derivation = core.part "lacuna.derivation"
-local tables = core.part "lacuna.table"
+local table_tex = core.part "lacuna.table_tex"
 local text = core.part "lacuna.text"
 local verdicts = core.part "lacuna.verdicts"
 
 local document = {}
-local escaped = tables.escaped_tex
+local escaped = table_tex.escaped
 
 local function words(name) return escaped(verdicts.words_of(name)) end
 
@@ -146,7 +146,7 @@ function document.derivations(study, row, chains, cited)
 end
 
 -- The document that takes the parts in.
-function document.whole(title, figures, date)
+function document.whole(title, figures, date, has_sources)
   local lines = {
     "\\documentclass[10pt,a4paper]{article}", "\\usepackage[utf8]{inputenc}", "\\usepackage{booktabs}",
   }
@@ -160,7 +160,9 @@ function document.whole(title, figures, date)
   for _, figure in ipairs(figures) do
     add("\\begin{figure}\n\\centering\\includegraphics{" .. figure.file .. "}\n\\caption{" .. escaped(figure.caption) .. "}\n\\end{figure}")
   end
-  add "\\input{derivations}\n\\bibliographystyle{unsrt}\n\\bibliography{references}\n\\end{document}"
+  add "\\input{derivations}"
+  if has_sources then add "\\bibliographystyle{unsrt}\n\\bibliography{references}" end
+  add "\\end{document}"
   return table.concat(lines, "\n") .. "\n"
 end
 

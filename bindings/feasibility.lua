@@ -12,6 +12,7 @@ local bibliography = core.part "lacuna.bibliography"
 local format = core.part "lacuna.format"
 local notes = core.part "lacuna.notes"
 local tables = core.part "lacuna.table"
+local table_tex = core.part "lacuna.table_tex"
 local text = core.part "lacuna.text"
 local verdicts = core.part "lacuna.verdicts"
 
@@ -296,6 +297,54 @@ local function assumption_parts(used, cite)
   return parts
 end
 
+-- What a verdict could not look at, for want of a given: each once.
+local function unchecked_sentence(study, used)
+  local parts, seen = {}, {}
+  for _, column in ipairs(study.columns) do
+    for _, by in ipairs(column.verdict and used.values[column.name] and used.values[column.name].keys or {}) do
+      local row = used.values[column.name].values[by].relation
+      local words = row and row.unchecked and verdicts.in_words(row.unchecked)
+      if words and not seen[words] then
+        seen[words] = true
+        parts[#parts + 1] = ("whether %s: %s"):format(verdicts.sentence_of(column), words)
+      end
+    end
+  end
+  if #parts > 0 then return "Not checked for the answer to " .. table.concat(parts, "; nor for that to ") .. "." end
+end
+
+-- Targets by what is to be said of them, in the order of the rows: { words, names }.
+local function by_words(study, words_of_cell)
+  local list = {}
+  for _, row in ipairs(study.rows) do
+    local seen = {}
+    for _, cell in ipairs(row.cells) do
+      for _, words in ipairs(words_of_cell(cell)) do
+        if not list[words] then
+          list[words] = { words = words, names = {} }
+          list[#list + 1] = list[words]
+        end
+        if not seen[words] then table.insert(list[words].names, row.name) end
+        seen[words] = true
+      end
+    end
+  end
+  return list
+end
+
+local function validity_sentence(study)
+  local parts = {}
+  for i, one in ipairs(by_words(study, function(cell) return cell.outside or {} end)) do
+    parts[i] = ("the recipe %s (outside for %s)"):format(verdicts.in_words(one.words), verdicts.list(one.names))
+  end
+  if #parts > 0 then return capital(table.concat(parts, "; ")) .. ": there the numbers are extrapolated." end
+end
+
+local function undefined_sentence(study)
+  local found = by_words(study, function(cell) return cell.undefined and cell.undefined > 0 and { "undefined" } or {} end)[1]
+  if found then return ("Some draws are undefined for %s; they count as draws that say no."):format(verdicts.list(found.names)) end
+end
+
 local function basis_paragraph(study, cite)
   local used = notes.relations_used(study)
   local published, practice = recipe_parts(used, cite)
@@ -304,17 +353,18 @@ local function basis_paragraph(study, cite)
     #published > 0 and ("These numbers rest on the %s %s."):format(plural(#published, "recipe"), table.concat(published, "; ")),
     #practice > 0 and ("Common practice, without a published source, %s %s."):format(plural(#practice, "is", "are"), table.concat(practice, "; ")),
     #published + #practice == 0 and "All of these numbers follow by definition from what is given." or "What each supposes stands with the derivations.",
-    #assumed > 0 and ("Assumed, as not measured for %s: %s."):format(#study.rows == 1 and "the target" or "these targets", verdicts.list(assumed, #assumed)) or "Nothing is assumed.")
+    #assumed > 0 and ("Assumed, as not measured for %s: %s."):format(#study.rows == 1 and "the target" or "these targets", verdicts.list(assumed, #assumed)) or "Nothing is assumed.",
+    validity_sentence(study), undefined_sentence(study), unchecked_sentence(study, used))
 end
 
-local function detection_paragraph(study)
+local function detection_paragraph(study, has_verdicts)
   local asked
   for number, column in ipairs(study.columns) do
     if column.name == "rim_drop_significance" and select(3, ends_of(study, number)) > 0 then asked = true end
   end
   return {
     asked and "Detection is assessed for the rim alone, by the drop of its squared visibility in standard errors; whether any other structure is detected is not assessed."
-      or "Resolved means geometrically resolved. Whether a structure is also detected is not assessed here.",
+      or (has_verdicts and "Resolved means geometrically resolved. " or "") .. "Whether a structure is also detected is not assessed here.",
     "These are estimates of feasibility; the observatory's own documents and staff decide.",
   }
 end
@@ -330,7 +380,7 @@ function feasibility.of(study, facts)
   end
   if #of_verdicts == 0 then paragraphs[#paragraphs][#paragraphs[#paragraphs] + 1] = "No verdict was asked: whether anything is resolved is left open." end
   paragraphs[#paragraphs + 1] = basis_paragraph(study, cite)
-  paragraphs[#paragraphs + 1] = detection_paragraph(study)
+  paragraphs[#paragraphs + 1] = detection_paragraph(study, #of_verdicts > 0)
   return { paragraphs = paragraphs, cited = cited, by = facts.version }
 end
 
@@ -358,11 +408,11 @@ end
 function feasibility.tex(composed, cited)
   local paragraphs = { "% " .. DRAFT, "\\emph{" .. DRAFT .. ".}" }
   for _, sentences in ipairs(composed.paragraphs) do
-    local words = tables.escaped_tex(table.concat(sentences, " "))
+    local words = table_tex.escaped(table.concat(sentences, " "))
     paragraphs[#paragraphs + 1] = words:gsub("\1(%d+)\2", function(number)
       local row = composed.cited[tonumber(number)]
       local key = cited:key(row)
-      return key and "\\cite{" .. key .. "}" or tables.escaped_tex(text.source(row))
+      return key and "\\cite{" .. key .. "}" or table_tex.escaped(text.source(row))
     end)
   end
   return table.concat(paragraphs, "\n\n") .. "\n"

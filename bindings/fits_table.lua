@@ -1,7 +1,7 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- A study's table as a FITS binary table: the columns of its CSV with units and descriptions, NaN for what is undefined.
 local core = ...
-local tables = core.part "lacuna.table"
+local table_files = core.part "lacuna.table_files"
 
 local fits_table = {}
 local LONGEST_NAME = 68 -- of a text in one card
@@ -47,7 +47,7 @@ function fits_table.of(study, facts)
   about[#about + 1] = ("Made by Lacuna %s, %d draws, seed %d."):format(facts.version, facts.draws, facts.seed)
   about[#about + 1] = "It estimates geometric feasibility; the observatory's own documents and staff decide."
   local columns, taken = {}, {}
-  for i, field in ipairs(tables.fields(study)) do columns[i] = column_of(field, taken) end
+  for i, field in ipairs(table_files.fields(study)) do columns[i] = column_of(field, taken) end
   return core.fits_table(about, columns, #columns[1])
 end
 

@@ -63,10 +63,12 @@ end
 
 -- Answers ----------------------------------------------------------------------------------------------------------------------------
 
+local MOST_NAMES = 40 -- of one answer; the table has all
+
 local function names_with_shares(rows, plain)
   local parts = {}
-  for i, row in ipairs(rows) do parts[i] = html(row.name) .. (plain and "" or " (" .. format.percent(row.cell.share) .. ")") end
-  return table.concat(parts, ", ")
+  for i = 1, math.min(#rows, MOST_NAMES) do parts[i] = html(rows[i].name) .. (plain and "" or " (" .. format.percent(rows[i].cell.share) .. ")") end
+  return table.concat(parts, ", ") .. (#rows > MOST_NAMES and (" and %d others: see the table"):format(#rows - MOST_NAMES) or "")
 end
 
 -- A bar of the targets by their answer; what it shows stands in words below it.

@@ -13,7 +13,8 @@ local derivation = core.part "lacuna.derivation"
 local document = core.part "lacuna.document"
 local feasibility = core.part "lacuna.feasibility"
 local manifest = core.part "lacuna.manifest"
-local tables = core.part "lacuna.table"
+local table_files = core.part "lacuna.table_files"
+local table_tex = core.part "lacuna.table_tex"
 
 local report = {}
 
@@ -106,9 +107,9 @@ local function with_notes(study, wanted)
 end
 
 local function write_tables(out, study, facts)
-  out:write("table.csv", tables.csv(study))
-  out:write("table.md", tables.markdown(study))
-  out:write("table.tex", tables.latex(with_notes(study, function(heading) return below_table[heading] end)))
+  out:write("table.csv", table_files.csv(study))
+  out:write("table.md", table_files.markdown(study))
+  out:write("table.tex", table_tex.latex(with_notes(study, function(heading) return below_table[heading] end)))
   local bytes, trouble = core.part "lacuna.fits_table".of(study, facts)
   facts.has_fits = bytes ~= nil
   if bytes then out:write("table.fits", bytes) else out.missing[#out.missing + 1] = "table.fits: " .. trouble end
@@ -168,7 +169,7 @@ local function write_all(out, study, facts)
   out:write("feasibility.tex", feasibility.tex(composed, cited))
   out:write("derivations.tex", document.derivations(with_notes(study, function(heading) return not below_table[heading] end), row, chains, cited))
   out:write("references.bib", cited:bibtex())
-  out:write("report.tex", document.whole(study.title or "Report of a study", drawn, facts.date))
+  out:write("report.tex", document.whole(study.title or "Report of a study", drawn, facts.date, next(cited.entries) ~= nil))
   local page = core.part "lacuna.page".of(study, { facts = facts, row = row, chains = chains, composed = composed, figures = drawn, missing = out.missing })
   out:add_present "records"
   out:write("index.html", page)

@@ -211,8 +211,8 @@ function study_metatable.__tostring(study) return ("study of %d target%s, %d col
 
 -- s:table(columns): the table and its notes as text, at most so many columns wide.
 function methods.table(study, columns) return tables.text(study, columns or core.terminal_width() or tables.WIDTH) end
-function methods.csv(study) return tables.csv(study) end
-function methods.latex(study) return tables.latex(study) end
+function methods.csv(study) return core.part "lacuna.table_files".csv(study) end
+function methods.latex(study) return core.part "lacuna.table_tex".latex(study) end
 
 -- s:report(folder, {force = true}): writes the whole report; force: into a folder that has files already. Returns what was written.
 function methods.report(study, folder, options) return core.part "lacuna.report".ask(study, folder, options, run.facts(study.result)) end

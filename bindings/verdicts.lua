@@ -82,6 +82,7 @@ local function sentence_of(column)
   if structure then return ("the %s is resolved by the %s"):format(structure, instrument) end
   return verdicts.words_of(column.name) .. " holds"
 end
+verdicts.sentence_of = sentence_of
 
 -- What other recipes make of a column: one entry a recipe, in the order in which they came.
 function verdicts.recipes(study, number)

@@ -21,7 +21,9 @@ def run(folder, *command):
 def latex(folder, name):
     """Compiles name.tex with its bibliography; returns what is wrong."""
     defects = []
-    steps = [("pdflatex", "-interaction=nonstopmode", "-halt-on-error", name), ("bibtex", name)] if name == "report" else []
+    with open(os.path.join(folder, name + ".tex"), encoding="utf-8") as file:
+        cites = "\\bibliography{" in file.read()
+    steps = [("pdflatex", "-interaction=nonstopmode", "-halt-on-error", name), ("bibtex", name)] if cites else []
     steps += [("pdflatex", "-interaction=nonstopmode", "-halt-on-error", name)] * 2
     for step in steps:
         done = run(folder, *step)
@@ -34,6 +36,16 @@ def latex(folder, name):
     if not os.path.getsize(os.path.join(folder, name + ".pdf")):
         defects.append("an empty PDF")
     return defects
+
+
+def odd_names(scratch):
+    """A study whose texts have every Latin letter, Greek ones, signs and letters that no font of LaTeX's has: it compiles all the same."""
+    letters = "".join(chr(code) for code in [*range(0xA1, 0x180), *range(0x391, 0x3CA), *range(0x2010, 0x2040)] if chr(code).isprintable())
+    with open(os.path.join(scratch, "odd.lua"), "w", encoding="utf-8") as file:
+        file.write('study { title = "Odd: \\\\ { } $ & # % _ ~ ^ < > 名", targets = {{ name = "[a] LETTERS", distance = "100 pc", note = "* 星 %" }}, ask = { "parallax" } }'
+                   .replace("LETTERS", letters))
+    done = run(scratch, os.environ["LACUNA"], "odd.lua", "--out", "odd")
+    return latex(os.path.join(scratch, "odd"), "report") if done.returncode == 0 else [done.stderr]
 
 
 def cited_and_listed(folder):
@@ -58,6 +70,7 @@ def main():
             file.write(TABLE_ALONE)
         results.append(("report.tex compiles", latex(folder, "report")))
         results.append(("table.tex alone compiles", latex(folder, "alone")))
+        results.append(("a report with odd names compiles", [one for one in odd_names(scratch) if "too wide" not in one]))
         results.append(("what is cited is listed, and nothing else", cited_and_listed(folder)))
     count, failed = check_page.report(results, "the demo's report")
     print(f"1..{count}")
