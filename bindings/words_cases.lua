@@ -10,7 +10,7 @@ return {
     result = "a case; c.name is a quantity",
     errors = "an unknown name, a wrong dimension, a value out of range, givens that contradict a definition; on asking, what is missing",
     examples = { 'case{distance = "140 pc", rim_radius = "0.3 au"}.rim_radius_angle', { star, "c" } },
-    answers = { "2.143 mas", "case\n  distance = 140 ± 5 pc\n  stellar_luminosity = 18 Lsun\n  wavelength = 1.65 µm\n  projected_baseline = 92 m" },
+    answers = { "2.143 mas", "case\n  given\n    distance            140 ± 5 pc\n    stellar_luminosity  18 Lsun\n    wavelength          1.65 µm\n    projected_baseline  92 m\n  derived so far: nothing yet; any name of the glossary can be asked" },
     see = { "study", "missing", "why" },
   },
   {
@@ -29,7 +29,7 @@ return {
     result = "another case",
     errors = "an unknown name or recipe, a recipe that can't be had from what is given",
     examples = { { star, 'c:using{array_resolution = "fringe"}.array_resolution' } },
-    answers = { "3.699 mas" },
+    answers = { "3.699 mas\n  array_resolution now by fringe, before by half_fringe" },
     see = { "recipes" },
   },
   {
@@ -50,7 +50,7 @@ return {
     result = "a list that prints itself",
     errors = "an unknown name",
     examples = { { star, 'c:missing "gap_width"' } },
-    answers = { "gap_width can't be derived from what is given; give stellar_mass, planet_mass, planet_semi_major_axis, viscosity_alpha (by kanagawa_2016)\n  viscosity_alpha: published values run from 1e-4 to 1e-2: give a number, or viscosity_alpha = spread.log_uniform(1e-4, 1e-2)" },
+    answers = { "gap_width can't be derived from what is given; give stellar_mass, planet_mass, planet_semi_major_axis, viscosity_alpha (by kanagawa_2016)\n\n  stellar_mass [Msun]: mass of the star\n  planet_mass [Mjup]: mass of the planet\n  planet_semi_major_axis [au]: semi-major axis of the planet's orbit\n  viscosity_alpha: Shakura and Sunyaev's viscosity parameter of the gas, the strength of its turbulence\n    published values run from 1e-4 to 1e-2: give a number, or viscosity_alpha = spread.log_uniform(1e-4, 1e-2)" },
   },
   {
     name = "check", of = "case", subject = "cases", forms = { "c:check()" },
@@ -71,7 +71,7 @@ return {
     result = "a quantity; of several solutions the nearest, and a second result that says so; nil and the reason where there is none",
     errors = "a name that isn't given, a goal that doesn't depend on it, an unknown name",
     examples = { { star, 'c:solve("projected_baseline", {array_resolution = "1 mas"})' }, { star, 'c:solve("projected_baseline", {rim_resolved_by_array = 0.9})' } },
-    answers = { "170.2 m", "85.21 m" },
+    answers = { "170.2 m", "85.21 m\nrim_resolved_by_array in at least 90 % of draws from there up" },
   },
   {
     name = "recipes", of = "case", subject = "cases", forms = { 'c:recipes "name"' },

@@ -86,7 +86,7 @@ return {
     result = "the quantity",
     errors = "more memory than settings{memory = ...} allows",
     examples = { { uncertain_radius, "r:stored()" } },
-    answers = { "1.92 ± 0.13 mas" },
+    answers = { "1.92 ± 0.13 mas\n  1.59 ▁▁▁▁▂▂▃▃▅▅▇▇██▇█▇▇▆▆▅▄▃▂▂▁▁▁▁▁ 2.28 mas   99 % of the draws" },
   },
   {
     name = "normal", of = "spread", field = true, subject = "quantities", forms = { "spread.normal(median, deviation)" },
@@ -118,7 +118,7 @@ return {
     arguments = { { "low, high", "the bounds, of one dimension, > 0" } },
     result = "a spread", errors = "bounds of different dimensions, in the wrong order, or not > 0",
     examples = { "case{viscosity_alpha = spread.log_uniform(1e-4, 1e-2)}" },
-    answers = { "case\n  viscosity_alpha = from 0.0001 to 0.01, log-uniform" },
+    answers = { "case\n  given\n    viscosity_alpha  from 0.0001 to 0.01, log-uniform\n  derived so far: nothing yet; any name of the glossary can be asked" },
   },
   {
     name = "log_normal", of = "spread", field = true, subject = "quantities", forms = { "spread.log_normal(median, width)" },
@@ -145,7 +145,7 @@ return {
     result = "a spread: given in a case it becomes an ensemble, bound to the case's target and the given's name",
     errors = "arguments of different dimensions or out of range",
     examples = { 'case{distance = "140 pc", rim_radius = spread.uniform(0.2*au, 0.4*au)}.rim_radius_angle' },
-    answers = { "2.14 ± 0.49 mas" },
+    answers = { "2.14 ± 0.49 mas\n  1.43 ▇▇▇▇▇▇▇▇▇▇▇▇▇▇▇█▇▇▇▇█▆▆▇▇█▆█▇▆ 2.85 mas   99 % of the draws" },
     see = { "settings", "chance", "interval" },
   },
   {
@@ -156,7 +156,7 @@ return {
     errors = "ends of different dimensions, a count below 2, an empty list",
     examples = { 'case{wavelength = "1.65 um", projected_baseline = sweep("20 m", "330 m", 5)}.array_resolution',
       'case{wavelength = sweep{"1.65 um", "2.2 um"}, projected_baseline = "100 m"}.array_resolution' },
-    answers = { "8.508  1.745  0.9724  0.6739  0.5157 mas\n  along projected_baseline 20 … 330 m, 5 points", "1.702  2.269 mas\n  along wavelength 1.65 … 2.2 µm, 2 points" },
+    answers = { "array_resolution (mas)\n8 ┤▀▚▖\n  │  ▝▚▄\n  │     ▀▄\n6 ┤       ▀▚▖\n  │         ▝▚▄\n4 ┤            ▀▖\n  │             ▝▚▄\n  │                ▀▄\n2 ┤                  ▀▀▄▄▄▄▄▄▄▄▄▄\n  │                              ▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▚▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄\n  └───────┬───────────┬────────────┬───────────┬────────────┬───────────┬───────\n          50         100          150         200          250         300\n                                                projected_baseline (m), 5 points\nprojected_baseline     20   97.5     175   252.5     330  m\narray_resolution    8.508  1.745  0.9724  0.6739  0.5157  mas", "wavelength         1.65    2.2  µm\narray_resolution  1.702  2.269  mas" },
     see = { "along", "at" },
   },
   {
@@ -165,7 +165,7 @@ return {
     arguments = { { "from, to", "the ends, with units, > 0" }, { "count", "how many points, 2 or more" } },
     result = "a sweep", errors = "ends of different dimensions or not > 0, a count below 2",
     examples = { 'case{wavelength = "1.65 um", projected_baseline = sweep.log("10 m", "1000 m", 3)}.array_resolution' },
-    answers = { "17.02  1.702  0.1702 mas\n  along projected_baseline 10 … 1000 m, 3 points" },
+    answers = { "projected_baseline     10    100    1000  m\narray_resolution    17.02  1.702  0.1702  mas" },
   },
   {
     name = "along", subject = "quantities", forms = { "along(axis, {a, b, ...})" },

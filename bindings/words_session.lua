@@ -51,4 +51,13 @@ return {
     answers = { "array_resolution  θ_arr: smallest angle that the array tells apart, by the named criterion\n\n  recipe       value\n  half_fringe  1.85 mas   taken here, no range stated\n  fringe       3.699 mas  no range stated\n\n  half_fringe, from wavelength, projected_baseline\n      θ_arr = λ / (2 B)\n      common practice, no source\n      supposes the criterion of half a fringe spacing\n  fringe, from wavelength, projected_baseline\n      θ_arr = λ/B\n      common practice, no source\n      supposes the criterion of one fringe spacing" },
     see = { "using", "why" },
   },
+  {
+    name = "glossary", subject = "help", forms = { "glossary.names()", 'glossary.name "gap_width"', "glossary.words()", "glossary.options()" },
+    does = "The tables as plain Lua data, for documents and programs of your own. A name comes with its unit, range, symbol, synonyms and recipes, with equations as plain text, TeX and MathML; a word as help has it; an option of the program with its meaning.",
+    arguments = { { "gap_width", "a name of the glossary" } },
+    result = "a table, or a list of such",
+    errors = "an unknown name",
+    examples = { 'glossary.name("gap_width").recipes[2].equation_tex' },
+    answers = { "\"\\\\Delta_{gap} = 0.41 a_p q^{1/2} h_p^{-3/4} \\\\alpha^{-1/4}\"" },
+  },
 }

@@ -149,7 +149,7 @@ t.test("missing", function()
   t.equal(several:find("\n  or, besides, shortest_baseline, element_diameter (by all_conditions)\n", 1, true) ~= nil, true, several)
   t.equal(several:find("\n  distance [pc]: distance of the star from the observer\n", 1, true) ~= nil, true, several)
   -- the error says the smallest way alone
-  t.raises(function() return lac.case {}.rim_resolved_by_array end, "give distance, bolometric_flux, wavelength, projected_baseline %(by elements_alone%)$")
+  t.raises(function() return lac.case {}.rim_resolved_by_array end, "give distance, bolometric_flux, wavelength, projected_baseline %(for rim_elements_by_array")
   t.equal(tostring(c:with { viscosity_alpha = false }:missing "gap_width"):find "viscosity_alpha: .*\n    published values run from 1e%-4 to 1e%-2" ~= nil, true)
   t.equal(c:missing "gap_width".had, true)
   t.raises(function() c:missing "gap" end, "missing: unknown name 'gap'")
