@@ -157,7 +157,7 @@ local function add_shares(cell, quantity, names, draws)
 end
 
 -- What a case says of a name, as a cell.
-local function cell_of(self, name)
+local function cell_of(self, name, verdict)
   if core.row_of(self, name) == nil then return { missing = true, reason = what_is_missing(self, name) } end
   local quantity = keep(core.raw(self, name))
   local names, draws = axes_besides_draws(quantity)
@@ -167,7 +167,7 @@ local function cell_of(self, name)
     return { missing = true, reason = size == 1 and text.undefined(self, name) or draws and "undefined in all draws" or "undefined at all points" }
   end
   local cell = { undefined = undefined / size }
-  if core.entry(name).kind == "verdict" then add_shares(cell, quantity, names, draws) else add_values(cell, quantity, factor, names, draws) end
+  if verdict then add_shares(cell, quantity, names, draws) else add_values(cell, quantity, factor, names, draws) end
   return cell
 end
 records.cell_of = cell_of
@@ -331,13 +331,13 @@ end
 local function fill(plan, column, cases, made)
   local number = column.group_number
   local self = cases[number]
-  if column.hidden or core.row_of(self, column.name) == nil then return cell_of(self, column.name) end
+  if column.hidden or core.row_of(self, column.name) == nil then return cell_of(self, column.name, column.verdict) end
   made[number] = made[number] or { outside = {}, cases = {} }
   local steps = steps_of(plan, self, number, column.name, made[number])
   local others = alternatives(self, steps)
   keep_inputs(self, others.inputs)
   if column.verdict then keep_sides(self, column.name) end
-  local cell = cell_of(self, column.name)
+  local cell = cell_of(self, column.name, column.verdict)
   if cell.missing then return cell end
   cell.steps = steps.words
   if column.verdict and not cell.axes and cell.share < 0.5 then cell.failing = failing(self, column.name) end

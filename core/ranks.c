@@ -1,6 +1,7 @@
 /* SPDX-License-Identifier: GPL-3.0-or-later */
-/* Several order statistics of one set of elements. The elements are counted in bins of equal width between the least and the greatest; those in
-   the few bins that hold a wanted rank are collected and selected among. The bin of an element never falls as the element grows, so that the
+/* Several order statistics of one set of elements. The elements are counted in bins between the least and the greatest; those in the few bins
+   that hold a wanted rank are collected and selected among. Bins are of equal width; where all elements are positive, and may range over decades,
+   of equal width in their bits, which is nearly that in their logarithms. The bin of an element never falls as the element grows, so that the
    result is exact whatever the rounding. Where too many share a bin, or an element is infinite, all are selected among. */
 #include <math.h>
 #include <stdbool.h>
@@ -23,12 +24,29 @@ static size_t defined_first(double *elements, size_t n) {
 }
 
 typedef struct {
+  bool by_bits;
   double least, scale; /* from an element's distance to the least, to its bin */
+  int64_t least_bits;
 } binning;
 
+static inline int64_t bits_of(double x) {
+  int64_t bits;
+  memcpy(&bits, &x, sizeof bits);
+  return bits;
+}
+
 static inline size_t bin_of(binning by, double x) {
-  const size_t bin = (size_t)((x - by.least) * by.scale);
+  const double distance = by.by_bits ? (double)(bits_of(x) - by.least_bits) : x - by.least;
+  const size_t bin = (size_t)(distance * by.scale);
   return bin < BINS ? bin : BINS - 1;
+}
+
+/* False where there is no such binning: zeros, nearly the same, or infinite ones among the elements. */
+static bool make_binning(binning *by, double least, double greatest) {
+  *by = (binning){.by_bits = least > 0, .least = least, .least_bits = bits_of(least)};
+  const double width = by->by_bits ? (double)(bits_of(greatest) - by->least_bits) : greatest - least;
+  by->scale = BINS / width;
+  return isfinite(greatest - least) && by->scale < HUGE_VAL;
 }
 
 /* Least and greatest of at least LANES elements. In lanes, or each comparison would wait for the one before. */
@@ -72,15 +90,14 @@ static size_t find_bins(const uint32_t *counts, const size_t *ranks, size_t coun
 }
 
 static bool by_bins(const double *elements, size_t n, const size_t *ranks, size_t count, double *values) {
-  double greatest;
-  binning by = {0};
-  extremes(elements, n, &by.least, &greatest);
-  if (greatest == by.least && greatest != 0) { /* zeros have a sign */
+  double least, greatest;
+  binning by;
+  extremes(elements, n, &least, &greatest);
+  if (greatest == least && greatest != 0) { /* zeros have a sign */
     for (size_t i = 0; i < count; i++) values[i] = greatest;
     return true;
   }
-  by.scale = BINS / (greatest - by.least);
-  if (!(greatest - by.least < HUGE_VAL && by.scale < HUGE_VAL)) return false; /* zeros, nearly the same, or infinite ones among them */
+  if (!make_binning(&by, least, greatest)) return false;
   uint32_t counts[BINS] = {0};
   for (size_t i = 0; i < n; i++) counts[bin_of(by, elements[i])]++;
   wanted_bin bins[MOST_RANKS];
