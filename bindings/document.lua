@@ -139,7 +139,7 @@ function document.derivations(study, row, chains, cited)
   add_list(lines, "What other recipes would have given", mapped(derivation.others(chains), function(found)
     local other = found.other
     return ("%s%s with %s by %s instead of %s: %s."):format(found.column.group and escaped(found.column.group) .. ": " or "", words(found.chain.name),
-      words(other.name), recipe_tex(other.row, cited), words(other.instead_of), escaped(other.value))
+      words(other.name), recipe_tex(other.row, cited), escaped(verdicts.recipe_name(other.name, other.instead_of)), escaped(other.value))
   end), "What is given allows no other recipe.")
   add_notes(lines, study.notes)
   return table.concat(lines, "\n") .. "\n"

@@ -122,8 +122,8 @@ end
 
 -- The table of results ---------------------------------------------------------------------------------------------------------------
 
-local function group_row(study, before)
-  local cells, i, grouped = { ('<td colspan="%d"></td>'):format(before) }, 1, false
+local function group_row(study)
+  local cells, i, grouped = { "<td></td>" }, 1, false
   while i <= #study.columns do
     local last, group = i, study.columns[i].group
     while last < #study.columns and study.columns[last + 1].group == group do last = last + 1 end
@@ -131,6 +131,7 @@ local function group_row(study, before)
     cells[#cells + 1] = group and ('<th scope="colgroup" colspan="%d" class="group">%s</th>'):format(last - i + 1, html(group)) or ('<td colspan="%d"></td>'):format(last - i + 1)
     i = last + 1
   end
+  if #study.texts > 0 then cells[#cells + 1] = ('<td colspan="%d"></td>'):format(#study.texts) end
   return grouped and "<tr>" .. table.concat(cells) .. "</tr>\n" or ""
 end
 
@@ -142,16 +143,16 @@ end
 
 local function results(study)
   local heads = { '<th scope="col">Star</th>' }
-  for _, name in ipairs(study.texts) do heads[#heads + 1] = element('th scope="col"', html(name)) end
   for _, column in ipairs(study.columns) do
     heads[#heads + 1] = ('<th scope="col" class="number">%s%s</th>'):format(html(words_of(column.name)), column.unit_text ~= "" and '<br><span class="unit">' .. html(column.unit_text) .. "</span>" or "")
   end
-  local lines = { '<div class="scroll" tabindex="0" role="region" aria-label="Results">\n<table class="results">\n<thead>' .. group_row(study, 1 + #study.texts) ..
+  for _, name in ipairs(study.texts) do heads[#heads + 1] = element('th scope="col"', html(name)) end
+  local lines = { '<div class="scroll" tabindex="0" role="region" aria-label="Results">\n<table class="results">\n<thead>' .. group_row(study) ..
     "<tr>" .. table.concat(heads) .. "</tr></thead>\n<tbody>" }
   for _, row in ipairs(study.rows) do
     local cells = { element('th scope="row"', html(row.name)) }
-    for _, name in ipairs(study.texts) do cells[#cells + 1] = element('td class="text"', html(row.texts[name] or "")) end
     for i, column in ipairs(study.columns) do cells[#cells + 1] = result_cell(column, row.cells[i]) end
+    for _, name in ipairs(study.texts) do cells[#cells + 1] = element('td class="text"', html(row.texts[name] or "")) end
     lines[#lines + 1] = "<tr>" .. table.concat(cells) .. "</tr>"
   end
   lines[#lines + 1] = "</tbody>\n</table>\n</div>\n<p class=\"small\">— is what could not be derived; the notes say why. A percentage is a share of all draws.</p>"
@@ -179,6 +180,12 @@ local function step_html(step)
   return table.concat(lines)
 end
 
+-- "gap width by Kanagawa et al. 2016 instead of ..."
+local function with_other(other)
+  local name = other.name
+  return ("%s by %s instead of %s"):format(words_of(name), verdicts.recipe_name(name, other.row.by), verdicts.recipe_name(name, other.instead_of))
+end
+
 local function chain_html(one)
   local chain, parts = one.chain, {}
   local function add(part) parts[#parts + 1] = part end
@@ -195,7 +202,7 @@ local function chain_html(one)
   if #chain.others > 0 then
     local others = {}
     for i, other in ipairs(chain.others) do
-      others[i] = html(("%s by %s instead of %s: %s"):format(words_of(other.name), words_of(other.row.by), words_of(other.instead_of), other.value))
+      others[i] = html(("%s: %s"):format(with_other(other), other.value))
     end
     add("<p>With another recipe:</p>\n" .. item_list(others))
   end
@@ -284,12 +291,12 @@ end
 
 local function recipes(study, parts)
   local rows = relation_rows(study, function(row) return row.kind ~= "assumed" and row.kind ~= "definition" and row.source ~= "definition" end,
-    function(name, row) return { html(words_of(name)), html(words_of(row.by)), html(text.source(row)), html(row.supposes or "") } end)
+    function(name, row) return { html(words_of(name)), element("code", html(row.by)), html(text.source(row)), html(row.supposes or "") } end)
   local lines = { #rows > 0 and plain_table("Recipes", { "Quantity", "Recipe", "Source", "Supposes" }, rows) or "<p>All follows by definition.</p>" }
   local others = {}
   for i, found in ipairs(derivation.others(parts.chains)) do
     others[i] = { html((found.column.group and found.column.group .. ": " or "") .. words_of(found.chain.name)), html(found.chain.value:match "^[^:]*"),
-      html(("%s by %s instead of %s"):format(words_of(found.other.name), words_of(found.other.row.by), words_of(found.other.instead_of))), html(found.other.value),
+      html(with_other(found.other)), html(found.other.value),
       html(text.source(found.other.row)) }
   end
   if #others > 0 then

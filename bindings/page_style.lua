@@ -36,9 +36,11 @@ th, td { padding: 0.25rem 0.6rem; text-align: left; vertical-align: top; border-
 thead th { vertical-align: bottom; border-bottom: 2px solid var(--soft); }
 th.group { text-align: center; border-bottom-width: 1px; }
 .results .number, .results th.number { text-align: right; }
-.results td.number, .values td, tbody th { white-space: nowrap; }
-td.text { min-width: 8rem; }
-tbody th { font-weight: 600; position: sticky; left: 0; background: var(--paper); }
+.results td.number, .values td, .results tbody th, .values tbody th { white-space: nowrap; }
+td.text { min-width: 14rem; }
+.words td, .words th { min-width: 8rem; }
+tbody th { font-weight: 600; }
+.results tbody th, .values tbody th { position: sticky; left: 0; background: var(--paper); }
 td.yes { background: var(--yes-tint); }
 td.between { background: var(--between-tint); }
 details { margin: 0.4rem 0; padding: 0.3rem 0.8rem; border: 1px solid var(--line); border-radius: 4px; }
@@ -51,6 +53,12 @@ pre { background: var(--box); padding: 0.8rem; font-size: 0.85rem; line-height: 
 .draft { background: var(--box); padding: 0.2rem 1rem; border-radius: 4px; }
 figure { margin: 1rem 0; }
 figure svg { display: block; width: 38rem; max-width: 100%; height: auto; }
+@media (max-width: 40rem) {
+  .words thead { display: none; }
+  .words, .words tbody, .words tr, .words th, .words td { display: block; }
+  .words tr { border-bottom: 1px solid var(--line); padding: 0.3rem 0; }
+  .words th, .words td { border: 0; padding: 0.1rem 0; }
+}
 @media print {
   :root { --paper: #fff; --ink: #000; --soft: #333; --line: #999; --box: #fff; --link: #000; --yes-tint: #fff; --between-tint: #fff; }
   body { max-width: none; padding: 0; font-size: 10pt; }

@@ -19,7 +19,7 @@ grep -q '^# date: 2030-01-01$' demo/manifest.txt && grep -q 'Lacuna [0-9.]*, 203
 result $? "the date is that of SOURCE_DATE_EPOCH"
 cmp -s demo/inputs/demo_study.lua "$scripts/demo_study.lua" && cmp -s demo/inputs/demo_stars.csv "$scripts/demo_stars.csv"
 result $? "the study and its targets are in it"
-! grep -rqF -e "$scratch" -e "$scripts" -e "$(hostname)" demo
+! grep -rqwIF -e "$scratch" -e "$scripts" -e "$(hostname)" demo
 result $? "no path of the machine and no host's name is"
 
 for threads in 1 2; do
