@@ -97,13 +97,14 @@ check:
 	@$(MAKE) --no-print-directory build=$(build)/san sanitize=yes tests
 	@tests/run $(build) $(build)/san
 
-check-page: docs
-	@.ci/packages try check check-page
-	@$(MAKE) --no-print-directory all
+check-page:
+	@.ci/packages try check docs check-page
+	@$(MAKE) --no-print-directory all docs
 	@tests/run $(build) tests/page/test_*.py
 
-docs: $(man_pages)
-	@.ci/packages docs
+docs:
+	@.ci/packages try docs
+	@$(MAKE) --no-print-directory $(man_pages)
 	$(build)/lacuna docs/make/pages.lua $(build)/docs
 
 bench:

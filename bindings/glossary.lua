@@ -61,6 +61,13 @@ end
 
 function glossary.words() return core.part "lacuna.words".list() end
 
+-- How help orders them: lists of { title =, names = {...} } and { title =, words = {...} }.
+function glossary.subjects()
+  local of_words = {}
+  for i, subject in ipairs(core.part "lacuna.words".by_subject()) do of_words[i] = { title = subject.title, words = subject.records } end
+  return core.part "lacuna.help".by_subject(), of_words
+end
+
 -- The program's options; a module in another host has none.
 function glossary.options()
   local command = core.part "lacuna.command"

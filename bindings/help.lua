@@ -32,20 +32,30 @@ local subjects = {
   { "structure", "structures: rim, cavity, gap, ring" }, { "visibility", "visibilities" }, { "emission", "the disc's own light" }, { "yours", "your own" },
 }
 
-local function map()
-  local width = math.min(core.terminal_width() or 118, 118)
-  local lines = new_page("help \"name\" explains a name, a word or a unit; help \"some words\" searches.", "")
-  local by_subject = {}
+-- The names by subject, as the map shows them: a list of { title =, names = {...} }.
+function help.by_subject()
+  local found, by_subject = {}, {}
   for _, name in ipairs(core.names()) do
     local list = by_subject[core.entry(name).subject] or {}
     by_subject[core.entry(name).subject] = list
-    if not search.is_derived(name) then list[#list + 1] = name end
+    list[#list + 1] = name
   end
   for _, subject in ipairs(subjects) do
-    if by_subject[subject[1]] then
-      lines[#lines + 1] = subject[2]
-      for _, line in ipairs(wrap(by_subject[subject[1]], 2, width)) do lines[#lines + 1] = line end
+    if by_subject[subject[1]] then found[#found + 1] = { title = subject[2], names = by_subject[subject[1]] } end
+  end
+  return found
+end
+
+local function map()
+  local width = math.min(core.terminal_width() or 118, 118)
+  local lines = new_page("help \"name\" explains a name, a word or a unit; help \"some words\" searches.", "")
+  for _, subject in ipairs(help.by_subject()) do
+    local names = {}
+    for _, name in ipairs(subject.names) do
+      if not search.is_derived(name) then names[#names + 1] = name end
     end
+    lines[#lines + 1] = subject.title
+    for _, line in ipairs(wrap(names, 2, width)) do lines[#lines + 1] = line end
   end
   for _, subject in ipairs(words.by_subject()) do
     local names = {}

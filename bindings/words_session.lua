@@ -52,8 +52,8 @@ return {
     see = { "using", "why" },
   },
   {
-    name = "glossary", subject = "help", forms = { "glossary.names()", 'glossary.name "gap_width"', "glossary.words()", "glossary.options()" },
-    does = "The tables as plain Lua data, for documents and programs of your own. A name comes with its unit, range, symbol, synonyms and recipes, with equations as plain text, TeX and MathML; a word as help has it; an option of the program with its meaning.",
+    name = "glossary", subject = "help", forms = { "glossary.names()", 'glossary.name "gap_width"', "glossary.words()", "glossary.subjects()", "glossary.options()" },
+    does = "The tables as plain Lua data, for documents and programs of your own. A name comes with its unit, range, symbol, synonyms and recipes, with equations as plain text, TeX and MathML; a word as help has it; an option of the program with its meaning. The subjects are those of help(): of names, and of words.",
     arguments = { { "gap_width", "a name of the glossary" } },
     result = "a table, or a list of such",
     errors = "an unknown name",

@@ -133,7 +133,7 @@ function interface.html(files)
     for _, item in ipairs(file.items) do
       if item.code ~= "" then add("<pre>", html.escape(item.code), "</pre>") end
       for _, said in ipairs { comments(item) } do
-        if said ~= "" then add('<pre class="quiet">', html.escape(said), "</pre>") end
+        if said ~= "" then add('<pre class="small">', html.escape(said), "</pre>") end
       end
     end
   end

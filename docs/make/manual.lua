@@ -5,33 +5,8 @@ local escape = html.escape
 
 local manual = {}
 
--- In the order in which they are told of.
-local word_subjects = {
-  { "quantities", "Quantities" }, { "cases", "Cases" }, { "what-if", "What-if" }, { "studies", "Studies" }, { "report", "Reports and figures" },
-  { "objects", "Grains and bands" }, { "session", "Sessions" }, { "help", "Help and settings" },
-}
-local name_subjects = {
-  { "star", "The star" }, { "photometry", "Photometry" }, { "radiation", "Radiation" }, { "disc", "The disc" }, { "dust", "Dust" }, { "rim", "Rim and cavity" },
-  { "orbit", "Orbits, planets, companions" }, { "gap", "Gaps and rings" }, { "instrument", "Instruments" }, { "structure", "Structures: rim, cavity, gap, ring" },
-  { "visibility", "Visibilities" }, { "emission", "The disc's own light" },
-}
-
 local function word_id(word) return "word-" .. (word.of and word.of .. "-" or "") .. word.name:gsub("[^%w_]", "-") end
 local function title_of(word) return (word.of and word.of .. ":" or "") .. word.name end
-
-local function in_subjects(subjects, list)
-  local groups = {}
-  for i, subject in ipairs(subjects) do
-    groups[i] = { id = subject[1], title = subject[2] }
-    groups[subject[1]] = groups[i]
-  end
-  for _, item in ipairs(list) do
-    local group = groups[item.subject]
-    if not group then error(("%s is of the subject '%s', which the manual doesn't know"):format(item.name, tostring(item.subject))) end
-    group[#group + 1] = item
-  end
-  return groups
-end
 
 local function add_word(out, word)
   local function add(...) out[#out + 1] = table.concat { ... } end
@@ -63,13 +38,13 @@ local function add_recipe(out, recipe)
   add("<li><strong>", escape(recipe.by), "</strong>", recipe.kind == "assumed" and ": " .. escape(recipe.assumes) .. ", assumed" or "",
     #from > 0 and ", from " .. table.concat(from, ", ") or "")
   if recipe.equation_mathml then add('<div class="equation">', recipe.equation_mathml, "</div>") end
-  add('<p class="quiet">', escape(recipe.source_text), "</p>")
+  add('<p class="small">', escape(recipe.source_text), "</p>")
   if recipe.supposes then add("<p>Supposes ", escape(recipe.supposes), ".</p>") end
   if recipe.unchecked then add("<p>Not checked: ", escape(recipe.unchecked), ".</p>") end
   for _, range in ipairs(recipe.holds) do
     add("<p>Holds for ", link_to(range.name), (" from %g to %g %s.</p>"):format(range.low, range.high, escape(range.unit_plain)))
   end
-  if recipe.inverse_of then add('<p class="quiet">The inverse of ', escape(recipe.inverse_of), ".</p>") end
+  if recipe.inverse_of then add('<p class="small">The inverse of ', escape(recipe.inverse_of), ".</p>") end
   add "</li>"
 end
 
@@ -79,8 +54,8 @@ local function add_name(out, name)
   local kind = name.kind == "verdict" and "A verdict: yes, no, or in so many per cent of the draws." or name.kind == "object" and "An object."
     or (name.unit_plain == "" and "A plain number" or "In " .. escape(name.unit_plain)) .. (name.range ~= "any" and ", " .. escape(name.range) or "") .. "."
   add("<p>", escape(name.meaning), ". ", kind, "</p>")
-  if #name.synonyms > 0 then add('<p class="quiet">Also called ', escape(table.concat(name.synonyms, ", ")), ".</p>") end
-  if name.on_sky then add('<p class="quiet">On the sky: ', link_to(name.name .. "_angle"), ".</p>") end
+  if #name.synonyms > 0 then add('<p class="small">Also called ', escape(table.concat(name.synonyms, ", ")), ".</p>") end
+  if name.on_sky then add('<p class="small">On the sky: ', link_to(name.name .. "_angle"), ".</p>") end
   if #name.recipes == 0 then add "<p>It must be given: no relation gives it.</p>" end
   if name.hint then add("<p>", escape(name.hint), ".</p>") end
   if #name.recipes > 0 then
@@ -91,16 +66,32 @@ local function add_name(out, name)
   add "</section>"
 end
 
+local function capital(title) return (title:gsub("^%l", string.upper)) end
+
+-- The subjects in order, each a list of records with a title: of words and of names.
+local function subjects()
+  local of_names, of_words = glossary.subjects()
+  local words, names = {}, {}
+  for i, subject in ipairs(of_words) do
+    words[i] = table.move(subject.words, 1, #subject.words, 1, { title = capital(subject.title) })
+  end
+  for i, subject in ipairs(of_names) do
+    names[i] = { title = capital(subject.title) }
+    for j, name in ipairs(subject.names) do names[i][j] = glossary.name(name) end
+  end
+  return words, names
+end
+
 local function add_contents(out, groups, id_of, title)
   for _, group in ipairs(groups) do
     local links = {}
     for i, item in ipairs(group) do links[i] = ('<a href="#%s">%s</a>'):format(id_of(item), escape(title(item))) end
-    if #links > 0 then out[#out + 1] = ('<h3>%s</h3>\n<nav class="names" aria-label="%s">%s</nav>'):format(escape(group.title), escape(group.title), table.concat(links, " ")) end
+    out[#out + 1] = ('<h3>%s</h3>\n<nav class="names" aria-label="%s">%s</nav>'):format(escape(group.title), escape(group.title), table.concat(links, " "))
   end
 end
 
 function manual.html()
-  local words, names = in_subjects(word_subjects, glossary.words()), in_subjects(name_subjects, glossary.names())
+  local words, names = subjects()
   local out = {
     "<h1>Reference manual</h1>",
     "<p>All words of the language, and all names with their recipes, in the order in which a case tries them. It estimates what is feasible; the observatory's own documents and staff decide.</p>",
@@ -111,7 +102,7 @@ function manual.html()
   for _, part in ipairs { { "The language", words, add_word }, { "Names and recipes", names, add_name } } do
     out[#out + 1] = "<h2>" .. part[1] .. "</h2>"
     for _, group in ipairs(part[2]) do
-      if #group > 0 then out[#out + 1] = "<h3>" .. escape(group.title) .. "</h3>" end
+      out[#out + 1] = "<h3>" .. escape(group.title) .. "</h3>"
       for _, item in ipairs(group) do part[3](out, item) end
     end
   end
