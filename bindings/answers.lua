@@ -1,9 +1,10 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
--- The full answers of the prompt: a length with its angle, an ensemble with a histogram, a sweep as a plot, a grid as a map, a case in its
--- parts, plain tables and functions in short. Each maker returns a list of lines; what is aside in them is marked by show.aside.
+-- The full answers of the prompt: a length with its angle, an ensemble with a histogram, a case in its parts, plain tables and functions in
+-- short; sweeps are drawn in sweeps.lua. Each maker returns a list of lines; what is aside in them is marked by show.aside.
 local core = ...
 local format = core.part "lacuna.format"
 local show = core.part "lacuna.show"
+local sweeps = core.part "lacuna.sweeps"
 local tables = core.part "lacuna.table"
 local text = core.part "lacuna.text"
 local textplot = core.part "lacuna.textplot"
@@ -12,8 +13,6 @@ local answers = {}
 
 local function columns() return math.max(core.terminal_width() or 80, 40) end
 local function add(lines, line) lines[#lines + 1] = line end
--- So high that a plot and what stands with it fit on the screen.
-local function height() return math.max(8, math.min(14, (core.terminal().rows or 24) - 6)) end
 
 -- Ensembles -----------------------------------------------------------------------------------------------------------------------
 
@@ -34,7 +33,8 @@ end
 
 local function finite(value) return value == value and math.abs(value) < math.huge end
 
--- Between what the central 99 % of the sampled values lie, or all where these are the same; nothing where there is no range to show.
+-- Between what the central 99 % of the sampled values lie, or all where these are the same, and their median; nothing where there is no
+-- range to show.
 local function middle(values)
   local sorted = {}
   for i = 1, #values, math.max(1, #values // 2500) do if values[i] == values[i] then sorted[#sorted + 1] = values[i] end end
@@ -42,7 +42,9 @@ local function middle(values)
   local beyond = #sorted // 200
   local low, high = sorted[1 + beyond], sorted[#sorted - beyond]
   if low == high then low, high = sorted[1], sorted[#sorted] end
-  if low and finite(low) and finite(high) and high - low > 1e-12 * math.max(math.abs(low), math.abs(high)) then return low, high end
+  if low and finite(low) and finite(high) and high - low > 1e-12 * math.max(math.abs(low), math.abs(high)) then
+    return low, high, sorted[(#sorted + 1) // 2]
+  end
 end
 
 -- So many digits that both ends are told apart well.
@@ -50,18 +52,24 @@ local function digits_for(low, high)
   return math.max(3, math.ceil(math.log(math.max(math.abs(low), math.abs(high)) / (high - low), 10)) + 2)
 end
 
--- "0.129 ▁▂▅█▆▃▁ 0.167 au" over the central 99 % of the draws; logarithmic where they reach over more than a decade and a half.
+-- Whether a histogram is better on a logarithmic scale: over more than a decade and a half, the median nearer to the middle of that one.
+local function is_logarithmic(low, high, median)
+  if not (low > 0 and high / low > 30) then return false end
+  return math.abs(math.log(median / low) / math.log(high / low) - 0.5) < math.abs((median - low) / (high - low) - 0.5)
+end
+
+-- "0.129 ▁▂▅█▆▃▁ 0.167 au" over the central 99 % of the draws.
 local function histogram_line(quantity)
   local _, _, _, _, size = core.facts(quantity)
   local _, factor, unit = text.display_unit(quantity)
   local values = sample(quantity, size, factor)
-  local low, high = middle(values)
+  local low, high, median = middle(values)
   if not low then return nil end
-  local log = low > 0 and high / low > 30
+  local log = is_logarithmic(low, high, median)
   local bars = textplot.histogram(values, math.min(MOST_BINS, math.ceil(2 * (#values) ^ 0.5)), { low = low, high = high, log = log })
   local digits = digits_for(low, high)
   return ("  %s %s %s"):format(format.number(low, digits), bars, format.with_unit(format.number(high, digits), unit)) ..
-    show.aside(("   99 %% of the draws%s"):format(log and ", logarithmic" or ""))
+    show.aside(("   99 %% of the %sdraws%s"):format(text.undefined_note(quantity) ~= "" and "defined " or "", log and ", logarithmic" or ""))
 end
 
 -- The angle beside a length that was asked of a case: what it is on the sky, where the distance is known. Of a very large ensemble it is left
@@ -73,7 +81,8 @@ local function on_the_sky(quantity)
   local _, _, _, number, size = core.facts(angle)
   if size > LARGE then return "" end
   if #core.axes(angle) == 0 and number ~= number then return "" end
-  return "   " .. text.quantity(angle) .. " on the sky"
+  local written, note = text.quantity(angle), text.undefined_note(angle) -- as of the length
+  return "   " .. written:sub(1, #written - #note) .. " on the sky"
 end
 
 local function ensemble(quantity, verdict)
@@ -82,157 +91,7 @@ local function ensemble(quantity, verdict)
   return { written .. on_the_sky(quantity), histogram_line(quantity) }
 end
 
--- Sweeps --------------------------------------------------------------------------------------------------------------------------
-
--- An axis as numbers: its values in the unit of the given it is named after; where there is none their unit isn't known: 1, 2, 3 ...
-local function axis_facts(axis)
-  local values, name = {}, core.find(axis.name)
-  local entry = axis.values and name and core.entry(name)
-  for i = 1, axis.length do values[i] = entry and axis.values[i] / entry.factor or i end
-  local unit = entry and entry.unit ~= "1" and select(3, core.unit_facts(entry.unit)) or ""
-  return { values = values, known = entry and true, name = axis.name, unit = unit, label = axis.name .. (unit ~= "" and " (" .. unit .. ")" or "") }
-end
-
--- Whether values are spaced more evenly in their logarithm.
-local function is_logarithmic(values)
-  local function unevenness(to)
-    local least, most = math.huge, 0
-    for i = 2, #values do
-      local step = math.abs(to(values[i]) - to(values[i - 1]))
-      least, most = math.min(least, step), math.max(most, step)
-    end
-    return most / least
-  end
-  for _, value in ipairs(values) do if not (value > 0 and value < math.huge) then return false end end
-  return #values > 2 and unevenness(math.log) < unevenness(function(value) return value end)
-end
-
--- Of values that can be drawn, the lowest and the highest; nothing where there is none.
-local function extremes(values)
-  local low, high = math.huge, -math.huge
-  for _, value in ipairs(values) do
-    if finite(value) then low, high = math.min(low, value), math.max(high, value) end
-  end
-  if low <= high then return low, high end
-end
-
--- What is drawn of a quantity with sweeps: middle = list, low and high = the 68 % band of draws. Of a verdict the share, in per cent.
-local function reduced(quantity, verdict, factor)
-  local draws = text.has_draws(core.axes(quantity))
-  local function plain(q)
-    local list = core.elements(q)
-    for i, value in ipairs(list) do list[i] = verdict and 100 * value or value / factor end
-    return list
-  end
-  if not draws then return { middle = plain(quantity) } end
-  if verdict then return { middle = plain(core.chance(quantity)), share = true } end
-  local low, middle_, high = core.spread_of(quantity)
-  return { low = plain(low), middle = plain(middle_), high = plain(high) }
-end
-
-local function number_text(value, verdict)
-  if not verdict then return format.number(value) end
-  return value ~= value and "undefined" or value == 0 and "no" or value == 100 and "yes" or format.percent(value / 100)
-end
-
--- Some points as two lines of numbers below each other, as many as fit: all where they are few, else evenly from end to end.
-local function number_lines(axis, y, name, unit, verdict, most)
-  local count = #y
-  for shown = math.min(count, most), 1, -1 do
-    local above, below, gap = { axis.name }, { name }, "  "
-    for k = 1, shown do
-      local i = count == shown and k or 1 + math.floor((k - 1) * (count - 1) / math.max(shown - 1, 1) + 0.5)
-      above[#above + 1], below[#below + 1] = format.number(axis.values[i]), number_text(y[i], verdict)
-    end
-    above[#above + 1], below[#below + 1] = axis.unit, unit
-    for k = 1, #above do
-      local wide = math.max(format.width(above[k]), format.width(below[k]))
-      local pad = (k == 1 or k == #above) and format.pad_right or format.pad_left
-      above[k], below[k] = pad(above[k], wide), pad(below[k], wide)
-    end
-    local one, two = table.concat(above, gap), table.concat(below, gap)
-    if format.width(one) <= columns() or shown == 1 then return { (one:gsub(" +$", "")), (two:gsub(" +$", "")) } end
-  end
-end
-
--- Where a verdict without draws turns: "no  20 … 91.4 m" a stretch, of the points as they are swept; nil where it turns too often.
-local function stretches(axis, y)
-  local lines, from = {}, 1
-  for i = 1, #y do
-    if i == #y or number_text(y[i], true) ~= number_text(y[i + 1], true) then
-      local range = format.number(axis.values[from]) .. (i > from and " … " .. format.number(axis.values[i]) or "")
-      add(lines, number_text(y[i], true) .. "  " .. format.with_unit(range, axis.unit))
-      from = i + 1
-    end
-  end
-  return #lines <= 6 and lines or nil
-end
-
-local function title_of(quantity) return (core.facts(quantity)) or "value" end
-
-local function trimmed(lines)
-  for i, line in ipairs(lines) do lines[i] = line:gsub("%s+$", "") end
-  return lines
-end
-
--- One axis besides the draws: a plot, and numbers below it; of a few points, or where all are the same, the numbers alone.
-local FEW = 5
-local function sweep(quantity, verdict, axis)
-  local name, note = core.facts(quantity), text.undefined_note(quantity)
-  if name == axis.name then return { text.brief(quantity):gsub("^from (.-) to ", "%1 … ") .. (", %d points"):format(axis.length) } end
-  local _, factor, unit = text.display_unit(quantity)
-  local drawn, along = reduced(quantity, verdict, factor), axis_facts(axis)
-  local low, high = extremes(drawn.middle)
-  local title = title_of(quantity)
-  if verdict and not drawn.share then
-    local turns = stretches(along, drawn.middle)
-    if turns then
-      table.insert(turns, 1, title .. show.aside(("   along %s, %d points%s"):format(along.name, axis.length, note)))
-      return turns
-    end
-  end
-  local numbers = along.known and number_lines(along, drawn.middle, title, drawn.share and "of draws" or unit, verdict, 9) or
-    { text.quantity(quantity) }
-  if not along.known and axis.length < FEW then return numbers end
-  if axis.length < FEW or not low or low == high then
-    note = (drawn.low and " (medians)" or "") .. note
-    if note ~= "" then add(numbers, show.aside(" " .. note)) end
-    return numbers
-  end
-  local label = drawn.share and title .. ", share of draws (%)" or title .. (unit ~= "" and " (" .. unit .. ")" or "") .. (drawn.low and ", median and 68 % of the draws" or "")
-  if not text.has_draws(core.axes(quantity)) then note = "" end -- the plot counts its holes
-  local lowest = extremes(drawn.low or drawn.middle)
-  local lines = trimmed(textplot.curve {
-    x = along.values, y = drawn.middle, low = drawn.low, high = drawn.high, x_log = is_logarithmic(along.values),
-    y_log = not verdict and lowest > 0 and high / lowest > 100, width = math.min(columns(), 100), height = height(),
-    y_label = label .. note, x_label = ("%s, %d points"):format(along.label, axis.length),
-  })
-  return table.move(numbers, 1, #numbers, #lines + 1, lines)
-end
-
--- Two axes besides the draws: a map, whose legend says the range.
-local function grid(quantity, verdict, over)
-  local _, factor, unit = text.display_unit(quantity)
-  local drawn = reduced(quantity, verdict, factor)
-  local low, high = extremes(drawn.middle)
-  if not low or low == high then return { text.quantity(quantity) } end
-  local one, two = axis_facts(over[1]), axis_facts(over[2])
-  local longer_first = over[1].length >= over[2].length -- the longer axis lies along the lines
-  local x, y, z = longer_first and one or two, longer_first and two or one, {}
-  for i = 1, #x.values do
-    z[i] = {}
-    for j = 1, #y.values do z[i][j] = drawn.middle[longer_first and (i - 1) * #y.values + j or (j - 1) * #x.values + i] end
-  end
-  local title, plain_verdict = title_of(quantity), verdict and not drawn.share
-  return trimmed(textplot.map {
-    x = x.values, y = y.values, z = z, x_log = is_logarithmic(x.values), y_log = is_logarithmic(y.values), z_log = not verdict and low > 0 and high / low > 100,
-    contour = drawn.share and low < 50 and high >= 50 and 50 or nil, height = height() + 2, width = math.min(columns(), 100),
-    x_label = ("%s, %d points"):format(x.label, #x.values), y_label = ("%s, %d points%s"):format(y.label, #y.values, text.has_draws(core.axes(quantity)) and text.undefined_note(quantity) or ""),
-    z_label = plain_verdict and title .. "   filled yes, empty no" or
-      title .. (drawn.share and " (% of draws)" or unit ~= "" and " (" .. unit .. ")" or "") .. (drawn.low and ", medians" or ""),
-    legend = not plain_verdict,
-  })
-end
+-- Quantities ----------------------------------------------------------------------------------------------------------------------
 
 -- The recipes on the way to a quantity that with or using has changed in its case; each is said with the first answer that goes by it.
 local function changed_lines(quantity, name)
@@ -258,8 +117,8 @@ local function quantity_lines(quantity)
   local verdict = name and core.entry(name).kind == "verdict"
   if #axes == 0 then return { text.quantity(quantity) .. on_the_sky(quantity) } end
   if #over == 0 then return ensemble(quantity, verdict) end
-  if #over == 1 then return sweep(quantity, verdict, over[1]) end
-  if #over == 2 then return grid(quantity, verdict, over) end
+  if #over == 1 then return sweeps.one(quantity, verdict, over[1]) end
+  if #over == 2 then return sweeps.two(quantity, verdict, over) end
   return { text.quantity(quantity), show.aside "  q:at{axis = i} takes one point of an axis" }
 end
 
@@ -279,11 +138,15 @@ local function add_sentences(lines, sentences)
   end
 end
 
--- Pairs of texts as two columns, set in.
+-- Pairs of texts as two columns, set in; the second is wrapped where it is too wide.
 local function add_pairs(lines, pairs_)
   local widest = 0
   for _, pair in ipairs(pairs_) do widest = math.max(widest, format.width(pair[1])) end
-  for _, pair in ipairs(pairs_) do add(lines, "    " .. format.pad_right(pair[1], widest) .. "  " .. pair[2]) end
+  for _, pair in ipairs(pairs_) do
+    for i, part in ipairs(tables.wrapped(pair[2], math.max(columns() - widest - 6, 24))) do
+      add(lines, "    " .. format.pad_right(i == 1 and pair[1] or "", widest) .. "  " .. part)
+    end
+  end
 end
 
 local function given_pairs(self)
