@@ -33,7 +33,8 @@ end
 
 local function finite(value) return value == value and math.abs(value) < math.huge end
 
--- Between what the central 99 % of the sampled values lie, or all where these are the same; nothing where there is no range to show.
+-- Between what the central 99 % of the sampled values lie, or all where these are the same, and their median; nothing where there is no
+-- range to show.
 local function middle(values)
   local sorted = {}
   for i = 1, #values, math.max(1, #values // 2500) do if values[i] == values[i] then sorted[#sorted + 1] = values[i] end end
@@ -41,7 +42,9 @@ local function middle(values)
   local beyond = #sorted // 200
   local low, high = sorted[1 + beyond], sorted[#sorted - beyond]
   if low == high then low, high = sorted[1], sorted[#sorted] end
-  if low and finite(low) and finite(high) and high - low > 1e-12 * math.max(math.abs(low), math.abs(high)) then return low, high end
+  if low and finite(low) and finite(high) and high - low > 1e-12 * math.max(math.abs(low), math.abs(high)) then
+    return low, high, sorted[(#sorted + 1) // 2]
+  end
 end
 
 -- So many digits that both ends are told apart well.
@@ -49,18 +52,24 @@ local function digits_for(low, high)
   return math.max(3, math.ceil(math.log(math.max(math.abs(low), math.abs(high)) / (high - low), 10)) + 2)
 end
 
--- "0.129 ▁▂▅█▆▃▁ 0.167 au" over the central 99 % of the draws; logarithmic where they reach over more than a decade and a half.
+-- Whether a histogram is better on a logarithmic scale: over more than a decade and a half, the median nearer to the middle of that one.
+local function is_logarithmic(low, high, median)
+  if not (low > 0 and high / low > 30) then return false end
+  return math.abs(math.log(median / low) / math.log(high / low) - 0.5) < math.abs((median - low) / (high - low) - 0.5)
+end
+
+-- "0.129 ▁▂▅█▆▃▁ 0.167 au" over the central 99 % of the draws.
 local function histogram_line(quantity)
   local _, _, _, _, size = core.facts(quantity)
   local _, factor, unit = text.display_unit(quantity)
   local values = sample(quantity, size, factor)
-  local low, high = middle(values)
+  local low, high, median = middle(values)
   if not low then return nil end
-  local log = low > 0 and high / low > 30
+  local log = is_logarithmic(low, high, median)
   local bars = textplot.histogram(values, math.min(MOST_BINS, math.ceil(2 * (#values) ^ 0.5)), { low = low, high = high, log = log })
   local digits = digits_for(low, high)
   return ("  %s %s %s"):format(format.number(low, digits), bars, format.with_unit(format.number(high, digits), unit)) ..
-    show.aside(("   99 %% of the draws%s"):format(log and ", logarithmic" or ""))
+    show.aside(("   99 %% of the %sdraws%s"):format(text.undefined_note(quantity) ~= "" and "defined " or "", log and ", logarithmic" or ""))
 end
 
 -- The angle beside a length that was asked of a case: what it is on the sky, where the distance is known. Of a very large ensemble it is left
@@ -72,7 +81,8 @@ local function on_the_sky(quantity)
   local _, _, _, number, size = core.facts(angle)
   if size > LARGE then return "" end
   if #core.axes(angle) == 0 and number ~= number then return "" end
-  return "   " .. text.quantity(angle) .. " on the sky"
+  local written, note = text.quantity(angle), text.undefined_note(angle) -- as of the length
+  return "   " .. written:sub(1, #written - #note) .. " on the sky"
 end
 
 local function ensemble(quantity, verdict)
@@ -128,11 +138,15 @@ local function add_sentences(lines, sentences)
   end
 end
 
--- Pairs of texts as two columns, set in.
+-- Pairs of texts as two columns, set in; the second is wrapped where it is too wide.
 local function add_pairs(lines, pairs_)
   local widest = 0
   for _, pair in ipairs(pairs_) do widest = math.max(widest, format.width(pair[1])) end
-  for _, pair in ipairs(pairs_) do add(lines, "    " .. format.pad_right(pair[1], widest) .. "  " .. pair[2]) end
+  for _, pair in ipairs(pairs_) do
+    for i, part in ipairs(tables.wrapped(pair[2], math.max(columns() - widest - 6, 24))) do
+      add(lines, "    " .. format.pad_right(i == 1 and pair[1] or "", widest) .. "  " .. part)
+    end
+  end
 end
 
 local function given_pairs(self)

@@ -65,6 +65,9 @@ local function shown(value)
   return tostring(value)
 end
 
+-- Whether a text is one of several lines that can be printed as they are, as tables and answers are: quoted they would be a riddle.
+local function is_page(text) return text:find("\n", 1, true) and not text:find "[^\n\t\32-\126\128-\255]" end
+
 -- Results as the prompt prints them, colour still marked: a line each or several; of nothing found, why (as functions return nil and a
 -- message), of an answer its note.
 local function written(...)
@@ -72,7 +75,7 @@ local function written(...)
   if results.n == 2 and results[1] == nil and type(results[2]) == "string" then return results[2] end
   for i = 1, results.n do
     local value = results[i]
-    if type(value) == "string" and i == 1 then value = ("%q"):format(value) end
+    if type(value) == "string" and i == 1 and not is_page(value) then value = ("%q"):format(value) end
     if value ~= nil or results.n == 1 then lines[#lines + 1] = shown(value) end
   end
   return table.concat(lines, "\n")

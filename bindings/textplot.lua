@@ -132,13 +132,16 @@ local function fitted(text, columns, glyphs)
   return format.pad_right(text, columns)
 end
 
--- The empty picture between two scales. `heads`: lines above it, besides that of the y label; `note` stands beside that.
+-- The empty picture between two scales. `heads`: lines above it, to which the y label comes, and `note` beside it where there is room.
 local function new_frame(options, x, y, heads, note)
   local glyphs = look(options.ascii)
   local frame = { glyphs = glyphs, x = x, y = y, options = options, heads = heads, holes = {} }
   frame.width = math.max(math.floor(options.width or 80), 24)
-  frame.title = note and (options.y_label and options.y_label .. "   " or "") .. note or options.y_label
-  local around = 2 + #heads + (frame.title and 1 or 0) + (options.x_label and 1 or 0)
+  heads[#heads + 1] = options.y_label
+  local beside = note and options.y_label and options.y_label .. "   " .. note
+  if beside and format.width(beside) <= frame.width then heads[#heads] = beside
+  else heads[#heads + 1] = note end
+  local around = 2 + #heads + (options.x_label and 1 or 0)
   frame.rows = math.max(math.floor(options.height or 14) - around, 3)
   frame.y_ticks = ticks_of(y, math.max(2, math.ceil(frame.rows * 0.6)))
   frame.margin = 0
@@ -182,7 +185,6 @@ local function finished(frame)
   local options, glyphs, lines, labels = frame.options, frame.glyphs, {}, {}
   local function add(text) lines[#lines + 1] = fitted(text, frame.width, glyphs) end
   for _, head in ipairs(frame.heads) do add(head) end
-  if frame.title then add(frame.title) end
   for _, tick in ipairs(frame.y_ticks) do labels[row_of(frame, tick.value)] = tick.text end
   for row = 1, frame.rows do
     add(format.pad_left(labels[row] or "", frame.margin) .. " " .. (labels[row] and glyphs.tick or glyphs.up) .. table.concat(frame[row]))

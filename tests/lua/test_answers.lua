@@ -75,6 +75,12 @@ t.test("ensembles with little in them", function()
   t.equal(format.width(few[2]:match "^  %S+ (.*) %S+   99"), 4, "few draws, few bins")
 end)
 
+t.test("undefined draws are told once, with what the histogram leaves out", function()
+  local lines = lines_of(with { gap_width = lac.spread.uniform("6 au", "12 au"), planet_semi_major_axis = "5 au" }.gap_inner_radius)
+  t.equal(lines[1]:find "^0.%d+ ± 0.%d+ au %(3%d %% of draws undefined%)   [%d.]+ ± [%d.]+ mas on the sky$" ~= nil, true, lines[1]) -- a third: 10 to 12 au of 6 to 12
+  t.equal(lines[2]:find "99 %% of the defined draws$" ~= nil, true, lines[2])
+end)
+
 t.test("a histogram of very many draws stores none of them", function()
   local before = lac.settings().memory
   lac.settings { draws = 4000000, memory = 24 } -- they would take 32 MB
@@ -201,6 +207,9 @@ t.test("plain tables are shortened, functions are named", function()
   has(lac.show(lac.case {}.with), 'help "with"')
   t.equal(lac.show(function() end), "a function")
   t.equal(lac.show(nil, "why not"), "why not")
+  t.equal(lac.show "a line", '"a line"')
+  t.equal(lac.show "two\nlines", "two\nlines", "a page is not quoted")
+  t.equal(lac.show "two\n\27lines", '"two\\\n\\27lines"', "but for what a terminal would obey")
 end)
 
 t.test("a failed derivation names the branch that failed", function()
