@@ -386,6 +386,36 @@ static int case_raw(lua_State *L) {
   return 1;
 }
 
+/* Sharing: a case that differs in one recipe has much in common with the one it was made from. */
+
+typedef enum { NOT_SEEN, ALIKE, UNLIKE } likeness;
+
+/* Whether two cases have a name in the same way: the same given, or by the same row from inputs that they have in the same way. */
+static bool is_alike(const lac_catalogue *catalogue, const lac_case *a, const lac_case *b, int id, likeness *seen) {
+  if (seen[id] != NOT_SEEN) return seen[id] == ALIKE;
+  const int row = lac_chain_row(a->chain, id);
+  bool alike = row == lac_chain_row(b->chain, id) && row != LAC_NO_ROW;
+  if (alike && row == LAC_GIVEN) alike = a->values[id] == b->values[id];
+  if (alike && row >= 0) {
+    const lac_relation *relation = lac_catalogue_row(catalogue, row);
+    for (int i = 0; i < LAC_MAX_ARGUMENTS && relation->from[i] != NULL && alike; i++)
+      alike = is_alike(catalogue, a, b, lac_catalogue_find(catalogue, relation->from[i]), seen);
+  }
+  seen[id] = alike ? ALIKE : UNLIKE;
+  return alike;
+}
+
+/* share(case, other): the case takes from the other what that has derived, and it would derive in the same way. */
+static int case_share(lua_State *L) {
+  lac_case *object = lac_check_case(L, 1), *other = lac_check_case(L, 2);
+  const lac_catalogue *catalogue = lac_catalogue_of(L);
+  likeness *seen = lua_newuserdatauv(L, (size_t)object->names * sizeof *seen, 0);
+  memset(seen, 0, (size_t)object->names * sizeof *seen);
+  for (int i = 0; i < object->names; i++)
+    if (object->values[i] == NULL && other->values[i] != NULL && is_alike(catalogue, object, other, i, seen)) object->values[i] = lac_value_keep(other->values[i]);
+  return 0;
+}
+
 /* info(case): the Lua side's table. */
 static int case_info(lua_State *L) {
   lac_check_case(L, 1);
@@ -471,7 +501,7 @@ static int set_handlers(lua_State *L) {
 
 void lac_open_case(lua_State *L) {
   static const luaL_Reg functions[] = {
-      {"given", case_given}, {"new_case", case_new}, {"raw", case_raw}, {"info", case_info}, {"steps", case_steps}, {"row_of", case_row_of}, {"same_chain", case_same_chain},
+      {"given", case_given}, {"new_case", case_new}, {"raw", case_raw}, {"info", case_info}, {"steps", case_steps}, {"row_of", case_row_of}, {"same_chain", case_same_chain}, {"share", case_share},
       {"missing_sets", case_missing_sets}, {"is_case", is_case}, {"case_of", case_of}, {"set_handlers", set_handlers}, {NULL, NULL},
   };
   luaL_setfuncs(L, functions, 0);

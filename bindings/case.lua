@@ -166,7 +166,9 @@ local function by_recipe(self, name, by)
   local info = {}
   for key, value in pairs(core.info(self)) do info[key] = value end
   info.using = using
-  return core.new_case(info.givens, using, info, true)
+  local other = core.new_case(info.givens, using, info, true)
+  if other then core.share(other, self) end
+  return other
 end
 case.by_recipe = by_recipe
 

@@ -67,6 +67,7 @@ figure svg { display: block; width: 38rem; max-width: 100%; height: auto; }
   .scroll, .equation, pre { overflow: visible; }
   pre { white-space: pre-wrap; }
   .results, .values { font-size: 6.5pt; }
+  .unit { font-size: inherit; }
   .results th, .results td, .values th, .values td { padding: 1pt 3pt; min-width: 0; }
   .results td.number, .values td { white-space: normal; }
 }

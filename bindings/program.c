@@ -3,6 +3,7 @@
 #include <errno.h>
 #include <lauxlib.h>
 #include <lualib.h>
+#include <malloc.h>
 #include <signal.h>
 #include <stdio.h>
 #include <stdlib.h>
@@ -241,6 +242,9 @@ static int run_program(command_line *line) {
 }
 
 int main(int count, char **arguments) {
+  mallopt(M_TRIM_THRESHOLD, 64 << 20); /* memory that is given back to the system is touched anew for the next ensemble, which costs more than it */
+  mallopt(M_MMAP_THRESHOLD, 4 << 20);
+  mallopt(M_TOP_PAD, 1 << 20);
   command_line line = {.code = NULL};
   int status = count > 0 ? command_line_read(&line, arguments + 1) : WRONG_USAGE;
   if (status < 0) status = run_program(&line);

@@ -157,7 +157,7 @@ local function add_shares(cell, quantity, names, draws)
 end
 
 -- What a case says of a name, as a cell.
-local function cell_of(self, name)
+local function cell_of(self, name, verdict)
   if core.row_of(self, name) == nil then return { missing = true, reason = what_is_missing(self, name) } end
   local quantity = keep(core.raw(self, name))
   local names, draws = axes_besides_draws(quantity)
@@ -167,7 +167,7 @@ local function cell_of(self, name)
     return { missing = true, reason = size == 1 and text.undefined(self, name) or draws and "undefined in all draws" or "undefined at all points" }
   end
   local cell = { undefined = undefined / size }
-  if core.entry(name).kind == "verdict" then add_shares(cell, quantity, names, draws) else add_values(cell, quantity, factor, names, draws) end
+  if verdict then add_shares(cell, quantity, names, draws) else add_values(cell, quantity, factor, names, draws) end
   return cell
 end
 records.cell_of = cell_of
@@ -175,9 +175,10 @@ records.cell_of = cell_of
 -- The way to a value ----------------------------------------------------------------------------------------------------------------
 
 -- The steps to a name in a case, each with its row as a table; found once for all cases with the same given names and recipes.
-local function steps_of(plan, self, number, name)
-  local key = number .. " " .. name .. " " .. table.concat(case.sorted_keys(core.info(self).givens), " ") .. " " ..
-    table.concat(case.sorted_keys(core.info(self).objects), " ")
+local function steps_of(plan, self, number, name, of_case)
+  local info = core.info(self)
+  of_case.given = of_case.given or number .. " " .. table.concat(case.sorted_keys(info.givens), " ") .. " " .. table.concat(case.sorted_keys(info.objects), " ")
+  local key = name .. " " .. of_case.given
   local steps = plan.steps[key]
   if not steps then
     steps = core.steps(self, name)
@@ -213,7 +214,7 @@ local function failing(self, name)
   for i, c in ipairs(found) do
     local right, unit = representative(c.right_value)
     local words = records.condition_words(c, c.greater and "<" or ">") .. " " .. format.with_unit(right, unit)
-    found[i] = { words = words, left = representative(c.left_value * c.factor) }
+    found[i] = { words = words, left = representative(c.factor == 1 and c.left_value or c.left_value * c.factor) }
   end
   return found
 end
@@ -247,11 +248,12 @@ records.leaves_out = leaves_out
 -- Recipes that stand beside those taken on the way to a name.
 local function alternatives(self, steps)
   if not steps.alternatives then
-    steps.alternatives = {}
+    steps.alternatives = { inputs = {} }
     for _, step in ipairs(steps) do
       if step.relation and core.entry(step.name).kind ~= "verdict" then
         for i, row in ipairs(case.live_rows(self, step.name)) do
           if i > 1 and row.kind ~= "definition" and row.kind ~= "assumed" and not leaves_out(row, step.relation) then
+            steps.alternatives.inputs[step.relation] = true
             table.insert(steps.alternatives, { name = step.name, by = row.by, words = ("%s by %s instead of %s"):format(step.name, row.by, step.relation.by) })
           end
         end
@@ -259,6 +261,15 @@ local function alternatives(self, steps)
     end
   end
   return steps.alternatives
+end
+
+-- Derived inputs of a recipe that others stand beside are read by those too: kept first.
+local function keep_inputs(self, relations)
+  for relation in pairs(relations) do
+    for _, name in ipairs(relation.from) do
+      if core.row_of(self, name) and core.entry(name).kind ~= "object" then keep(core.raw(self, name)) end
+    end
+  end
 end
 
 local function by_recipe(self, other, made)
@@ -289,9 +300,9 @@ local function change_of(column, cell, value)
   return low <= high and { low = low, high = high } or {}
 end
 
-local function over_recipes(column, self, steps, cell, made)
+local function over_recipes(column, self, others, cell, made)
   local found
-  for _, other in ipairs(alternatives(self, steps)) do
+  for _, other in ipairs(others) do
     local changed = by_recipe(self, other, made)
     local value = changed and core.raw(changed, column.name)
     if value then
@@ -306,18 +317,32 @@ end
 
 -- Records ---------------------------------------------------------------------------------------------------------------------------
 
+-- The sides of a verdict's conditions are read by the verdict, by its reasons and by what other recipes make of it: kept first.
+local function keep_sides(self, name)
+  local number = core.row_of(self, name)
+  for _, condition in ipairs(number and core.row(number).conditions or {}) do
+    local c = text.parse_condition(condition)
+    keep(core.raw(self, c.left))
+    keep(core.raw(self, c.right))
+  end
+end
+
 -- `hidden` columns are for figures: they have a value and no reasons.
 local function fill(plan, column, cases, made)
   local number = column.group_number
   local self = cases[number]
-  local cell = cell_of(self, column.name)
-  if cell.missing or column.hidden then return cell end
-  local steps = steps_of(plan, self, number, column.name)
+  if column.hidden or core.row_of(self, column.name) == nil then return cell_of(self, column.name, column.verdict) end
+  made[number] = made[number] or { outside = {}, cases = {} }
+  local steps = steps_of(plan, self, number, column.name, made[number])
+  local others = alternatives(self, steps)
+  keep_inputs(self, others.inputs)
+  if column.verdict then keep_sides(self, column.name) end
+  local cell = cell_of(self, column.name, column.verdict)
+  if cell.missing then return cell end
   cell.steps = steps.words
   if column.verdict and not cell.axes and cell.share < 0.5 then cell.failing = failing(self, column.name) end
-  made[number] = made[number] or { outside = {}, cases = {} }
   cell.outside = outside_validity(self, steps, made[number].outside)
-  cell.others = over_recipes(column, self, steps, cell, made[number].cases)
+  cell.others = over_recipes(column, self, others, cell, made[number].cases)
   return cell
 end
 

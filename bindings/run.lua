@@ -9,7 +9,6 @@ local records = core.part "lacuna.record"
 
 local run = {}
 local FEW = 4 -- targets, for which no processes are started
-local COLLECT_AFTER = 50000 -- draws of targets: the core's memory behind dead cases is not seen by Lua's collector
 
 -- Which targets -----------------------------------------------------------------------------------------------------------------------
 
@@ -129,12 +128,16 @@ end
 
 -- Working out -------------------------------------------------------------------------------------------------------------------------
 
--- Collects garbage now and then; called once a target.
+local ENOUGH = 16384 -- KiB
+-- Lua's collector doesn't see the ensembles behind dead cases, so it is called where these weigh enough; in its generational mode, as all
+-- that a target has left is young, and what the study holds need not be gone through.
 local function collector()
-  local every, count = math.max(1, COLLECT_AFTER // core.settings().draws), 0
+  local before = core.in_use()
   return function()
-    count = count + 1
-    if count % every == 0 then collectgarbage() end
+    if core.in_use() > before + ENOUGH then
+      collectgarbage "step"
+      before = math.min(before, core.in_use())
+    end
   end
 end
 
@@ -161,7 +164,11 @@ local function in_processes(plan, targets, todo, take, bar)
 end
 
 local function work_out(plan, targets, todo, take, bar)
-  local clearing <close> = setmetatable({}, { __close = function() bar:clear() end })
+  local mode = collectgarbage "generational"
+  local clearing <close> = setmetatable({}, { __close = function()
+    collectgarbage(mode)
+    bar:clear()
+  end })
   if command.workers and command.threads > 1 and #todo >= FEW then return in_processes(plan, targets, todo, take, bar) end
   return serially(plan, targets, todo, take)
 end

@@ -230,11 +230,19 @@ static int state_settings(lua_State *L) {
   return 1;
 }
 
+/* in_use(): KiB that values hold, which Lua's collector doesn't see. */
+static int state_in_use(lua_State *L) {
+  lua_pushnumber(L, (lua_Number)lac_state_of(L)->work.used / 1024);
+  return 1;
+}
+
 void lac_open_state(lua_State *L) {
   lua_pushboolean(L, 0); /* the key stays in the registry, so that keeping an error there never needs memory */
   lua_rawsetp(L, LUA_REGISTRYINDEX, &error_key);
   lua_pushcfunction(L, state_settings);
   lua_setfield(L, -2, "settings");
+  lua_pushcfunction(L, state_in_use);
+  lua_setfield(L, -2, "in_use");
   lua_pushcfunction(L, raise_message);
   lua_setfield(L, -2, "raise");
   lua_pushcfunction(L, show_value);

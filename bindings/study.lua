@@ -236,7 +236,7 @@ function methods.values(study, word, variant)
   for i, row in ipairs(study.rows) do
     if field then cells[i] = row[field][place]
     elseif row.failed then cells[i] = row.cells[1]
-    else cells[i] = records.cell_of(row.made[number], name) end
+    else cells[i] = records.cell_of(row.made[number], name, core.entry(name).kind == "verdict") end
   end
   return cells
 end

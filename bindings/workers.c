@@ -189,7 +189,10 @@ static int attend(lua_State *L, crew *all, int take, int tick) {
   }
   if (open == 0) return 0;
   const int ready = poll(waiting, (nfds_t)all->count, TICK_MS);
-  if (program_was_interrupted()) return lua_pushliteral(L, "interrupted"), -1;
+  if (program_was_interrupted()) { /* raised here: the hook would interrupt what closes on the way out */
+    lua_sethook(L, NULL, 0, 0);
+    return lua_pushliteral(L, "interrupted"), -1;
+  }
   for (int i = 0; ready > 0 && i < all->count; i++)
     if (waiting[i].revents != 0 && !read_worker(L, all, &all->workers[i], take)) return -1;
   lua_pushvalue(L, tick);

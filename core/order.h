@@ -36,4 +36,7 @@ typedef struct {
 lac_between lac_quantile_between(size_t n, double p);
 double lac_quantile_value(lac_between between, double lower, double upper);
 
+/* The quantiles of the elements that are not NaN, at p[0 .. count-1] each; NaN where there is none. The elements change their places. */
+void lac_quantiles_of(double *elements, size_t n, size_t count, const double *p, double *results);
+
 #endif

@@ -20,51 +20,15 @@ typedef struct {
   int shares;
 } cell_batch;
 
-/* Puts the keys of some ranks (ascending, each once, from start to end - 1) at their places: the middle one first, then those on either side
-   among the keys on that side alone. */
-static void select_ranks(uint64_t *keys, size_t start, size_t end, const size_t *ranks, size_t count) {
-  if (count == 0) return;
-  const size_t middle = count / 2, rank = ranks[middle];
-  lac_select(keys, start, end, rank);
-  select_ranks(keys, start, rank, ranks, middle);
-  select_ranks(keys, rank + 1, end, ranks + middle + 1, count - middle - 1);
-}
-
-/* Adds a rank to an ascending list where it isn't there. */
-static void add_rank(size_t *ranks, size_t *count, size_t rank) {
-  size_t place = *count;
-  while (place > 0 && ranks[place - 1] > rank) place--;
-  if (place > 0 && ranks[place - 1] == rank) return;
-  memmove(ranks + place + 1, ranks + place, (*count - place) * sizeof *ranks);
-  ranks[place] = rank;
-  ++*count;
-}
-
 enum { AT_ONCE = 8 };
 
-/* The quantiles first ... last - 1 of a cell's n keys; so few that their ranks have room here. */
-static void select_quantiles(const cell_batch *batch, size_t cell, uint64_t *keys, size_t n, size_t first, size_t last) {
-  lac_between between[AT_ONCE];
-  size_t ranks[2 * AT_ONCE], count = 0;
-  for (size_t i = first; i < last; i++) {
-    between[i - first] = lac_quantile_between(n, batch->p[i]);
-    add_rank(ranks, &count, between[i - first].lower);
-    add_rank(ranks, &count, between[i - first].upper);
-  }
-  select_ranks(keys, 0, n, ranks, count);
-  for (size_t i = first; i < last; i++) {
-    const lac_between here = between[i - first];
-    batch->results[i][batch->first_cell + cell] = lac_quantile_value(here, lac_key_value(keys[here.lower]), lac_key_value(keys[here.upper]));
-  }
-}
-
 static void select_cell(const cell_batch *batch, size_t cell) {
-  double *elements = batch->elements + cell * batch->inner;
-  const size_t n = lac_keys_from(elements, batch->inner);
-  uint64_t *keys = (uint64_t *)(void *)elements;
-  for (size_t i = 0; i < batch->count && n == 0; i++) batch->results[i][batch->first_cell + cell] = NAN;
-  for (size_t first = 0; first < batch->count && n > 0; first += AT_ONCE)
-    select_quantiles(batch, cell, keys, n, first, first + AT_ONCE < batch->count ? first + AT_ONCE : batch->count);
+  double values[AT_ONCE];
+  for (size_t first = 0, some; first < batch->count; first += some) {
+    some = batch->count - first < AT_ONCE ? batch->count - first : AT_ONCE;
+    lac_quantiles_of(batch->elements + cell * batch->inner, batch->inner, some, batch->p + first, values);
+    for (size_t i = 0; i < some; i++) batch->results[first + i][batch->first_cell + cell] = values[i];
+  }
 }
 
 static void select_share(void *context, int share, bool calling) {
