@@ -47,7 +47,7 @@ details { margin: 0.4rem 0; padding: 0.3rem 0.8rem; border: 1px solid var(--line
 summary { cursor: pointer; }
 .steps li { margin: 0.8rem 0; }
 .steps p { margin: 0.15rem 0; }
-.equation { overflow-x: auto; padding: 0.25rem 0 0.25rem 1.2rem; }
+.equation { overflow: auto hidden; padding: 0.35rem 0 0.35rem 1.2rem; }
 math { font-size: 1.1rem; math-style: normal; }
 pre { background: var(--box); padding: 0.8rem; font-size: 0.85rem; line-height: 1.4; }
 .draft { background: var(--box); padding: 0.2rem 1rem; border-radius: 4px; }
@@ -64,6 +64,11 @@ figure svg { display: block; width: 38rem; max-width: 100%; height: auto; }
   body { max-width: none; padding: 0; font-size: 10pt; }
   nav { display: none; }
   details::details-content { content-visibility: visible; display: block; }
-  .scroll { overflow: visible; }
+  .scroll, .equation, pre { overflow: visible; }
+  pre { white-space: pre-wrap; }
+  .results, .values { font-size: 6.5pt; }
+  .unit { font-size: inherit; }
+  .results th, .results td, .values th, .values td { padding: 1pt 3pt; min-width: 0; }
+  .results td.number, .values td { white-space: normal; }
 }
 ]]
