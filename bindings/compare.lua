@@ -106,7 +106,7 @@ end
 local function answer_cell(made, name)
   local quantity = core.raw(made, name)
   if quantity and over_points(quantity) then return { text = without_unit(text.brief(quantity), unit_of(name)), value = quantity } end
-  local cell = records.cell_of(made, name)
+  local cell = records.cell_of(made, name, core.entry(name).kind == "verdict")
   cell.text = tables.cell_text(cell)
   if (cell.undefined or 0) > 0 then cell.text = cell.text .. (" (%s undefined)"):format(format.percent(cell.undefined)) end
   return { text = cell.text, value = quantity, missing = cell.reason }

@@ -46,7 +46,7 @@ return {
     does = "The table as CSV, with units in the headers and errors in columns of their own.",
     result = "a text",
     examples = { { two_stars, "stars:csv()" } },
-    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\n\"name,rim_radius_angle [mas],rim_radius_angle upper error [mas],rim_radius_angle lower error [mas]\\\nAlder,2.142857,,\\\nBirch,1.875,0.047,0.047\\\n\"" },
+    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\nname,rim_radius_angle [mas],rim_radius_angle upper error [mas],rim_radius_angle lower error [mas]\nAlder,2.142857,,\nBirch,1.875,0.047,0.047\n" },
   },
   {
     name = "latex", of = "study", subject = "studies", forms = { "stars:latex()" },

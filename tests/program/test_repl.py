@@ -130,7 +130,7 @@ def list_candidates(session):
     session.settle()
     check("\n" not in session.screen, "the first Tab lists nothing", session.screen)
     session.type(TAB)
-    check(session.wait(r"\n  with +the case .*\n  why +the derivation.*(\n +.*)*\n> c:w$"), "the second Tab lists all, with what they mean", session.screen)
+    check(session.wait(r"\n  with +The case .*\n  why +The derivation.*(\n +.*)*\n> c:w$"), "the second Tab lists all, with what they mean", session.screen)
     session.type(CONTROL_C)
     session.wait(PROMPT)
     session.type("c." + TAB + TAB)
