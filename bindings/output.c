@@ -122,6 +122,10 @@ static int terminal_width(lua_State *L) {
 }
 
 void lac_open_output(lua_State *L) {
-  static const luaL_Reg functions[] = {{"write_file", write_file}, {"make_folder", make_folder}, {"folder_entries", folder_entries}, {"terminal_width", terminal_width}, {NULL, NULL}};
+  static const luaL_Reg functions[] = {{"write_file", write_file},
+                                       {"make_folder", make_folder},
+                                       {"folder_entries", folder_entries},
+                                       {"terminal_width", terminal_width},
+                                       {NULL, NULL}};
   luaL_setfuncs(L, functions, 0);
 }
