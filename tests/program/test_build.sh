@@ -20,7 +20,8 @@ touch bindings/program.h
 try compiled
 want "a changed header rebuilds what uses it" 0 "bindings/interrupt.c
 bindings/program.c
-bindings/repl.c" ""
+bindings/repl.c
+bindings/workers.c" ""
 make -t >/dev/null
 
 touch core/status.c
