@@ -52,7 +52,8 @@ static void end_crew(crew *all) {
     worker *one = &all->workers[i];
     if (one->pid > 0) kill(one->pid, SIGKILL);
     if (one->pipe >= 0) close(one->pipe);
-    if (one->pid > 0) while (waitpid(one->pid, NULL, 0) < 0 && errno == EINTR) continue;
+    if (one->pid > 0)
+      while (waitpid(one->pid, NULL, 0) < 0 && errno == EINTR) continue;
     free(one->text);
     *one = (worker){.pipe = -1};
   }
@@ -135,7 +136,8 @@ static bool make_room(worker *one) {
   return true;
 }
 
-/* Hands the whole frames in a worker's buffer to the function at place `take`. Returned: whether all went well; else the error is on the stack. */
+/* Hands the whole frames in a worker's buffer to the function at place `take`. Returned: whether all went well; else an error is on the
+ * stack. */
 static bool take_frames(lua_State *L, worker *one, int take) {
   size_t at = 0;
   frame head;
@@ -164,7 +166,8 @@ static bool reap(lua_State *L, crew *all, worker *one) {
   one->pid = 0;
   all->peak += usage.ru_maxrss;
   if (status == 0 && one->have == 0) return true;
-  if (WIFSIGNALED(status)) lua_pushfstring(L, "a worker process was stopped by signal %d (%s)", WTERMSIG(status), strsignal(WTERMSIG(status)));
+  if (WIFSIGNALED(status))
+    lua_pushfstring(L, "a worker process was stopped by signal %d (%s)", WTERMSIG(status), strsignal(WTERMSIG(status)));
   else lua_pushliteral(L, "a worker process ended early");
   return false;
 }
@@ -241,6 +244,7 @@ static int error_terminal(lua_State *L) {
 }
 
 void program_open_workers(lua_State *L) {
-  static const luaL_Reg functions[] = {{"workers", run_workers}, {"clock", clock_now}, {"peak", peak_memory}, {"terminal", error_terminal}, {NULL, NULL}};
+  static const luaL_Reg functions[] = {
+      {"workers", run_workers}, {"clock", clock_now}, {"peak", peak_memory}, {"terminal", error_terminal}, {NULL, NULL}};
   luaL_setfuncs(L, functions, 0);
 }

@@ -1,8 +1,8 @@
 /* SPDX-License-Identifier: GPL-3.0-or-later */
-/* Several order statistics of one set of elements. The elements are counted in bins between the least and the greatest; those in the few bins
-   that hold a wanted rank are collected and selected among. Bins are of equal width; where all elements are positive, and may range over decades,
-   of equal width in their bits, which is nearly that in their logarithms. The bin of an element never falls as the element grows, so that the
-   result is exact whatever the rounding. Where too many share a bin, or an element is infinite, all are selected among. */
+/* Several order statistics of one set of elements. The elements are counted in bins between the least and the greatest; those in the few
+   bins that hold a wanted rank are collected and selected among. Bins are of equal width; where all elements are positive, and may range
+   over decades, of equal width in their bits, which is nearly that in their logarithms. The bin of an element never falls as the element
+   grows, so that the result is exact whatever the rounding. Where too many share a bin, or one is infinite, all are selected among. */
 #include <math.h>
 #include <stdbool.h>
 #include <stdlib.h>
@@ -173,6 +173,7 @@ void lac_quantiles_of(double *elements, size_t n, size_t count, const double *p,
   for (size_t first = 0, some; first < count; first += some) {
     some = count - first < MOST_RANKS / 2 ? count - first : MOST_RANKS / 2;
     if (n > 0) some_quantiles(elements, n, some, p + first, results + first);
-    else for (size_t i = 0; i < some; i++) results[first + i] = NAN;
+    else
+      for (size_t i = 0; i < some; i++) results[first + i] = NAN;
   }
 }

@@ -33,9 +33,21 @@ typedef double shape(void);
 static const struct {
   const char *name;
   shape *draw;
-} shapes[] = {{"even", even}, {"positive", positive}, {"negative", negative}, {"decades", decades}, {"both signs", both_signs}, {"one far", one_far},
-              {"same", same}, {"few", few}, {"zeros", zeros}, {"infinite", with_infinite}, {"undefined", undefined_too}, {"mostly one", mostly_one},
-              {"tiny", tiny}, {"nearly same", nearly_same}, {"huge", huge}};
+} shapes[] = {{"even", even},
+              {"positive", positive},
+              {"negative", negative},
+              {"decades", decades},
+              {"both signs", both_signs},
+              {"one far", one_far},
+              {"same", same},
+              {"few", few},
+              {"zeros", zeros},
+              {"infinite", with_infinite},
+              {"undefined", undefined_too},
+              {"mostly one", mostly_one},
+              {"tiny", tiny},
+              {"nearly same", nearly_same},
+              {"huge", huge}};
 
 /* By value, and -0 before +0. */
 static int compare(const void *a, const void *b) {
