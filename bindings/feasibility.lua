@@ -186,7 +186,7 @@ local function verdict_sentences(study, one, draws)
 end
 
 -- What other recipes would make of the verdicts of a group: no verdict is said without it.
-local function recipes_sentence(group_verdicts)
+local function recipes_sentence(group_verdicts, draws)
   local changed, order, moved = {}, {}, {}
   for _, one in ipairs(group_verdicts) do
     for _, recipe in ipairs(one.recipes) do
@@ -203,7 +203,7 @@ local function recipes_sentence(group_verdicts)
   if #order == 0 then return "What is given allows no other published recipe on the way to this." end
   local unchanged = {}
   for _, words in ipairs(order) do if moved[words] == "no" then unchanged[#unchanged + 1] = verdicts.recipe_words(words) end end
-  if #unchanged > 0 then changed[#changed + 1] = ("%s would move no answer across one half of the draws%s"):format(verdicts.list(unchanged), #changed > 0 and " here" or "") end
+  if #unchanged > 0 then changed[#changed + 1] = ("%s would %s%s"):format(verdicts.list(unchanged), draws and "move no answer across one half of the draws" or "change no answer", #changed > 0 and " here" or "") end
   return "Over the recipes: " .. table.concat(changed, "; ") .. "."
 end
 
@@ -256,7 +256,7 @@ local function group_paragraph(study, group, of_verdicts, draws, said)
     end
   end
   for _, sentence in ipairs(missing_sentences(study, columns)) do add(sentence) end
-  if #own > 0 then add(recipes_sentence(own)) end
+  if #own > 0 then add(recipes_sentence(own, draws)) end
   return #columns > 0 and sentences or {}
 end
 
