@@ -66,7 +66,9 @@ function derivation.of(self, name)
     for i, condition in ipairs(conditions) do chain.conditions[i] = text.condition(condition) end
   end
   for _, other in ipairs(case.over_recipes(self, name)) do
-    if is_another_recipe(self, other) then chain.others[#chain.others + 1] = { name = other.name, row = other.row, instead_of = other.instead_of, value = text.brief(other.value) } end
+    if is_another_recipe(self, other) then
+      table.insert(chain.others, { name = other.name, row = other.row, instead_of = other.instead_of, value = text.brief(other.value) })
+    end
   end
   return chain
 end

@@ -78,7 +78,8 @@ local function add_chain(lines, one, seen, cited)
   local chain, column = one.chain, one.column
   local function add(line) lines[#lines + 1] = line end
   add(("\\subsection*{%s}"):format((column.group and escaped(column.group) .. ": " or "") .. words(chain.name)))
-  add(("%s: %s.%s"):format(escaped(chain.meaning):gsub("^%l", string.upper), escaped(chain.value), chain.numbers and " " .. escaped(chain.numbers):gsub("^%l", string.upper) .. "." or ""))
+  local function sentence(words) return (escaped(words):gsub("^%l", string.upper)) end
+  add(("%s: %s.%s"):format(sentence(chain.meaning), escaped(chain.value), chain.numbers and " " .. sentence(chain.numbers) .. "." or ""))
   local steps = new_steps(chain, seen)
   if #steps < #chain.steps then add "What leads there besides stands above." end
   if #steps > 0 then

@@ -185,8 +185,10 @@ local function verdict_sentences(study, one, draws)
   return present(capital(answer) .. ".", reason_sentence(one))
 end
 
+local function share_words(share) return share == 1 and "yes" or share == 0 and "no" or format.percent(share) .. " of the draws" end
+
 -- What other recipes would make of the verdicts of a group: no verdict is said without it.
-local function recipes_sentence(group_verdicts)
+local function recipes_sentence(group_verdicts, draws)
   local changed, order, moved = {}, {}, {}
   for _, one in ipairs(group_verdicts) do
     for _, recipe in ipairs(one.recipes) do
@@ -195,7 +197,7 @@ local function recipes_sentence(group_verdicts)
       if #recipe.names > 0 then
         moved[recipe.words] = "yes"
         changed[#changed + 1] = ("with %s, whether %s changes for %s"):format(verdicts.recipe_words(recipe.words), one.words,
-          recipe.asked == 1 and recipe.names[1] .. (recipe.low == 1 and ", to yes" or recipe.low == 0 and ", to no" or ", to " .. format.percent(recipe.low) .. " of the draws")
+          recipe.asked == 1 and recipe.names[1] .. ", to " .. share_words(recipe.low)
             or ("%d of %d targets (%s)"):format(#recipe.names, recipe.asked, verdicts.list(recipe.names)))
       end
     end
@@ -203,7 +205,10 @@ local function recipes_sentence(group_verdicts)
   if #order == 0 then return "What is given allows no other published recipe on the way to this." end
   local unchanged = {}
   for _, words in ipairs(order) do if moved[words] == "no" then unchanged[#unchanged + 1] = verdicts.recipe_words(words) end end
-  if #unchanged > 0 then changed[#changed + 1] = ("%s would move no answer across one half of the draws%s"):format(verdicts.list(unchanged), #changed > 0 and " here" or "") end
+  if #unchanged > 0 then
+    changed[#changed + 1] = ("%s would %s%s"):format(verdicts.list(unchanged), draws and "move no answer across one half of the draws" or "change no answer",
+      #changed > 0 and " here" or "")
+  end
   return "Over the recipes: " .. table.concat(changed, "; ") .. "."
 end
 
@@ -256,7 +261,7 @@ local function group_paragraph(study, group, of_verdicts, draws, said)
     end
   end
   for _, sentence in ipairs(missing_sentences(study, columns)) do add(sentence) end
-  if #own > 0 then add(recipes_sentence(own)) end
+  if #own > 0 then add(recipes_sentence(own, draws)) end
   return #columns > 0 and sentences or {}
 end
 

@@ -8,7 +8,8 @@ local LONGEST_NAME = 68 -- of a text in one card
 
 -- Texts in a FITS file are printable ASCII.
 local function ascii(text)
-  return (text:gsub("%s+", " "):gsub("±", "+-"):gsub("µ", "u"):gsub(utf8.charpattern, function(character) return #character > 1 and "?" or nil end):gsub("[^\x20-\x7e]", "?"))
+  text = text:gsub("%s+", " "):gsub("±", "+-"):gsub("µ", "u")
+  return (text:gsub(utf8.charpattern, function(character) return #character > 1 and "?" or nil end):gsub("[^\x20-\x7e]", "?"))
 end
 
 -- A column's name: letters, digits and underscores, as the standard advises, unlike the others whatever their case.
@@ -24,7 +25,10 @@ local function column_name(field, taken)
   return name
 end
 
-local parts = { verdict = "the verdict in words: ", share = "the share of the draws in which it holds: ", ["upper error"] = "upper error (central 68 %) of ", ["lower error"] = "lower error (central 68 %) of " }
+local parts = {
+  verdict = "the verdict in words: ", share = "the share of the draws in which it holds: ",
+  ["upper error"] = "upper error (central 68 %) of ", ["lower error"] = "lower error (central 68 %) of ",
+}
 
 local function description(field)
   if not field.entry then return field.name == "name" and "the target" or "as the study's file has it" end

@@ -89,7 +89,8 @@ end
 local function answer(one, draws, all)
   local lines = {}
   local function add(kind, words, names)
-    if #one[kind] > 0 then lines[#lines + 1] = ('<dt><span class="key %s" aria-hidden="true"></span>%s: %d of %d</dt><dd>%s</dd>'):format(kind, words, #one[kind], all, names) end
+    if #one[kind] == 0 then return end
+    lines[#lines + 1] = ('<dt><span class="key %s" aria-hidden="true"></span>%s: %d of %d</dt><dd>%s</dd>'):format(kind, words, #one[kind], all, names)
   end
   local high, low = format.percent(verdicts.MOSTLY), format.percent(verdicts.HARDLY)
   add("yes", draws and "Yes, in at least " .. high .. " of draws" or "Yes", names_with_shares(one.yes, true))
@@ -116,7 +117,8 @@ local function answers(study)
     for i, one in ipairs(group) do cards[i] = answer(one, draws, #study.rows) end
     parts[#parts + 1] = '<div class="answers">\n' .. table.concat(cards, "\n") .. "\n</div>"
   end
-  parts[#parts + 1] = '<p class="small">Resolved means geometrically resolved; whether a structure is detected is not assessed. The observatory’s own documents and staff decide.</p>'
+  parts[#parts + 1] = '<p class="small">Resolved means geometrically resolved; whether a structure is detected is not assessed. ' ..
+    "The observatory’s own documents and staff decide.</p>"
   return table.concat(parts, "\n")
 end
 
@@ -128,7 +130,8 @@ local function group_row(study)
     local last, group = i, study.columns[i].group
     while last < #study.columns and study.columns[last + 1].group == group do last = last + 1 end
     grouped = grouped or group ~= nil
-    cells[#cells + 1] = group and ('<th scope="colgroup" colspan="%d" class="group">%s</th>'):format(last - i + 1, html(group)) or ('<td colspan="%d"></td>'):format(last - i + 1)
+    local span = last - i + 1
+    cells[#cells + 1] = group and ('<th scope="colgroup" colspan="%d" class="group">%s</th>'):format(span, html(group)) or ('<td colspan="%d"></td>'):format(span)
     i = last + 1
   end
   if #study.texts > 0 then cells[#cells + 1] = ('<td colspan="%d"></td>'):format(#study.texts) end
@@ -144,7 +147,8 @@ end
 local function results(study)
   local heads = { '<th scope="col">Star</th>' }
   for _, column in ipairs(study.columns) do
-    heads[#heads + 1] = ('<th scope="col" class="number">%s%s</th>'):format(html(words_of(column.name)), column.unit_text ~= "" and '<br><span class="unit">' .. html(column.unit_text) .. "</span>" or "")
+    local unit = column.unit_text ~= "" and '<br><span class="unit">' .. html(column.unit_text) .. "</span>" or ""
+    heads[#heads + 1] = ('<th scope="col" class="number">%s%s</th>'):format(html(words_of(column.name)), unit)
   end
   for _, name in ipairs(study.texts) do heads[#heads + 1] = element('th scope="col"', html(name)) end
   local lines = { '<div class="scroll" tabindex="0" role="region" aria-label="Results">\n<table class="results">\n<thead>' .. group_row(study) ..
@@ -333,7 +337,8 @@ local function figures(list)
   local parts = {}
   for i, figure in ipairs(list) do
     local svg = figure.svg:gsub("^<%?xml.-%?>%s*", ""):gsub("^<!DOCTYPE.->%s*", "")
-    parts[i] = ('<figure>\n<div class="scroll" tabindex="0" role="region" aria-label="Figure %d">%s</div>\n<figcaption>%s</figcaption>\n</figure>'):format(i, svg, html(figure.caption))
+    parts[i] = ('<figure>\n<div class="scroll" tabindex="0" role="region" aria-label="Figure %d">%s</div>\n<figcaption>%s</figcaption>\n</figure>')
+      :format(i, svg, html(figure.caption))
   end
   return table.concat(parts, "\n")
 end

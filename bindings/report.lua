@@ -144,8 +144,17 @@ end
 
 -- The whole -----------------------------------------------------------------------------------------------------------------------------
 
-local function remove_mark(out)
-  for _, name in ipairs { "manifest.txt", "index.html" } do os.remove(out:path(name)) end
+-- Takes away what a report that stood here before had, as its manifest says; that first, so that the folder doesn't pass for a whole one. The
+-- records are the new run's already.
+local function remove_former(out)
+  local file = io.open(out:path "manifest.txt", "rb")
+  if not file then return end
+  local text = file:read "a"
+  file:close()
+  os.remove(out:path "manifest.txt")
+  for name in text:gmatch "\n%x+  ([^\n]+)" do
+    if name ~= "records" and not name:find "^/" and not name:find("..", 1, true) then os.remove(out:path(name)) end
+  end
 end
 
 local function complete(facts)
@@ -161,7 +170,7 @@ local function write_all(out, study, facts)
   local row, chains = derivation.of_study(study)
   local cited, composed = bibliography.new(), feasibility.of(study, facts)
   core.make_folder(out.folder)
-  remove_mark(out)
+  remove_former(out)
   write_inputs(out, facts.inputs)
   write_tables(out, study, facts)
   local drawn = write_figures(out, study)

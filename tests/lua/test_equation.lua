@@ -160,4 +160,12 @@ t.test("brackets in plain text keep the meaning", function()
   end
 end)
 
+t.test("values put in: numbers side by side are set apart, powers of values are bracketed", function()
+  local written = "4 \\pi [distance]^2 [flux]"
+  local tex = { distance = "156\\,\\mathrm{pc}", flux = "2.4\\times10^{-11}" }
+  t.equal(equation.tex(written, function(name) return tex[name] end), "4 \\cdot \\pi \\cdot \\left(156\\,\\mathrm{pc}\\right)^2 \\cdot 2.4\\times10^{-11}")
+  local mathml = equation.mathml("2 [baseline]", function() return nil, "<mrow><mn>92</mn><mtext>m</mtext></mrow>" end)
+  t.equal(mathml:find("<mn>2</mn><mo>·</mo><mrow><mn>92</mn><mtext>m</mtext></mrow>", 1, true) ~= nil, true, mathml)
+end)
+
 t.finish()

@@ -120,4 +120,23 @@ t.test("columns", function()
   t.equal(format.pad_right("too long", 4), "too long")
 end)
 
+t.test("rounded: the digits of with_error as three fields for files of numbers", function()
+  local function fields(...) return { format.rounded(...) } end
+  t.equal(fields(0.4612, 0.0314, 0.0314), { "0.461", "0.031", "0.031" })
+  t.equal(fields(0.4612, 0.0514, 0.0214), { "0.461", "0.051", "0.021" })
+  t.equal(fields(2.3999e-11, 0.2e-11, 0.2e-11), { "2.4e-11", "0.2e-11", "0.2e-11" })
+  t.equal(fields(1523.4, 120, 120), { "1520", "120", "120" })
+  t.equal(fields(0 / 0, 1, 1), { "", "", "" })
+  t.equal(fields(2, math.huge, 1), { "2", "", "" })
+  math.randomseed(20261201)
+  for _ = 1, 1000 do -- what is read back is within half a unit of the error's second digit
+    local value, upper, lower = (math.random() - 0.5) * 10 ^ math.random(-12, 12), 10 ^ (math.random() * 6 - 6), 10 ^ (math.random() * 6 - 6)
+    upper, lower = upper * math.abs(value), lower * math.abs(value)
+    local texts = fields(value, upper, lower)
+    local smaller = math.min(upper, lower)
+    local step = 10 ^ (math.floor(math.log(math.max(smaller, math.max(upper, lower) / 100), 10)) - 1)
+    t.equal(math.abs(tonumber(texts[1]) - value) <= 6 * step, true, ("%.17g %.17g %.17g: %s"):format(value, upper, lower, table.concat(texts, " ")))
+  end
+end)
+
 t.finish()

@@ -79,7 +79,7 @@ def compare(columns, keys, path):
     defects = []
     for i, (one, cells) in enumerate(zip(header, columns.values())):
         unit = re.search(r" \[([^\]]*)\]$", one)
-        wanted = re.sub(r"\bau\b", "AU", unit.group(1)) if unit else None  # as the FITS standard writes it, table 5
+        wanted = re.sub(r"\bau\b", "AU", unit.group(1)) if unit else None  # as the FITS standard's table of further units has it (from memory)
         if keys.get(f"TUNIT{i + 1}") != wanted:
             defects.append(f"unit of {one}: {keys.get(f'TUNIT{i + 1}')}")
         for line, cell in zip(lines, cells):
