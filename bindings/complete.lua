@@ -26,7 +26,8 @@ local complete = { environment = { _G } }
 -- What is expected ------------------------------------------------------------------------------------------------------------------
 --
 -- An expectation tells what may stand in a place: text(content, object) -> candidates, word's start in the content: of what a string there
--- may hold, as an argument of a method of that object; and of a table there: keys(already there) -> candidates; value(key), element: the expectation of a field, of an item.
+-- may hold, as an argument of a method of that object; and of a table there: keys(already there) -> candidates; value(key), element: the
+-- expectation of a field, of an item.
 
 -- Several lists in one; of equal words the first counts.
 local function join(...)
@@ -308,6 +309,7 @@ end
 
 -- Words of a text in lines of so many columns.
 local function wrapped(words, columns)
+  if format.width(words) <= columns then return { words } end
   local lines, line, width = {}, "", 0
   for word in gmatch(words, "%S+") do
     local more = format.width(word)
