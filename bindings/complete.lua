@@ -6,7 +6,8 @@
 --     cursor       how many bytes of the input stand before it
 --     environment  a list of plain tables in which variables are looked up, the first before the second; the session's if left out
 --     start        where the word begins, from 1
---     candidates   a list of {text =, meaning =, append =, group =}; common = what all that begin like the word have in common
+--     candidates   a list of {text =, meaning =, group =}; one alone has append = what may be put behind it;
+--                  common = what all that begin like the word have in common
 --     files        true where the word is the name of a file, which others know better
 --   find(...): the same, but it may raise
 --   listing(candidates, from, columns, lines) -> text, last: a page of them, and the number of the last that is on it
@@ -25,7 +26,8 @@ local complete = { environment = core.part "lacuna.session".environment }
 -- What is expected ------------------------------------------------------------------------------------------------------------------
 --
 -- An expectation tells what may stand in a place: text(content, object) -> candidates, word's start in the content: of what a string there
--- may hold, as an argument of a method of that object; and of a table there: keys(already there) -> candidates; value(key), element: the expectation of a field, of an item.
+-- may hold, as an argument of a method of that object; and of a table there: keys(already there) -> candidates; value(key), element: the
+-- expectation of a field, of an item.
 
 -- Several lists in one; of equal words the first counts.
 local function join(...)
@@ -287,9 +289,10 @@ function complete.find(input, cursor, environment)
   elseif last and last.kind == "symbol" and last.text == ":" then candidates = after_colon(reading)
   elseif not (last and last.kind == "number" and last.last == start - 1) then candidates = alone(reading, word.text) end
   local written = sub(before, start)
-  local meant = {}
-  for i, candidate in ipairs(meant_by(candidates, written)) do
-    meant[i] = { text = candidate.text, meaning = candidate.meaning, group = candidate.group, append = append_to(candidate, after, closes and open.quote) }
+  local meant = meant_by(candidates, written)
+  if #meant == 1 then
+    local one = meant[1]
+    meant[1] = { text = one.text, meaning = one.meaning, group = one.group, append = append_to(one, after, closes and open.quote) }
   end
   meant.common = common_part(meant, written)
   return start, meant
@@ -306,6 +309,7 @@ end
 
 -- Words of a text in lines of so many columns.
 local function wrapped(words, columns)
+  if format.width(words) <= columns then return { words } end
   local lines, line, width = {}, "", 0
   for word in gmatch(words, "%S+") do
     local more = format.width(word)

@@ -1,6 +1,7 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
--- What completion can offer, by kind: names, units, recipes, bands, words, variables. Each list holds candidates {text =, meaning =, append =, group =},
--- append being what is put behind a word that is the only one, group a heading over several (or nil). Who gets a list doesn't change it. All from the tables; nothing here runs code of the user's.
+-- What completion can offer, by kind: names, units, recipes, bands, words, variables. Each list holds candidates
+-- {text =, meaning =, append =, group =}, append being what is put behind a word that is the only one, group a heading over several (or
+-- nil). Who gets a list doesn't change it. All from the tables; nothing here runs code of the user's.
 local core = ...
 local text = core.part "lacuna.text"
 local format = core.part "lacuna.format"
