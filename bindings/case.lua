@@ -6,10 +6,14 @@ local text = core.part "lacuna.text"
 local case = {} -- what the module offers
 local methods = core.case_methods
 
+local function by_text(a, b) return tostring(a) < tostring(b) end
 local function sorted_keys(t)
-  local keys = {}
-  for key in pairs(t) do keys[#keys + 1] = key end
-  table.sort(keys, function(a, b) return tostring(a) < tostring(b) end)
+  local keys, texts = {}, true
+  for key in pairs(t) do
+    keys[#keys + 1] = key
+    texts = texts and type(key) == "string"
+  end
+  table.sort(keys, not texts and by_text or nil)
   return keys
 end
 case.sorted_keys = sorted_keys

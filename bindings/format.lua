@@ -219,6 +219,7 @@ end
 -- Bytes that are no UTF-8 count as one column each.
 function format.width(text)
   if not text:find "[^ -~]" then return #text end
+  if not text:find "[%c\xCC-\xFF]" and not text:find "\xC2[\x80-\x9F]" and utf8.len(text) then return utf8.len(text) end -- all of one column
   local columns, at = 0, 1
   while at <= #text do
     local _, bad = utf8.len(text, at)

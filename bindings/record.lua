@@ -198,13 +198,16 @@ function records.condition_words(c, sign)
   return ("%s%s %s %s"):format(c.factor == 1 and "" or c.factor .. " × ", c.left, sign, c.right)
 end
 
-local function representative(quantity)
-  local _, factor, unit = text.display_unit(quantity)
-  return format.number(core.elements(core.median(quantity))[1] / factor, 2), unit
+-- The median of a condition's side in its display unit, to two digits, and the unit. `medians` has those that a case's cells know already, by name.
+local function representative(name, quantity, factor, medians)
+  local _, in_unit, unit = text.display_unit(quantity)
+  local median = medians[name] or core.elements(core.median(quantity))[1]
+  medians[name] = median
+  return format.number(factor * median / in_unit, 2), unit
 end
 
 -- Of a verdict that mostly is no: the conditions that fail in half of the draws or more, or else the one that fails most often.
-local function failing(self, name)
+local function failing(self, name, medians)
   local conditions, found, worst = text.conditions(self, name), {}, nil
   for _, c in ipairs(conditions) do
     if c.failed >= 0.5 then found[#found + 1] = c end
@@ -212,9 +215,9 @@ local function failing(self, name)
   end
   if #found == 0 then found[1] = worst end
   for i, c in ipairs(found) do
-    local right, unit = representative(c.right_value)
+    local right, unit = representative(c.right, c.right_value, 1, medians)
     local words = records.condition_words(c, c.greater and "<" or ">") .. " " .. format.with_unit(right, unit)
-    found[i] = { words = words, left = representative(c.factor == 1 and c.left_value or c.left_value * c.factor) }
+    found[i] = { words = words, left = representative(c.left, c.left_value, c.factor, medians) }
   end
   return found
 end
@@ -332,7 +335,7 @@ local function fill(plan, column, cases, made)
   local number = column.group_number
   local self = cases[number]
   if column.hidden or core.row_of(self, column.name) == nil then return cell_of(self, column.name, column.verdict) end
-  made[number] = made[number] or { outside = {}, cases = {} }
+  made[number] = made[number] or { outside = {}, cases = {}, medians = {} }
   local steps = steps_of(plan, self, number, column.name, made[number])
   local others = alternatives(self, steps)
   keep_inputs(self, others.inputs)
@@ -340,7 +343,8 @@ local function fill(plan, column, cases, made)
   local cell = cell_of(self, column.name, column.verdict)
   if cell.missing then return cell end
   cell.steps = steps.words
-  if column.verdict and not cell.axes and cell.share < 0.5 then cell.failing = failing(self, column.name) end
+  if column.verdict and not cell.axes and cell.share < 0.5 then cell.failing = failing(self, column.name, made[number].medians) end
+  if cell.value and cell.upper then made[number].medians[column.name] = cell.value * column.entry.factor end
   cell.outside = outside_validity(self, steps, made[number].outside)
   cell.others = over_recipes(column, self, others, cell, made[number].cases)
   return cell
