@@ -11,7 +11,7 @@ return {
     arguments = { { "DIR", "the folder's name; it is made where it isn't there" }, { "force", "true: also into a folder that has files already" } },
     result = "a table { folder, files = { names }, missing = { what could not be written, and why } }, which prints itself",
     errors = "a folder that has files already, without force; a folder or file that can't be written: one line, and no manifest",
-    examples = { { two_stars, 'stars:report "proposal"' } },
-    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\nreport in proposal: 11 files; open proposal/index.html" },
+    examples = { { two_stars, 'stars:report("proposal").folder' } },
+    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\n\"proposal\"" },
   },
 }
