@@ -4,7 +4,7 @@
 local core = ...
 local derivation = core.part "lacuna.derivation"
 local table_tex = core.part "lacuna.table_tex"
-local text = core.part "lacuna.text"
+local relations = core.part "lacuna.relations"
 local verdicts = core.part "lacuna.verdicts"
 
 local document = {}
@@ -16,7 +16,7 @@ local function words(name) return escaped(verdicts.words_of(name)) end
 local function recipe_tex(row, cited)
   if row.source == "definition" then return "by definition" end
   local key, place = cited:key(row), row.place and "[" .. escaped(row.place):gsub("[%[%]]", "{%0}") .. "]" or ""
-  local source = key and ("\\cite%s{%s}"):format(place, key) .. (row.from_memory and " (formula from memory)" or "") or escaped(text.source(row))
+  local source = key and ("\\cite%s{%s}"):format(place, key) .. (row.from_memory and " (formula from memory)" or "") or escaped(relations.source(row))
   return row.kind == "assumed" and source or ("%s, %s"):format(words(row.by), source)
 end
 

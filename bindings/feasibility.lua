@@ -13,7 +13,7 @@ local format = core.part "lacuna.format"
 local notes = core.part "lacuna.notes"
 local tables = core.part "lacuna.table"
 local table_tex = core.part "lacuna.table_tex"
-local text = core.part "lacuna.text"
+local relations = core.part "lacuna.relations"
 local verdicts = core.part "lacuna.verdicts"
 
 local feasibility = {}
@@ -393,7 +393,7 @@ end
 
 local DRAFT = "Draft, to be edited: composed from the results"
 
-local function short_or_words(row) return bibliography.short(row) or text.source(row) end
+local function short_or_words(row) return bibliography.short(row) or relations.source(row) end
 
 -- The paragraphs as plain text, each one line.
 function feasibility.paragraphs(composed)
@@ -417,7 +417,7 @@ function feasibility.tex(composed, cited)
     paragraphs[#paragraphs + 1] = words:gsub("\1(%d+)\2", function(number)
       local row = composed.cited[tonumber(number)]
       local key = cited:key(row)
-      return key and "\\cite{" .. key .. "}" or table_tex.escaped(text.source(row))
+      return key and "\\cite{" .. key .. "}" or table_tex.escaped(relations.source(row))
     end)
   end
   return table.concat(paragraphs, "\n\n") .. "\n"

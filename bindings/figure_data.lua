@@ -7,6 +7,7 @@
 --   plane    { x, y, points = { { name, x, x_upper, x_lower, y, y_upper, y_lower, share } }, lines = { { label, words, x = {...}, y = {...} } } }
 local core = ...
 local case = core.part "lacuna.case"
+local conditions = core.part "lacuna.conditions"
 local text = core.part "lacuna.text"
 local format = core.part "lacuna.format"
 local contour = core.part "lacuna.contour"
@@ -69,11 +70,8 @@ end
 local function sweeps_of(self)
   local found, seen, givens = {}, {}, core.info(self).givens
   for _, name in ipairs(core.names()) do
-    for _, axis in ipairs(givens[name] and core.axes(givens[name]) or {}) do
-      if axis.name ~= "draw" and not seen[axis.name] then
-        seen[axis.name] = true
-        found[#found + 1] = axis
-      end
+    for _, axis in ipairs(givens[name] and text.axes(givens[name]) or {}) do
+      if not seen[axis.name] then found[#found + 1], seen[axis.name] = axis, true end
     end
   end
   return found
@@ -108,11 +106,7 @@ end
 
 -- Curves --------------------------------------------------------------------------------------------------------------------------
 
-local function draws_of(quantity)
-  for _, axis in ipairs(core.axes(quantity)) do
-    if axis.name == "draw" then return axis.length end
-  end
-end
+local function draws_of(quantity) return (select(2, text.axes(quantity))) end
 
 -- The share of a quantity's elements that are undefined: quantiles pass them over, so that it has to be said.
 local function undefined_share(quantity, draws)
@@ -154,8 +148,7 @@ local function wanted_by_verdicts(self, name)
   local found, seen = {}, {}
   for _, verdict in ipairs(verdicts) do
     local row = core.row_of(self, verdict)
-    for _, condition in ipairs(row and core.row(row).conditions or {}) do
-      local c = text.parse_condition(condition)
+    for _, c in ipairs(conditions.of_row(row and core.row(row))) do
       if c.left == name and not seen[c.right] then
         seen[c.right] = true
         found[#found + 1] = { name = c.right, factor = c.factor, verdict = verdict }
@@ -282,7 +275,7 @@ end
 -- By how much a verdict without draws is reached: the least ratio of its conditions' sides, at least 1 where it says yes.
 local function ratio_of(self, verdict)
   local least
-  for _, c in ipairs((text.conditions(self, verdict))) do
+  for _, c in ipairs((conditions.of(self, verdict))) do
     local ratio = c.greater and c.margin or 1 / c.margin
     least = least and core.least(least, ratio) or ratio
   end

@@ -1,6 +1,7 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- Figures in words and numbers: the data as CSV, a caption, a sentence for those who don't see the picture, and a picture in block characters.
 local core = ...
+local relations = core.part "lacuna.relations"
 local text = core.part "lacuna.text"
 local format = core.part "lacuna.format"
 local tables = core.part "lacuna.table"
@@ -191,7 +192,7 @@ function words.alternative(figure) return alternative[figure.kind](figure.data) 
 
 -- Captions ------------------------------------------------------------------------------------------------------------------------
 
-local function symbol_of(axis) return axis.name and not axis.verdict and core.find(axis.name) == axis.name and text.symbol(axis.name) or nil end
+local function symbol_of(axis) return axis.name and not axis.verdict and core.find(axis.name) == axis.name and relations.symbol(axis.name) or nil end
 local function named(axis)
   local symbol = symbol_of(axis)
   return (axis.verdict == "share" and "share of draws: " or "") .. axis.words .. (symbol and " " .. symbol or "")

@@ -2,6 +2,7 @@
 -- The tables as plain Lua data, for documents and programs of one's own: names with their recipes and equations, words, sources.
 local core = ...
 local equation = core.part "lacuna.equation"
+local relations = core.part "lacuna.relations"
 local text = core.part "lacuna.text"
 local case = core.part "lacuna.case"
 
@@ -29,9 +30,9 @@ local function recipe(row)
   for i, range in ipairs(row.holds) do holds[i] = bound(range) end
   local with_equation = row.equation and row.equation ~= ""
   return {
-    gives = row.gives, by = row.by, kind = row.kind, from = row.from, source = row.source, source_text = row.source == "definition" and "definition" or text.source(row),
+    gives = row.gives, by = row.by, kind = row.kind, from = row.from, source = row.source, source_text = row.source == "definition" and "definition" or relations.source(row),
     from_memory = row.from_memory, supposes = row.supposes, unchecked = row.unchecked, inverse_of = row.inverse_of, assumes = row.assumes, holds = holds,
-    equation = with_equation and equation.plain(row.equation, text.symbol) or nil,
+    equation = with_equation and equation.plain(row.equation, relations.symbol) or nil,
     equation_tex = with_equation and equation.tex(row.equation, symbol_tex) or nil,
     equation_mathml = with_equation and equation.mathml(row.equation, symbol_tex) or nil,
   }
@@ -46,7 +47,7 @@ local function facts(name)
   local _, _, _, si = core.unit_facts(entry.unit)
   return {
     name = name, kind = entry.kind, subject = entry.subject, meaning = entry.meaning, unit = entry.unit, unit_plain = unit_plain(entry), unit_si = si, range = entry.range,
-    symbol = text.symbol(name), symbol_tex = symbol_tex(name), symbol_mathml = equation.mathml(symbol_tex(name), function(other) return other end),
+    symbol = relations.symbol(name), symbol_tex = symbol_tex(name), symbol_mathml = equation.mathml(symbol_tex(name), function(other) return other end),
     synonyms = synonyms, on_sky = entry.on_sky, hint = entry.hint, recipes = recipes,
   }
 end

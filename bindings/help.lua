@@ -1,7 +1,7 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- help(): a map by subject. help "gap_width": one name. help "word": one word of the language, a unit, or a search. All from the tables.
 local core = ...
-local text = core.part "lacuna.text"
+local relations = core.part "lacuna.relations"
 local format = core.part "lacuna.format"
 local words = core.part "lacuna.words"
 local recipes = core.part "lacuna.recipes"
@@ -79,7 +79,7 @@ end
 
 local function about_name(name)
   local entry = core.entry(name)
-  local lines = new_page(("%s  %s"):format(name, text.symbol(name)), "  " .. entry.meaning)
+  local lines = new_page(("%s  %s"):format(name, relations.symbol(name)), "  " .. entry.meaning)
   if entry.kind == "verdict" then lines[#lines + 1] = "  a verdict: yes, no, or in so many per cent of the draws"
   elseif entry.kind == "object" then lines[#lines + 1] = "  an object"
   else lines[#lines + 1] = ("  %s%s"):format(unit_text(entry), entry.range ~= "any" and ", " .. entry.range or "") end

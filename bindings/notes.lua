@@ -3,10 +3,10 @@
 -- with their sources, what is assumed and supposed, and how far the answer goes. Each note is { heading, lines }. All comes from the
 -- targets' records: no case is needed.
 local core = ...
+local conditions = core.part "lacuna.conditions"
 local equation = core.part "lacuna.equation"
 local format = core.part "lacuna.format"
-local records = core.part "lacuna.record"
-local text = core.part "lacuna.text"
+local relations = core.part "lacuna.relations"
 
 local notes = {}
 
@@ -241,7 +241,7 @@ local function recipes(used)
     for _, entry in each(by) do
       local row = entry.relation
       if row and row.kind ~= "definition" and row.kind ~= "assumed" and row.source ~= "definition" then
-        local names = at(by_source, text.recipe(row) .. (row.supposes and "; supposes " .. row.supposes or ""))
+        local names = at(by_source, relations.recipe(row) .. (row.supposes and "; supposes " .. row.supposes or ""))
         at(names, name, yes)
       end
     end
@@ -257,7 +257,7 @@ local function assumed(study, used)
     for _, entry in each(by) do
       local row = entry.relation
       if row and row.kind == "assumed" then
-        said[#said + 1] = ("%s = %s (%s)%s"):format(name, row.assumes, text.source(row), row.supposes and ": " .. row.supposes or "")
+        said[#said + 1] = ("%s = %s (%s)%s"):format(name, row.assumes, relations.source(row), row.supposes and ": " .. row.supposes or "")
       end
     end
   end
@@ -287,10 +287,7 @@ local function meaning_of_verdicts(study, used)
     if column.verdict and used.values[column.name] then
       for _, entry in each(used.values[column.name]) do
         local words = {}
-        for i, condition in ipairs(entry.relation and entry.relation.conditions or {}) do
-          local c = text.parse_condition(condition)
-          words[i] = records.condition_words(c, c.sign)
-        end
+        for i, c in ipairs(conditions.of_row(entry.relation)) do words[i] = conditions.words(c, c.sign) end
         local line = generic(column.name .. ": " .. table.concat(words, ", and "), column.name)
         if entry.relation and entry.relation.unchecked then line = line .. "; not checked: " .. generic(entry.relation.unchecked, column.name) end
         if #words > 0 then at(said, line) end

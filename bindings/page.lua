@@ -10,6 +10,7 @@ local format = core.part "lacuna.format"
 local notes = core.part "lacuna.notes"
 local style = core.part "lacuna.page_style"
 local tables = core.part "lacuna.table"
+local relations = core.part "lacuna.relations"
 local text = core.part "lacuna.text"
 local verdicts = core.part "lacuna.verdicts"
 
@@ -165,14 +166,14 @@ end
 
 -- Derivations ------------------------------------------------------------------------------------------------------------------------
 
-local function source_of(row) return row.source == "definition" and "by definition" or html(words_of(row.by)) .. ": " .. html(text.source(row)) end
+local function source_of(row) return row.source == "definition" and "by definition" or html(words_of(row.by)) .. ": " .. html(relations.source(row)) end
 
 local function step_html(step)
   local lines = { ("<p><strong>%s</strong> = %s"):format(html(words_of(step.name)), html(step.value)) }
   local function add(form, ...) lines[#lines + 1] = form:format(...) end
   if step.kind == "given" then add(", given%s</p>", step.source and " (" .. html(step.source) .. ")" or "")
   elseif step.kind == "assumed" then
-    add(", assumed (%s)%s</p>", html(text.source(step.row)), step.row.supposes and ": " .. html(step.row.supposes) or "")
+    add(", assumed (%s)%s</p>", html(relations.source(step.row)), step.row.supposes and ": " .. html(step.row.supposes) or "")
   else
     add("</p>")
     if step.equation then add('<div class="equation">%s</div>', derivation.equation_mathml(step)) end
@@ -288,20 +289,20 @@ end
 
 local function assumptions(study)
   local rows = relation_rows(study, function(row) return row.kind == "assumed" end,
-    function(name, row) return { html(words_of(name)), html(row.assumes), html(text.source(row)), html(row.supposes or "") } end)
+    function(name, row) return { html(words_of(name)), html(row.assumes), html(relations.source(row)), html(row.supposes or "") } end)
   if #rows == 0 then return "<p>Nothing is assumed.</p>" end
   return plain_table("Assumptions", { "Quantity", "Assumed", "Source", "Which supposes" }, rows)
 end
 
 local function recipes(study, parts)
   local rows = relation_rows(study, function(row) return row.kind ~= "assumed" and row.kind ~= "definition" and row.source ~= "definition" end,
-    function(name, row) return { html(words_of(name)), element("code", html(row.by)), html(text.source(row)), html(row.supposes or "") } end)
+    function(name, row) return { html(words_of(name)), element("code", html(row.by)), html(relations.source(row)), html(row.supposes or "") } end)
   local lines = { #rows > 0 and plain_table("Recipes", { "Quantity", "Recipe", "Source", "Supposes" }, rows) or "<p>All follows by definition.</p>" }
   local others = {}
   for i, found in ipairs(derivation.others(parts.chains)) do
     others[i] = { html((found.column.group and found.column.group .. ": " or "") .. words_of(found.chain.name)), html(found.chain.value:match "^[^:]*"),
       html(with_other(found.other)), html(found.other.value),
-      html(text.source(found.other.row)) }
+      html(relations.source(found.other.row)) }
   end
   if #others > 0 then
     lines[#lines + 1] = element("h3", "What other recipes would have given for " .. html(parts.row.name))

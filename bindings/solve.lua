@@ -184,7 +184,7 @@ local function solve(self, word, goals, options)
   self = with_assumed(self, given)
   local info = core.info(self)
   if not info.givens[given] then core.raise(("solve: %s is not given in this case; only what is given or assumed can be solved for"):format(given)) end
-  if core.row_of(self, goal_name) == nil then core.raise(text.not_had(self:missing(goal_name))) end
+  if core.row_of(self, goal_name) == nil then core.raise(core.part "lacuna.missing".not_had(self, goal_name)) end
   local depends = false
   for _, step in ipairs(core.steps(self, goal_name)) do depends = depends or step.name == given end
   if not depends then core.raise(("solve: %s doesn't depend on %s in this case"):format(goal_name, given)) end

@@ -51,9 +51,8 @@ local function read_givens(given, what)
       local as_written = text.as_written(name, given[word])
       local ok, value = pcall(core.given, name, given[word])
       if not ok then error(what .. ": " .. records.bare(value), 0) end
-      for _, axis in ipairs(core.axes(value)) do
-        if axis.name ~= "draw" then error(("%s: %s wants one value or an error bar in a study, not one along %s; make it variants"):format(what, name, axis.name), 0) end
-      end
+      local axis = text.axes(value)[1]
+      if axis then error(("%s: %s wants one value or an error bar in a study, not one along %s; make it variants"):format(what, name, axis.name), 0) end
       givens[name], written[name] = value, as_written or text.quantity(value)
     end
   end

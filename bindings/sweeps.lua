@@ -72,7 +72,7 @@ local function reduced(quantity, verdict, factor, axes)
     for i, value in ipairs(list) do list[i] = verdict and 100 * value or value / factor end
     return list
   end
-  if not text.has_draws(core.axes(quantity)) then return { middle = plain(quantity) } end
+  if not select(2, text.axes(quantity)) then return { middle = plain(quantity) } end
   if verdict then return { middle = plain(core.chance(quantity)), share = true } end
   local low, median, high = core.spread_of(quantity)
   return { low = plain(low), middle = plain(median), high = plain(high) }
