@@ -5,14 +5,12 @@ local core = ...
 local format = core.part "lacuna.format"
 local show = core.part "lacuna.show"
 local sweeps = core.part "lacuna.sweeps"
-local tables = core.part "lacuna.table"
 local relations = core.part "lacuna.relations"
 local text = core.part "lacuna.text"
 local textplot = core.part "lacuna.textplot"
 
 local answers = {}
 
-local function columns() return math.max(core.terminal_width() or 80, 40) end
 local function add(lines, line) lines[#lines + 1] = line end
 
 -- Ensembles -----------------------------------------------------------------------------------------------------------------------
@@ -134,7 +132,7 @@ end
 -- Sentences, wrapped and set in.
 local function add_sentences(lines, sentences)
   for _, sentence in ipairs(sentences) do
-    for i, part in ipairs(tables.wrapped(sentence, columns() - 6)) do add(lines, (i == 1 and "    " or "      ") .. part) end
+    for i, part in ipairs(format.wrapped(sentence, show.columns() - 6)) do add(lines, (i == 1 and "    " or "      ") .. part) end
   end
 end
 
@@ -143,7 +141,7 @@ local function add_pairs(lines, pairs_)
   local widest = 0
   for _, pair in ipairs(pairs_) do widest = math.max(widest, format.width(pair[1])) end
   for _, pair in ipairs(pairs_) do
-    for i, part in ipairs(tables.wrapped(pair[2], math.max(columns() - widest - 6, 24))) do
+    for i, part in ipairs(format.wrapped(pair[2], math.max(show.columns() - widest - 6, 24))) do
       add(lines, "    " .. format.pad_right(i == 1 and pair[1] or "", widest) .. "  " .. part)
     end
   end
@@ -213,7 +211,7 @@ end
 -- A plain table in one line: the beginning, and how much there is.
 function answers.table(whole, depth)
   depth = depth or 0
-  local parts, wide, room = {}, 0, depth == 0 and columns() - 24 or 24
+  local parts, wide, room = {}, 0, depth == 0 and show.columns() - 24 or 24
   local function put(part)
     if #parts > 0 and wide + format.width(part) + 2 > room then return false end
     wide = wide + format.width(part) + 2

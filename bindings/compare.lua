@@ -203,7 +203,7 @@ local function as_text(columns, rows, notes)
     whole.rows[i] = { name = label(row), cells = row.cells, rule = row.kind == "answer" and last ~= "answer" and i > 1 }
     last = row.kind
   end
-  return tables.text(whole, core.terminal_width() or tables.WIDTH)
+  return tables.text(whole)
 end
 
 local function compare(self, variants, asks)

@@ -1,13 +1,13 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
--- Derivations as data, for the page and the document of a report: for each quantity that a study asks, the chain that leads to it for one
--- target, with the numbers to put into the equations; and what all chains rest on.
+-- Derivations as data, for c:why and for the page and the document of a report: the chain that leads to a quantity, with the numbers to put into
+-- the equations; for each quantity that a study asks of one target; and what all chains rest on.
 --
 --   of(case, name)          { name, meaning, value, numbers = which stand in the equations, steps, conditions, unchecked, others }
 --   of_study(study)         the target's row, and a list of { column, case, chain }: one for each column that could be derived
 --   assumptions(chains), recipes(chains), others(chains)   each once, in the order of the chains
 --
 -- A step is { name, kind = "given", "assumed" or "derived", value (text), row (the relation; none of a given), equation, right_side,
--- inputs = { [name] = { number, unit, unit_tex } to put in }, warnings, source = words on a given object, source_id }.
+-- inputs = { [name] = { number, unit, unit_tex } to put in }, objects = { [name] = words }, warnings, source = words on a given object, source_id }.
 local core = ...
 local case = core.part "lacuna.case"
 local conditions = core.part "lacuna.conditions"
@@ -18,22 +18,18 @@ local text = core.part "lacuna.text"
 
 local derivation = {}
 
--- The numbers for the names in a row's right side. Names that have none (objects) keep their symbols.
-local function numbers_for(self, right_side)
-  local inputs = {}
+-- What is put in for the names in a row's right side: numbers, and the words of objects, which have none.
+local function inputs_of(self, right_side)
+  local numbers, objects = {}, {}
   for _, name in ipairs(equation.names(right_side)) do
     local value = core.raw(self, name)
-    if value and not core.object_type(value) then
+    if core.object_type(value) then objects[name] = tostring(value)
+    elseif value then
       local number, unit, unit_tex = text.representative(value)
-      inputs[name] = { number = number, unit = unit, unit_tex = unit_tex }
+      numbers[name] = { number = number, unit = unit, unit_tex = unit_tex }
     end
   end
-  return inputs
-end
-
--- An equation's numbers to four digits: 1.0289939699622 is 1.029.
-local function shortened(written)
-  return written and written:gsub("%d+%.%d%d%d%d+", function(digits) return format.number(tonumber(digits), 4) end)
+  return numbers, objects
 end
 
 local function step_of(self, step)
@@ -45,11 +41,14 @@ local function step_of(self, step)
   end
   local row = core.row(step.row)
   if row.kind == "assumed" then return { name = step.name, kind = "assumed", value = text.quantity(value), row = row } end
-  local right_side = shortened(relations.right_side(row))
-  return {
-    name = step.name, kind = "derived", value = text.brief(value), row = row, right_side = right_side,
-    equation = row.equation ~= "" and shortened(row.equation) or nil, inputs = right_side and numbers_for(self, right_side), warnings = relations.warnings(self, row),
+  local right_side = relations.right_side(row)
+  local derived = {
+    name = step.name, kind = "derived", value = text.brief(value), row = row, warnings = relations.warnings(self, row),
+    equation = row.equation ~= "" and format.shortened(row.equation) or nil,
+    right_side = right_side and format.shortened(right_side),
   }
+  if right_side then derived.inputs, derived.objects = inputs_of(self, right_side) end
+  return derived
 end
 
 -- Whether it is a choice, and not the same with less known: a verdict with fewer conditions, say.
@@ -184,11 +183,12 @@ function derivation.numbers_tex(step)
   end)
 end
 
+-- In plain text objects stand by their names.
 function derivation.numbers_plain(step)
-  if not has_numbers(step) then return nil end
+  if not has_numbers(step) and not (step.right_side and next(step.objects)) then return nil end
   return equation.plain(step.right_side, function(name)
     local input = step.inputs[name]
-    return input and format.with_unit(format.number(input.number), input.unit) or relations.symbol(name)
+    return input and format.with_unit(format.number(input.number), input.unit) or step.objects[name] or relations.symbol(name)
   end)
 end
 

@@ -20,15 +20,14 @@ local function complain(form, ...) core.raise("figure: " .. form:format(...)) en
 
 -- Axes ----------------------------------------------------------------------------------------------------------------------------
 
-local function words_of(name) return (name:gsub("_", " ")) end
+local words_of = core.part "lacuna.english".words_of
 
 function data.axis(name)
   if core.find(name) ~= name then return { name = name, words = words_of(name), unit = "1", unit_text = "", factor = 1 } end -- a sweep that no given has named
   local entry = core.entry(name)
-  local _, _, plain = core.unit_facts(entry.unit)
-  local verdict = entry.kind == "verdict"
   return {
-    name = name, words = words_of(name), unit = entry.unit, unit_text = entry.unit == "1" and "" or plain, factor = entry.factor, verdict = verdict and "share" or nil,
+    name = name, words = words_of(name), unit = entry.unit, unit_text = text.unit_of(name), factor = entry.factor,
+    verdict = entry.kind == "verdict" and "share" or nil,
   }
 end
 
@@ -336,22 +335,7 @@ end
 
 -- Planes --------------------------------------------------------------------------------------------------------------------------
 
--- All that is taken from a study: the case of a row, and what was found for a name in it. A cell has value, upper, lower, or share, or is missing.
 local function case_of(row, variant) return variant and row.variants[variant] or row.case end
-
-local function cell_of(study, row, name, variant)
-  for i, column in ipairs(study.columns) do
-    if column.name == name and column.group == variant then return row.cells[i] end
-  end
-  local self = case_of(row, variant)
-  if core.row_of(self, name) == nil then return { missing = true } end
-  local quantity = core.raw(self, name)
-  local _, _, factor, number, size = core.facts(quantity)
-  if core.entry(name).kind == "verdict" then return { share = core.elements(core.chance(quantity))[1] } end
-  if size == 1 then return number == number and { value = number / factor } or { missing = true } end
-  local value, upper, lower = text.median_and_errors(quantity, factor)
-  return value == value and { value = value, upper = upper, lower = lower } or { missing = true }
-end
 
 function data.case_of_target(study, target, variant)
   for _, row in ipairs(study.rows) do
@@ -389,14 +373,17 @@ local function common_case(study, variant, changes)
 end
 
 local function points_of(f, study)
+  local xs, ys = study:values(f.against, f.variant), study:values(f.show[1], f.variant)
+  local verdicts = f.verdict and study:values(f.verdict, f.variant)
   local points, left_out = {}, {}
-  for _, row in ipairs(study.rows) do
-    local x, y = cell_of(study, row, f.against, f.variant), cell_of(study, row, f.show[1], f.variant)
-    local verdict = f.verdict and cell_of(study, row, f.verdict, f.variant)
+  for i, row in ipairs(study.rows) do
+    local x, y = xs[i], ys[i]
     if not (x.value and y.value) then left_out[#left_out + 1] = row.name
     else
-      points[#points + 1] = { name = row.name, x = x.value, x_upper = x.upper or 0, x_lower = x.lower or 0, y = y.value, y_upper = y.upper or 0, y_lower = y.lower or 0,
-        share = verdict and verdict.share }
+      points[#points + 1] = {
+        name = row.name, x = x.value, x_upper = x.upper or 0, x_lower = x.lower or 0, y = y.value, y_upper = y.upper or 0, y_lower = y.lower or 0,
+        share = verdicts and verdicts[i].share,
+      }
     end
   end
   return points, left_out

@@ -2,6 +2,7 @@
 -- help(): a map by subject. help "gap_width": one name. help "word": one word of the language, a unit, or a search. All from the tables.
 local core = ...
 local relations = core.part "lacuna.relations"
+local text = core.part "lacuna.text"
 local format = core.part "lacuna.format"
 local words = core.part "lacuna.words"
 local recipes = core.part "lacuna.recipes"
@@ -13,17 +14,9 @@ local help = {}
 local page = { __name = "help", __tostring = core.part "lacuna.show".page }
 local function new_page(...) return setmetatable({ ... }, page) end
 
-local function wrap(list, indent, width)
-  local lines, line = {}, ""
-  for _, word in ipairs(list) do
-    if #line + #word + 2 > width and line ~= "" then
-      lines[#lines + 1] = line
-      line = ""
-    end
-    line = line .. (line == "" and (" "):rep(indent) or "  ") .. word
-  end
-  lines[#lines + 1] = line
-  return lines
+-- Names in as many lines as they take.
+local function add_names(lines, names, width)
+  for _, line in ipairs(format.wrapped(table.concat(names, " "), width - 2, "  ")) do lines[#lines + 1] = "  " .. line end
 end
 
 local subjects = {
@@ -55,7 +48,7 @@ local function map()
       if not search.is_derived(name) then names[#names + 1] = name end
     end
     lines[#lines + 1] = subject.title
-    for _, line in ipairs(wrap(names, 2, width)) do lines[#lines + 1] = line end
+    add_names(lines, names, width)
   end
   for _, subject in ipairs(words.by_subject()) do
     local names = {}
@@ -64,7 +57,7 @@ local function map()
     end
     if #names > 0 then
       lines[#lines + 1] = "words: " .. subject.title
-      for _, line in ipairs(wrap(names, 2, width)) do lines[#lines + 1] = line end
+      add_names(lines, names, width)
     end
   end
   lines[#lines + 1] = ""
@@ -73,8 +66,8 @@ local function map()
 end
 
 local function unit_text(entry)
-  local _, _, written = core.unit_facts(entry.unit)
-  return entry.unit == "1" and "a plain number" or "in " .. written
+  local unit = text.unit_of(entry.name)
+  return unit == "" and "a plain number" or "in " .. unit
 end
 
 local function about_name(name)

@@ -12,11 +12,6 @@ local recipes = {}
 
 local page = { __name = "recipes", __tostring = core.part "lacuna.show".page }
 
-local function in_unit(entry, low, high)
-  local _, _, unit = core.unit_facts(entry.unit)
-  return ("from %s to %s%s"):format(format.number(low / entry.factor), format.number(high / entry.factor), entry.unit == "1" and "" or " " .. unit)
-end
-
 -- What a row of the tables says: its equation, its source, what it supposes, where it holds. Lines set in by six.
 function recipes.describe(lines, row)
   local function add(line) lines[#lines + 1] = "      " .. line end
@@ -26,7 +21,7 @@ function recipes.describe(lines, row)
   end
   if row.supposes then add("supposes " .. row.supposes) end
   if row.unchecked then add("not checked: " .. row.unchecked) end
-  for _, bound in ipairs(row.holds) do add(("holds for %s %s"):format(bound.name, in_unit(core.entry(bound.name), bound.low, bound.high))) end
+  for _, bound in ipairs(row.holds) do add(("holds for %s %s"):format(bound.name, text.range(bound.name, bound.low, bound.high))) end
   if row.inverse_of then add("the inverse of " .. row.inverse_of:gsub("/", " by ")) end
 end
 
@@ -81,7 +76,7 @@ local function in_range(self, row)
     local entry = core.entry(found.name)
     for _, bound in ipairs(row.holds) do
       if bound.name == found.name then
-        outside[#outside + 1] = ("%s %s, holds %s%s"):format(found.name, text.brief(found.value), in_unit(entry, bound.low, bound.high),
+        outside[#outside + 1] = ("%s %s, holds %s%s"):format(found.name, text.brief(found.value), text.range(bound.name, bound.low, bound.high),
           found.single and "" or " (outside in " .. format.percent(found.share) .. ")")
       end
     end

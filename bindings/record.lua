@@ -336,10 +336,10 @@ function records.columns(groups, field)
   for number, group in ipairs(groups) do
     for _, name in ipairs(group[field]) do
       local entry = core.entry(name)
-      local _, tex, plain = core.unit_facts(entry.unit)
+      local _, tex = core.unit_facts(entry.unit)
       columns[#columns + 1] = {
         name = name, entry = entry, verdict = entry.kind == "verdict", group = group.name, group_number = number, unit = entry.unit,
-        unit_text = entry.unit == "1" and "" or plain, unit_tex = tex, label = (group.name and group.name .. ": " or "") .. name,
+        unit_text = text.unit_of(name), unit_tex = tex, label = (group.name and group.name .. ": " or "") .. name,
         hidden = field == "also" or nil,
       }
     end

@@ -282,17 +282,16 @@ end
 
 local metatable = { __name = "sensitivity" }
 function metatable.__tostring(s)
-  local columns = core.terminal_width() or tables.WIDTH
   local pages = { show.page(answer_lines(s)) }
   local shares, lines = shares_table(s)
-  if #shares.rows > 0 then pages[#pages + 1] = tables.text(shares, columns) end
+  if #shares.rows > 0 then pages[#pages + 1] = tables.text(shares) end
   if #lines > 0 then pages[#pages + 1] = show.page(lines) end
   if s.turns then
     local yes = s.yes and "yes" or "no"
     local whole = turns_table(s)
     whole.title = ("With every given at its median it is %s."):format(yes)
     if #s.turns > 0 then whole.title = whole.title .. (" What alone would make it %s, the nearest first:"):format(s.yes and "no" or "yes") end
-    pages[#pages + 1] = tables.text(whole, columns)
+    pages[#pages + 1] = tables.text(whole)
   end
   return table.concat(pages, "\n\n")
 end

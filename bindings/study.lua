@@ -209,7 +209,7 @@ local study_metatable = { __name = "study", __index = methods }
 function study_metatable.__tostring(study) return ("study of %d target%s, %d column%s"):format(#study.rows, #study.rows == 1 and "" or "s", #study.columns, #study.columns == 1 and "" or "s") end
 
 -- s:table(columns): the table and its notes as text, at most so many columns wide.
-function methods.table(study, columns) return tables.text(study, columns or core.terminal_width() or tables.WIDTH) end
+function methods.table(study, columns) return tables.text(study, columns) end
 function methods.csv(study) return core.part "lacuna.table_files".csv(study) end
 function methods.latex(study) return core.part "lacuna.table_tex".latex(study) end
 
