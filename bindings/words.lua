@@ -9,7 +9,7 @@
 --   forms     how it is written, a text for each way
 --   does      what it does; the first sentence is its meaning in one line
 --   arguments list of { what, meaning with unit }; result; errors: texts
---   examples  lines as typed at the prompt, or lists of such lines; each stands alone (an empty list where one would want the prompt itself)
+--   examples  lines as typed at the prompt, or lists of such lines; each stands alone, its stars are invented (an empty list where one would want the prompt itself)
 --   answers   what the prompt prints for the (last) line of each example; REWRITE=1 in tests/lua/test_words.lua puts them in
 --   built_in  of kinds with built-in objects: a function that returns lines about the one of a name (nil where there is none), or about all
 --   see       names of other words

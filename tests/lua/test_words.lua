@@ -1,6 +1,7 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- The records of the language's words: every word and every method has one, none is without its word, and every example prints what the
 -- record says. With REWRITE=1 in the environment the answers are put into bindings/words_*.lua, to be read before they are kept.
+-- Stars and instruments are invented.
 package.path = "tests/lua/?.lua;" .. package.path
 local t = require "harness"
 local session = require "session"
