@@ -207,7 +207,9 @@ local function as_text(columns, rows, notes)
 end
 
 local function compare(self, variants, asks)
-  if not core.is_case(self) then refuse(" wants a case first, like compare(c, {longer = {projected_baseline = \"300 m\"}}, {\"rim_elements_by_array\"}); got %s", core.shown(self)) end
+  if not core.is_case(self) then
+    refuse(' wants a case first, like compare(c, {longer = {projected_baseline = "300 m"}}, {"rim_elements_by_array"}); got %s', core.shown(self))
+  end
   variants, asks = read_variants(variants), read_asks(asks)
   local columns, result, rows = { { name = AS_IT_IS, case = self } }, {}, {}
   for i, variant in ipairs(variants) do

@@ -343,7 +343,8 @@ local function basis_paragraph(study, cite)
     #published > 0 and ("These numbers rest on the %s %s."):format(plural(#published, "recipe"), table.concat(published, "; ")),
     #practice > 0 and ("Common practice, without a published source, %s %s."):format(plural(#practice, "is", "are"), table.concat(practice, "; ")),
     #published + #practice == 0 and "All of these numbers follow by definition from what is given." or "What each supposes stands with the derivations.",
-    #assumed > 0 and ("Assumed, as not measured for %s: %s."):format(#study.rows == 1 and "the target" or "these targets", english.list(assumed, #assumed)) or "Nothing is assumed.",
+    #assumed > 0 and ("Assumed, as not measured for %s: %s."):format(#study.rows == 1 and "the target" or "these targets",
+      english.list(assumed, #assumed)) or "Nothing is assumed.",
     validity_sentence(study), undefined_sentence(study), unchecked_sentence(study, used))
 end
 

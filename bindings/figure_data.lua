@@ -133,7 +133,10 @@ local function series_of(self, name, axis, sweep, order)
   local lists = {}
   for i, part in ipairs(draws and { core.five_of(quantity) } or { quantity }) do lists[i] = along(part, axis.factor, sweep, order) end
   if not draws then return { name = name, values = lists[1], undefined = undefined_share(quantity) } end
-  return { name = name, draws = draws, undefined = undefined_share(quantity, draws), low95 = lists[1], low68 = lists[2], values = lists[3], high68 = lists[4], high95 = lists[5] }
+  return {
+    name = name, draws = draws, undefined = undefined_share(quantity, draws),
+    low95 = lists[1], low68 = lists[2], values = lists[3], high68 = lists[4], high95 = lists[5],
+  }
 end
 
 local verdicts -- all names of verdicts, found once
@@ -176,7 +179,10 @@ local function levels_of(f, self, names, axis, sweep, order)
     local value = name and self[name] or axis.verdict and core.quantity(f.level) or core.given(names[1], f.level)
     local _, wanted = core.dimension(core.unit(axis.unit))
     local _, got = core.dimension(value)
-    if wanted ~= got then complain("level wants %s, as %s is; got %s", axis.unit == "1" and "a plain number" or "a quantity in " .. axis.unit_text, names[1], core.shown(f.level)) end
+    if wanted ~= got then
+      local kind = axis.unit == "1" and "a plain number" or "a quantity in " .. axis.unit_text
+      complain("level wants %s, as %s is; got %s", kind, names[1], core.shown(f.level))
+    end
     return { level_of(value, name or nil, axis, sweep, order, 1) }
   end
   local levels = {}

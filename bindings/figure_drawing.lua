@@ -12,7 +12,8 @@ local english = core.part "lacuna.english"
 local format = core.part "lacuna.format"
 local data = core.part "lacuna.figure_data"
 local script = core.part "lacuna.figure_script"
-local literal, number, width_of, marked_symbol, marked_unit, given_label = script.literal, script.number, script.width_of, script.marked_symbol, script.marked_unit, script.given_label
+local literal, number, width_of = script.literal, script.number, script.width_of
+local marked_symbol, marked_unit, given_label = script.marked_symbol, script.marked_unit, script.given_label
 
 local drawing = {}
 local SMALL, SMALLEST = script.SMALL, script.SMALLEST

@@ -133,6 +133,9 @@ local function lines_in_words(d)
   return #names > 0 and english.list(names, #names) or nil
 end
 
+-- "projected baseline from 20 m to 330 m"
+local function extent(axis, low, high) return ("%s from %s to %s"):format(axis.words, with_unit(low, axis), with_unit(high, axis)) end
+
 local alternative = {}
 
 function alternative.curve(d)
@@ -154,8 +157,9 @@ function alternative.curve(d)
 end
 
 function alternative.map(d)
-  local said = ("Map of %s over %s from %s to %s and %s from %s to %s: from %s to %s"):format((d.z.verdict == "share" and "the share of draws with " or "") .. d.z.words, d.x.words, with_unit(d.x_values[1], d.x),
-    with_unit(d.x_values[#d.x_values], d.x), d.y.words, with_unit(d.y_values[1], d.y), with_unit(d.y_values[#d.y_values], d.y), in_words(d.z.low, d.z), in_words(d.z.high, d.z))
+  local said = ("Map of %s over %s and %s: from %s to %s"):format((d.z.verdict == "share" and "the share of draws with " or "") .. d.z.words,
+    extent(d.x, d.x_values[1], d.x_values[#d.x_values]), extent(d.y, d.y_values[1], d.y_values[#d.y_values]),
+    in_words(d.z.low, d.z), in_words(d.z.high, d.z))
   local turn = d.contours[1]
   if not turn then return said .. "." end
   local verdict, xs, ys = words_of(d.verdict), {}, {}
@@ -176,11 +180,9 @@ function alternative.plane(d)
     xs[i], ys[i] = p.x, p.y
     if p.share and p.share >= 0.5 then resolved = resolved + 1 end
   end
-  local x_low, x_high = figure_data.range(xs)
-  local y_low, y_high = figure_data.range(ys)
   local lines = lines_in_words(d)
-  return ("%d %s: %s from %s to %s, %s from %s to %s%s%s."):format(#d.points, english.plural(#d.points, "target"), d.x.words, with_unit(x_low, d.x), with_unit(x_high, d.x), d.y.words,
-    with_unit(y_low, d.y), with_unit(y_high, d.y), d.verdict and ("; %s in half of the draws or more for %d"):format(words_of(d.verdict), resolved) or "",
+  return ("%d %s: %s, %s%s%s."):format(#d.points, english.plural(#d.points, "target"), extent(d.x, figure_data.range(xs)),
+    extent(d.y, figure_data.range(ys)), d.verdict and ("; %s in half of the draws or more for %d"):format(words_of(d.verdict), resolved) or "",
     lines and "; with lines of " .. lines or "")
 end
 
@@ -268,7 +270,8 @@ end
 
 local function plain_label(axis)
   local symbol = symbol_of(axis)
-  return format.with_unit((axis.verdict == "share" and "share of draws" or axis.words) .. (symbol and " " .. symbol or ""), axis.unit_text ~= "" and "[" .. axis.unit_text .. "]" or "")
+  local words_and_symbol = (axis.verdict == "share" and "share of draws" or axis.words) .. (symbol and " " .. symbol or "")
+  return format.with_unit(words_and_symbol, axis.unit_text ~= "" and "[" .. axis.unit_text .. "]" or "")
 end
 
 local picture = {}

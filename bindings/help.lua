@@ -20,7 +20,8 @@ local function add_names(lines, names, width)
 end
 
 local subjects = {
-  { "star", "the star" }, { "photometry", "photometry" }, { "radiation", "radiation" }, { "disc", "the disc, at radius (also as planet_..., ring_...)" }, { "dust", "dust" }, { "rim", "rim and cavity" },
+  { "star", "the star" }, { "photometry", "photometry" }, { "radiation", "radiation" }, { "disc", "the disc, at radius (also as planet_..., ring_...)" },
+  { "dust", "dust" }, { "rim", "rim and cavity" },
   { "orbit", "orbits, planets, companions" }, { "gap", "gaps and rings" }, { "instrument", "instruments" },
   { "structure", "structures: rim, cavity, gap, ring" }, { "visibility", "visibilities" }, { "emission", "the disc's own light" }, { "yours", "your own" },
 }

@@ -19,7 +19,8 @@ end
 
 -- Other spellings, Greek letters, and adjectives whose nouns have another stem.
 local spellings = {
-  disk = "disc", gray = "grey", deep = "depth", high = "height", long = "length", ["α"] = "alpha", ["β"] = "beta", ["γ"] = "gamma", ["ε"] = "epsilon", ["θ"] = "theta", ["κ"] = "kappa", ["λ"] = "lambda", ["μ"] = "mu",
+  disk = "disc", gray = "grey", deep = "depth", high = "height", long = "length",
+  ["α"] = "alpha", ["β"] = "beta", ["γ"] = "gamma", ["ε"] = "epsilon", ["θ"] = "theta", ["κ"] = "kappa", ["λ"] = "lambda", ["μ"] = "mu",
   ["ν"] = "nu", ["ρ"] = "rho", ["σ"] = "sigma", ["Σ"] = "sigma", ["ω"] = "omega", ["Ω"] = "omega", ["Δ"] = "delta",
 }
 

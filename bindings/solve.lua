@@ -204,7 +204,9 @@ local function solve(self, word, goals, options)
   if defined == 0 then return nil, nothing_found(given, goal_name, text.quantity(goal), low, high, least, most) end
   if core.entry(goal_name).kind == "verdict" then return found, way_of_verdict(self, given, goal_name, found, brackets, low, high) end
   local _, _, _, _, size = core.facts(found)
-  if defined < size then return found, ("where undefined, no %s between %s and %s gives %s = %s"):format(given, write(given, low), write(given, high), goal_name, text.brief(goal)) end
+  if defined < size then
+    return found, ("where undefined, no %s between %s and %s gives %s = %s"):format(given, write(given, low), write(given, high), goal_name, text.brief(goal))
+  end
   if brackets > 1 then return found, ("the nearest of %d solutions between %s and %s"):format(brackets, write(given, low), write(given, high)) end
   return found
 end

@@ -5,13 +5,13 @@
 local core = ...
 local case = core.part "lacuna.case"
 local command = core.part "lacuna.command"
+local english = core.part "lacuna.english"
 local records = core.part "lacuna.record"
 local run = core.part "lacuna.run"
 local selection = core.part "lacuna.selection"
 local tables = core.part "lacuna.table"
 local targets = core.part "lacuna.targets"
 local text = core.part "lacuna.text"
-
 
 -- What is asked --------------------------------------------------------------------------------------------------------------------
 
@@ -206,7 +206,9 @@ end
 
 local methods = {}
 local study_metatable = { __name = "study", __index = methods }
-function study_metatable.__tostring(study) return ("study of %d target%s, %d column%s"):format(#study.rows, #study.rows == 1 and "" or "s", #study.columns, #study.columns == 1 and "" or "s") end
+function study_metatable.__tostring(study)
+  return ("study of %d %s, %d %s"):format(#study.rows, english.plural(#study.rows, "target"), #study.columns, english.plural(#study.columns, "column"))
+end
 
 -- s:table(columns): the table and its notes as text, at most so many columns wide.
 function methods.table(study, columns) return tables.text(study, columns) end

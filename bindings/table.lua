@@ -4,10 +4,12 @@
 --   { title = text or nil, texts = { headers of the texts carried along }, columns = {...}, rows = {...}, notes = {...} }
 --
 -- with columns { name (or heading = a text as it stands), entry = row of the glossary, verdict, group = heading over it or nil, unit (VOUnits), unit_text, unit_tex,
--- left = true for texts that begin below each other },
--- rows { name, texts, cells, rule = true for a rule above it }, cells { share } of a verdict or { value, upper, lower } in the column's unit (no errors: a single
--- number) or { missing = true } or { text }, or along sweeps as in record.lua (then the table has sweeps = { { name, unit, values } }), word = true where a text has no place below
--- the numbers, tail = a word behind a number, mark = "*" where one is to stand behind all, and notes { heading, lines (texts, or lists whose first text heads the others) }. A column belongs to the group of its left neighbour where the name is the same.
+-- left = true for texts that begin below each other }. A column belongs to the group of its left neighbour where the name is the same.
+--
+-- Rows { name, texts, cells, rule = true for a rule above it }; cells { share } of a verdict or { value, upper, lower } in the column's unit (no
+-- errors: a single number) or { missing = true } or { text }, or along sweeps as in record.lua (then the table has sweeps = { { name, unit,
+-- values } }); besides, word = true where a text has no place below the numbers, tail = a word behind a number, mark = "*" where one is to stand
+-- behind all. Notes { heading, lines (texts, or lists whose first text heads the others) }.
 local core = ...
 local english = core.part "lacuna.english"
 local format = core.part "lacuna.format"
