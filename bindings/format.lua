@@ -5,10 +5,12 @@
 --   number(value, digits)               "0.346", "1500", "2.4e-11"; 4 significant digits where none are asked for
 --   with_error(value, upper, lower)     "0.46 ± 0.03", "0.46 +0.05 -0.02", "(2.4 ± 0.2)e-11"
 --   rounded(value, upper, lower)        "0.46", "0.05", "0.02": the same digits as separate fields, for files of numbers
+--   shortened(text)                     long decimal fractions in it to four digits: 1.0289939699622 is 1.029
 --   percent(fraction)                   "83 %", "0.4 %", "> 99.9 %"; 100 % is said of all, 0 % of none
 --   number_tex, with_error_tex, percent_tex   the same in TeX
 --   with_unit(text, unit)               "0.46 ± 0.03 au"
 --   with_unit_tex(tex, unit)            "$0.46 \pm 0.03\,\mathrm{au}$"
+--   wrapped(text, columns, gap)         its lines, broken at spaces; longer words stand alone; between words a space, or what gap says
 --   width(text)                         columns on a terminal
 --   pad_left(text, columns), pad_right(text, columns)
 
@@ -234,5 +236,24 @@ end
 function format.pad_left(text, columns) return (" "):rep(columns - format.width(text)) .. text end
 
 function format.pad_right(text, columns) return text .. (" "):rep(columns - format.width(text)) end
+
+function format.shortened(text)
+  return (text:gsub("%d+%.%d%d%d%d+", function(digits) return format.number(tonumber(digits), 4) end))
+end
+
+function format.wrapped(text, columns, gap)
+  gap = gap or " "
+  local lines, line, width = {}, nil, 0
+  for word in text:gmatch "%S+" do
+    local more = format.width(word)
+    if line and width + #gap + more <= columns then line, width = line .. gap .. word, width + #gap + more
+    else
+      lines[#lines + 1] = line
+      line, width = word, more
+    end
+  end
+  lines[#lines + 1] = line
+  return lines
+end
 
 return format

@@ -114,7 +114,7 @@ function lacuna.relation(row)
   copy.call, copy[1] = row[1] or row.call, nil
   if type(row.equation) == "string" and row.equation ~= "" then
     for name in row.equation:gmatch "%[([%w_]+)%]" do case.name_of(name, "relation: its equation has the ") end
-    local ok, defect = pcall(core.part "lacuna.equation".plain, row.equation, text.symbol)
+    local ok, defect = pcall(core.part "lacuna.equation".plain, row.equation, core.part "lacuna.relations".symbol)
     if not ok then core.raise("relation: " .. tostring(defect)) end
   end
   return core.add_relation(copy)

@@ -4,11 +4,14 @@
 --   { title = text or nil, texts = { headers of the texts carried along }, columns = {...}, rows = {...}, notes = {...} }
 --
 -- with columns { name (or heading = a text as it stands), entry = row of the glossary, verdict, group = heading over it or nil, unit (VOUnits), unit_text, unit_tex,
--- left = true for texts that begin below each other },
--- rows { name, texts, cells, rule = true for a rule above it }, cells { share } of a verdict or { value, upper, lower } in the column's unit (no errors: a single
--- number) or { missing = true } or { text }, or along sweeps as in record.lua (then the table has sweeps = { { name, unit, values } }), word = true where a text has no place below
--- the numbers, tail = a word behind a number, mark = "*" where one is to stand behind all, and notes { heading, lines (texts, or lists whose first text heads the others) }. A column belongs to the group of its left neighbour where the name is the same.
+-- left = true for texts that begin below each other }. A column belongs to the group of its left neighbour where the name is the same.
+--
+-- Rows { name, texts, cells, rule = true for a rule above it }; cells { share } of a verdict or { value, upper, lower } in the column's unit (no
+-- errors: a single number) or { missing = true } or { text }, or along sweeps as in record.lua (then the table has sweeps = { { name, unit,
+-- values } }); besides, word = true where a text has no place below the numbers, tail = a word behind a number, mark = "*" where one is to stand
+-- behind all. Notes { heading, lines (texts, or lists whose first text heads the others) }.
 local core = ...
+local english = core.part "lacuna.english"
 local format = core.part "lacuna.format"
 
 local tables = { WIDTH = 100 } -- of a table where no terminal says otherwise
@@ -16,21 +19,6 @@ local GAP, MISSING = "  ", "—"
 local NO_BREAK = "\u{a0}"
 
 -- Lines of text -------------------------------------------------------------------------------------------------------------------
-
--- Breaks a text at its spaces into lines of at most so many columns (longer words stand alone).
-local function wrapped(text, columns)
-  local lines, line = {}, nil
-  for word in text:gmatch "%S+" do
-    if line and format.width(line) + 1 + format.width(word) <= columns then line = line .. " " .. word
-    else
-      lines[#lines + 1] = line
-      line = word
-    end
-  end
-  lines[#lines + 1] = line
-  return lines
-end
-tables.wrapped = wrapped
 
 -- A name or text from a file may have line breaks.
 local function on_one_line(text) return (text:gsub("%s*[\n\r\t\v\f]%s*", " ")) end
@@ -94,10 +82,10 @@ end
 -- A column laid out: its heading's lines, its cells' texts, its width.
 local function laid_out(column, cells)
   local texts, width = aligned(cells, column.left)
-  local name = column.heading or column.name:gsub("_", " "):gsub(" by ", " by" .. NO_BREAK)
+  local name = column.heading or english.words_of(column.name):gsub(" by ", " by" .. NO_BREAK)
   for word in name:gmatch "%S+" do width = math.max(width, format.width(word)) end
   width = math.max(width, format.width(column.unit_text or ""))
-  local heading = wrapped(name, width)
+  local heading = format.wrapped(name, width)
   for i, line in ipairs(heading) do heading[i] = line:gsub(NO_BREAK, " ") end
   return { heading = heading, unit = column.unit_text or "", texts = texts, width = width, left = column.left }
 end
@@ -196,7 +184,7 @@ end
 -- Notes: each with its heading, wrapped, the lines' further parts set in. A line may be a list: what its first text heads.
 local function add_notes(lines, notes, columns)
   local function add(text, indent)
-    for i, line in ipairs(wrapped(text, columns - indent - 2)) do lines[#lines + 1] = (" "):rep(i == 1 and indent or indent + 2) .. line end
+    for i, line in ipairs(format.wrapped(text, columns - indent - 2)) do lines[#lines + 1] = (" "):rep(i == 1 and indent or indent + 2) .. line end
   end
   for _, note in ipairs(notes) do
     lines[#lines + 1] = ""
@@ -210,11 +198,12 @@ local function add_notes(lines, notes, columns)
   end
 end
 
--- The table as text, no wider than so many columns where that can be.
+-- The table as text, no wider than so many columns where that can be; as wide as the terminal where nothing is said.
 function tables.text(whole, columns)
+  columns = columns or core.terminal_width() or tables.WIDTH
   local names_width, lines = 0, {}
   for _, row in ipairs(whole.rows) do names_width = math.max(names_width, format.width(on_one_line(row.name))) end
-  if whole.title then lines = wrapped(whole.title, columns) end
+  if whole.title then lines = format.wrapped(whole.title, columns) end
   for _, page in ipairs(pages_of(blocks_of(whole), names_width, columns)) do
     if #lines > 0 then lines[#lines + 1] = "" end
     add_page(lines, page, whole.rows, names_width)
@@ -222,20 +211,5 @@ function tables.text(whole, columns)
   add_notes(lines, whole.notes, columns)
   return table.concat(lines, "\n")
 end
-
--- CSV -----------------------------------------------------------------------------------------------------------------------------
-
-local function quoted(field)
-  if field:find '[",\r\n]' or field:find "^%s" or field:find "%s$" then return '"' .. field:gsub('"', '""') .. '"' end
-  return field
-end
-
-local function csv_line(fields)
-  for i, field in ipairs(fields) do fields[i] = quoted(field) end
-  return table.concat(fields, ",")
-end
-
-local function digits(value) return value and value == value and ("%.7g"):format(value) or "" end
-tables.csv_line, tables.digits = csv_line, digits
 
 return tables

@@ -1,6 +1,7 @@
 /* SPDX-License-Identifier: GPL-3.0-or-later */
 /* First-order variance shares: of sums and products against closed forms, by distribution and by rank; draws that are missing, few or all
-   the same; interruption. For a sum of independent terms the share of each is its variance over the sum's (Sobol' 1993, from memory). */
+   the same; interruption. For a sum of independent terms the share of each is its variance over the sum's (Sobol' 1993,
+   Mathematical Modelling and Computational Experiment 1, 407, from memory). */
 #include <math.h>
 #include <stdlib.h>
 

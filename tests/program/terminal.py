@@ -10,35 +10,26 @@ import struct
 import termios
 import time
 
+from tap import check
+
 LACUNA = os.environ["LACUNA"]
 PATIENCE = 30  # seconds for an answer; sanitised builds are slow
 CONTROL_C, CONTROL_D, CONTROL_Z, UP, LEFT, TAB, META_ENTER = "\x03", "\x04", "\x1a", "\x1b[A", "\x1b[D", "\t", "\x1b\r"
 PASTE_BEGINS, PASTE_ENDS = "\x1b[200~", "\x1b[201~"
 PROMPT = re.compile(r"(^|\n)> $")
-results = 0
-
-
-def check(good, name, seen=""):
-    global results
-    results += 1
-    print(f"{'ok' if good else 'not ok'} {results} - {name}", flush=True)
-    if not good:
-        print("# saw " + repr(seen), flush=True)
-
-
-def plan():
-    print(f"1..{results}")
 
 
 class Session:
     """One program, or another command, on a terminal of its own. screen: what was seen since the last typing, without terminal control; raw: with it, all of it."""
 
-    def __init__(self, state_folder, *options, rows=24, columns=80, command=None, **settings):
-        environment = {**os.environ, "XDG_STATE_HOME": state_folder, "XDG_CONFIG_HOME": state_folder, "TERM": "xterm", "INPUTRC": "/dev/null", **settings}
+    def __init__(self, state_folder, *options, rows=24, columns=80, command=None, folder=".", **settings):
+        environment = {name: value for name, value in os.environ.items() if name not in ("NO_COLOR", "COLUMNS", "LINES")}
+        environment |= {"XDG_STATE_HOME": state_folder, "XDG_CONFIG_HOME": state_folder, "TERM": "xterm", "INPUTRC": "/dev/null", **settings}
         self.pid, self.terminal = pty.fork()
         if self.pid == 0:
             self.terminal = 0
             self.resize(rows, columns)
+            os.chdir(folder)
             command = command or [LACUNA, *options]
             os.execvpe(command[0], command, environment)
         self.screen = self.raw = ""

@@ -1,60 +1,24 @@
 # SPDX-License-Identifier: GPL-3.0-or-later
 """The session as a notebook, at a terminal: what keep writes runs alone and prints what the session showed. All stars are invented."""
 import os
-import pty
 import re
-import select
 import shutil
-import signal
 import subprocess
 import tempfile
 import time
 
-LACUNA = os.environ["LACUNA"]
-PATIENCE = 30  # seconds for an answer; sanitised builds are slow
-CONTROL_C, CONTROL_D = "\x03", "\x04"
-PROMPT = re.compile(r"(^|\n)> $")
-results = 0
+from tap import check, plan
+from terminal import CONTROL_C, LACUNA, PROMPT, Session
 
 
-def check(good, name, seen=""):
-    global results
-    results += 1
-    print(f"{'ok' if good else 'not ok'} {results} - {name}", flush=True)
-    if not good:
-        print("# saw " + repr(seen), flush=True)
-
-
-class Session:
-    """One program on a terminal of its own, in a folder of its own, whose XDG folders are in there too."""
+class Notebook(Session):
+    """A session in a folder of its own, whose XDG folders are in there too."""
 
     def __init__(self, folder, *options):
+        super().__init__(folder + "/state", *options, folder=folder, XDG_CONFIG_HOME=folder + "/config")
         self.folder = folder
         self.shown = ""  # all that was shown of inputs that went well
-        environment = dict(os.environ, XDG_STATE_HOME=folder + "/state", XDG_CONFIG_HOME=folder + "/config", TERM="xterm", INPUTRC="/dev/null")
-        self.pid, self.terminal = pty.fork()
-        if self.pid == 0:
-            os.chdir(folder)
-            os.execve(LACUNA, [LACUNA, *options], environment)
-        self.screen = ""
         self.greeting = self.screen if self.wait(PROMPT) else None
-
-    def wait(self, pattern):
-        """Reads until what was seen since the last typing matches; terminal control is left out."""
-        pattern, end = re.compile(pattern) if isinstance(pattern, str) else pattern, time.monotonic() + PATIENCE
-        while not pattern.search(self.screen):
-            if not select.select([self.terminal], [], [], max(0, end - time.monotonic()))[0]:
-                return False
-            try:
-                piece = os.read(self.terminal, 65536)
-            except OSError:  # the program has left
-                return bool(pattern.search(self.screen))
-            self.screen = re.sub(r"\x1b\[[0-9;?]*[a-zA-Z]|\r", "", self.screen + piece.decode(errors="replace"))
-        return True
-
-    def type(self, text):
-        self.screen = ""
-        os.write(self.terminal, text.encode())
 
     def answer(self, *lines):
         """Types the lines of one input; returned is what is shown before the next prompt."""
@@ -74,23 +38,6 @@ class Session:
     def fail(self, line, message):
         shown = self.answer(line) or ""
         check(shown.startswith(message) and shown.count("\n") == 1, f"fails in one line: {line}", shown)
-
-    def leave(self):
-        self.type(CONTROL_D)
-        end = time.monotonic() + PATIENCE
-        while time.monotonic() < end:
-            if select.select([self.terminal], [], [], 0.05)[0]:
-                try:
-                    os.read(self.terminal, 65536)
-                except OSError:
-                    pass
-            pid, status = os.waitpid(self.pid, os.WNOHANG)
-            if pid:
-                os.close(self.terminal)
-                return os.waitstatus_to_exitcode(status)
-        os.kill(self.pid, signal.SIGKILL)
-        os.waitpid(self.pid, 0)
-        return None
 
 
 def write(folder, name, text):
@@ -117,7 +64,7 @@ def runs_the_same(session, name, label):
 
 
 def keep_what_went_well(folder):
-    session = Session(folder, "--seed", "5", "--draws=500")
+    session = Notebook(folder, "--seed", "5", "--draws=500")
     session.go('local c = case { distance = "156 ± 3 pc", rim_radius = "0.3 au" }')
     session.go("c.rim_radius_angle -- on the sky")
     session.fail("c.rim_raduis", "unknown name 'rim_raduis'")
@@ -182,7 +129,7 @@ def keep_again(session):
 
 
 def keep_what_failed_late(folder):
-    session = Session(folder)
+    session = Notebook(folder)
     session.fail("first = 1; local second = spread.normal(1, 1); error 'late'", "late")
     session.go("local third = spread.normal(1, 1)")
     session.go("third * 1, mean(third * 1)")
@@ -197,7 +144,7 @@ def keep_what_failed_late(folder):
     session.answer('keep "many.lua"')
     runs_the_same(session, "many.lua", "a session of more than 200 locals")
     session.leave()
-    session = Session(folder)
+    session = Notebook(folder)
     shown = session.answer('again "many.lua"')
     check("295\n" in shown and session.answer("v100") == "100\n", "and it is read again with all of them", shown)
     session.leave()
@@ -230,7 +177,7 @@ def start_files(folder):
     write(folder, "config/lacuna/start.lua", PERSONAL)
     write(folder, "stars.lua", STARS)
     write(folder, "broken.lua", BROKEN)
-    session = Session(folder, "--start", "stars.lua")
+    session = Notebook(folder, "--start", "stars.lua")
     check(session.greeting and re.search(r"\nreading \S+/config/lacuna/start.lua\n3\s+5 mas\n> $", session.greeting), "both start-up files are run", session.greeting)
     session.shown = "3\t5 mas\n"
     session.go("#stars, near.distance, first.shadow_length")
@@ -247,7 +194,7 @@ def start_files(folder):
     check("again" not in text and "never = " not in text, "and again doesn't", text)
     runs_the_same(session, "all.lua", "the script runs without them")
     session.leave()
-    session = Session(folder, "--draws=300", "--start=stars.lua")
+    session = Notebook(folder, "--draws=300", "--start=stars.lua")
     shown = session.answer('again "all.lua"')
     check(shown == "4\n100 pc\n1 au\n7\n8\n", "in a session with the same start-up files only the rest is run again", shown)
     session.fail("settings { seed = 7, nothing = 1 }", "settings: unknown setting")
@@ -261,15 +208,15 @@ def start_files(folder):
 
 def other_starts(folder):
     write(folder, "config/lacuna/start.lua", "mine = 1\nerror 'no good'\nmine = 2\n")
-    session = Session(folder)
+    session = Notebook(folder)
     check(re.search(r"\nreading \S+\n\S+start.lua:2: no good\n> $", session.greeting), "an error in the start-up file is one line", session.greeting)
     check(session.answer("mine") == "1\n", "what ran before it stays", session.screen)
     session.leave()
-    session = Session(folder, "--start", "nowhere.lua")
+    session = Notebook(folder, "--start", "nowhere.lua")
     check("\n--start: cannot read nowhere.lua: No such file or directory\n> " in session.greeting, "a start file that isn't there", session.greeting)
     session.leave()
     write(folder, "config/lacuna/start.lua", "half = {\n")
-    session = Session(folder)
+    session = Notebook(folder)
     check(re.search(r"start.lua:\d: .* near <eof>\n> $", session.greeting), "half a file", session.greeting)
     check(session.answer("1 + 1") == "2\n", "is no obstacle", session.screen)
     session.leave()
@@ -298,7 +245,7 @@ def without_terminal(folder):
 def interrupt_again(folder):
     write(folder, "config/lacuna/start.lua", "")
     write(folder, "slow.lua", "local a = 1\nwhile true do a = a + 1 end\n")
-    session = Session(folder)
+    session = Notebook(folder)
     session.type('again "slow.lua"\r')
     session.wait(r"\n")
     time.sleep(0.5)
@@ -320,4 +267,4 @@ try:
     interrupt_again(folder)
 finally:
     shutil.rmtree(folder)
-print(f"1..{results}")
+plan()

@@ -7,7 +7,8 @@ import stat
 import subprocess
 import tempfile
 
-from terminal import CONTROL_C, CONTROL_Z, LACUNA, LEFT, META_ENTER, PASTE_BEGINS, PASTE_ENDS, PROMPT, TAB, UP, Session, check, plan
+from tap import check, plan
+from terminal import CONTROL_C, CONTROL_Z, LACUNA, LEFT, META_ENTER, PASTE_BEGINS, PASTE_ENDS, PROMPT, TAB, UP, Session
 
 MANY_DRAWS = "--draws=10000000000"  # a minute of work
 INVENTED_STAR = 'c = case{distance = "150 pc", bolometric_flux = "2e-11 W.m**-2"}'

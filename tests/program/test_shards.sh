@@ -1,5 +1,6 @@
 # SPDX-License-Identifier: GPL-3.0-or-later
 # A study in parts: what shards, an interrupted and resumed run, and any number of processes leave is the same, byte for byte, as one run.
+# Stars and instruments are invented.
 . tests/program/tap.sh
 lacuna=${LACUNA:?}
 scripts=$PWD/scripts
