@@ -3,9 +3,11 @@
 import os
 import re
 import shutil
+import signal
 import stat
 import subprocess
 import tempfile
+import termios
 
 from terminal import CONTROL_C, CONTROL_Z, LACUNA, LEFT, META_ENTER, PASTE_BEGINS, PASTE_ENDS, PROMPT, TAB, UP, Session, check, plan
 
@@ -186,6 +188,20 @@ def stop_and_go_on(folder):
     session.leave()
 
 
+def end_by_signal(folder):
+    """A signal that ends the program finds the terminal as it was before."""
+    for number in (signal.SIGTERM, signal.SIGHUP, signal.SIGQUIT):
+        session = Session(folder)
+        session.wait(PROMPT)
+        before = termios.tcgetattr(session.terminal)[3]
+        os.kill(session.pid, number)
+        _, status = os.waitpid(session.pid, 0)
+        after = termios.tcgetattr(session.terminal)[3]
+        check(os.waitstatus_to_exitcode(status) == -number, number.name + " ends it", status)
+        check(not before & termios.ECHO and after & termios.ECHO and after & termios.ICANON, "and the terminal echoes lines again", (before, after))
+        os.close(session.terminal)
+
+
 def remember(folder):
     history = os.path.join(folder, "lacuna", "history")
     check(stat.S_IMODE(os.stat(history).st_mode) == 0o600, "the history is the user's alone")
@@ -270,6 +286,7 @@ try:
     check(session.leave() == 0, "Ctrl-D leaves")
     remember(folder)
     stop_and_go_on(folder)
+    end_by_signal(folder)
     without_terminal(folder)
     plain_terminals(folder)
 finally:
