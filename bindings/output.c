@@ -67,6 +67,7 @@ static int write_file(lua_State *L) {
   const char *path = luaL_checkstring(L, 1), *text = luaL_checklstring(L, 2, &length);
   struct stat present = {0};
   bool good;
+  lac_check_decimal_point(L, path);
   if (stat(path, &present) == 0 && !S_ISREG(present.st_mode)) {
     good = write_in_place(path, text, length);
   } else {
