@@ -188,6 +188,29 @@ def stop_and_go_on(folder):
     session.leave()
 
 
+def interrupt_study(folder):
+    """A study whose relation never ends, in several processes."""
+    session = Session(folder, "--threads", "3")
+    session.wait(PROMPT)
+    session.ask('quantity{name = "patience", unit = "pc", meaning = "invented"}'
+                ' relation{gives = "patience", by = "waiting", from = {"distance"}, source = "definition", function(d) while true do end end}'
+                ' targets = {} for i = 1, 8 do targets[i] = {name = "star " .. i, distance = 100 + i .. " pc"} end print "ready"', "ready", "eight targets")
+    children = f"/proc/{session.pid}/task/{session.pid}/children"
+    for time in ("once", "twice"):
+        session.type('study{targets = targets, ask = {"patience"}}\r')
+        for _ in range(100):
+            if len(open(children).read().split()) == 3:
+                break
+            session.read(0.1)
+        else:
+            check(False, f"the study takes three processes, {time}", open(children).read())
+        session.type(CONTROL_C)
+        check(session.wait(PROMPT) and "\ninterrupted\n" in session.screen, f"Ctrl-C ends the study, {time}", session.screen)
+        check(open(children).read() == "", "and its processes", open(children).read())
+    session.ask("print(settings().threads)", "3", "settings are as they were")
+    session.leave()
+
+
 def end_by_signal(folder):
     """A signal that ends the program finds the terminal as it was before."""
     for number in (signal.SIGTERM, signal.SIGHUP, signal.SIGQUIT):
@@ -286,6 +309,7 @@ try:
     check(session.leave() == 0, "Ctrl-D leaves")
     remember(folder)
     stop_and_go_on(folder)
+    interrupt_study(folder)
     end_by_signal(folder)
     without_terminal(folder)
     plain_terminals(folder)
