@@ -81,6 +81,11 @@ static void computing_fails_cleanly(void **unused) {
       "local f = session.compile('local a, b <const> = 1, 2; c2 = a + b', '=prompt')"
       "f()"
       "session.ran('local a, b <const> = 1, 2; c2 = a + b', true, 0)",
+      "core.fits_table({extname = 'T', date = '2000-01-01', 'a comment'}, {{name = 'x', unit = 'pc', description = 'invented', 1.5, 2}, "
+      "{name = 'n', texts = true, 'one', 'two'}}, 2)",
+      "core.run_program({'sh', '-c', 'cat; echo problem >&2'}, 'text', {'PATH=/bin:/usr/bin'}) core.run_program({'/there is no such program'}, '', {})",
+      "core.folder_entries('/') core.write_file('/dev/null', 'text') core.read_csv('list', nil, 'name,distance\\na,\"1\"\\n')",
+      "local q = lac.quantity '1 ± 0.1 au' local held = core.unbound_hold(q) q:mean() core.unbound_restore(q, held)",
   };
   budget b = {.granted = -1};
   lua_State *L = lua_newstate(allocate, &b);
@@ -91,6 +96,7 @@ static void computing_fails_cleanly(void **unused) {
   lac_push_part(L, "lacuna.session"), lua_setglobal(L, "session");
   run(L,
       "print = function() end "
+      "for i = 1, 20 do local name, value = debug.getupvalue(lac.quantity, i) if name == 'core' then core = value end end "
       "lac.settings{draws = 300}"
       "lac.quantity{name = 'shade', unit = '1', meaning = 'invented'}"
       "lac.relation{gives = 'shade', from = {'rim_radius'}, function(r) return r / r end}"
