@@ -282,10 +282,9 @@ local function on_one_thread(f, fields)
   local long = settings.draws > records.LONGEST_KEPT
   command.threads = long and 1 or settings.threads -- processes; many draws keep all cores busy by themselves
   if long then return pcall(f, fields) end
+  local back <close> = setmetatable({}, { __close = function() core.settings { threads = settings.threads } end }) -- Ctrl-C passes pcall
   core.settings { threads = 1 }
-  local ok, study, result = pcall(f, fields)
-  core.settings { threads = settings.threads }
-  return ok, study, result
+  return pcall(f, fields)
 end
 
 -- study{title =, targets =, given =, ask =, also =, variants =, using =, sort =, where =, csv =, latex =, derive =}: prints the table; returns an
