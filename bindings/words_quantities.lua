@@ -28,13 +28,15 @@ end
 return {
   {
     name = "quantity", subject = "quantities",
-    forms = { 'quantity "156 ± 3 pc"', 'quantity(5, "au")', 'quantity{name = ..., unit = ..., meaning = ...}' },
+    forms = { 'quantity "156 ± 3 pc"', 'quantity(5, "au")', 'quantity{name = ..., unit = ..., meaning = ..., range = ..., symbol = ..., on_sky = true}' },
     does = "A quantity from a text, or from a number and a unit; from a table, a new name for the glossary. A unit's name is a quantity too: 5*au. " ..
       'A text may carry an error bar, "156 ± 3 pc", "156 +- 3 pc" or "156 +4 -2 pc", and is a spread then.',
     arguments = {
       { "text", "a number with its unit, in VOUnits or the trade's short forms (Msun, Lsun, Mjup)" },
-      { "number, unit", "a number and the text of its unit" },
-      { "name, unit, meaning", "of a new name: how it is called and written, and what exactly it is" },
+      { "number, text", "a number, and its unit as a text" },
+      { "name", "of a new name: how it is called" },
+      { "unit", 'of a new name: what it is shown in; "1" for a plain number' },
+      { "meaning", "of a new name: what exactly it is, in one line" },
       { "range", 'of a new name, "any" if left out: "> 0", ">= 0", "0 .. 1"' },
       { "symbol", "of a new name, in TeX, for equations; its words if left out" },
       { "on_sky", "true for a length that is seen on the sky: <name>_angle exists then" },

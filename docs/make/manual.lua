@@ -6,7 +6,7 @@ local escape = html.escape
 local manual = {}
 
 local function word_id(word) return "word-" .. (word.of and word.of .. "-" or "") .. word.name:gsub("[^%w_]", "-") end
-local function title_of(word) return (word.of and word.of .. ":" or "") .. word.name end
+local function title_of(word) return word.of and word.of .. (word.field and "." or ":") .. word.name or word.name end
 
 local function add_word(out, word)
   local function add(...) out[#out + 1] = table.concat { ... } end
