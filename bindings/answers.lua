@@ -5,7 +5,6 @@ local core = ...
 local format = core.part "lacuna.format"
 local show = core.part "lacuna.show"
 local sweeps = core.part "lacuna.sweeps"
-local tables = core.part "lacuna.table"
 local text = core.part "lacuna.text"
 local textplot = core.part "lacuna.textplot"
 
@@ -134,7 +133,7 @@ end
 -- Sentences, wrapped and set in.
 local function add_sentences(lines, sentences)
   for _, sentence in ipairs(sentences) do
-    for i, part in ipairs(tables.wrapped(sentence, columns() - 6)) do add(lines, (i == 1 and "    " or "      ") .. part) end
+    for i, part in ipairs(format.wrapped(sentence, columns() - 6)) do add(lines, (i == 1 and "    " or "      ") .. part) end
   end
 end
 
@@ -143,7 +142,7 @@ local function add_pairs(lines, pairs_)
   local widest = 0
   for _, pair in ipairs(pairs_) do widest = math.max(widest, format.width(pair[1])) end
   for _, pair in ipairs(pairs_) do
-    for i, part in ipairs(tables.wrapped(pair[2], math.max(columns() - widest - 6, 24))) do
+    for i, part in ipairs(format.wrapped(pair[2], math.max(columns() - widest - 6, 24))) do
       add(lines, "    " .. format.pad_right(i == 1 and pair[1] or "", widest) .. "  " .. part)
     end
   end

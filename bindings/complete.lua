@@ -346,24 +346,11 @@ end
 
 -- Listing ------------------------------------------------------------------------------------------------------------------------------
 
--- Words of a text in lines of so many columns.
-local function wrapped(words, columns)
-  if format.width(words) <= columns then return { words } end
-  local lines, line, width = {}, "", 0
-  for word in gmatch(words, "%S+") do
-    local more = format.width(word)
-    if line ~= "" and width + 1 + more > columns then lines[#lines + 1], line, width = line, "", 0 end
-    line, width = line == "" and word or line .. " " .. word, (line == "" and 0 or width + 1) + more
-  end
-  lines[#lines + 1] = line
-  return lines
-end
-
 local WIDEST = 36 -- of the column of words
 
 -- The lines of one candidate, its word in a column of so many.
 local function lines_of(candidate, widest, columns)
-  local lines = wrapped(candidate.meaning, math.max(columns - widest - 5, 20))
+  local lines = format.wrapped(candidate.meaning, math.max(columns - widest - 5, 20))
   local head, indent = "  " .. format.pad_right(candidate.text, widest) .. "  ", rep(" ", widest + 4)
   if format.width(head) > widest + 4 then table.insert(lines, 1, "") end
   for i = 1, #lines do lines[i] = match((i == 1 and head or indent) .. lines[i], "^(.-)%s*$") end

@@ -406,7 +406,7 @@ end
 
 function feasibility.plain(composed)
   local paragraphs = { DRAFT .. "." }
-  for _, words in ipairs(feasibility.paragraphs(composed)) do paragraphs[#paragraphs + 1] = table.concat(tables.wrapped(words, WIDTH), "\n") end
+  for _, words in ipairs(feasibility.paragraphs(composed)) do paragraphs[#paragraphs + 1] = table.concat(format.wrapped(words, WIDTH), "\n") end
   return table.concat(paragraphs, "\n\n") .. "\n"
 end
 

@@ -11,6 +11,7 @@
 --   with_unit_tex(tex, unit)            "$0.46 \pm 0.03\,\mathrm{au}$"
 --   width(text)                         columns on a terminal
 --   pad_left(text, columns), pad_right(text, columns)
+--   wrapped(text, columns)              its lines of at most so many columns
 
 local format = {}
 
@@ -233,5 +234,19 @@ end
 function format.pad_left(text, columns) return (" "):rep(columns - format.width(text)) .. text end
 
 function format.pad_right(text, columns) return text .. (" "):rep(columns - format.width(text)) end
+
+-- Breaks a text at its spaces, but not before a per cent sign, into lines of at most so many columns (longer words stand alone).
+function format.wrapped(text, columns)
+  if format.width(text) <= columns and not text:find "%s%s" then return { text } end
+  local lines, line, length = {}, nil, 0
+  for word in text:gsub(" %%", "\u{a0}%%"):gmatch "%S+" do
+    local more = format.width(word)
+    if line and length + 1 + more > columns then lines[#lines + 1], line = line, nil end
+    line, length = line and line .. " " .. word or word, line and length + 1 + more or more
+  end
+  lines[#lines + 1] = line
+  for i = 1, #lines do lines[i] = lines[i]:gsub("\u{a0}%%", " %%") end
+  return lines
+end
 
 return format

@@ -46,9 +46,25 @@ function help.by_subject()
   return found
 end
 
+-- The words of a subject with what they have: "case", ":with", ":using"; in full where another word stands before.
+local function names_of_words(records)
+  local names, latest = {}, nil
+  for i, record in ipairs(records) do
+    local full = words.full_name(record)
+    names[i] = record.of and record.of == latest and full:sub(#record.of + 1) or full
+    latest = record.of or record.name
+  end
+  return names
+end
+
 local function map()
   local width = math.min(core.terminal_width() or 118, 118)
-  local lines = new_page("help \"name\" explains a name, a word or a unit; help \"some words\" searches.", "")
+  local lines = new_page("help \"name\" explains a name, a word or a unit; help \"some words\" searches.",
+    "Lengths on the sky have <name>_angle besides. help \"case:why\" is of a method.", "")
+  for _, subject in ipairs(words.by_subject()) do
+    lines[#lines + 1] = "words: " .. subject.title
+    for _, line in ipairs(wrap(names_of_words(subject.records), 2, width)) do lines[#lines + 1] = line end
+  end
   for _, subject in ipairs(help.by_subject()) do
     local names = {}
     for _, name in ipairs(subject.names) do
@@ -57,18 +73,6 @@ local function map()
     lines[#lines + 1] = subject.title
     for _, line in ipairs(wrap(names, 2, width)) do lines[#lines + 1] = line end
   end
-  for _, subject in ipairs(words.by_subject()) do
-    local names = {}
-    for _, record in ipairs(subject.records) do
-      if not record.of then names[#names + 1] = record.name end
-    end
-    if #names > 0 then
-      lines[#lines + 1] = "words: " .. subject.title
-      for _, line in ipairs(wrap(names, 2, width)) do lines[#lines + 1] = line end
-    end
-  end
-  lines[#lines + 1] = ""
-  lines[#lines + 1] = "Lengths on the sky have <name>_angle besides."
   return lines
 end
 

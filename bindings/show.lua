@@ -23,8 +23,10 @@ local function finished(text, colour) return (text:gsub("[\1\2\3]", colour and e
 
 -- Pages ---------------------------------------------------------------------------------------------------------------------------
 
--- Where a line may be folded: at its spaces; code, which stands after "> ", where a comma is before them.
-local function may_fold(line, before) return before:find "%S" and (not line:find "^ *> " or before:sub(-1) == ",") end
+-- Where a line may be folded: at its spaces, but not before a per cent sign; code, which stands after "> ", where a comma is before them.
+local function may_fold(line, before)
+  return before:find "%S" and (not line:find "^ *> " or before:sub(-1) == ",") and not line:find("^ +%%", #before + 1)
+end
 
 -- A line folded, what follows set in by two more, or under what stands after a tab; longer words stand alone.
 local function fold(line, columns)
@@ -84,8 +86,9 @@ end
 -- show(value, ...): the text of values as the prompt writes them.
 function show.show(...) return finished(written(...), false) end
 
--- What the program prints. In a conversation at a terminal no more than a screenful at once: the rest waits for more().
-local waiting
+-- What the program prints. In a conversation at a terminal no more than a screenful at once: the rest waits for more(). What a word has
+-- printed by itself is not forgotten for its answer.
+local waiting, printed
 local function screenful(text)
   local rows = core.terminal().rows
   local _, breaks = text:gsub("\n", "")
@@ -96,8 +99,15 @@ local function screenful(text)
   return text:sub(1, at) .. show.aside(("… %d more lines: more()"):format(breaks + 1 - keep))
 end
 
+-- Prints a text that is no answer: a study's table.
+function show.print(text)
+  printed = core.part "lacuna.session".current() ~= nil
+  print(finished(printed and screenful(text) or text, show.colour()))
+end
+
 function show.answer(conversation, ...)
-  waiting = nil
+  if not printed then waiting = nil end
+  printed = false
   local text = written(...)
   return finished(conversation and screenful(text) or text, show.colour())
 end
@@ -106,6 +116,7 @@ end
 function show.more()
   if not waiting then core.raise "there is no more to show" end
   local rest = waiting
+  waiting, printed = nil, false
   return setmetatable({}, { __name = "rest", __tostring = function() return rest end })
 end
 

@@ -207,7 +207,7 @@ end
 
 local methods = {}
 local study_metatable = { __name = "study", __index = methods }
-function study_metatable.__tostring(study) return ("study of %d target%s, %d column%s"):format(#study.rows, #study.rows == 1 and "" or "s", #study.columns, #study.columns == 1 and "" or "s") end
+function study_metatable.__tostring(study) return ("study of %d target%s, %d column%s; help \"study\" tells what it can be asked"):format(#study.rows, #study.rows == 1 and "" or "s", #study.columns, #study.columns == 1 and "" or "s") end
 
 -- s:table(columns): the table and its notes as text, at most so many columns wide.
 function methods.table(study, columns) return tables.text(study, columns or core.terminal_width() or tables.WIDTH) end

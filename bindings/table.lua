@@ -15,23 +15,6 @@ local tables = { WIDTH = 100 } -- of a table where no terminal says otherwise
 local GAP, MISSING = "  ", "—"
 local NO_BREAK = "\u{a0}"
 
--- Lines of text -------------------------------------------------------------------------------------------------------------------
-
--- Breaks a text at its spaces into lines of at most so many columns (longer words stand alone).
-local function wrapped(text, columns)
-  local lines, line = {}, nil
-  for word in text:gmatch "%S+" do
-    if line and format.width(line) + 1 + format.width(word) <= columns then line = line .. " " .. word
-    else
-      lines[#lines + 1] = line
-      line = word
-    end
-  end
-  lines[#lines + 1] = line
-  return lines
-end
-tables.wrapped = wrapped
-
 -- A name or text from a file may have line breaks.
 local function on_one_line(text) return (text:gsub("%s*[\n\r\t\v\f]%s*", " ")) end
 tables.on_one_line = on_one_line
@@ -97,7 +80,7 @@ local function laid_out(column, cells)
   local name = column.heading or column.name:gsub("_", " "):gsub(" by ", " by" .. NO_BREAK)
   for word in name:gmatch "%S+" do width = math.max(width, format.width(word)) end
   width = math.max(width, format.width(column.unit_text or ""))
-  local heading = wrapped(name, width)
+  local heading = format.wrapped(name, width)
   for i, line in ipairs(heading) do heading[i] = line:gsub(NO_BREAK, " ") end
   return { heading = heading, unit = column.unit_text or "", texts = texts, width = width, left = column.left }
 end
@@ -196,7 +179,7 @@ end
 -- Notes: each with its heading, wrapped, the lines' further parts set in. A line may be a list: what its first text heads.
 local function add_notes(lines, notes, columns)
   local function add(text, indent)
-    for i, line in ipairs(wrapped(text, columns - indent - 2)) do lines[#lines + 1] = (" "):rep(i == 1 and indent or indent + 2) .. line end
+    for i, line in ipairs(format.wrapped(text, columns - indent - 2)) do lines[#lines + 1] = (" "):rep(i == 1 and indent or indent + 2) .. line end
   end
   for _, note in ipairs(notes) do
     lines[#lines + 1] = ""
@@ -214,7 +197,7 @@ end
 function tables.text(whole, columns)
   local names_width, lines = 0, {}
   for _, row in ipairs(whole.rows) do names_width = math.max(names_width, format.width(on_one_line(row.name))) end
-  if whole.title then lines = wrapped(whole.title, columns) end
+  if whole.title then lines = format.wrapped(whole.title, columns) end
   for _, page in ipairs(pages_of(blocks_of(whole), names_width, columns)) do
     if #lines > 0 then lines[#lines + 1] = "" end
     add_page(lines, page, whole.rows, names_width)

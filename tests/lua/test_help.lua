@@ -25,7 +25,7 @@ t.test("the map has every name but those that stand for another, and every word,
   for _, record in ipairs(words.list()) do
     if not record.of and not listed[record.name] then error("no " .. record.name) end
   end
-  has(map, "\nrim and cavity\n", "\nwords: cases\n  case", "help \"name\"")
+  has(map, "\nrim and cavity\n", "\nwords: cases\n  case  :with  :using", "case:sensitivity", "help \"name\"")
 end)
 
 t.test("a name: meaning, symbol, unit, range, synonyms, on the sky, recipes, an example", function()

@@ -1,70 +1,24 @@
 # SPDX-License-Identifier: GPL-3.0-or-later
 """The session as a notebook, at a terminal: what keep writes runs alone and prints what the session showed. All stars are invented."""
 import os
-import pty
 import re
-import select
 import shutil
-import signal
 import subprocess
 import tempfile
 import time
 
-LACUNA = os.environ["LACUNA"]
-PATIENCE = 30  # seconds for an answer; sanitised builds are slow
-CONTROL_C, CONTROL_D = "\x03", "\x04"
-PROMPT = re.compile(r"(^|\n)> $")
-results = 0
+import terminal
+from terminal import CONTROL_C, LACUNA, PROMPT, check, plan
 
 
-def check(good, name, seen=""):
-    global results
-    results += 1
-    print(f"{'ok' if good else 'not ok'} {results} - {name}", flush=True)
-    if not good:
-        print("# saw " + repr(seen), flush=True)
-
-
-class Session:
-    """One program on a terminal of its own, in a folder of its own, whose XDG folders are in there too."""
+class Session(terminal.Session):
+    """A conversation in a folder whose XDG folders are in there too; on a terminal so wide that each message is a line."""
 
     def __init__(self, folder, *options):
+        super().__init__(folder + "/state", *options, columns=200, folder=folder, XDG_CONFIG_HOME=folder + "/config")
         self.folder = folder
         self.shown = ""  # all that was shown of inputs that went well
-        environment = dict(os.environ, XDG_STATE_HOME=folder + "/state", XDG_CONFIG_HOME=folder + "/config", TERM="xterm", INPUTRC="/dev/null")
-        self.pid, self.terminal = pty.fork()
-        if self.pid == 0:
-            os.chdir(folder)
-            os.execve(LACUNA, [LACUNA, *options], environment)
-        self.screen = ""
         self.greeting = self.screen if self.wait(PROMPT) else None
-
-    def wait(self, pattern):
-        """Reads until what was seen since the last typing matches; terminal control is left out."""
-        pattern, end = re.compile(pattern) if isinstance(pattern, str) else pattern, time.monotonic() + PATIENCE
-        while not pattern.search(self.screen):
-            if not select.select([self.terminal], [], [], max(0, end - time.monotonic()))[0]:
-                return False
-            try:
-                piece = os.read(self.terminal, 65536)
-            except OSError:  # the program has left
-                return bool(pattern.search(self.screen))
-            self.screen = re.sub(r"\x1b\[[0-9;?]*[a-zA-Z]|\r", "", self.screen + piece.decode(errors="replace"))
-        return True
-
-    def type(self, text):
-        self.screen = ""
-        os.write(self.terminal, text.encode())
-
-    def answer(self, *lines):
-        """Types the lines of one input; returned is what is shown before the next prompt."""
-        for line in lines[:-1]:
-            self.type(line + "\r")
-            self.wait(r"\n>> $")
-        self.type(lines[-1] + "\r")
-        if not self.wait(PROMPT):
-            return None
-        return self.screen[self.screen.index("\n") + 1 : -len("> ")]
 
     def go(self, *lines):
         """An input that goes well: what it shows is what the script has to print."""
@@ -74,23 +28,6 @@ class Session:
     def fail(self, line, message):
         shown = self.answer(line) or ""
         check(shown.startswith(message) and shown.count("\n") == 1, f"fails in one line: {line}", shown)
-
-    def leave(self):
-        self.type(CONTROL_D)
-        end = time.monotonic() + PATIENCE
-        while time.monotonic() < end:
-            if select.select([self.terminal], [], [], 0.05)[0]:
-                try:
-                    os.read(self.terminal, 65536)
-                except OSError:
-                    pass
-            pid, status = os.waitpid(self.pid, os.WNOHANG)
-            if pid:
-                os.close(self.terminal)
-                return os.waitstatus_to_exitcode(status)
-        os.kill(self.pid, signal.SIGKILL)
-        os.waitpid(self.pid, 0)
-        return None
 
 
 def write(folder, name, text):
@@ -153,12 +90,14 @@ def keep_what_went_well(folder):
     session.type(CONTROL_C)
     check(session.wait(PROMPT) and "interrupted" in session.screen, "an interrupted input", session.screen)
     session.answer('help "distance"')
+    session.answer("help()")
+    session.answer("more()")
     shown = session.answer('keep "kept.lua"')
     check(shown == "kept 21 inputs in kept.lua\n", "keep says what it wrote", shown)
     text = read(folder, "kept.lua")
     check(re.match(r"-- A session of Lacuna [0-9.]+, kept on \d{4}-\d\d-\d\d\nsettings \{ seed = 5, draws = 500 \}\n\nlocal c = case", text),
           "the script begins with version, date, seed and draws", text)
-    check(not re.search("raduis|lost|while|help|keep \"|au = 11", text), "failed and interrupted inputs, help and keep are left out", text)
+    check(not re.search("raduis|lost|while|help|more|keep \"|au = 11", text), "failed and interrupted inputs, help, more and keep are left out", text)
     check("print(show(c.rim_radius_angle)) -- on the sky\n" in text, "a comment stays behind its line", text)
     check("  return 2 * x * au -- au is the session's\nend\n" in text, "an input of several lines keeps them", text)
     runs_the_same(session, "kept.lua", "the script prints what the session showed, free spreads included")
@@ -320,4 +259,4 @@ try:
     interrupt_again(folder)
 finally:
     shutil.rmtree(folder)
-print(f"1..{results}")
+plan()
