@@ -157,6 +157,14 @@ local function about_built_in(name)
   end
 end
 
+-- And the built-in object that goes by the same name: H is a band too.
+local function with_built_in(name, lines)
+  local others = about_built_in(name)
+  if not others then return lines end
+  lines[#lines + 1] = ""
+  return table.move(others, 1, #others, #lines + 1, lines)
+end
+
 local function about_words(records, lines)
   for _, record in ipairs(records) do
     if #lines > 0 then lines[#lines + 1] = "" end
@@ -201,7 +209,7 @@ function help.help(word)
   if type(word) ~= "string" then word = name_of_value(word) end
   local name = core.find(word)
   local records = words.all(word)
-  if name then return about_words(records, about_name(name)) end
+  if name then return with_built_in(word, about_words(records, about_name(name))) end
   if #records > 0 then return about_words(records, new_page()) end
   return core.unit_facts(word) and about_unit(word) or about_built_in(word) or about_words_searched(word)
 end

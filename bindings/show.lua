@@ -23,13 +23,15 @@ local function finished(text, colour) return (text:gsub("[\1\2\3]", colour and e
 
 -- Pages ---------------------------------------------------------------------------------------------------------------------------
 
--- Where a line may be folded: at its spaces, but not before a per cent sign; code, which stands after "> ", where a comma is before them.
-local function may_fold(line, before)
-  return before:find "%S" and (not line:find "^ *> " or before:sub(-1) == ",") and not line:find("^ +%%", #before + 1)
+-- Where a line may be folded: at its spaces, but neither before a per cent sign nor between quotes; code where a comma is before them.
+local function may_fold(line, before, is_code)
+  if not before:find "%S" or is_code and before:sub(-1) ~= "," or line:find("^ +%%", #before + 1) then return false end
+  return select(2, before:gsub('"', "")) % 2 == 0
 end
 
--- A line folded, what follows set in by two more, or under what stands after a tab; longer words stand alone.
+-- A line folded, what follows set in by two more, or under what stands after a tab; longer words stand alone. Code stands after "> ".
 local function fold(line, columns)
+  local is_code = line:find "^ *> "
   local folded, first = {}, line:match "^(.-)\t"
   local further = first and format.width(first) <= columns / 2 and (" "):rep(format.width(first) + 2) or line:match "^ *" .. "  "
   line = line:gsub("\t", "  ")
@@ -37,7 +39,7 @@ local function fold(line, columns)
     local at
     for space in line:gmatch "()%f[ ] +" do
       local before = line:sub(1, space - 1)
-      if #before >= #further and may_fold(line, before) and (not at or format.width(before) <= columns) then at = space end
+      if #before >= #further and may_fold(line, before, is_code) and (not at or format.width(before) <= columns) then at = space end
     end
     if not at then break end
     folded[#folded + 1] = line:sub(1, at - 1)

@@ -35,6 +35,7 @@ t.test("a name: meaning, symbol, unit, range, synonyms, on the sky, recipes, an 
   has(page "sublimation_radius", "holds for heating_luminosity from 1 to 1000 Lsun")
   has(page "viscosity_alpha", "It must be given", "spread.log_uniform(1e-4, 1e-2)")
   has(page "a_p", "planet_semi_major_axis  a_p")
+  has(page "H", "scale_height  H\n", "H  a built-in band")
 end)
 
 t.test("a word: forms, what it does, arguments, result, errors, examples with their answers", function()
@@ -83,11 +84,13 @@ end)
 t.test("on a terminal pages are folded, code only after commas", function()
   local format = core.part "lacuna.format"
   local run = io.popen(("COLUMNS=50 %s -e '%s' 2>&1"):format(os.getenv "INTERPRETER" or arg[-1],
-    [[local l = require "lacuna"; for _, w in ipairs { "gap_width", "case", "gap width" } do print(l.help(w)) end]]))
+    [[local l = require "lacuna"; for _, w in ipairs { "gap_width", "planet_toomre_q", "case", "gap width" } do print(l.help(w)) end]]))
   local count, code = 0, nil
   for line in run:lines() do
     count = count + 1
-    if code and line:find "^      " then code = code .. line:sub(7)
+    if code and line:find "^      " then
+      if code:sub(-1) ~= "," then error("broken: " .. code) end
+      code = code .. line:sub(7)
     elseif code then
       if select(2, code:gsub('"', "")) % 2 ~= 0 then error("broken: " .. code) end
       code = nil
