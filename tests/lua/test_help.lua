@@ -88,7 +88,8 @@ t.test("on a terminal pages are folded, code only after commas", function()
   local count, code = 0, nil
   for line in run:lines() do
     count = count + 1
-    if code and line:find "^      " then
+    local goes_on = code and line:find "^      "
+    if goes_on then
       if code:sub(-1) ~= "," then error("broken: " .. code) end
       code = code .. line:sub(7)
     elseif code then
@@ -97,7 +98,7 @@ t.test("on a terminal pages are folded, code only after commas", function()
     end
     if line:find "^    > " then
       code = line:sub(7)
-    elseif format.width(line) > 50 then error("not folded: " .. line) end
+    elseif not goes_on and format.width(line) > 50 then error("not folded: " .. line) end
   end
   t.equal(run:close(), true)
   t.equal(count > 60, true)
