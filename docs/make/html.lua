@@ -11,6 +11,7 @@ local style = dofile "bindings/page_style.lua" .. [[
 body { max-width: 46rem; }
 h4 { margin: 1rem 0 .2rem; font-size: 1rem; }
 p, ul, ol { margin: .4rem 0; }
+pre.small { white-space: pre-wrap; }
 nav.names a { margin-right: .8rem; white-space: nowrap; }
 :target { outline: 2px solid var(--link); outline-offset: .3rem; }
 ]]
