@@ -24,7 +24,7 @@ local function add_word(out, word)
     local lines = {}
     for _, line in ipairs(type(example) == "table" and example or { example }) do lines[#lines + 1] = "> " .. line end
     lines[#lines + 1] = word.answers and word.answers[i] ~= "" and word.answers[i] or nil
-    add("<pre>", escape(table.concat(lines, "\n")), "</pre>")
+    add("<pre>", html.conversation(escape(table.concat(lines, "\n"))), "</pre>")
   end
   add "</section>"
 end
