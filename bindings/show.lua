@@ -23,9 +23,9 @@ local function finished(text, colour) return (text:gsub("[\1\2\3]", colour and e
 
 -- Pages ---------------------------------------------------------------------------------------------------------------------------
 
--- Where a line may be folded: at its spaces, but neither before a per cent sign nor between quotes; code where a comma is before them.
+-- Where a line may be folded: at its spaces, but neither before a per cent sign, at an error bar nor between quotes; code where a comma is before them.
 local function may_fold(line, before, is_code)
-  if not before:find "%S" or is_code and before:sub(-1) ~= "," or line:find("^ +%%", #before + 1) then return false end
+  if not before:find "%S" or is_code and before:sub(-1) ~= "," or before:find "±$" or line:find("^ +%%", #before + 1) or line:find("^ +±", #before + 1) then return false end
   return select(2, before:gsub('"', "")) % 2 == 0
 end
 

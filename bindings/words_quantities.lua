@@ -156,9 +156,9 @@ return {
     arguments = { { "from, to", "the ends, with units" }, { "count", "how many points, evenly spaced, 2 or more" }, { "a, b, ...", "the values one by one, with units" } },
     result = "a sweep, to be given in a case or computed with",
     errors = "ends of different dimensions, a count below 2, an empty list",
-    examples = { 'case{wavelength = "1.65 um", projected_baseline = sweep("20 m", "330 m", 5)}.array_resolution',
+    examples = { 'case{wavelength = "1.65 um", projected_baseline = sweep("20 m", "330 m", 4)}.array_resolution',
       'case{wavelength = sweep{"1.65 um", "2.2 um"}, projected_baseline = "100 m"}.array_resolution' },
-    answers = { "array_resolution (mas)\n8 ┤▀▚▖\n  │  ▝▚▄\n  │     ▀▄\n6 ┤       ▀▚▖\n  │         ▝▚▄\n4 ┤            ▀▖\n  │             ▝▚▄\n  │                ▀▄\n2 ┤                  ▀▀▄▄▄▄▄▄▄▄▄▄\n  │                              ▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▚▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄\n  └───────┬───────────┬────────────┬───────────┬────────────┬───────────┬───────\n          50         100          150         200          250         300\n                                                projected_baseline (m), 5 points\nprojected_baseline     20   97.5     175   252.5     330  m\narray_resolution    8.508  1.745  0.9724  0.6739  0.5157  mas", "wavelength         1.65    2.2  µm\narray_resolution  1.702  2.269  mas" },
+    answers = { "projected_baseline     20  123.3   226.7     330  m\narray_resolution    8.508   1.38  0.7507  0.5157  mas", "wavelength         1.65    2.2  µm\narray_resolution  1.702  2.269  mas" },
     see = { "along", "at" },
   },
   {
