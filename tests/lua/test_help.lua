@@ -40,7 +40,7 @@ end)
 
 t.test("a word: forms, what it does, arguments, result, errors, examples with their answers", function()
   has(page "sweep", "sweep(from, to, count)\n", "A quantity that takes a range of values", "count      how many points", "result: a sweep", "errors: ends of different dimensions",
-    "> case{wavelength = \"1.65 um\", projected_baseline = sweep(\"20 m\", \"330 m\", 5)}.array_resolution\n    array_resolution (mas)", "sweep.log  A sweep in equal ratios", "see also along")
+    "> case{wavelength = \"1.65 um\", projected_baseline = sweep(\"20 m\", \"330 m\", 4)}.array_resolution\n    projected_baseline     20 ", "sweep.log  A sweep in equal ratios", "see also along")
 end)
 
 t.test("a method is found by its name, with what has it, and as it is typed", function()
