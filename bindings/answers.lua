@@ -108,6 +108,16 @@ local function changed_lines(quantity, name)
   return lines
 end
 
+-- Where a recipe on the way is used outside the range it holds for. Of a very large ensemble that is left to why: it would take as long again.
+local function warning_lines(quantity, name)
+  local self, lines = name and core.case_of(quantity), {}
+  if not self or select(5, core.facts(quantity)) > LARGE then return lines end
+  for _, step in ipairs(core.steps(self, name)) do
+    for _, warning in ipairs(step.row and relations.warnings(self, core.row(step.row)) or {}) do add(lines, ("  %s %s"):format(show.marked "beware:", warning)) end
+  end
+  return lines
+end
+
 local function quantity_lines(quantity)
   local name, _, _, _, _, unbound = core.facts(quantity)
   if unbound then return { text.quantity(quantity) } end
@@ -122,8 +132,10 @@ end
 
 -- The lines of a quantity.
 function answers.quantity(quantity)
-  local lines = quantity_lines(quantity)
-  for _, line in ipairs(changed_lines(quantity, (core.facts(quantity)))) do add(lines, line) end
+  local lines, name = quantity_lines(quantity), (core.facts(quantity))
+  for _, more in ipairs { changed_lines, warning_lines } do
+    for _, line in ipairs(more(quantity, name)) do add(lines, line) end
+  end
   return lines
 end
 

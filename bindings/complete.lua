@@ -25,9 +25,9 @@ local complete = { environment = core.part "lacuna.session".environment }
 
 -- What is expected ------------------------------------------------------------------------------------------------------------------
 --
--- An expectation tells what may stand in a place: text(content, object) -> candidates, word's start in the content: of what a string there
--- may hold, as an argument of a method of that object; and of a table there: keys(already there) -> candidates; value(key), element: the
--- expectation of a field, of an item.
+-- An expectation tells what may stand in a place: text(content, object, unit) -> candidates, word's start in the content: of what a string
+-- there may hold, as an argument of a method of that object (a case, or nil) or of a quantity in that unit (or nil); and of a table there:
+-- keys(already there) -> candidates; value(key), element: the expectation of a field, of an item.
 
 -- Several lists in one; of equal words the first counts.
 local function join(...)
@@ -58,11 +58,16 @@ local name_text = word_of(function() return lists.names() end)
 local name_to_explain = word_of(function(case) return lists.members(case) end)
 local name_to_reach = word_of(function(case) return lists.members(case, true) end)
 local name_list = { element = name_text }
-local unit_text = { text = function(content) return unit_in(content, nil, true) end }
+local unit_text = { text = function(content, _, unit) return unit_in(content, unit, true) end }
 local band_text, material_text = word_of(lists.bands), word_of(lists.materials)
 local help_text = word_of(function()
   return join(lists.words(), lists.names(), lists.units())
 end)
+
+-- A number with a unit like this one.
+local function number_in(unit)
+  return { text = function(content) return unit_in(content, unit) or {}, match(content, "()[%a\x80-\xff]*$") end }
+end
 
 -- The value of a given: a number with a unit of its dimension, or the name of an object.
 local function value_of(name)
@@ -71,7 +76,7 @@ local function value_of(name)
   local entry = lists.entry_of(found)
   if found == "band" then return band_text end
   if entry.kind == "object" then return {} end
-  local expected = { text = function(content) return unit_in(content, entry.unit) or {}, match(content, "()[%a\x80-\xff]*$") end }
+  local expected = number_in(entry.unit)
   expected.element = expected -- of a list of them
   return expected
 end
@@ -108,6 +113,16 @@ local function fields(keys, of, expected)
   }
 end
 
+-- One word of a table {word = meaning}.
+local function choice_of(make)
+  return word_of(function()
+    local list = {}
+    for word, meaning in next, make() do list[#list + 1] = { text = word, meaning = meaning, append = "" } end
+    table.sort(list, function(a, b) return a.text < b.text end)
+    return list
+  end)
+end
+
 local function sorted_keys(t)
   local keys = {}
   for key in next, t do keys[#keys + 1] = key end
@@ -117,22 +132,43 @@ end
 
 local of_group = { given = givens, using = choices, ask = name_list }
 local variant = fields(function() return sorted_keys(core.part "lacuna.study".variant_fields) end, "study", of_group)
-local of_study = { given = givens, using = choices, ask = name_list, variants = { element = variant }, targets = { element = givens } }
+local function figure_part() return core.part "lacuna.figure" end
+local name_or_list = { text = name_text.text, element = name_text }
+local line = fields(function() return sorted_keys(figure_part().line_fields) end, "figure", { show = name_text, given = givens })
+local of_figure = fields(function() return sorted_keys(figure_part().fields) end, "figure", {
+  show = name_or_list, along = givens, each = givens, against = name_text, level = name_text, verdict = name_text, x = name_text, lines = { element = line },
+  bands = { element = band_text }, kind = choice_of(function() return figure_part().kinds end), width = choice_of(function() return figure_part().widths end),
+})
+local of_study = {
+  given = givens, using = choices, ask = name_list, also = name_list, derive = {}, variants = { element = variant }, targets = { element = givens },
+  figures = { element = of_figure },
+}
+-- A variant of compare's: givens, and recipes in using = {...}.
+local changes = {
+  keys = function(there)
+    local list = lists.names(" = ", there)
+    if not there.using then list[#list + 1] = { text = "using", meaning = lists.meaning_of_field("study", "using"), append = " = " } end
+    return list
+  end,
+  value = function(key) return key == "using" and choices or value_of(key) end,
+}
+local variants_by_name = { value = function() return changes end, element = changes }
 local function of_form(word, expected) return fields(function() return keys_of_form(word) end, word, expected or {}) end
 local fractions = { keys = function(there)
   local list = {}
   for _, candidate in ipairs(lists.materials(" = ")) do if not there[candidate.text] then list[#list + 1] = candidate end end
   return list
 end, element = { element = material_text } }
-local sizes = fields(function() return { "smallest", "largest", "index", "median", "width" } end, "dust", {})
+local size = number_in "um"
+local sizes = fields(function() return { "smallest", "largest", "index", "median", "width" } end, "dust", { smallest = size, largest = size, median = size })
 
 -- What functions and methods take, argument by argument.
 local arguments = {
   case = { givens }, with = { givens }, using = { choices }, why = { name_to_explain }, missing = { name_to_reach }, sensitivity = { name_to_explain },
-  solve = { name_text, givens }, compare = { {}, givens, name_list }, recipes = { name_text }, help = { help_text },
+  solve = { name_text, givens }, compare = { {}, variants_by_name, name_list }, figure = { of_figure }, recipes = { name_text }, help = { help_text },
   study = { fields(function() return sorted_keys(core.part "lacuna.study".fields) end, "study", of_study) },
   band = { { text = band_text.text, keys = of_form("band").keys } }, material = { { text = material_text.text, keys = of_form("material").keys } },
-  dust = { of_form("dust", { materials = { text = material_text.text, keys = fractions.keys, element = fractions.element }, sizes = sizes }) },
+  dust = { of_form("dust", { materials = { text = material_text.text, keys = fractions.keys, element = fractions.element }, sizes = { text = size.text, keys = sizes.keys, value = sizes.value } }) },
   quantity = { of_form("quantity", { unit = unit_text }), unit_text }, as = { unit_text }, value = { unit_text },
   relation = { of_form("relation", { gives = name_text, from = name_list }) },
   settings = { fields(function() return sorted_keys(core.settings()) end, "settings", {}) },
@@ -141,7 +177,7 @@ local arguments = {
 local function expected_of_call(callee, argument)
   local name = callee.method or callee.word
   if not name then return nil end
-  if arguments[name] then return arguments[name][argument], callee.object end
+  if arguments[name] then return arguments[name][argument], callee end
   if argument == 1 and core.find(name) == name then return givens end -- hill_radius{...}
 end
 
@@ -181,21 +217,24 @@ end
 local function members(reading, i)
   local found = values.find(reading.tokens, reading.partner, i, reading.environment)
   if found.kind == "case" then return lists.members(found.value) end
+  local known = lists.fields_of(found.kind or found.word or "")
+  if #known > 0 then return known end
   return type(found.value) == "table" and lists.fields(found.value) or {}
 end
 
 local function in_string(reading, open)
-  local expected, object
+  local expected, callee
   local i = #reading.tokens + 1 -- the string's own number
   if values.ends_prefix(reading.tokens[i - 1]) then
-    expected, object = expected_of_call(values.find(reading.tokens, reading.partner, i - 1, reading.environment), 1)
-  elseif begins_item(reading, i, #reading.stack) then expected, object = expected_of_item(reading, #reading.stack) end
+    expected, callee = expected_of_call(values.find(reading.tokens, reading.partner, i - 1, reading.environment), 1)
+  elseif begins_item(reading, i, #reading.stack) then expected, callee = expected_of_item(reading, #reading.stack) end
   local frame = reading.stack[#reading.stack]
   if frame and frame.open == "[" and frame.at == i - 1 and values.ends_prefix(reading.tokens[i - 2]) then
     return members(reading, i - 2), open.first, false, true -- c["rim_radius"]
   end
   if expected and expected.text then
-    local candidates, start = expected.text(open.text, core.is_case(object) and object or nil)
+    local object = callee and callee.object
+    local candidates, start = expected.text(open.text, core.is_case(object) and object or nil, callee and callee.unit)
     return candidates or {}, open.first + (start or 1) - 1, false, true
   end
   local candidates, start = unit_in(open.text)

@@ -6,6 +6,7 @@ local core = ...
 local relations = core.part "lacuna.relations"
 local format = core.part "lacuna.format"
 local words = core.part "lacuna.words"
+local kind_of = core.part "lacuna.complete_values".kind_of
 local keywords = core.part "lacuna.tokens".keywords
 local find, match, gmatch, sub = string.find, string.match, string.gmatch, string.sub
 local getmetatable, ipairs, math, next, rawget, select, string, table, tostring, type = getmetatable, ipairs, math, next, rawget, select, string, table, tostring, type
@@ -32,12 +33,14 @@ function lists.meaning_of_field(word, field)
   return "a field of " .. word
 end
 
--- Methods of a kind: a list of {name, meaning, what follows it in its form}.
-local function methods_of(kind)
+-- What a kind of object or a word has behind a colon, or, as fields, behind a dot: a list of {name, meaning, what follows it in its form}.
+local function methods_of(kind, as_fields)
   local found = {}
   for _, name in ipairs(words.methods(kind)) do
     local record = words.find(kind .. ":" .. name)
-    if not record.field then found[#found + 1] = { name, words.one_line(kind .. ":" .. name), match(record.forms[1], "[:.]" .. name .. "(.*)$") or "" } end
+    if (record.field or false) == (as_fields or false) then
+      found[#found + 1] = { name, words.one_line(kind .. ":" .. name), match(record.forms[1], "[:.]" .. name .. "(.*)$") or "" }
+    end
   end
   return found
 end
@@ -67,11 +70,14 @@ function lists.words()
   return all_words
 end
 
-function lists.methods(kind)
+function lists.methods(kind, as_fields)
   local list = {}
-  for _, method in ipairs(methods_of(kind)) do add(list, method[1], method[2], first_mark(method[3])) end
+  for _, method in ipairs(methods_of(kind, as_fields)) do add(list, method[1], method[2], first_mark(method[3])) end
   return list
 end
+
+-- What a word or a kind of object has behind a dot, by its records: spread.normal.
+function lists.fields_of(word) return lists.methods(word, true) end
 
 -- Methods of whatever has any, where it isn't known what stands before the colon.
 function lists.all_methods()
@@ -212,6 +218,8 @@ local function about(value)
   local kind = type(value)
   if kind == "string" then return ("%q"):format(#value > 40 and sub(value, 1, 40) .. "..." or value):gsub("\\\n", "\\n") .. "" end
   if math.type(value) or kind == "boolean" then return tostring(value) end
+  local name = kind == "table" and kind_of(value)
+  if type(name) == "string" then return name end
   if kind ~= "userdata" then return "a " .. kind end
   if core.is_case(value) then return "a case" end
   if select("#", core.facts(value)) > 0 then return "a quantity, " .. (core.dimension(value)) end

@@ -1,7 +1,8 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- What an expression stands for, as far as its text tells without running it: the value of a variable, or of which kind a result will be.
 -- A finding is a table: value = (a Lua value), kind = ("case", "quantity", "dust", ...), word = (a word of the language or a name),
--- method = (its name; kind is then that of its object). An empty one is not known. Variables are looked up raw.
+-- method = (its name; kind is then that of its object), unit = (what a quantity is shown in). An empty one is not known. Variables are looked
+-- up raw.
 local core = ...
 local getmetatable, ipairs, rawget, select, type = getmetatable, ipairs, rawget, select, type
 
@@ -26,7 +27,7 @@ function values.kind_of(value)
   return type(metatable) == "table" and rawget(metatable, "__name") or nil
 end
 
-local function of_value(value) return { value = value, kind = values.kind_of(value) } end
+local function of_value(value) return { value = value, kind = values.kind_of(value), unit = select(2, core.facts(value)) } end
 
 -- A finding for a variable, a word, a unit or a name.
 local function variable(name, environment)
@@ -46,7 +47,7 @@ local function member(object, name)
     local found = core.find(name)
     if not found then return {} end
     local entry = core.entry(found)
-    return { kind = entry.kind == "object" and found or "quantity" }
+    return { kind = entry.kind == "object" and found or "quantity", unit = entry.unit }
   end
   if type(object.value) ~= "table" then return {} end
   local value = rawget(object.value, name)
@@ -61,7 +62,8 @@ local function result(callee)
   end
   if not callee.word then return {} end
   if results[callee.word] then return { kind = results[callee.word] } end
-  return core.find(callee.word) and { kind = "quantity" } or {}
+  local name = core.find(callee.word)
+  return name and { kind = "quantity", unit = core.entry(name).unit } or {}
 end
 
 -- Whether a token can end what may be called or indexed.
@@ -92,7 +94,7 @@ function find_value(tokens, partner, i, environment)
     if mark == "." or mark == ":" then
       local object, first = find_value(tokens, partner, i - 2, environment)
       if mark == "." then return member(object, token.text), first end
-      return { method = token.text, kind = object.kind, object = object.value }, first
+      return { method = token.text, kind = object.kind, object = object.value, unit = object.unit }, first
     end
     return variable(token.text, environment), i
   end

@@ -20,7 +20,11 @@ local fields = {
   kind = "string", of = "any", show = "any", along = "table", against = "string", each = "table", lines = "table", level = "any", bands = "table", verdict = "string",
   x = "string", log = "string", title = "string", name = "string", width = "string", target = "string", variant = "string",
 }
-local kinds = { curve = true, map = true, plane = true, spectrum = true, visibility = true }
+local kinds = {
+  curve = "along one sweep", map = "over two sweeps", plane = "the targets of a study", spectrum = "star, rim, disc and their sum along wavelength",
+  visibility = "of the rim, along the baseline",
+}
+local widths = { single = "86 mm", double = "178 mm" }
 local line_fields = { of = "any", show = "any", given = "table", label = "string" }
 
 local function complain(form, ...) core.raise("figure: " .. form:format(...)) end
@@ -78,7 +82,7 @@ local function read_fields(wanted)
   if type(wanted) ~= "table" then core.raise("figure wants a table like {of = case, show = name}; got " .. core.shown(wanted)) end
   check_fields(wanted, fields, "figure")
   check_choice("kind", wanted.kind, kinds)
-  check_choice("width", wanted.width, { single = true, double = true })
+  check_choice("width", wanted.width, widths)
   if wanted.name and (wanted.name == "" or wanted.name:find "[/%c]") then complain("name wants a file's name without folder and ending; got %s", core.shown(wanted.name)) end
   if wanted.log and wanted.log:find "[^xy]" then complain('log wants "x", "y", "xy" or ""; got "%s"', wanted.log) end
   if not is_study(wanted.of) and not core.is_case(wanted.of) then complain("of wants a case or a study; got %s", core.shown(wanted.of)) end
@@ -258,5 +262,7 @@ function figures.show(figure)
 end
 
 function metatable.__tostring(figure) return ("figure: %s; show(f) draws it, f:write(\"name\") writes it"):format(figure.title) end
+
+figures.fields, figures.line_fields, figures.kinds, figures.widths = fields, line_fields, kinds, widths -- for completion
 
 return figures

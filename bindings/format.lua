@@ -241,10 +241,11 @@ function format.shortened(text)
   return (text:gsub("%d+%.%d%d%d%d+", function(digits) return format.number(tonumber(digits), 4) end))
 end
 
+-- A per cent sign stays with its number.
 function format.wrapped(text, columns, gap)
   gap = gap or " "
   local lines, line, width = {}, nil, 0
-  for word in text:gmatch "%S+" do
+  for word in text:gsub(" %%", "\u{a0}%%"):gmatch "%S+" do
     local more = format.width(word)
     if line and width + #gap + more <= columns then line, width = line .. gap .. word, width + #gap + more
     else
@@ -253,6 +254,7 @@ function format.wrapped(text, columns, gap)
     end
   end
   lines[#lines + 1] = line
+  for i = 1, #lines do lines[i] = lines[i]:gsub("\u{a0}%%", " %%") end
   return lines
 end
 

@@ -40,9 +40,25 @@ function help.by_subject()
   return found
 end
 
+-- The words of a subject with what they have: "case", ":with", ":using"; in full where another word stands before.
+local function names_of_words(records)
+  local names, latest = {}, nil
+  for i, record in ipairs(records) do
+    local full = words.full_name(record)
+    names[i] = record.of and record.of == latest and full:sub(#record.of + 1) or full
+    latest = record.of or record.name
+  end
+  return names
+end
+
 local function map()
   local width = math.min(core.terminal_width() or 118, 118)
-  local lines = new_page("help \"name\" explains a name, a word or a unit; help \"some words\" searches.", "")
+  local lines = new_page("help \"name\" explains a name, a word or a unit; help \"some words\" searches.",
+    "Lengths on the sky have <name>_angle besides. help \"case:why\" is of a method.", "")
+  for _, subject in ipairs(words.by_subject()) do
+    lines[#lines + 1] = "words: " .. subject.title
+    add_names(lines, names_of_words(subject.records), width)
+  end
   for _, subject in ipairs(help.by_subject()) do
     local names = {}
     for _, name in ipairs(subject.names) do
@@ -51,18 +67,6 @@ local function map()
     lines[#lines + 1] = subject.title
     add_names(lines, names, width)
   end
-  for _, subject in ipairs(words.by_subject()) do
-    local names = {}
-    for _, record in ipairs(subject.records) do
-      if not record.of then names[#names + 1] = record.name end
-    end
-    if #names > 0 then
-      lines[#lines + 1] = "words: " .. subject.title
-      add_names(lines, names, width)
-    end
-  end
-  lines[#lines + 1] = ""
-  lines[#lines + 1] = "Lengths on the sky have <name>_angle besides."
   return lines
 end
 
@@ -147,6 +151,14 @@ local function about_built_in(name)
   end
 end
 
+-- And the built-in object that goes by the same name: H is a band too.
+local function with_built_in(name, lines)
+  local others = about_built_in(name)
+  if not others then return lines end
+  lines[#lines + 1] = ""
+  return table.move(others, 1, #others, #lines + 1, lines)
+end
+
 local function about_words(records, lines)
   for _, record in ipairs(records) do
     if #lines > 0 then lines[#lines + 1] = "" end
@@ -191,7 +203,7 @@ function help.help(word)
   if type(word) ~= "string" then word = name_of_value(word) end
   local name = core.find(word)
   local records = words.all(word)
-  if name then return about_words(records, about_name(name)) end
+  if name then return with_built_in(word, about_words(records, about_name(name))) end
   if #records > 0 then return about_words(records, new_page()) end
   return core.unit_facts(word) and about_unit(word) or about_built_in(word) or about_words_searched(word)
 end

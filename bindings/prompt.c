@@ -72,13 +72,13 @@ static void take_size(void) {
   rl_resize_terminal();
 }
 
+/* The terminal stays as it is for the next line: with the shell's settings in between, a Ctrl-D typed just then would be lost. */
 static void cancel_line(void) {
   rl_callback_sigcleanup();
+  rl_free_line_state();
   rl_point = rl_end;
   rl_redisplay();
-  fputs("^C", rl_outstream);
-  rl_callback_handler_remove();
-  fputc('\n', rl_outstream);
+  fputs("^C\n", rl_outstream);
 }
 
 /* A ppoll that finds input doesn't let a waiting signal in, and what is typed after a Ctrl-C must not be read before it. */

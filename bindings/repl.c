@@ -10,6 +10,7 @@
 
 #include <lauxlib.h>
 
+#include "binding.h"
 #include "program.h"
 #include "prompt.h"
 
@@ -44,6 +45,25 @@ static void drop_position(lua_State *L, const char *input) {
   lua_replace(L, -2);
 }
 
+/* Folds the message on top at the terminal's width, between words. If that fails it stays as it is. */
+static int fold(lua_State *L) {
+  lac_push_part(L, "lacuna.show");
+  lua_getfield(L, -1, "page");
+  lua_createtable(L, 1, 0);
+  lua_pushvalue(L, 1);
+  lua_rawseti(L, -2, 1);
+  lua_call(L, 1, 1);
+  return 1;
+}
+
+static void fold_message(lua_State *L) {
+  if (!lua_isstring(L, -1) || program_was_interrupted()) return;
+  lua_pushcfunction(L, fold);
+  lua_pushvalue(L, -2);
+  if (lua_pcall(L, 1, 1, 0) == LUA_OK && lua_isstring(L, -1)) lua_replace(L, -2);
+  else lua_pop(L, 1);
+}
+
 static bool is_blank(const char *text) { return text[strspn(text, " \t\r\n")] == 0; }
 
 /* What people type to leave, as Ctrl-D does. */
@@ -66,6 +86,7 @@ static int answer_input(lua_State *L, const sigset_t *interruption) {
 static void finish_answer(lua_State *L, int status, const char *input) {
   if (status != LUA_OK) {
     drop_position(L, input);
+    fold_message(L);
     program_report(L, program_was_interrupted() ? "\n" : ""); /* the terminal has shown ^C */
   }
   fflush(stdout);

@@ -237,7 +237,7 @@ function run.close(study, result)
   if result.folder then put_in_order(result) end
   if command.shard then return end
   local report = result.folder and core.part "lacuna.report".write(study, command.out, run.facts(result))
-  print(study:table())
+  core.part "lacuna.show".print(study:table())
   if report then io.stderr:write(tostring(report), "\n") end
 end
 

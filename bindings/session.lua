@@ -5,6 +5,7 @@
 -- Besides, what was typed and what came of it is noted for the notebook.
 local core = ...
 local statements = core.part "lacuna.statements"
+local tokens = core.part "lacuna.tokens"
 local debug, load, globals, pairs, type = debug, load, _G, pairs, type -- the user may give these names away
 
 -- A variable: {name =, attribute =, read = a function whose first upvalue is the variable}.
@@ -80,17 +81,21 @@ local function join(chunk)
   end
 end
 
--- Whether the text is an expression, which `never` rules out, and whether it could be one; or nil and the parser's message.
+-- Whether the text is an expression, which `never` rules out, and whether it could be one; or nil and the parser's message. Of what is neither
+-- the mistake is that of the expression where no statement begins like it: in "1 + * 2" it is the star.
 local function parse(text, chunk_name, never)
   local chunk, message = load("return " .. text, chunk_name, "t")
   if chunk then return not never, true end
-  if never or not message:find "<eof>$" then chunk, message = load(text, chunk_name, "t") end
-  if chunk then return false, false end
+  if not never and message:find "<eof>$" then return nil, message end
+  local statement, complaint = load(text, chunk_name, "t")
+  if statement then return false, false end
+  local first = tokens.read(text)[1]
+  if never or not first or not complaint:find(("unexpected symbol near '%s'"):format(first.text), 1, true) then message = complaint end
   return nil, message
 end
 
 -- An input that begins with one of these words is about the conversation, and no part of it.
-local not_kept = { help = true, keep = true, again = true }
+local not_kept = { help = true, keep = true, again = true, more = true }
 
 local function note_before(input)
   local first = input.list[1] and input.list[1].text

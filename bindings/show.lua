@@ -23,11 +23,15 @@ local function finished(text, colour) return (text:gsub("[\1\2\3]", colour and e
 
 -- Pages ---------------------------------------------------------------------------------------------------------------------------
 
--- Where a line may be folded: at its spaces; code, which stands after "> ", where a comma is before them.
-local function may_fold(line, before) return before:find "%S" and (not line:find "^ *> " or before:sub(-1) == ",") end
+-- Where a line may be folded: at its spaces, but neither before a per cent sign, at an error bar nor between quotes; code where a comma is before them.
+local function may_fold(line, before, is_code)
+  if not before:find "%S" or is_code and before:sub(-1) ~= "," or before:find "±$" or line:find("^ +%%", #before + 1) or line:find("^ +±", #before + 1) then return false end
+  return select(2, before:gsub('"', "")) % 2 == 0
+end
 
--- A line folded, what follows set in by two more, or under what stands after a tab; longer words stand alone.
+-- A line folded, what follows set in by two more, or under what stands after a tab; longer words stand alone. Code stands after "> ".
 local function fold(line, columns)
+  local is_code = line:find "^ *> "
   local folded, first = {}, line:match "^(.-)\t"
   local further = first and format.width(first) <= columns / 2 and (" "):rep(format.width(first) + 2) or line:match "^ *" .. "  "
   line = line:gsub("\t", "  ")
@@ -35,7 +39,7 @@ local function fold(line, columns)
     local at
     for space in line:gmatch "()%f[ ] +" do
       local before = line:sub(1, space - 1)
-      if #before >= #further and may_fold(line, before) and (not at or format.width(before) <= columns) then at = space end
+      if #before >= #further and may_fold(line, before, is_code) and (not at or format.width(before) <= columns) then at = space end
     end
     if not at then break end
     folded[#folded + 1] = line:sub(1, at - 1)
@@ -86,8 +90,9 @@ end
 -- show(value, ...): the text of values as the prompt writes them.
 function show.show(...) return finished(written(...), false) end
 
--- What the program prints. In a conversation at a terminal no more than a screenful at once: the rest waits for more().
-local waiting
+-- What the program prints. In a conversation at a terminal no more than a screenful at once: the rest waits for more(). What a word has
+-- printed by itself is not forgotten for its answer.
+local waiting, printed
 local function screenful(text)
   local rows = core.terminal().rows
   local _, breaks = text:gsub("\n", "")
@@ -98,8 +103,15 @@ local function screenful(text)
   return text:sub(1, at) .. show.aside(("… %d more lines: more()"):format(breaks + 1 - keep))
 end
 
+-- Prints a text that is no answer: a study's table.
+function show.print(text)
+  printed = core.part "lacuna.session".current() ~= nil
+  print(finished(printed and screenful(text) or text, show.colour()))
+end
+
 function show.answer(conversation, ...)
-  waiting = nil
+  if not printed then waiting = nil end
+  printed = false
   local text = written(...)
   return finished(conversation and screenful(text) or text, show.colour())
 end
@@ -108,6 +120,7 @@ end
 function show.more()
   if not waiting then core.raise "there is no more to show" end
   local rest = waiting
+  waiting, printed = nil, false
   return setmetatable({}, { __name = "rest", __tostring = function() return rest end })
 end
 

@@ -207,7 +207,8 @@ end
 local methods = {}
 local study_metatable = { __name = "study", __index = methods }
 function study_metatable.__tostring(study)
-  return ("study of %d %s, %d %s"):format(#study.rows, english.plural(#study.rows, "target"), #study.columns, english.plural(#study.columns, "column"))
+  return ("study of %d %s, %d %s; help \"study\" tells what it can be asked"):format(#study.rows, english.plural(#study.rows, "target"), #study.columns,
+    english.plural(#study.columns, "column"))
 end
 
 -- s:table(columns): the table and its notes as text, at most so many columns wide.

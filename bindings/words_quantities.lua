@@ -28,13 +28,15 @@ end
 return {
   {
     name = "quantity", subject = "quantities",
-    forms = { 'quantity "156 ± 3 pc"', 'quantity(5, "au")', 'quantity{name = ..., unit = ..., meaning = ...}' },
+    forms = { 'quantity "156 ± 3 pc"', 'quantity(5, "au")', 'quantity{name = ..., unit = ..., meaning = ..., range = ..., symbol = ..., on_sky = true}' },
     does = "A quantity from a text, or from a number and a unit; from a table, a new name for the glossary. A unit's name is a quantity too: 5*au. " ..
       'A text may carry an error bar, "156 ± 3 pc", "156 +- 3 pc" or "156 +4 -2 pc", and is a spread then.',
     arguments = {
       { "text", "a number with its unit, in VOUnits or the trade's short forms (Msun, Lsun, Mjup)" },
-      { "number, unit", "a number and the text of its unit" },
-      { "name, unit, meaning", "of a new name: how it is called and written, and what exactly it is" },
+      { "number, text", "a number, and its unit as a text" },
+      { "name", "of a new name: how it is called" },
+      { "unit", 'of a new name: what it is shown in; "1" for a plain number' },
+      { "meaning", "of a new name: what exactly it is, in one line" },
       { "range", 'of a new name, "any" if left out: "> 0", ">= 0", "0 .. 1"' },
       { "symbol", "of a new name, in TeX, for equations; its words if left out" },
       { "on_sky", "true for a length that is seen on the sky: <name>_angle exists then" },
@@ -164,25 +166,11 @@ case
     arguments = { { "from, to", "the ends, with units" }, { "count", "how many points, evenly spaced, 2 or more" }, { "a, b, ...", "the values one by one, with units" } },
     result = "a sweep, to be given in a case or computed with",
     errors = "ends of different dimensions, a count below 2, an empty list",
-    examples = { 'case{wavelength = "1.65 um", projected_baseline = sweep("20 m", "330 m", 5)}.array_resolution',
+    examples = { 'case{wavelength = "1.65 um", projected_baseline = sweep("20 m", "330 m", 4)}.array_resolution',
       'case{wavelength = sweep{"1.65 um", "2.2 um"}, projected_baseline = "100 m"}.array_resolution' },
     answers = { [[
-array_resolution (mas)
-8 ┤▀▚▖
-  │  ▝▚▄
-  │     ▀▄
-6 ┤       ▀▚▖
-  │         ▝▚▄
-4 ┤            ▀▖
-  │             ▝▚▄
-  │                ▀▄
-2 ┤                  ▀▀▄▄▄▄▄▄▄▄▄▄
-  │                              ▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▀▚▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄▄
-  └───────┬───────────┬────────────┬───────────┬────────────┬───────────┬───────
-          50         100          150         200          250         300
-                                                projected_baseline (m), 5 points
-projected_baseline     20   97.5     175   252.5     330  m
-array_resolution    8.508  1.745  0.9724  0.6739  0.5157  mas]], [[
+projected_baseline     20  123.3   226.7     330  m
+array_resolution    8.508   1.38  0.7507  0.5157  mas]], [[
 wavelength         1.65    2.2  µm
 array_resolution  1.702  2.269  mas]] },
     see = { "along", "at" },

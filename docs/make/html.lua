@@ -13,9 +13,16 @@ local style = dofile "bindings/page_style.lua" .. [[
 body { max-width: 46rem; }
 h4 { margin: 1rem 0 .2rem; font-size: 1rem; }
 p, ul, ol { margin: .4rem 0; }
+pre.small, .typed { white-space: pre-wrap; }
+.typed { font-weight: 600; }
 nav.names a { margin-right: .8rem; white-space: nowrap; }
 :target { outline: 2px solid var(--link); outline-offset: .3rem; }
 ]]
+
+-- An escaped conversation: what is typed is folded where it is too wide, as on a terminal; answers, which may be tables, scroll.
+function html.conversation(escaped)
+  return (escaped:gsub("[^\n]+", function(line) return line:find "^&gt;" and '<span class="typed">' .. line .. "</span>" or line end))
+end
 
 -- A whole page. `links`: { { file, title }, ... } of the other pages.
 function html.page(title, links, body)

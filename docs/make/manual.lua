@@ -6,7 +6,7 @@ local escape = html.escape
 local manual = {}
 
 local function word_id(word) return "word-" .. (word.of and word.of .. "-" or "") .. word.name:gsub("[^%w_]", "-") end
-local function title_of(word) return (word.of and word.of .. ":" or "") .. word.name end
+local function title_of(word) return word.of and word.of .. (word.field and "." or ":") .. word.name or word.name end
 
 local function add_word(out, word)
   local function add(...) out[#out + 1] = table.concat { ... } end
@@ -24,7 +24,7 @@ local function add_word(out, word)
     local lines = {}
     for _, line in ipairs(type(example) == "table" and example or { example }) do lines[#lines + 1] = "> " .. line end
     lines[#lines + 1] = word.answers and word.answers[i] ~= "" and word.answers[i] or nil
-    add("<pre>", escape(table.concat(lines, "\n")), "</pre>")
+    add("<pre>", html.conversation(escape(table.concat(lines, "\n"))), "</pre>")
   end
   add "</section>"
 end

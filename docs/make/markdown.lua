@@ -11,6 +11,7 @@ local function quoted(path) return "'" .. path:gsub("'", "'\\''") .. "'" end
 function markdown.html(path)
   local text = files.output_of("cmark-gfm --extension table " .. quoted(path))
   text = text:gsub("<!%-%-.-%-%->\n?", ""):gsub("<table>", '<div class="scroll"><table>'):gsub("</table>", "</table></div>"):gsub("<th>", '<th scope="col">')
+  text = text:gsub('(<code class="language%-lacuna">)(.-)(</code>)', function(before, lines, after) return before .. html.conversation(lines) .. after end)
   return (text:gsub('href="(%d+_[%w_]+)%.md', function(file) return 'href="' .. file:gsub("^%d+_", "guide_") .. ".html" end))
 end
 

@@ -183,6 +183,10 @@ t.test("recipes that with and using change are said, in the case and with its an
   local other = c:with { cooling_efficiency = 0.4, backwarming_factor = 2 }
   has(lac.show(other), "  recipes that changed\n    sublimation_radius now by kama_2009, before by grey_grains\n")
   has(lac.show(other.rim_size_angle), "\n  sublimation_radius now by kama_2009, before by grey_grains")
+  has_no(lac.show(other.rim_size_angle), "beware")
+  local bright = other:with { bolometric_flux = "2.4e-9 W.m**-2" } -- a hundred times as much: beyond the range that the recipe's row states
+  has(lac.show(bright.rim_size_angle), "\n  beware: kama_2009 holds for heating_luminosity from 1 to 1000 Lsun; 1826 ± 69 Lsun here, outside in 100 %")
+  has_no(lac.show(bright.array_resolution), "beware")
   has_no(lac.show(other.array_resolution), "kama_2009")
   has_no(lac.show(c:with { projected_baseline = "330 m" }), "changed")
   local chosen = c:using { array_resolution = "fringe" }

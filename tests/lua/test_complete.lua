@@ -10,7 +10,7 @@ local tokens = require "parts" "lacuna.tokens"
 local variables = { -- of an invented star
   c = lac.case { distance = "156 pc", bolometric_flux = "2.4e-11 W.m**-2", wavelength = "1.65 um", band = "H" },
   mine = { alpha = 1, ["not an identifier"] = 2, beta = function() end, nested = { deep = true } }, width = 5 * lac.au, note = "text",
-  d = lac.dust { materials = "soot", sizes = "1 um" },
+  d = lac.dust { materials = "soot", sizes = "1 um" }, stars = setmetatable({ plan = {}, title = "invented" }, { __name = "study" }),
 }
 local environment = { variables, _G }
 
@@ -138,6 +138,11 @@ t.test("units", function()
   offers("case { bolometric_flux = '1 W.", "m cm", "")
   offers("width:as '", "km au")
   offers("quantity(5, '", "km au")
+  offers("width:as '", "au km", "kg mas")
+  _, order = at "c.rim_radius_angle:as '"
+  t.equal({ order[1], (at "c.rim_radius_angle:as '").km }, { "mas", nil }, "the unit that it is shown in first, and no other dimension")
+  offers("hill_radius { planet_mass = '1 Mjup' }:value '", "au km", "kg mas")
+  offers("dust { sizes = { smallest = '0.1 u", "um", "uJy us")
   offers("quantity { name = 'x', unit = '", "km au")
   t.equal((at "5 * kp").kpc.meaning, "3.08568e19 m") -- IAU 2015 Resolution B2: 648000/pi au
   nothing("case { bolometric_flux = '2e")
@@ -162,6 +167,22 @@ t.test("recipes, bands, materials, options", function()
   only("study { variants = { { as", "ask", " = ")
   only("settings { thr", "threads", " = ")
   only("band { zero", "zero_point", " = ")
+  only("quantity { on", "on_sky", " = ")
+end)
+
+t.test("the variants of compare, the fields of figures", function()
+  only("compare(c, { long = { projected_b", "projected_baseline", " = ")
+  only("compare(c, { long = { usin", "using", " = ")
+  only("compare(c, { long = { using = { gap_width = 'kana", "kanagawa_2016", "'")
+  only("compare(c, { { name = 'long', distance = '5 kp", "kpc", "'")
+  only("compare(c, {}, { 'sublimation_t", "sublimation_temperature", "'")
+  offers("figure { ", "of show along kind")
+  only("figure { agai", "against", " = ")
+  only("figure { show = 'sublimation_t", "sublimation_temperature", "'")
+  only("figure { along = { projected_b", "projected_baseline", " = ")
+  only("figure { kind = 'spec", "spectrum", "'")
+  only("figure { lines = { { labe", "label", " = ")
+  only("study { figures = { { kin", "kind", " = ")
 end)
 
 t.test("Lua's own words and the user's", function()
@@ -175,6 +196,11 @@ t.test("Lua's own words and the user's", function()
   only("mine|", "mine", "")
   offers("", "c mine width note case study", "distance print local")
   offers("spread.", "normal log_uniform samples")
+  t.equal((at "spread.").normal.meaning, require "parts" "lacuna.words".one_line "spread.normal")
+  offers("glossary.", "name names words")
+  offers("band 'H'.", "wavelength zero_point", "flux")
+  offers("stars.", "rows", "plan title csv")
+  t.equal((at "star").stars.meaning, "study")
   nothing("mine.alpha.")
   nothing("5.")
 end)

@@ -139,4 +139,10 @@ t.test("rounded: the digits of with_error as three fields for files of numbers",
   end
 end)
 
+t.test("wrapped: at spaces, but never before a per cent sign; a longer word stands alone", function()
+  t.equal(format.wrapped("the central 68 % of them", 14), { "the central", "68 % of them" })
+  t.equal(format.wrapped("short", 14), { "short" })
+  t.equal(format.wrapped("a_word_longer_than_all is here", 10), { "a_word_longer_than_all", "is here" })
+end)
+
 t.finish()

@@ -150,6 +150,9 @@ t.test("errors name the line that was typed", function()
   t.equal(answer(session, "c + d"), 3, "what was declared before the error stays")
   t.equal(answer(session, "x = = 1"), "prompt:1: unexpected symbol near '='")
   t.equal(answer(session, "end return function()"), "prompt:1: <eof> expected near 'end'")
+  t.equal(answer(session, "1 +\n* 2"), "prompt:2: unexpected symbol near '*'", "the mistake of an expression, not that it is no statement")
+  t.equal(answer(session, "{1, 2,, 3}"), "prompt:1: unexpected symbol near ','")
+  t.equal(answer(session, "x = = 3"), "prompt:1: unexpected symbol near '='")
   for _, beginning in ipairs { "local a =", "for i = 1, 2 do", "f(", "local function f()", "x = {", "if a then", "1 +" } do
     local chunk, message = session.compile(beginning, "=prompt")
     t.equal(chunk, nil)
@@ -245,7 +248,7 @@ t.test("keep: what was typed, without what failed", function()
   t.equal(kept("local print = print", "local show = 5", "show"), head:gsub("\n\n", "\n" ..
     "local print_shown = (function(print, show) return function(...) print(show(...)) end end)(print, show)\n\n") ..
     "local print = print\nlocal show = 5\nprint_shown(show)\n")
-  t.equal(kept("again 'nowhere'", "help 'x'", "keep 'other'"), head)
+  t.equal(kept("again 'nowhere'", "help 'x'", "keep 'other'", "more()"), head)
   local text, printed = kept("a_global = 1 error 'x'")
   t.equal(text, head .. "-- left out: failed after it had set a_global: a_global = 1 error 'x'\n")
   t.equal(printed[2], "  left out: failed after it had set a_global: a_global = 1 error 'x'")

@@ -1,5 +1,6 @@
 # SPDX-License-Identifier: GPL-3.0-or-later
 """A program on a pseudo-terminal, driven as a person would: for the tests of the conversation."""
+import codecs
 import fcntl
 import os
 import pty
@@ -20,26 +21,30 @@ PROMPT = re.compile(r"(^|\n)> $")
 
 
 class Session:
-    """One program, or another command, on a terminal of its own. screen: what was seen since the last typing, without terminal control; raw: with it, all of it."""
+    """One program, or another command, on a terminal of its own, started in `folder` if one is named. screen: what was seen since the last
+    typing, without terminal control; coloured: the same with colours; raw: all of it as it came."""
 
-    def __init__(self, state_folder, *options, rows=24, columns=80, command=None, folder=".", **settings):
-        environment = {name: value for name, value in os.environ.items() if name not in ("NO_COLOR", "COLUMNS", "LINES")}
-        environment |= {"XDG_STATE_HOME": state_folder, "XDG_CONFIG_HOME": state_folder, "TERM": "xterm", "INPUTRC": "/dev/null", **settings}
+    def __init__(self, state_folder, *options, rows=24, columns=80, command=None, folder=None, **settings):
+        environment = {**os.environ, "XDG_STATE_HOME": state_folder, "XDG_CONFIG_HOME": state_folder, "TERM": "xterm", "INPUTRC": "/dev/null", **settings}
+        for name in {"NO_COLOR", "COLUMNS", "LINES"} - set(settings):
+            environment.pop(name, None)
         self.pid, self.terminal = pty.fork()
         if self.pid == 0:
             self.terminal = 0
+            if folder:
+                os.chdir(folder)
             self.resize(rows, columns)
-            os.chdir(folder)
             command = command or [LACUNA, *options]
             os.execvpe(command[0], command, environment)
-        self.screen = self.raw = ""
+        self.screen = self.coloured = self.raw = ""
+        self.decoder = codecs.getincrementaldecoder("utf-8")(errors="replace")  # a character may come in two pieces
 
     def resize(self, rows, columns):
         """As a window does whose size is changed: the kernel tells the program by a signal."""
         fcntl.ioctl(self.terminal, termios.TIOCSWINSZ, struct.pack("HHHH", rows, columns, 0, 0))
 
     def type(self, text):
-        self.screen = ""
+        self.screen = self.coloured = ""
         os.write(self.terminal, text.encode())
 
     def read(self, patience):
@@ -47,10 +52,11 @@ class Session:
         if not select.select([self.terminal], [], [], max(0, patience))[0]:
             return False
         try:
-            piece = os.read(self.terminal, 65536).decode(errors="replace")
+            piece = self.decoder.decode(os.read(self.terminal, 65536))
         except OSError:  # the program has left
             return False
         self.raw += piece
+        self.coloured = re.sub(r"\x1b\[\?[0-9;]*[a-zA-Z]|\r", "", self.coloured + piece)
         self.screen = re.sub(r"\x1b\[[0-9;?]*[@-~]|[\r\a]", "", self.screen + piece)
         return True
 
@@ -67,6 +73,14 @@ class Session:
         while self.read(quiet):
             pass
         return self.screen
+
+    def answer(self, *lines):
+        """Types the lines of one input. Returned: what is shown before the next prompt; None if that doesn't come."""
+        for line in lines[:-1]:
+            self.type(line + "\r")
+            self.wait(r"\n>> $")
+        self.type(lines[-1] + "\r")
+        return self.screen[self.screen.index("\n") + 1 : -len("> ")] if self.wait(PROMPT) else None
 
     def ask(self, line, answer, name):
         """Types a line and wants this answer before the next prompt."""

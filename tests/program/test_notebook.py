@@ -7,28 +7,19 @@ import subprocess
 import tempfile
 import time
 
+import terminal
 from tap import check, plan
-from terminal import CONTROL_C, LACUNA, PROMPT, Session
+from terminal import CONTROL_C, LACUNA, PROMPT
 
 
-class Notebook(Session):
-    """A session in a folder of its own, whose XDG folders are in there too."""
+class Session(terminal.Session):
+    """A conversation in a folder whose XDG folders are in there too; on a terminal so wide that each message is a line."""
 
     def __init__(self, folder, *options):
-        super().__init__(folder + "/state", *options, folder=folder, XDG_CONFIG_HOME=folder + "/config")
+        super().__init__(folder + "/state", *options, columns=200, folder=folder, XDG_CONFIG_HOME=folder + "/config")
         self.folder = folder
         self.shown = ""  # all that was shown of inputs that went well
         self.greeting = self.screen if self.wait(PROMPT) else None
-
-    def answer(self, *lines):
-        """Types the lines of one input; returned is what is shown before the next prompt."""
-        for line in lines[:-1]:
-            self.type(line + "\r")
-            self.wait(r"\n>> $")
-        self.type(lines[-1] + "\r")
-        if not self.wait(PROMPT):
-            return None
-        return self.screen[self.screen.index("\n") + 1 : -len("> ")]
 
     def go(self, *lines):
         """An input that goes well: what it shows is what the script has to print."""
@@ -64,7 +55,7 @@ def runs_the_same(session, name, label):
 
 
 def keep_what_went_well(folder):
-    session = Notebook(folder, "--seed", "5", "--draws=500")
+    session = Session(folder, "--seed", "5", "--draws=500")
     session.go('local c = case { distance = "156 ± 3 pc", rim_radius = "0.3 au" }')
     session.go("c.rim_radius_angle -- on the sky")
     session.fail("c.rim_raduis", "unknown name 'rim_raduis'")
@@ -100,12 +91,14 @@ def keep_what_went_well(folder):
     session.type(CONTROL_C)
     check(session.wait(PROMPT) and "interrupted" in session.screen, "an interrupted input", session.screen)
     session.answer('help "distance"')
+    session.answer("help()")
+    session.answer("more()")
     shown = session.answer('keep "kept.lua"')
     check(shown == "kept 21 inputs in kept.lua\n", "keep says what it wrote", shown)
     text = read(folder, "kept.lua")
     check(re.match(r"-- A session of Lacuna [0-9.]+, kept on \d{4}-\d\d-\d\d\nsettings \{ seed = 5, draws = 500 \}\n\nlocal c = case", text),
           "the script begins with version, date, seed and draws", text)
-    check(not re.search("raduis|lost|while|help|keep \"|au = 11", text), "failed and interrupted inputs, help and keep are left out", text)
+    check(not re.search("raduis|lost|while|help|more|keep \"|au = 11", text), "failed and interrupted inputs, help, more and keep are left out", text)
     check("print(show(c.rim_radius_angle)) -- on the sky\n" in text, "a comment stays behind its line", text)
     check("  return 2 * x * au -- au is the session's\nend\n" in text, "an input of several lines keeps them", text)
     runs_the_same(session, "kept.lua", "the script prints what the session showed, free spreads included")
@@ -129,7 +122,7 @@ def keep_again(session):
 
 
 def keep_what_failed_late(folder):
-    session = Notebook(folder)
+    session = Session(folder)
     session.fail("first = 1; local second = spread.normal(1, 1); error 'late'", "late")
     session.go("local third = spread.normal(1, 1)")
     session.go("third * 1, mean(third * 1)")
@@ -144,7 +137,7 @@ def keep_what_failed_late(folder):
     session.answer('keep "many.lua"')
     runs_the_same(session, "many.lua", "a session of more than 200 locals")
     session.leave()
-    session = Notebook(folder)
+    session = Session(folder)
     shown = session.answer('again "many.lua"')
     check("295\n" in shown and session.answer("v100") == "100\n", "and it is read again with all of them", shown)
     session.leave()
@@ -177,7 +170,7 @@ def start_files(folder):
     write(folder, "config/lacuna/start.lua", PERSONAL)
     write(folder, "stars.lua", STARS)
     write(folder, "broken.lua", BROKEN)
-    session = Notebook(folder, "--start", "stars.lua")
+    session = Session(folder, "--start", "stars.lua")
     check(session.greeting and re.search(r"\nreading \S+/config/lacuna/start.lua\n3\s+5 mas\n> $", session.greeting), "both start-up files are run", session.greeting)
     session.shown = "3\t5 mas\n"
     session.go("#stars, near.distance, first.shadow_length")
@@ -194,7 +187,7 @@ def start_files(folder):
     check("again" not in text and "never = " not in text, "and again doesn't", text)
     runs_the_same(session, "all.lua", "the script runs without them")
     session.leave()
-    session = Notebook(folder, "--draws=300", "--start=stars.lua")
+    session = Session(folder, "--draws=300", "--start=stars.lua")
     shown = session.answer('again "all.lua"')
     check(shown == "4\n100 pc\n1 au\n7\n8\n", "in a session with the same start-up files only the rest is run again", shown)
     session.fail("settings { seed = 7, nothing = 1 }", "settings: unknown setting")
@@ -208,15 +201,15 @@ def start_files(folder):
 
 def other_starts(folder):
     write(folder, "config/lacuna/start.lua", "mine = 1\nerror 'no good'\nmine = 2\n")
-    session = Notebook(folder)
+    session = Session(folder)
     check(re.search(r"\nreading \S+\n\S+start.lua:2: no good\n> $", session.greeting), "an error in the start-up file is one line", session.greeting)
     check(session.answer("mine") == "1\n", "what ran before it stays", session.screen)
     session.leave()
-    session = Notebook(folder, "--start", "nowhere.lua")
+    session = Session(folder, "--start", "nowhere.lua")
     check("\n--start: cannot read nowhere.lua: No such file or directory\n> " in session.greeting, "a start file that isn't there", session.greeting)
     session.leave()
     write(folder, "config/lacuna/start.lua", "half = {\n")
-    session = Notebook(folder)
+    session = Session(folder)
     check(re.search(r"start.lua:\d: .* near <eof>\n> $", session.greeting), "half a file", session.greeting)
     check(session.answer("1 + 1") == "2\n", "is no obstacle", session.screen)
     session.leave()
@@ -245,7 +238,7 @@ def without_terminal(folder):
 def interrupt_again(folder):
     write(folder, "config/lacuna/start.lua", "")
     write(folder, "slow.lua", "local a = 1\nwhile true do a = a + 1 end\n")
-    session = Notebook(folder)
+    session = Session(folder)
     session.type('again "slow.lua"\r')
     session.wait(r"\n")
     time.sleep(0.5)
