@@ -53,7 +53,8 @@ local function standard(quantity)
   if d.kind == "uniform" then return (quantity - like(d.a)) / like(d.b - d.a), "uniform" end
   if d.kind == "log_uniform" then return core.log(ratio "a") / math.log(d.b / d.a), "uniform" end
   if d.kind == "log_normal" then return core.log(ratio "a") / d.b, "normal" end
-  local deviation = quantity - like(d.a) -- lopsided
+  if d.b == 0 or d.c == 0 then return quantity, "any" end -- lopsided, with half the draws at its median
+  local deviation = quantity - like(d.a)
   local is_above = core.above(deviation, like(0))
   return deviation / like(d.b) * is_above + deviation / like(d.c) * (1 - is_above), "normal"
 end
