@@ -5,12 +5,12 @@ local core = ...
 local format = core.part "lacuna.format"
 local show = core.part "lacuna.show"
 local sweeps = core.part "lacuna.sweeps"
+local relations = core.part "lacuna.relations"
 local text = core.part "lacuna.text"
 local textplot = core.part "lacuna.textplot"
 
 local answers = {}
 
-local function columns() return math.max(core.terminal_width() or 80, 40) end
 local function add(lines, line) lines[#lines + 1] = line end
 
 -- Ensembles -----------------------------------------------------------------------------------------------------------------------
@@ -113,7 +113,7 @@ local function warning_lines(quantity, name)
   local self, lines = name and core.case_of(quantity), {}
   if not self or select(5, core.facts(quantity)) > LARGE then return lines end
   for _, step in ipairs(core.steps(self, name)) do
-    for _, warning in ipairs(step.row and text.warnings(self, core.row(step.row)) or {}) do add(lines, ("  %s %s"):format(show.marked "beware:", warning)) end
+    for _, warning in ipairs(step.row and relations.warnings(self, core.row(step.row)) or {}) do add(lines, ("  %s %s"):format(show.marked "beware:", warning)) end
   end
   return lines
 end
@@ -121,10 +121,9 @@ end
 local function quantity_lines(quantity)
   local name, _, _, _, _, unbound = core.facts(quantity)
   if unbound then return { text.quantity(quantity) } end
-  local axes, over = core.axes(quantity), {}
-  for _, axis in ipairs(axes) do if axis.name ~= "draw" then add(over, axis) end end
+  local over, draws = text.axes(quantity)
   local verdict = name and core.entry(name).kind == "verdict"
-  if #axes == 0 then return { text.quantity(quantity) .. on_the_sky(quantity) } end
+  if #over == 0 and not draws then return { text.quantity(quantity) .. on_the_sky(quantity) } end
   if #over == 0 then return ensemble(quantity, verdict) end
   if #over == 1 then return sweeps.one(quantity, verdict, over[1]) end
   if #over == 2 then return sweeps.two(quantity, verdict, over) end
@@ -145,7 +144,7 @@ end
 -- Sentences, wrapped and set in.
 local function add_sentences(lines, sentences)
   for _, sentence in ipairs(sentences) do
-    for i, part in ipairs(format.wrapped(sentence, columns() - 6)) do add(lines, (i == 1 and "    " or "      ") .. part) end
+    for i, part in ipairs(format.wrapped(sentence, show.columns() - 6)) do add(lines, (i == 1 and "    " or "      ") .. part) end
   end
 end
 
@@ -154,19 +153,10 @@ local function add_pairs(lines, pairs_)
   local widest = 0
   for _, pair in ipairs(pairs_) do widest = math.max(widest, format.width(pair[1])) end
   for _, pair in ipairs(pairs_) do
-    for i, part in ipairs(format.wrapped(pair[2], math.max(columns() - widest - 6, 24))) do
+    for i, part in ipairs(format.wrapped(pair[2], math.max(show.columns() - widest - 6, 24))) do
       add(lines, "    " .. format.pad_right(i == 1 and pair[1] or "", widest) .. "  " .. part)
     end
   end
-end
-
-local function given_pairs(self)
-  local info, found = core.info(self), {}
-  for _, name in ipairs(core.names()) do
-    if info.givens[name] then add(found, { name, text.given(self, name) }) end
-    if info.objects[name] then add(found, { name, tostring(info.objects[name]) }) end
-  end
-  return found
 end
 
 -- What the derived names rest on, as sentences: assumed values, then what recipes suppose, and recipes that the user chose.
@@ -180,7 +170,7 @@ local function assumptions(self, asked)
     local supposes = row and row.supposes and "supposes " .. row.supposes
     if row and row.kind == "assumed" then
       add(assumed, ("%s = %s %s"):format(show.marked(name), text.brief(core.raw(self, name)),
-        show.aside("(" .. text.source(row) .. (supposes and "; " .. supposes or "") .. ")")))
+        show.aside("(" .. relations.source(row) .. (supposes and "; " .. supposes or "") .. ")")))
     elseif using[name] then add(supposed, ("%s by %s, chosen by using %s"):format(show.marked(name), using[name], show.aside(supposes or "")))
     elseif supposes then add(supposed, ("%s by %s %s"):format(name, row.by, show.aside(supposes))) end
   end
@@ -201,7 +191,7 @@ function answers.case(self)
     add(lines, "  " .. title .. (#entries == 0 and show.aside(": " .. none) or ""))
     put(lines, entries)
   end
-  part("given", add_pairs, given_pairs(self), "nothing")
+  part("given", add_pairs, text.givens(self), "nothing")
   for _, change in ipairs(info.changed or {}) do add(changed, ("%s now by %s, before by %s"):format(change.name, change.after, change.before)) end
   if #changed > 0 then part("recipes that changed", add_sentences, changed) end
   for _, name in ipairs(asked) do add(derived, { name, derived_text(core.raw(self, name)) }) end
@@ -233,7 +223,7 @@ end
 -- A plain table in one line: the beginning, and how much there is.
 function answers.table(whole, depth)
   depth = depth or 0
-  local parts, wide, room = {}, 0, depth == 0 and columns() - 24 or 24
+  local parts, wide, room = {}, 0, depth == 0 and show.columns() - 24 or 24
   local function put(part)
     if #parts > 0 and wide + format.width(part) + 2 > room then return false end
     wide = wide + format.width(part) + 2

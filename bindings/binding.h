@@ -37,6 +37,9 @@ const char *lac_shown(lua_State *L, int index);
 /* Writes a dimension with its article, "a length", and returns buffer. */
 const char *lac_a_dimension(lac_dimension dimension, char *buffer, size_t size);
 
+/* Raises where the host has set a locale with another decimal point: what is written for other programs would not be read as it is meant. */
+void lac_check_decimal_point(lua_State *L, const char *what);
+
 /* Bracket a call that may run long: lac_state_begin before, lac_state_end after; the latter raises where the status is
    LAC_INTERRUPTED (through the host's hook where one was set), LAC_OVER_CAP, LAC_NO_MEMORY, LAC_CALLBACK_FAILED ... */
 lac_state *lac_state_begin(lua_State *L);

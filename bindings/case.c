@@ -57,25 +57,32 @@ static void raise_unsettled(lua_State *L, lac_status status, int culprit, const 
   lac_error(L, "%s", lac_status_words(status));
 }
 
+/* Pushes what a chain hangs on, as one text. */
+static void push_chain_key(lua_State *L, const lac_case *object, int rows, const int *only) {
+  const size_t names = (size_t)object->names, size = sizeof rows + names * (sizeof *object->given + sizeof *only);
+  luaL_Buffer key;
+  char *at = luaL_buffinitsize(L, &key, size);
+  at = (char *)memcpy(at, &rows, sizeof rows) + sizeof rows;
+  at = (char *)memcpy(at, object->given, names * sizeof *object->given) + names * sizeof *object->given;
+  memcpy(at, only, names * sizeof *only);
+  luaL_pushresultsize(&key, size);
+}
+
 /* Pushes the holder of the chain for a set of givens and restrictions, from the cache or settled now.
    Where a restriction can't be had: an error, or NULL with nil pushed if that is only tried. */
-static const lac_chain *push_chain(lua_State *L, const bool *given, const int *only, bool trying) {
+static const lac_chain *push_chain(lua_State *L, const lac_case *object, int rows, const int *only, bool trying) {
   const lac_catalogue *catalogue = lac_catalogue_of(L);
-  const size_t names = (size_t)lac_catalogue_names(catalogue);
-  const int rows = lac_catalogue_rows(catalogue);
+  const int names = object->names;
   push_registry_table(L, &chains_key, "v");
-  luaL_Buffer key;
-  luaL_buffinit(L, &key);
-  luaL_addlstring(&key, (const char *)&rows, sizeof rows);
-  luaL_addlstring(&key, (const char *)given, names * sizeof *given);
-  luaL_addlstring(&key, (const char *)only, names * sizeof *only);
-  luaL_pushresult(&key);
+  push_chain_key(L, object, rows, only);
   lua_pushvalue(L, -1);
   if (lua_rawget(L, -3) != LUA_TUSERDATA) {
     lua_pop(L, 1);
     lac_chain **holder = push_chain_holder(L);
     int culprit = -1;
-    lac_status status = lac_chain_settle(catalogue, given, only, holder, &culprit);
+    if (names != lac_catalogue_names(catalogue) || rows != lac_catalogue_rows(catalogue)) /* by a finaliser, as anything is allocated */
+      lac_error(L, "a quantity or a relation was added while a chain was being settled: ask again");
+    lac_status status = lac_chain_settle(catalogue, object->given, only, holder, &culprit);
     if (trying && (status == LAC_NOT_HAD || status == LAC_DUPLICATE)) return lua_pushnil(L), NULL;
     if (status != LAC_OK) raise_unsettled(L, status, culprit, only);
     lua_pushvalue(L, -2);
@@ -174,6 +181,7 @@ static int case_finalise(lua_State *L) {
   object->values = NULL;
   free(object->given), free(object->asked);
   object->given = object->asked = NULL;
+  object->chain = NULL;
   return 0;
 }
 
@@ -191,46 +199,55 @@ static void make_room(lua_State *L, lac_case *object) {
   object->names = names;
 }
 
+static void raise_no_recipe(lua_State *L, const char *word, int id, const char *by) {
+  const lac_catalogue *catalogue = lac_catalogue_of(L);
+  luaL_Buffer recipes;
+  luaL_buffinit(L, &recipes);
+  int count = 0;
+  const int *rows = lac_catalogue_rows_of(catalogue, id, &count);
+  for (int i = 0; i < count; i++) luaL_addstring(&recipes, i > 0 ? ", " : ""), luaL_addstring(&recipes, lac_catalogue_row(catalogue, rows[i])->by);
+  luaL_pushresult(&recipes);
+  lac_error(L, "using: %s has no recipe '%s'; it has %s", word, by, count > 0 ? lua_tostring(L, -1) : "none");
+}
+
+/* The restrictions {name = by} on top of the stack as the only row of each name, -1: any. */
+static void read_restrictions(lua_State *L, int names, int *only) {
+  const lac_catalogue *catalogue = lac_catalogue_of(L);
+  for (lua_pushnil(L); lua_next(L, -2); lua_pop(L, 1)) {
+    const char *word = luaL_checkstring(L, -2), *by = luaL_checkstring(L, -1);
+    const int id = lac_catalogue_find(catalogue, word);
+    if (id < 0 || id >= names) lac_error(L, "using: unknown name '%s'", word);
+    only[id] = lac_catalogue_find_row(catalogue, id, by);
+    if (only[id] < 0) raise_no_recipe(L, word, id, by);
+  }
+}
+
 /* Settles the chain of the case at place: from its givens, and the restrictions {name = by} kept as user value 2. Where one can't be had:
    an error, or false if that is only tried. */
 static bool settle(lua_State *L, int place, bool trying) {
-  const lac_catalogue *catalogue = lac_catalogue_of(L);
   lac_case *object = lua_touserdata(L, place);
   make_room(L, object);
+  const int rows = lac_catalogue_rows(lac_catalogue_of(L));
+  object->rows = -1; /* no chain yet that fits the names: should anything be raised, it is settled anew */
   int *only = lua_newuserdatauv(L, (size_t)object->names * sizeof *only, 0);
   for (int i = 0; i < object->names; i++) only[i] = -1;
-  if (lua_getiuservalue(L, place, 2) == LUA_TTABLE) {
-    for (lua_pushnil(L); lua_next(L, -2); lua_pop(L, 1)) {
-      const char *word = luaL_checkstring(L, -2), *by = luaL_checkstring(L, -1);
-      const int id = lac_catalogue_find(catalogue, word);
-      if (id < 0) lac_error(L, "using: unknown name '%s'", word);
-      only[id] = lac_catalogue_find_row(catalogue, id, by);
-      if (only[id] < 0) {
-        luaL_Buffer recipes;
-        luaL_buffinit(L, &recipes);
-        int count = 0;
-        const int *rows = lac_catalogue_rows_of(catalogue, id, &count);
-        for (int i = 0; i < count; i++) luaL_addstring(&recipes, i > 0 ? ", " : ""), luaL_addstring(&recipes, lac_catalogue_row(catalogue, rows[i])->by);
-        luaL_pushresult(&recipes);
-        lac_error(L, "using: %s has no recipe '%s'; it has %s", word, by, count > 0 ? lua_tostring(L, -1) : "none");
-      }
-    }
-  }
+  if (lua_getiuservalue(L, place, 2) == LUA_TTABLE) read_restrictions(L, object->names, only);
   lua_pop(L, 1);
-  const lac_chain *chain = push_chain(L, object->given, only, trying);
+  const lac_chain *chain = push_chain(L, object, rows, only, trying);
   if (chain == NULL) return false;
   object->chain = chain;
   lua_setiuservalue(L, place, 1);
   lua_pop(L, 1);
   for (int i = 0; i < object->names; i++) /* what was derived by the former chain may come otherwise now */
     if (!object->given[i]) lac_value_drop(object->values[i]), object->values[i] = NULL;
-  object->rows = lac_catalogue_rows(catalogue);
+  object->rows = rows;
   return true;
 }
 
 lac_case *lac_check_case(lua_State *L, int index) {
   lac_case *object = lua_touserdata(L, index);
   if (object == NULL || lua_rawlen(L, index) != sizeof *object || object->tag != CASE_TAG) lac_error(L, "a case is wanted here; got %s", luaL_typename(L, index));
+  if (object->given == NULL) lac_error(L, "this case is closed: it can't be asked any more"); /* by <close>, or another's finaliser holds it */
   const lac_catalogue *catalogue = lac_catalogue_of(L);
   if (object->names != lac_catalogue_names(catalogue) || object->rows != lac_catalogue_rows(catalogue)) settle(L, lua_absindex(L, index), false);
   return object;

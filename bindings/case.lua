@@ -6,10 +6,14 @@ local text = core.part "lacuna.text"
 local case = {} -- what the module offers
 local methods = core.case_methods
 
+local function by_text(a, b) return tostring(a) < tostring(b) end
 local function sorted_keys(t)
-  local keys = {}
-  for key in pairs(t) do keys[#keys + 1] = key end
-  table.sort(keys, function(a, b) return tostring(a) < tostring(b) end)
+  local keys, texts = {}, true
+  for key in pairs(t) do
+    keys[#keys + 1] = key
+    texts = texts and type(key) == "string"
+  end
+  table.sort(keys, not texts and by_text or nil)
   return keys
 end
 case.sorted_keys = sorted_keys
@@ -53,12 +57,17 @@ local function definitions_to_check(givens)
   return known
 end
 
+-- A single number, or nil of what has more.
 local function single(quantity)
   local _, _, _, number, size = core.facts(quantity)
   return size == 1 and number or nil
 end
+case.single = single
 
-local function differ(a, b) return math.abs(a - b) > 0.01 * math.max(math.abs(a), math.abs(b)) end
+local AGREE = 0.01 -- single numbers that differ by a larger share contradict each other
+case.AGREE = AGREE
+local function differ(a, b) return math.abs(a - b) > AGREE * math.max(math.abs(a), math.abs(b)) end
+case.differ = differ
 
 -- Definitions are exact: givens that contradict one are an error. (What recipes give instead is for check.)
 local function refuse_contradictions(givens)
@@ -192,6 +201,16 @@ local function by_recipe(self, name, by)
 end
 case.by_recipe = by_recipe
 
+-- Whether a recipe merely leaves out what is known: its inputs are some of the other's.
+local function leaves_out(row, taken)
+  if #row.from >= #taken.from then return false end
+  local has = {}
+  for _, name in ipairs(taken.from) do has[name] = true end
+  for _, name in ipairs(row.from) do if not has[name] then return false end end
+  return true
+end
+case.leaves_out = leaves_out
+
 -- What other recipes along the chain of a name would give: a list of {name, by, row, value, instead_of}, one recipe changed at a time.
 function case.over_recipes(self, name)
   local others = {}
@@ -221,63 +240,6 @@ function case.assumptions(self, name)
   return assumed
 end
 
--- c:missing(name): what would have to be given; prints itself.
-function methods.missing(self, word)
-  local name = name_of(word, "missing: ")
-  local sets = core.missing_sets(self, name)
-  return setmetatable({ case = self, name = name, sets = sets, had = core.row_of(self, name) ~= nil, given = core.row_of(self, name) == false }, text.missing_metatable)
-end
-
--- Single numbers agree within 1 %; ensembles where zero lies inside the 95 % interval of the difference.
-local function agree(given, derived)
-  local a, b = single(given), single(derived)
-  if a and b then return not differ(a, b) end
-  local difference = given - derived
-  local low, high = core.interval(difference, 0.95)
-  if not text.has_draws(core.axes(difference)) then
-    local allowed = 0.01 * core.greatest(core.abs(given), core.abs(derived))
-    low, high = difference - allowed, difference + allowed
-  end
-  low, high = core.elements(low), core.elements(high)
-  for i = 1, #low do if low[i] > 0 or high[i] < 0 then return false end end
-  return true
-end
-
--- c:check(): for each given, what the other givens make of it; prints itself. `agree` is false where something disagrees.
-function methods.check(self)
-  local info, found, seen = core.info(self), {}, {}
-  local all_agree = true
-  for _, name in ipairs(sorted_keys(info.givens)) do
-    local others = {}
-    for other, quantity in pairs(info.givens) do if other ~= name then others[other] = quantity end end
-    for _, number in ipairs(core.entry(name).rows) do
-      local row = core.row(number)
-      local equation = row.inverse_of or (row.gives .. "/" .. row.by)
-      if row.kind ~= "assumed" and not seen[equation] then
-        local using = { [name] = row.by }
-        for other, by in pairs(info.using) do using[other] = using[other] or by end
-        local without = core.new_case(others, using, info, true)
-        local value = without and core.raw(without, name)
-        if value then
-          seen[equation] = true
-          local entry = { name = name, by = row.by, given = info.givens[name], written = text.given(self, name), derived = value }
-          entry.agrees = agree(entry.given, value)
-          all_agree = all_agree and entry.agrees
-          found[#found + 1] = entry
-        end
-      end
-    end
-  end
-  return setmetatable({ entries = found, agree = all_agree }, text.check_metatable)
-end
-
--- c:why(name): the derivation; prints itself.
-function methods.why(self, word)
-  local name = name_of(word, "why: ")
-  if core.row_of(self, name) == nil then return methods.missing(self, name) end
-  return setmetatable({ case = self, name = name }, text.why_metatable)
-end
-
 -- c:givens(): the givens' names in glossary order.
 function methods.givens(self)
   local names, givens = {}, core.info(self).givens
@@ -289,7 +251,7 @@ end
 function methods.recipes(self, word) return core.part "lacuna.recipes".recipes(word, self) end
 
 -- Parts that are loaded when they are first asked for; what they bring takes these methods' places.
-for _, method in ipairs { "solve", "sensitivity" } do
+for _, method in ipairs { "check", "missing", "why", "solve", "sensitivity" } do
   methods[method] = function(...)
     core.part("lacuna." .. method)
     return methods[method](...)
@@ -298,10 +260,10 @@ end
 
 core.set_handlers {
   not_had = function(self, name)
-    core.raise(text.not_had(methods.missing(self, name)))
+    core.raise(core.part "lacuna.missing".not_had(self, name))
   end,
   undefined = function(self, name)
-    core.raise(text.undefined(self, name))
+    core.raise(core.part "lacuna.why".undefined(self, name))
   end,
   unknown = function(self, word)
     local object = core.info(self).objects[word]

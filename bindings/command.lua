@@ -74,10 +74,10 @@ end
 
 local function axis_of(name, quantity)
   local entry = core.entry(name)
-  local _, tex, plain = core.unit_facts(entry.unit)
+  local _, tex = core.unit_facts(entry.unit)
   local values = core.elements(quantity)
   for i, value in ipairs(values) do values[i] = value / entry.factor end
-  return { name = name, unit = entry.unit, unit_text = entry.unit == "1" and "" or plain, unit_tex = tex, values = values }
+  return { name = name, unit = entry.unit, unit_text = core.part "lacuna.text".unit_of(name), unit_tex = tex, values = values }
 end
 
 -- What --set gives, for a study: checked and bound without a target, so that its draws are the same for all.

@@ -3,6 +3,7 @@
 -- are the givens and recipes that the variants change, then what is asked; what differs from the case as it is has a mark.
 local core = ...
 local case = core.part "lacuna.case"
+local conditions = core.part "lacuna.conditions"
 local format = core.part "lacuna.format"
 local records = core.part "lacuna.record"
 local tables = core.part "lacuna.table"
@@ -68,16 +69,9 @@ end
 
 -- Rows -------------------------------------------------------------------------------------------------------------------------------
 
-local function unit_of(name)
-  local unit = core.entry(name).unit
-  if not unit or unit == "1" then return nil end
-  local _, _, written = core.unit_facts(unit)
-  return written
-end
-
 -- The text less the unit that the row's label tells; undefined draws stay said.
 local function without_unit(written, unit)
-  if unit and written:sub(-#unit - 1) == " " .. unit then return written:sub(1, -#unit - 2) end
+  if unit ~= "" and written:sub(-#unit - 1) == " " .. unit then return written:sub(1, -#unit - 2) end
   return written
 end
 
@@ -88,9 +82,9 @@ local function given_cell(made, name)
   if not value and not row then return { text = "not given", word = true } end
   if not value then
     value = core.raw(made, name)
-    return { text = without_unit(text.brief(value), unit_of(name)), tail = core.row(row).kind == "assumed" and " assumed" or " derived", value = value }
+    return { text = without_unit(text.brief(value), text.unit_of(name)), tail = core.row(row).kind == "assumed" and " assumed" or " derived", value = value }
   end
-  return { text = without_unit(info.written[name] or text.brief(value), unit_of(name)), value = value }
+  return { text = without_unit(info.written[name] or text.brief(value), text.unit_of(name)), value = value }
 end
 
 local function recipe_cell(made, name)
@@ -98,14 +92,9 @@ local function recipe_cell(made, name)
   return { text = row and core.row(row).by or row == false and "given" or "—", word = true }
 end
 
-local function over_points(quantity)
-  for _, axis in ipairs(core.axes(quantity)) do if axis.name ~= "draw" then return true end end
-  return false
-end
-
 local function answer_cell(made, name)
   local quantity = core.raw(made, name)
-  if quantity and over_points(quantity) then return { text = without_unit(text.brief(quantity), unit_of(name)), value = quantity } end
+  if quantity and #text.axes(quantity) > 0 then return { text = without_unit(text.brief(quantity), text.unit_of(name)), value = quantity } end
   local cell = records.cell_of(made, name, core.entry(name).kind == "verdict")
   cell.text = tables.cell_text(cell)
   if (cell.undefined or 0) > 0 then cell.text = cell.text .. (" (%s undefined)"):format(format.percent(cell.undefined)) end
@@ -114,7 +103,7 @@ end
 
 -- Makes one row: a cell for each column, marked where it differs from the first's as printed.
 local function new_row(kind, name, columns, cell_of)
-  local row = { kind = kind, name = name, unit = kind ~= "recipe" and unit_of(name) or nil, cells = {}, values = {}, differs = false }
+  local row = { kind = kind, name = name, unit = kind ~= "recipe" and text.unit_of(name) or "", cells = {}, values = {}, differs = false }
   for i, column in ipairs(columns) do
     local cell = cell_of(column.case, name)
     if i > 1 and (cell.text ~= row.cells[1].text or cell.tail ~= row.cells[1].tail) then cell.mark, row.differs = MARK, true end
@@ -147,8 +136,8 @@ end
 -- The conditions of a verdict that fail, all or some of the draws, in one text; nil where none does.
 local function failing_in(made, name)
   local parts = {}
-  for _, c in ipairs((text.conditions(made, name))) do
-    if not c.holds then parts[#parts + 1] = text.condition(c) end
+  for _, c in ipairs((conditions.of(made, name))) do
+    if not c.holds then parts[#parts + 1] = conditions.text(c) end
   end
   return #parts > 0 and table.concat(parts, "; ") or nil
 end
@@ -203,7 +192,7 @@ end
 
 local function label(row)
   local name = row.kind == "recipe" and row.name .. " by" or row.name
-  return (row.differs and MARK or " ") .. " " .. name .. (row.unit and " [" .. row.unit .. "]" or "")
+  return (row.differs and MARK or " ") .. " " .. name .. (row.unit ~= "" and " [" .. row.unit .. "]" or "")
 end
 
 local function as_text(columns, rows, notes)
@@ -214,11 +203,13 @@ local function as_text(columns, rows, notes)
     whole.rows[i] = { name = label(row), cells = row.cells, rule = row.kind == "answer" and last ~= "answer" and i > 1 }
     last = row.kind
   end
-  return tables.text(whole, core.terminal_width() or tables.WIDTH)
+  return tables.text(whole)
 end
 
 local function compare(self, variants, asks)
-  if not core.is_case(self) then refuse(" wants a case first, like compare(c, {longer = {projected_baseline = \"300 m\"}}, {\"rim_elements_by_array\"}); got %s", core.shown(self)) end
+  if not core.is_case(self) then
+    refuse(' wants a case first, like compare(c, {longer = {projected_baseline = "300 m"}}, {"rim_elements_by_array"}); got %s', core.shown(self))
+  end
   variants, asks = read_variants(variants), read_asks(asks)
   local columns, result, rows = { { name = AS_IT_IS, case = self } }, {}, {}
   for i, variant in ipairs(variants) do

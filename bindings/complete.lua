@@ -352,7 +352,7 @@ local WIDEST = 36 -- of the column of words
 local function lines_of(candidate, widest, columns)
   local lines = format.wrapped(candidate.meaning, math.max(columns - widest - 5, 20))
   local head, indent = "  " .. format.pad_right(candidate.text, widest) .. "  ", rep(" ", widest + 4)
-  if format.width(head) > widest + 4 then table.insert(lines, 1, "") end
+  if #lines == 0 or format.width(head) > widest + 4 then table.insert(lines, 1, "") end
   for i = 1, #lines do lines[i] = match((i == 1 and head or indent) .. lines[i], "^(.-)%s*$") end
   return lines
 end

@@ -3,7 +3,7 @@
 -- {text =, meaning =, append =, group =}, append being what is put behind a word that is the only one, group a heading over several (or
 -- nil). Who gets a list doesn't change it. All from the tables; nothing here runs code of the user's.
 local core = ...
-local text = core.part "lacuna.text"
+local relations = core.part "lacuna.relations"
 local format = core.part "lacuna.format"
 local words = core.part "lacuna.words"
 local kind_of = core.part "lacuna.complete_values".kind_of
@@ -149,7 +149,7 @@ function lists.recipes(name)
   if not core.find(name) then return list end
   for _, number in ipairs(core.entry(core.find(name)).rows) do
     local row = core.row(number)
-    local source = row.kind == "assumed" and "assumed " .. row.assumes or row.source == "definition" and "by definition" or text.source(row)
+    local source = row.kind == "assumed" and "assumed " .. row.assumes or row.source == "definition" and "by definition" or relations.source(row)
     add(list, row.by, source .. (row.supposes and "; supposes " .. row.supposes or ""))
   end
   return list

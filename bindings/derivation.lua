@@ -1,37 +1,35 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
--- Derivations as data, for the page and the document of a report: for each quantity that a study asks, the chain that leads to it for one
--- target, with the numbers to put into the equations; and what all chains rest on.
+-- Derivations as data, for c:why and for the page and the document of a report: the chain that leads to a quantity, with the numbers to put into
+-- the equations; for each quantity that a study asks of one target; and what all chains rest on.
 --
 --   of(case, name)          { name, meaning, value, numbers = which stand in the equations, steps, conditions, unchecked, others }
 --   of_study(study)         the target's row, and a list of { column, case, chain }: one for each column that could be derived
 --   assumptions(chains), recipes(chains), others(chains)   each once, in the order of the chains
 --
 -- A step is { name, kind = "given", "assumed" or "derived", value (text), row (the relation; none of a given), equation, right_side,
--- inputs = { [name] = { number, unit, unit_tex } to put in }, warnings, source = words on a given object, source_id }.
+-- inputs = { [name] = { number, unit, unit_tex } to put in }, objects = { [name] = words }, warnings, source = words on a given object, source_id }.
 local core = ...
 local case = core.part "lacuna.case"
+local conditions = core.part "lacuna.conditions"
 local equation = core.part "lacuna.equation"
 local format = core.part "lacuna.format"
+local relations = core.part "lacuna.relations"
 local text = core.part "lacuna.text"
 
 local derivation = {}
 
--- The numbers for the names in a row's right side. Names that have none (objects) keep their symbols.
-local function numbers_for(self, right_side)
-  local inputs = {}
+-- What is put in for the names in a row's right side: numbers, and the words of objects, which have none.
+local function inputs_of(self, right_side)
+  local numbers, objects = {}, {}
   for _, name in ipairs(equation.names(right_side)) do
     local value = core.raw(self, name)
-    if value and not core.object_type(value) then
+    if core.object_type(value) then objects[name] = tostring(value)
+    elseif value then
       local number, unit, unit_tex = text.representative(value)
-      inputs[name] = { number = number, unit = unit, unit_tex = unit_tex }
+      numbers[name] = { number = number, unit = unit, unit_tex = unit_tex }
     end
   end
-  return inputs
-end
-
--- An equation's numbers to four digits: 1.0289939699622 is 1.029.
-local function shortened(written)
-  return written and written:gsub("%d+%.%d%d%d%d+", function(digits) return format.number(tonumber(digits), 4) end)
+  return numbers, objects
 end
 
 local function step_of(self, step)
@@ -43,27 +41,37 @@ local function step_of(self, step)
   end
   local row = core.row(step.row)
   if row.kind == "assumed" then return { name = step.name, kind = "assumed", value = text.quantity(value), row = row } end
-  local right_side = shortened(text.right_side(row))
-  return {
-    name = step.name, kind = "derived", value = text.brief(value), row = row, right_side = right_side,
-    equation = row.equation ~= "" and shortened(row.equation) or nil, inputs = right_side and numbers_for(self, right_side), warnings = text.warnings(self, row),
+  local right_side = relations.right_side(row)
+  local derived = {
+    name = step.name, kind = "derived", value = text.brief(value), row = row, warnings = relations.warnings(self, row),
+    equation = row.equation ~= "" and format.shortened(row.equation) or nil,
+    right_side = right_side and format.shortened(right_side),
   }
+  if right_side then derived.inputs, derived.objects = inputs_of(self, right_side) end
+  return derived
 end
 
 -- Whether it is a choice, and not the same with less known: a verdict with fewer conditions, say.
 local function is_another_recipe(self, other)
-  return core.entry(other.name).kind ~= "verdict" and not core.part "lacuna.record".leaves_out(other.row, core.row(core.row_of(self, other.name)))
+  return core.entry(other.name).kind ~= "verdict" and not case.leaves_out(other.row, core.row(core.row_of(self, other.name)))
+end
+
+-- Which numbers stand in the equations, where a quantity has more than one.
+local function which_numbers(value)
+  local which = {}
+  for _, axis in ipairs(core.axes(value)) do
+    which[#which + 1] = axis.name == "draw" and "medians of the draws" or "the first point of " .. axis.name
+  end
+  return #which > 0 and "numbers put in: " .. table.concat(which, ", ") or nil
 end
 
 function derivation.of(self, name)
   local value, entry = core.raw(self, name), core.entry(name)
-  local chain = { name = name, meaning = entry.meaning, value = text.brief(value), numbers = text.put_in(value), steps = {}, conditions = {}, others = {} }
+  local chain = { name = name, meaning = entry.meaning, value = text.brief(value), numbers = which_numbers(value), steps = {}, conditions = {}, others = {} }
   for i, step in ipairs(core.steps(self, name)) do chain.steps[i] = step_of(self, step) end
   if entry.kind == "verdict" then
-    chain.value = text.with_reason(chain.value, value, name)
-    local conditions
-    conditions, chain.unchecked = text.conditions(self, name)
-    for i, condition in ipairs(conditions) do chain.conditions[i] = text.condition(condition) end
+    chain.conditions, chain.unchecked = conditions.of(self, name)
+    for i, c in ipairs(chain.conditions) do chain.conditions[i] = conditions.text(c) end
   end
   for _, other in ipairs(case.over_recipes(self, name)) do
     if is_another_recipe(self, other) then
@@ -152,8 +160,9 @@ local function value_mathml(input)
 end
 
 -- Renderings of a step's equation, and of its right side with the numbers put in (nil where there is nothing to put in).
-function derivation.equation_mathml(step) return equation.mathml(step.equation, text.symbol_tex) end
-function derivation.equation_tex(step) return equation.tex(step.equation, text.symbol_tex) end
+function derivation.equation_mathml(step) return equation.mathml(step.equation, relations.symbol_tex) end
+function derivation.equation_plain(step) return equation.plain(step.equation, relations.symbol) end
+function derivation.equation_tex(step) return equation.tex(step.equation, relations.symbol_tex) end
 
 local function has_numbers(step) return step.right_side and next(step.inputs) end
 
@@ -162,7 +171,7 @@ function derivation.numbers_mathml(step)
   return equation.mathml(step.right_side, function(name)
     local input = step.inputs[name]
     if input then return nil, value_mathml(input) end
-    return text.symbol_tex(name)
+    return relations.symbol_tex(name)
   end)
 end
 
@@ -170,7 +179,16 @@ function derivation.numbers_tex(step)
   if not has_numbers(step) then return nil end
   return equation.tex(step.right_side, function(name)
     local input = step.inputs[name]
-    return input and value_tex(input) or text.symbol_tex(name)
+    return input and value_tex(input) or relations.symbol_tex(name)
+  end)
+end
+
+-- In plain text objects stand by their names.
+function derivation.numbers_plain(step)
+  if not has_numbers(step) and not (step.right_side and next(step.objects)) then return nil end
+  return equation.plain(step.right_side, function(name)
+    local input = step.inputs[name]
+    return input and format.with_unit(format.number(input.number), input.unit) or step.objects[name] or relations.symbol(name)
   end)
 end
 

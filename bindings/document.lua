@@ -4,19 +4,20 @@
 local core = ...
 local derivation = core.part "lacuna.derivation"
 local table_tex = core.part "lacuna.table_tex"
-local text = core.part "lacuna.text"
+local english = core.part "lacuna.english"
+local relations = core.part "lacuna.relations"
 local verdicts = core.part "lacuna.verdicts"
 
 local document = {}
 local escaped = table_tex.escaped
 
-local function words(name) return escaped(verdicts.words_of(name)) end
+local function words(name) return escaped(english.words_of(name)) end
 
 -- "by grey grains, \cite[Eq. 1]{monnier_2002}", or in words where nothing is cited.
 local function recipe_tex(row, cited)
   if row.source == "definition" then return "by definition" end
   local key, place = cited:key(row), row.place and "[" .. escaped(row.place):gsub("[%[%]]", "{%0}") .. "]" or ""
-  local source = key and ("\\cite%s{%s}"):format(place, key) .. (row.from_memory and " (formula from memory)" or "") or escaped(text.source(row))
+  local source = key and ("\\cite%s{%s}"):format(place, key) .. (row.from_memory and " (formula from memory)" or "") or escaped(relations.source(row))
   return row.kind == "assumed" and source or ("%s, %s"):format(words(row.by), source)
 end
 
@@ -58,7 +59,7 @@ local function add_step(lines, step, cited)
     step.row.supposes and "; supposes " .. escaped(step.row.supposes) or ""))
   local shown = display(step)
   if shown then add(shown) end
-  for _, warning in ipairs(step.warnings) do add("Beware: " .. escaped(verdicts.in_words(warning)) .. ".") end
+  for _, warning in ipairs(step.warnings) do add("Beware: " .. escaped(english.in_words(warning)) .. ".") end
 end
 
 -- The steps of a chain that did not stand in one before.
@@ -78,7 +79,7 @@ local function add_chain(lines, one, seen, cited)
   local chain, column = one.chain, one.column
   local function add(line) lines[#lines + 1] = line end
   add(("\\subsection*{%s}"):format((column.group and escaped(column.group) .. ": " or "") .. words(chain.name)))
-  local function sentence(words) return (escaped(words):gsub("^%l", string.upper)) end
+  local function sentence(words) return english.capital(escaped(words)) end
   add(("%s: %s.%s"):format(sentence(chain.meaning), escaped(chain.value), chain.numbers and " " .. sentence(chain.numbers) .. "." or ""))
   local steps = new_steps(chain, seen)
   if #steps < #chain.steps then add "What leads there besides stands above." end
@@ -90,8 +91,8 @@ local function add_chain(lines, one, seen, cited)
   end
   if #chain.conditions > 0 then
     add "Its conditions:\n\\begin{itemize}"
-    for _, condition in ipairs(chain.conditions) do add("\\item " .. escaped(verdicts.in_words(condition)) .. ".") end
-    if chain.unchecked then add("\\item Not checked: " .. escaped(verdicts.in_words(chain.unchecked)) .. ".") end
+    for _, condition in ipairs(chain.conditions) do add("\\item " .. escaped(english.in_words(condition)) .. ".") end
+    if chain.unchecked then add("\\item Not checked: " .. escaped(english.in_words(chain.unchecked)) .. ".") end
     add "\\end{itemize}"
   end
   add ""
@@ -121,8 +122,8 @@ local function add_notes(lines, notes)
   for _, note in ipairs(notes) do
     if not shown_otherwise[note.heading] then
       add_list(lines, escaped(note.heading), mapped(note.lines, function(line)
-        if type(line) == "string" then return escaped(verdicts.in_words(line)) end
-        return escaped(verdicts.in_words(line[1] .. ": " .. table.concat(line, "; ", 2)))
+        if type(line) == "string" then return escaped(english.in_words(line)) end
+        return escaped(english.in_words(line[1] .. ": " .. table.concat(line, "; ", 2)))
       end))
     end
   end

@@ -80,7 +80,8 @@ function dust.material(given)
   for i = 1, last do wavelengths[i], n[i], k[i] = column_of(rows, i, 1, label), column_of(rows, i, 2, label), column_of(rows, i, 3, label) end
   check_rows(label, wavelengths, n, k)
   if wavelengths[last] * unit < 1e-7 or wavelengths[1] * unit > 1e-2 then
-    core.raise(("material %s: its wavelengths, %g to %g %s, lie outside 0.1 um to 1 cm; is the unit right?"):format(label, wavelengths[1], wavelengths[last], given.wavelength_unit))
+    core.raise(("material %s: its wavelengths, %g to %g %s, lie outside 0.1 um to 1 cm; is the unit right?"):format(label,
+      wavelengths[1], wavelengths[last], given.wavelength_unit))
   end
   for i = 1, last do wavelengths[i] = wavelengths[i] * unit end
   local made = core.material_table(label, density, wavelengths, n, k)

@@ -9,16 +9,18 @@
 --   tex(text, cited)            as LaTeX that cites a bibliography's keys
 local core = ...
 local bibliography = core.part "lacuna.bibliography"
+local changes = core.part "lacuna.changes"
+local english = core.part "lacuna.english"
 local format = core.part "lacuna.format"
 local notes = core.part "lacuna.notes"
 local tables = core.part "lacuna.table"
 local table_tex = core.part "lacuna.table_tex"
-local text = core.part "lacuna.text"
+local ordered = core.part "lacuna.ordered"
+local relations = core.part "lacuna.relations"
 local verdicts = core.part "lacuna.verdicts"
 
 local feasibility = {}
-local WIDTH = 100
-local words_of = verdicts.words_of
+local words_of, capital, plural = english.words_of, english.capital, english.plural
 
 -- Sentences may cite: a mark stands for the row whose source is meant until the text is written out.
 local function citing(cited)
@@ -27,8 +29,6 @@ local function citing(cited)
     return "\1" .. #cited .. "\2"
   end
 end
-
-local function capital(words) return (words:gsub("^%l", string.upper)) end
 
 -- The sentences that there are.
 local function present(...)
@@ -40,14 +40,12 @@ local function present(...)
   return sentences
 end
 
-local function plural(count, one, many) return count == 1 and one or many or one .. "s" end
-
 -- Targets and instruments ------------------------------------------------------------------------------------------------------------
 
 local function targets_sentence(study)
   local names = verdicts.names_of(study.rows)
   if #names == 1 then return ("The target is %s."):format(names[1]) end
-  return ("The sample has %d targets: %s."):format(#names, verdicts.list(names, 12))
+  return ("The sample has %d targets: %s."):format(#names, english.list(names, 12))
 end
 
 -- "20 m:330 m:6" of the command line in words.
@@ -72,7 +70,7 @@ feasibility.givens_of = givens_of
 local function givens_sentence(study)
   local parts = givens_of(study.groups[1], study)
   if #parts == 0 then return nil end
-  return ("For all of them we take %s."):format(verdicts.list(parts, #parts)):gsub("^For all of them we", #study.rows == 1 and "We" or "%0")
+  return ("For all of them we take %s."):format(english.list(parts, #parts)):gsub("^For all of them we", #study.rows == 1 and "We" or "%0")
 end
 
 local function draws_sentence(study, facts)
@@ -109,13 +107,10 @@ end
 -- By how much other recipes would change a quantity: "(over the recipes, ... )".
 local function recipes_of_quantity(study, number, column)
   local parts = {}
-  for _, recipe in ipairs(verdicts.recipes(study, number)) do
-    local magnitude = column.unit == "mag"
-    local low, high = format.number(recipe.low, 2), format.number(recipe.high, 2)
-    if magnitude then low, high = ("%+.2f"):format(recipe.low), ("%+.2f"):format(recipe.high) end
-    if recipe.low <= recipe.high and not (low == high and (low == "1" or magnitude and low:find "^.0.00$")) then
-      parts[#parts + 1] = ("with %s it would be %s"):format(verdicts.recipe_words(recipe.words),
-        magnitude and (low == high and low or low .. " to " .. high) .. " mag different" or (low == high and low or low .. " to " .. high) .. " times that")
+  for _, change in ipairs(changes.of(study, number)) do
+    local span = changes.span(column, change)
+    if span then
+      parts[#parts + 1] = ("with %s it would be %s %s"):format(verdicts.recipe_words(change.words), span, column.unit == "mag" and "different" or "times that")
     end
   end
   return #parts > 0 and "; " .. table.concat(parts, ", ") or ""
@@ -125,7 +120,7 @@ local function quantity_sentence(study, number, column, known)
   local low, high, count = ends_of(study, number)
   if count == 0 then return nil end
   local name = words_of(column.name)
-  local said = known and "" or (" (%s)"):format(verdicts.in_words(column.entry.meaning))
+  local said = known and "" or (" (%s)"):format(english.in_words(column.entry.meaning))
   local others = recipes_of_quantity(study, number, column)
   if count == 1 or low == high then
     return ("The %s%s%s is %s%s."):format(name, said, #study.rows > 1 and " of " .. low.name or "", value_text(low.cells[number], column), others)
@@ -147,7 +142,7 @@ local function by_share(one, all, draws)
   end
   if #one.yes > 0 then add("in at least " .. format.percent(verdicts.MOSTLY), verdicts.count(one.yes, all)) end
   for i, row in ipairs(one.between) do open[i] = ("%s%s for %s"):format(format.percent(row.cell.share), #parts == 0 and i == 1 and draws or "", row.name) end
-  if #open > 0 then parts[#parts + 1], draws = "in " .. verdicts.list(open), "" end
+  if #open > 0 then parts[#parts + 1], draws = "in " .. english.list(open), "" end
   if #one.no > 0 then add("in at most " .. format.percent(verdicts.HARDLY), verdicts.count(one.no, all)) end
   return table.concat(parts, "; ")
 end
@@ -172,7 +167,7 @@ local function reason_sentence(one)
     local reason = one.reasons[i]
     parts[i] = verdicts.reason_words(reason.words) .. (#one.no + #one.between > 1 and (" (%d %s)"):format(reason.count, plural(reason.count, "target")) or "")
   end
-  return ("Where it is not resolved, %s."):format(verdicts.list(parts))
+  return ("Where it is not resolved, %s."):format(english.list(parts))
 end
 
 local function verdict_sentences(study, one, draws)
@@ -198,7 +193,7 @@ local function recipes_sentence(group_verdicts, draws)
         moved[recipe.words] = "yes"
         changed[#changed + 1] = ("with %s, whether %s changes for %s"):format(verdicts.recipe_words(recipe.words), one.words,
           recipe.asked == 1 and recipe.names[1] .. ", to " .. share_words(recipe.low)
-            or ("%d of %d targets (%s)"):format(#recipe.names, recipe.asked, verdicts.list(recipe.names)))
+            or ("%d of %d targets (%s)"):format(#recipe.names, recipe.asked, english.list(recipe.names)))
       end
     end
   end
@@ -206,7 +201,7 @@ local function recipes_sentence(group_verdicts, draws)
   local unchanged = {}
   for _, words in ipairs(order) do if moved[words] == "no" then unchanged[#unchanged + 1] = verdicts.recipe_words(words) end end
   if #unchanged > 0 then
-    changed[#changed + 1] = ("%s would %s%s"):format(verdicts.list(unchanged), draws and "move no answer across one half of the draws" or "change no answer",
+    changed[#changed + 1] = ("%s would %s%s"):format(english.list(unchanged), draws and "move no answer across one half of the draws" or "change no answer",
       #changed > 0 and " here" or "")
   end
   return "Over the recipes: " .. table.concat(changed, "; ") .. "."
@@ -222,16 +217,16 @@ local function missing_sentences(study, columns)
       if cell.missing then missing[#missing + 1], reason = words_of(study.columns[number].name), cell.reason end
     end
     if #missing > 0 then
-      local key = (#missing == #columns and "" or verdicts.list(missing)) .. "\0" .. reason
+      local key = (#missing == #columns and "" or english.list(missing)) .. "\0" .. reason
       if not wholly[key] then
-        wholly[key] = { names = {}, what = #missing < #columns and verdicts.list(missing), reason = reason }
+        wholly[key] = { names = {}, what = #missing < #columns and english.list(missing), reason = reason }
         sentences[#sentences + 1] = wholly[key]
       end
       table.insert(wholly[key].names, row.name)
     end
   end
   for i, one in ipairs(sentences) do
-    sentences[i] = ("For %s %s could not be derived (%s)."):format(verdicts.list(one.names), one.what or "this", verdicts.in_words(one.reason))
+    sentences[i] = ("For %s %s could not be derived (%s)."):format(english.list(one.names), one.what or "this", english.in_words(one.reason))
   end
   return sentences
 end
@@ -242,7 +237,7 @@ local function group_paragraph(study, group, of_verdicts, draws, said)
   local function add(sentence) if sentence then sentences[#sentences + 1] = sentence end end
   if group.name then
     local parts = givens_of(group, study)
-    add(("%s%s:"):format(capital(group.name), #parts > 0 and " (" .. verdicts.list(parts, #parts) .. ")" or ""))
+    add(("%s%s:"):format(capital(group.name), #parts > 0 and " (" .. english.list(parts, #parts) .. ")" or ""))
   end
   for number, column in ipairs(study.columns) do
     if column.group == group.name then
@@ -269,21 +264,19 @@ end
 
 -- "gap width after Kanagawa et al. 2016", each recipe once with all the names it gives: those that are published, and common practice.
 local function recipe_parts(used, cite)
-  local order, by_recipe = {}, {}
-  for _, name in ipairs(used.keys) do
-    for _, by in ipairs(used.values[name].keys) do
-      local row = used.values[name].values[by].relation
+  local by_recipe = ordered.new()
+  for name, recipes in ordered.each(used) do
+    for _, entry in ordered.each(recipes) do
+      local row = entry.relation
       if row and row.kind ~= "definition" and row.kind ~= "assumed" and row.source ~= "definition" then
-        local key = row.by .. "\0" .. row.source
-        if not by_recipe[key] then order[#order + 1], by_recipe[key] = key, { row = row } end
-        table.insert(by_recipe[key], words_of(name))
+        local names = ordered.at(by_recipe, row.by .. "\0" .. row.source, function() return { row = row } end)
+        names[#names + 1] = words_of(name)
       end
     end
   end
   local published, practice = {}, {}
-  for _, key in ipairs(order) do
-    local entry = by_recipe[key]
-    local what, by = verdicts.list(entry, 3), words_of(entry.row.by)
+  for _, entry in ordered.each(by_recipe) do
+    local what, by = english.list(entry, 3), words_of(entry.row.by)
     if not bibliography.short(entry.row) then practice[#practice + 1] = what .. " (" .. by .. ")"
     elseif entry.row.by:find "_%d%d%d%d" then published[#published + 1] = what .. " after " .. cite(entry.row)
     else published[#published + 1] = what .. " by " .. by .. " after " .. cite(entry.row) end
@@ -293,9 +286,9 @@ end
 
 local function assumption_parts(used, cite)
   local parts = {}
-  for _, name in ipairs(used.keys) do
-    for _, by in ipairs(used.values[name].keys) do
-      local row = used.values[name].values[by].relation
+  for name, recipes in ordered.each(used) do
+    for _, entry in ordered.each(recipes) do
+      local row = entry.relation
       if row and row.kind == "assumed" then parts[#parts + 1] = ("%s = %s (%s)"):format(words_of(name), row.assumes, cite(row)) end
     end
   end
@@ -306,9 +299,9 @@ end
 local function unchecked_sentence(study, used)
   local parts, seen = {}, {}
   for _, column in ipairs(study.columns) do
-    for _, by in ipairs(column.verdict and used.values[column.name] and used.values[column.name].keys or {}) do
-      local row = used.values[column.name].values[by].relation
-      local words = row and row.unchecked and verdicts.in_words(row.unchecked)
+    for _, entry in ordered.each(column.verdict and used.values[column.name] or ordered.new()) do
+      local row = entry.relation
+      local words = row and row.unchecked and english.in_words(row.unchecked)
       if words and not seen[words] then
         seen[words] = true
         parts[#parts + 1] = ("whether %s: %s"):format(verdicts.sentence_of(column), words)
@@ -318,36 +311,28 @@ local function unchecked_sentence(study, used)
   if #parts > 0 then return "Not checked for the answer to " .. table.concat(parts, "; nor for that to ") .. "." end
 end
 
--- Targets by what is to be said of them, in the order of the rows: { words, names }.
+-- The targets' names by what is to be said of them, in the order of the rows.
 local function by_words(study, words_of_cell)
-  local list = {}
+  local found = ordered.new()
   for _, row in ipairs(study.rows) do
-    local seen = {}
     for _, cell in ipairs(row.cells) do
-      for _, words in ipairs(words_of_cell(cell)) do
-        if not list[words] then
-          list[words] = { words = words, names = {} }
-          list[#list + 1] = list[words]
-        end
-        if not seen[words] then table.insert(list[words].names, row.name) end
-        seen[words] = true
-      end
+      for _, words in ipairs(words_of_cell(cell)) do ordered.note(ordered.at(found, words), row.name) end
     end
   end
-  return list
+  return found
 end
 
 local function validity_sentence(study)
   local parts = {}
-  for i, one in ipairs(by_words(study, function(cell) return cell.outside or {} end)) do
-    parts[i] = ("the recipe %s (outside for %s)"):format(verdicts.in_words(one.words), verdicts.list(one.names))
+  for words, names in ordered.each(by_words(study, function(cell) return cell.outside or {} end)) do
+    parts[#parts + 1] = ("the recipe %s (outside for %s)"):format(english.in_words(words), english.list(names.keys))
   end
   if #parts > 0 then return capital(table.concat(parts, "; ")) .. ": there the numbers are extrapolated." end
 end
 
 local function undefined_sentence(study)
-  local found = by_words(study, function(cell) return cell.undefined and cell.undefined > 0 and { "undefined" } or {} end)[1]
-  if found then return ("Some draws are undefined for %s; they count as draws that say no."):format(verdicts.list(found.names)) end
+  local found = by_words(study, function(cell) return cell.undefined and cell.undefined > 0 and { "undefined" } or {} end).values.undefined
+  if found then return ("Some draws are undefined for %s; they count as draws that say no."):format(english.list(found.keys)) end
 end
 
 local function basis_paragraph(study, cite)
@@ -358,7 +343,8 @@ local function basis_paragraph(study, cite)
     #published > 0 and ("These numbers rest on the %s %s."):format(plural(#published, "recipe"), table.concat(published, "; ")),
     #practice > 0 and ("Common practice, without a published source, %s %s."):format(plural(#practice, "is", "are"), table.concat(practice, "; ")),
     #published + #practice == 0 and "All of these numbers follow by definition from what is given." or "What each supposes stands with the derivations.",
-    #assumed > 0 and ("Assumed, as not measured for %s: %s."):format(#study.rows == 1 and "the target" or "these targets", verdicts.list(assumed, #assumed)) or "Nothing is assumed.",
+    #assumed > 0 and ("Assumed, as not measured for %s: %s."):format(#study.rows == 1 and "the target" or "these targets",
+      english.list(assumed, #assumed)) or "Nothing is assumed.",
     validity_sentence(study), undefined_sentence(study), unchecked_sentence(study, used))
 end
 
@@ -370,7 +356,7 @@ local function detection_paragraph(study, has_verdicts)
   return {
     asked and "Detection is assessed for the rim alone, by the drop of its squared visibility in standard errors; whether any other structure is detected is not assessed."
       or (has_verdicts and "Resolved means geometrically resolved. " or "") .. "Whether a structure is also detected is not assessed here.",
-    "These are estimates of feasibility; the observatory's own documents and staff decide.",
+    "These are estimates of feasibility. " .. english.WHO_DECIDES,
   }
 end
 
@@ -393,7 +379,7 @@ end
 
 local DRAFT = "Draft, to be edited: composed from the results"
 
-local function short_or_words(row) return bibliography.short(row) or text.source(row) end
+local function short_or_words(row) return bibliography.short(row) or relations.source(row) end
 
 -- The paragraphs as plain text, each one line.
 function feasibility.paragraphs(composed)
@@ -406,7 +392,7 @@ end
 
 function feasibility.plain(composed)
   local paragraphs = { DRAFT .. "." }
-  for _, words in ipairs(feasibility.paragraphs(composed)) do paragraphs[#paragraphs + 1] = table.concat(format.wrapped(words, WIDTH), "\n") end
+  for _, words in ipairs(feasibility.paragraphs(composed)) do paragraphs[#paragraphs + 1] = table.concat(format.wrapped(words, tables.WIDTH), "\n") end
   return table.concat(paragraphs, "\n\n") .. "\n"
 end
 
@@ -417,7 +403,7 @@ function feasibility.tex(composed, cited)
     paragraphs[#paragraphs + 1] = words:gsub("\1(%d+)\2", function(number)
       local row = composed.cited[tonumber(number)]
       local key = cited:key(row)
-      return key and "\\cite{" .. key .. "}" or table_tex.escaped(text.source(row))
+      return key and "\\cite{" .. key .. "}" or table_tex.escaped(relations.source(row))
     end)
   end
   return table.concat(paragraphs, "\n\n") .. "\n"

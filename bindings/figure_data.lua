@@ -7,6 +7,7 @@
 --   plane    { x, y, points = { { name, x, x_upper, x_lower, y, y_upper, y_lower, share } }, lines = { { label, words, x = {...}, y = {...} } } }
 local core = ...
 local case = core.part "lacuna.case"
+local conditions = core.part "lacuna.conditions"
 local text = core.part "lacuna.text"
 local format = core.part "lacuna.format"
 local contour = core.part "lacuna.contour"
@@ -19,15 +20,14 @@ local function complain(form, ...) core.raise("figure: " .. form:format(...)) en
 
 -- Axes ----------------------------------------------------------------------------------------------------------------------------
 
-local function words_of(name) return (name:gsub("_", " ")) end
+local words_of = core.part "lacuna.english".words_of
 
 function data.axis(name)
   if core.find(name) ~= name then return { name = name, words = words_of(name), unit = "1", unit_text = "", factor = 1 } end -- a sweep that no given has named
   local entry = core.entry(name)
-  local _, _, plain = core.unit_facts(entry.unit)
-  local verdict = entry.kind == "verdict"
   return {
-    name = name, words = words_of(name), unit = entry.unit, unit_text = entry.unit == "1" and "" or plain, factor = entry.factor, verdict = verdict and "share" or nil,
+    name = name, words = words_of(name), unit = entry.unit, unit_text = text.unit_of(name), factor = entry.factor,
+    verdict = entry.kind == "verdict" and "share" or nil,
   }
 end
 
@@ -69,11 +69,8 @@ end
 local function sweeps_of(self)
   local found, seen, givens = {}, {}, core.info(self).givens
   for _, name in ipairs(core.names()) do
-    for _, axis in ipairs(givens[name] and core.axes(givens[name]) or {}) do
-      if axis.name ~= "draw" and not seen[axis.name] then
-        seen[axis.name] = true
-        found[#found + 1] = axis
-      end
+    for _, axis in ipairs(givens[name] and text.axes(givens[name]) or {}) do
+      if not seen[axis.name] then found[#found + 1], seen[axis.name] = axis, true end
     end
   end
   return found
@@ -108,11 +105,7 @@ end
 
 -- Curves --------------------------------------------------------------------------------------------------------------------------
 
-local function draws_of(quantity)
-  for _, axis in ipairs(core.axes(quantity)) do
-    if axis.name == "draw" then return axis.length end
-  end
-end
+local function draws_of(quantity) return (select(2, text.axes(quantity))) end
 
 -- The share of a quantity's elements that are undefined: quantiles pass them over, so that it has to be said.
 local function undefined_share(quantity, draws)
@@ -140,7 +133,10 @@ local function series_of(self, name, axis, sweep, order)
   local lists = {}
   for i, part in ipairs(draws and { core.five_of(quantity) } or { quantity }) do lists[i] = along(part, axis.factor, sweep, order) end
   if not draws then return { name = name, values = lists[1], undefined = undefined_share(quantity) } end
-  return { name = name, draws = draws, undefined = undefined_share(quantity, draws), low95 = lists[1], low68 = lists[2], values = lists[3], high68 = lists[4], high95 = lists[5] }
+  return {
+    name = name, draws = draws, undefined = undefined_share(quantity, draws),
+    low95 = lists[1], low68 = lists[2], values = lists[3], high68 = lists[4], high95 = lists[5],
+  }
 end
 
 local verdicts -- all names of verdicts, found once
@@ -154,8 +150,7 @@ local function wanted_by_verdicts(self, name)
   local found, seen = {}, {}
   for _, verdict in ipairs(verdicts) do
     local row = core.row_of(self, verdict)
-    for _, condition in ipairs(row and core.row(row).conditions or {}) do
-      local c = text.parse_condition(condition)
+    for _, c in ipairs(conditions.of_row(row and core.row(row))) do
       if c.left == name and not seen[c.right] then
         seen[c.right] = true
         found[#found + 1] = { name = c.right, factor = c.factor, verdict = verdict }
@@ -184,7 +179,10 @@ local function levels_of(f, self, names, axis, sweep, order)
     local value = name and self[name] or axis.verdict and core.quantity(f.level) or core.given(names[1], f.level)
     local _, wanted = core.dimension(core.unit(axis.unit))
     local _, got = core.dimension(value)
-    if wanted ~= got then complain("level wants %s, as %s is; got %s", axis.unit == "1" and "a plain number" or "a quantity in " .. axis.unit_text, names[1], core.shown(f.level)) end
+    if wanted ~= got then
+      local kind = axis.unit == "1" and "a plain number" or "a quantity in " .. axis.unit_text
+      complain("level wants %s, as %s is; got %s", kind, names[1], core.shown(f.level))
+    end
     return { level_of(value, name or nil, axis, sweep, order, 1) }
   end
   local levels = {}
@@ -282,7 +280,7 @@ end
 -- By how much a verdict without draws is reached: the least ratio of its conditions' sides, at least 1 where it says yes.
 local function ratio_of(self, verdict)
   local least
-  for _, c in ipairs((text.conditions(self, verdict))) do
+  for _, c in ipairs((conditions.of(self, verdict))) do
     local ratio = c.greater and c.margin or 1 / c.margin
     least = least and core.least(least, ratio) or ratio
   end
@@ -343,22 +341,7 @@ end
 
 -- Planes --------------------------------------------------------------------------------------------------------------------------
 
--- All that is taken from a study: the case of a row, and what was found for a name in it. A cell has value, upper, lower, or share, or is missing.
 local function case_of(row, variant) return variant and row.variants[variant] or row.case end
-
-local function cell_of(study, row, name, variant)
-  for i, column in ipairs(study.columns) do
-    if column.name == name and column.group == variant then return row.cells[i] end
-  end
-  local self = case_of(row, variant)
-  if core.row_of(self, name) == nil then return { missing = true } end
-  local quantity = core.raw(self, name)
-  local _, _, factor, number, size = core.facts(quantity)
-  if core.entry(name).kind == "verdict" then return { share = core.elements(core.chance(quantity))[1] } end
-  if size == 1 then return number == number and { value = number / factor } or { missing = true } end
-  local value, upper, lower = text.median_and_errors(quantity, factor)
-  return value == value and { value = value, upper = upper, lower = lower } or { missing = true }
-end
 
 function data.case_of_target(study, target, variant)
   for _, row in ipairs(study.rows) do
@@ -396,14 +379,17 @@ local function common_case(study, variant, changes)
 end
 
 local function points_of(f, study)
+  local xs, ys = study:values(f.against, f.variant), study:values(f.show[1], f.variant)
+  local verdicts = f.verdict and study:values(f.verdict, f.variant)
   local points, left_out = {}, {}
-  for _, row in ipairs(study.rows) do
-    local x, y = cell_of(study, row, f.against, f.variant), cell_of(study, row, f.show[1], f.variant)
-    local verdict = f.verdict and cell_of(study, row, f.verdict, f.variant)
+  for i, row in ipairs(study.rows) do
+    local x, y = xs[i], ys[i]
     if not (x.value and y.value) then left_out[#left_out + 1] = row.name
     else
-      points[#points + 1] = { name = row.name, x = x.value, x_upper = x.upper or 0, x_lower = x.lower or 0, y = y.value, y_upper = y.upper or 0, y_lower = y.lower or 0,
-        share = verdict and verdict.share }
+      points[#points + 1] = {
+        name = row.name, x = x.value, x_upper = x.upper or 0, x_lower = x.lower or 0, y = y.value, y_upper = y.upper or 0, y_lower = y.lower or 0,
+        share = verdicts and verdicts[i].share,
+      }
     end
   end
   return points, left_out

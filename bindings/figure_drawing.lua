@@ -8,10 +8,12 @@
 --   drawing.curve(s, d) .map .plane   puts the data d of a figure into the script s, and its ranges into s.ranges; returns nothing, or what is
 --                                     to be done when the room of the axes is known
 local core = ...
+local english = core.part "lacuna.english"
 local format = core.part "lacuna.format"
 local data = core.part "lacuna.figure_data"
 local script = core.part "lacuna.figure_script"
-local literal, number, width_of, marked_symbol, marked_unit, given_label = script.literal, script.number, script.width_of, script.marked_symbol, script.marked_unit, script.given_label
+local literal, number, width_of = script.literal, script.number, script.width_of
+local marked_symbol, marked_unit, given_label = script.marked_symbol, script.marked_unit, script.given_label
 
 local drawing = {}
 local SMALL, SMALLEST = script.SMALL, script.SMALLEST
@@ -219,8 +221,8 @@ local function add_contours(s, d)
       s:plot("%s using 1:2 with lines linecolor rgb '%s' linewidth %g dashtype %s", block, BLACK, width, dash)
       if not explained[dash] then
         explained[dash] = true
-        local first = next(explained, next(explained)) == nil and d.verdict:gsub("_", " ") .. " in " or "" -- said once
-        local title = literal(not contour.share and "where " .. d.verdict:gsub("_", " ") .. " turns" or first .. (contour.dashed and "16 and 84 %" or "50 % of draws"))
+        local first = next(explained, next(explained)) == nil and english.words_of(d.verdict) .. " in " or "" -- said once
+        local title = literal(not contour.share and "where " .. english.words_of(d.verdict) .. " turns" or first .. (contour.dashed and "16 and 84 %" or "50 % of draws"))
         s:explain(title, { line = dash, colour = BLACK, width = width })
       end
     end
@@ -305,7 +307,7 @@ local function placed_names(d, room, taken)
 end
 
 local function add_points(s, d)
-  local groups = { { points = {}, shape = 7, title = d.verdict and d.verdict:gsub("_", " ") .. " in ≥ 50 % of draws" }, { points = {}, shape = 6, title = "< 50 %" } }
+  local groups = { { points = {}, shape = 7, title = d.verdict and english.words_of(d.verdict) .. " in ≥ 50 % of draws" }, { points = {}, shape = 6, title = "< 50 %" } }
   for _, p in ipairs(d.points) do table.insert(groups[d.verdict and not (p.share and p.share >= 0.5) and 2 or 1].points, p) end
   for _, group in ipairs(groups) do
     if #group.points > 0 then

@@ -193,8 +193,11 @@ function script:add_legend(rows, middle, width, height)
         count = count + 1
         self:add(form, count, (x + from) / width, (y - (sample.band and 3 or 0)) / height, (x + to) / width, (y + (sample.band and 3 or 0)) / height, ...)
       end
-      if sample.line then across("set arrow %d from screen %.4f, screen %.4f to screen %.4f, screen %.4f nohead linecolor rgb '%s' linewidth %g dashtype %s front", 0, 18, sample.colour, sample.width, sample.line)
-      elseif sample.band then across("set object %d rectangle from screen %.4f, screen %.4f to screen %.4f, screen %.4f fillcolor rgb '%s' fillstyle solid noborder", 2, 18, sample.band)
+      if sample.line then
+        across("set arrow %d from screen %.4f, screen %.4f to screen %.4f, screen %.4f nohead linecolor rgb '%s' linewidth %g dashtype %s front", 0, 18,
+          sample.colour, sample.width, sample.line)
+      elseif sample.band then
+        across("set object %d rectangle from screen %.4f, screen %.4f to screen %.4f, screen %.4f fillcolor rgb '%s' fillstyle solid noborder", 2, 18, sample.band)
       else self:label("", "screen %.4f, screen %.4f point linecolor rgb '#000000' pointtype %d pointsize 0.5", (x + 14) / width, y / height, sample.point) end
       self:label(entry.title, "screen %.4f, screen %.4f left font ',%d'", (x + SAMPLE) / width, y / height, SMALL)
       x = x + entry.width + 8

@@ -1,11 +1,15 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- Figures in words and numbers: the data as CSV, a caption, a sentence for those who don't see the picture, and a picture in block characters.
 local core = ...
-local text = core.part "lacuna.text"
+local csv_file = core.part "lacuna.csv"
+local english = core.part "lacuna.english"
+local figure_data = core.part "lacuna.figure_data"
 local format = core.part "lacuna.format"
-local tables = core.part "lacuna.table"
+local relations = core.part "lacuna.relations"
+local text = core.part "lacuna.text"
 
 local words = {}
+local words_of = english.words_of
 local function textplot() return core.part "lacuna.textplot" end -- loaded when a picture is asked for
 
 local function unit_in_header(axis) return axis.unit ~= "1" and " [" .. axis.unit .. "]" or "" end
@@ -13,16 +17,18 @@ local function header_of(axis) return axis.name .. unit_in_header(axis) .. (axis
 local function with_unit(value, axis) return format.with_unit(format.number(value, 3), axis.unit_text) end
 local function in_words(value, axis) return axis.verdict and format.percent(value) or with_unit(value, axis) end
 
--- CSV -----------------------------------------------------------------------------------------------------------------------------
-
-local function csv_of(header, rows)
-  local lines = { tables.csv_line(header) }
-  for i, row in ipairs(rows) do
-    for j, value in ipairs(row) do if type(value) == "number" then row[j] = tables.digits(value) end end
-    lines[i + 1] = tables.csv_line(row)
-  end
-  return table.concat(lines, "\n") .. "\n"
+-- "flux density for distance = 100 pc"
+local function series_words(s)
+  return words_of(s.name) .. (s.each and (" for %s = %s"):format(words_of(s.each.name), s.each.value) or "")
 end
+
+-- "half of array resolution = 1.85 mas"
+local function level_words(level, axis)
+  return (level.factor ~= 1 and "half of " or "") .. (level.name and words_of(level.name) or "the level") ..
+    (level.constant and " = " .. in_words(level.constant, axis) or "")
+end
+
+-- CSV -----------------------------------------------------------------------------------------------------------------------------
 
 local bands = { { "low95", "lower 95 %" }, { "low68", "lower 68 %" }, { "high68", "upper 68 %" }, { "high95", "upper 95 %" } }
 
@@ -42,7 +48,7 @@ function csv.curve(d)
     for _, band in ipairs(s.low68 and bands or {}) do add(s.name .. of .. " " .. band[2] .. unit, s[band[1]]) end
   end
   for _, level in ipairs(d.levels) do add((level.factor ~= 1 and "half of " or "") .. (level.name or "level") .. unit_in_header(d.y), level.values) end
-  return csv_of(header, rows)
+  return csv_file.of(header, rows)
 end
 
 function csv.map(d)
@@ -50,7 +56,7 @@ function csv.map(d)
   for j, y in ipairs(d.y_values) do
     for i, x in ipairs(d.x_values) do rows[#rows + 1] = { x, y, d.values[j][i] } end
   end
-  return csv_of({ header_of(d.x), header_of(d.y), header_of(d.z) }, rows)
+  return csv_file.of({ header_of(d.x), header_of(d.y), header_of(d.z) }, rows)
 end
 
 -- The points, then the lines' points; the first column says whose.
@@ -64,7 +70,7 @@ function csv.plane(d)
   for number, line in ipairs(d.lines) do
     for i = 1, #line.x do rows[#rows + 1] = { line.label or "line " .. number, line.x[i], "", "", line.y[i], "", "", d.verdict and "" or nil } end
   end
-  return csv_of(header, rows)
+  return csv_file.of(header, rows)
 end
 
 function words.csv(figure) return csv[figure.kind](figure.data) end
@@ -92,16 +98,11 @@ local function last_defined(values, from, step)
   return values[i] and i
 end
 
-local function listed(items)
-  if #items <= 1 then return items[1] or "" end
-  return table.concat(items, ", ", 1, #items - 1) .. " and " .. items[#items]
-end
-
 -- "passes 1 at 43.2 m", of a share "passes 50 % at ...".
 local function passing(d, s, level, called)
   local places = {}
   for i, at in ipairs(words.crossings(d, s.values, level)) do if i <= 3 then places[i] = with_unit(at, d.x) end end
-  return #places > 0 and ("passes %s at %s"):format(called, listed(places)) or ("does not pass %s"):format(called)
+  return #places > 0 and ("passes %s at %s"):format(called, english.list(places)) or ("does not pass %s"):format(called)
 end
 
 -- What one curve does: "from 0.4 at 20 m to 8 at 330 m".
@@ -109,7 +110,7 @@ local function course(d, s)
   local first, last = last_defined(s.values, 1, 1), last_defined(s.values, #s.values, -1)
   local a, b = s.values[first], s.values[last]
   local verb = a < b and "rises" or a > b and "falls" or "goes"
-  local low, high = core.part "lacuna.figure_data".range(s.values)
+  local low, high = figure_data.range(s.values)
   if low == high then return ("stays at %s from %s to %s"):format(in_words(a, d.y), with_unit(d.values[first], d.x), with_unit(d.values[last], d.x)) end
   local beyond = {}
   if high > math.max(a, b) then beyond[#beyond + 1] = "at most " .. in_words(high, d.y) end
@@ -120,8 +121,7 @@ end
 
 local function name_of_series(d, s)
   local before = d.y.verdict == "share" and "the share of draws with " or d.y.verdict and "whether " or s.low68 and "the median " or "the "
-  local name = before .. s.name:gsub("_", " ")
-  return name .. (s.each and (" for %s = %s"):format(s.each.name:gsub("_", " "), s.each.value) or "")
+  return before .. series_words(s)
 end
 
 -- The lines on a plane: "array resolution (200 m) and array resolution (100 m)".
@@ -130,8 +130,11 @@ local function lines_in_words(d)
   for i, line in ipairs(d.lines) do
     names[i] = line.words and line.label ~= line.words and ("%s (%s)"):format(line.words, line.label) or line.label or "line " .. i
   end
-  return #names > 0 and listed(names) or nil
+  return #names > 0 and english.list(names, #names) or nil
 end
+
+-- "projected baseline from 20 m to 330 m"
+local function extent(axis, low, high) return ("%s from %s to %s"):format(axis.words, with_unit(low, axis), with_unit(high, axis)) end
 
 local alternative = {}
 
@@ -140,7 +143,7 @@ function alternative.curve(d)
   for i, s in ipairs(d.series) do
     local said = name_of_series(d, s) .. " " .. course(d, s)
     for _, level in ipairs(d.levels) do
-      local called = (level.factor ~= 1 and "half of " or "") .. (level.name and level.name:gsub("_", " ") or "the level") .. (level.constant and " = " .. in_words(level.constant, d.y) or "")
+      local called = level_words(level, d.y)
       said = said .. ", " .. passing(d, s, level.values, called)
     end
     if d.y.verdict then
@@ -154,19 +157,19 @@ function alternative.curve(d)
 end
 
 function alternative.map(d)
-  local said = ("Map of %s over %s from %s to %s and %s from %s to %s: from %s to %s"):format((d.z.verdict == "share" and "the share of draws with " or "") .. d.z.words, d.x.words, with_unit(d.x_values[1], d.x),
-    with_unit(d.x_values[#d.x_values], d.x), d.y.words, with_unit(d.y_values[1], d.y), with_unit(d.y_values[#d.y_values], d.y), in_words(d.z.low, d.z), in_words(d.z.high, d.z))
+  local said = ("Map of %s over %s and %s: from %s to %s"):format((d.z.verdict == "share" and "the share of draws with " or "") .. d.z.words,
+    extent(d.x, d.x_values[1], d.x_values[#d.x_values]), extent(d.y, d.y_values[1], d.y_values[#d.y_values]),
+    in_words(d.z.low, d.z), in_words(d.z.high, d.z))
   local turn = d.contours[1]
   if not turn then return said .. "." end
-  local verdict, xs, ys = d.verdict:gsub("_", " "), {}, {}
+  local verdict, xs, ys = words_of(d.verdict), {}, {}
   for _, line in ipairs(turn.lines) do
     table.move(line.x, 1, #line.x, #xs + 1, xs)
     table.move(line.y, 1, #line.y, #ys + 1, ys)
   end
   if #xs == 0 then return ("%s; %s does not turn on it."):format(said, verdict) end
-  local range = core.part "lacuna.figure_data".range
-  local x_low, x_high = range(xs)
-  local y_low, y_high = range(ys)
+  local x_low, x_high = figure_data.range(xs)
+  local y_low, y_high = figure_data.range(ys)
   return ("%s; %s turns%s along a line between %s and %s of %s and %s and %s of %s."):format(said, verdict, turn.share and " (half of the draws)" or "",
     with_unit(x_low, d.x), with_unit(x_high, d.x), d.x.words, with_unit(y_low, d.y), with_unit(y_high, d.y), d.y.words)
 end
@@ -177,12 +180,9 @@ function alternative.plane(d)
     xs[i], ys[i] = p.x, p.y
     if p.share and p.share >= 0.5 then resolved = resolved + 1 end
   end
-  local range = core.part "lacuna.figure_data".range
-  local x_low, x_high = range(xs)
-  local y_low, y_high = range(ys)
   local lines = lines_in_words(d)
-  return ("%d target%s: %s from %s to %s, %s from %s to %s%s%s."):format(#d.points, #d.points == 1 and "" or "s", d.x.words, with_unit(x_low, d.x), with_unit(x_high, d.x), d.y.words,
-    with_unit(y_low, d.y), with_unit(y_high, d.y), d.verdict and ("; %s in half of the draws or more for %d"):format(d.verdict:gsub("_", " "), resolved) or "",
+  return ("%d %s: %s, %s%s%s."):format(#d.points, english.plural(#d.points, "target"), extent(d.x, figure_data.range(xs)),
+    extent(d.y, figure_data.range(ys)), d.verdict and ("; %s in half of the draws or more for %d"):format(words_of(d.verdict), resolved) or "",
     lines and "; with lines of " .. lines or "")
 end
 
@@ -191,7 +191,7 @@ function words.alternative(figure) return alternative[figure.kind](figure.data) 
 
 -- Captions ------------------------------------------------------------------------------------------------------------------------
 
-local function symbol_of(axis) return axis.name and not axis.verdict and core.find(axis.name) == axis.name and text.symbol(axis.name) or nil end
+local function symbol_of(axis) return axis.name and not axis.verdict and core.find(axis.name) == axis.name and relations.symbol(axis.name) or nil end
 local function named(axis)
   local symbol = symbol_of(axis)
   return (axis.verdict == "share" and "share of draws: " or "") .. axis.words .. (symbol and " " .. symbol or "")
@@ -210,7 +210,7 @@ local function given_in_words(figure)
     for _, step in ipairs(core.steps(figure.case, shown)) do
       if not step.row and not skip[step.name] then
         skip[step.name] = true
-        parts[#parts + 1] = ("%s = %s"):format(step.name:gsub("_", " "), figure.written[step.name] or text.given(figure.case, step.name))
+        parts[#parts + 1] = ("%s = %s"):format(words_of(step.name), figure.written[step.name] or text.given(figure.case, step.name))
       end
     end
   end
@@ -231,9 +231,9 @@ function caption.curve(figure, add)
   if bars then add(("Lines: medians; bands: the central 68 and 95 %% of %s"):format(draws_in_words(figure)))
   elseif d.draws then add("Of " .. draws_in_words(figure)) end
   for _, level in ipairs(d.levels) do
-    add(("Dashed: %s%s"):format((level.factor ~= 1 and "half of " or "") .. (level.name and level.name:gsub("_", " ") or "the level"), level.constant and " = " .. in_words(level.constant, d.y) or ""))
+    add("Dashed: " .. level_words(level, d.y))
   end
-  for _, s in ipairs(d.series) do say_undefined(add, s.undefined, s.name:gsub("_", " ") .. (s.each and (" for %s = %s"):format(s.each.name:gsub("_", " "), s.each.value) or ""), s.draws) end
+  for _, s in ipairs(d.series) do say_undefined(add, s.undefined, series_words(s), s.draws) end
   if #d.marks > 0 then add "Grey: spectral bands" end
 end
 
@@ -243,24 +243,24 @@ function caption.map(figure, add)
   if d.draws then add((d.z.verdict and "Shares of " or "Medians of ") .. draws_in_words(figure)) end
   say_undefined(add, not d.z.verdict and d.undefined, d.z.words, d.draws)
   local turn = d.contours[1]
-  if turn and turn.share then add(("Solid line: %s in half of the draws; dashed: in 16 and 84 %%"):format(d.verdict:gsub("_", " ")))
-  elseif turn then add(("Line: %s turns"):format(d.verdict:gsub("_", " "))) end
+  if turn and turn.share then add(("Solid line: %s in half of the draws; dashed: in 16 and 84 %%"):format(words_of(d.verdict)))
+  elseif turn then add(("Line: %s turns"):format(words_of(d.verdict))) end
 end
 
 function caption.plane(figure, add)
   local d = figure.data
-  add(("%s against %s of %d target%s"):format(named(d.y), named(d.x), #d.points, #d.points == 1 and "" or "s"))
+  add(("%s against %s of %d %s"):format(named(d.y), named(d.x), #d.points, english.plural(#d.points, "target")))
   add("Medians and central 68 % of " .. draws_in_words(figure))
-  if d.verdict then add(("Filled: %s in half of the draws or more"):format(d.verdict:gsub("_", " "))) end
+  if d.verdict then add(("Filled: %s in half of the draws or more"):format(words_of(d.verdict))) end
   local lines = lines_in_words(d)
   if lines then add("Lines: " .. lines) end
-  if #d.left_out > 0 then add("Not shown, as not both can be derived: " .. listed(d.left_out)) end
+  if #d.left_out > 0 then add("Not shown, as not both can be derived: " .. english.list(d.left_out, #d.left_out)) end
 end
 
 -- f:caption(): what is shown, of how many draws, and what is given.
 function words.caption(figure)
   local sentences = {}
-  caption[figure.kind](figure, function(sentence) sentences[#sentences + 1] = sentence:gsub("^%l", string.upper) .. "." end)
+  caption[figure.kind](figure, function(sentence) sentences[#sentences + 1] = english.capital(sentence) .. "." end)
   if figure.target then sentences[1] = sentences[1]:gsub("%.$", "") .. (", %s%s."):format(figure.target, figure.variant and " (" .. figure.variant .. ")" or "") end
   if figure.case then sentences[#sentences + 1] = given_in_words(figure) end
   return table.concat(sentences, " ")
@@ -270,7 +270,8 @@ end
 
 local function plain_label(axis)
   local symbol = symbol_of(axis)
-  return format.with_unit((axis.verdict == "share" and "share of draws" or axis.words) .. (symbol and " " .. symbol or ""), axis.unit_text ~= "" and "[" .. axis.unit_text .. "]" or "")
+  local words_and_symbol = (axis.verdict == "share" and "share of draws" or axis.words) .. (symbol and " " .. symbol or "")
+  return format.with_unit(words_and_symbol, axis.unit_text ~= "" and "[" .. axis.unit_text .. "]" or "")
 end
 
 local picture = {}
@@ -288,10 +289,10 @@ end
 function picture.curve(d, columns, lines)
   local all, each = {}, math.max(lines // #d.series, 9)
   for _, s in ipairs(d.series) do
-    if #d.series > 1 then all[#all + 1] = s.name:gsub("_", " ") .. (s.each and (" for %s = %s"):format(s.each.name:gsub("_", " "), s.each.value) or "") end
+    if #d.series > 1 then all[#all + 1] = series_words(s) end
     local given = { x = d.values, level = d.levels[1] and d.levels[1].constant, x_log = d.x.log, y_log = d.y.log, width = columns, height = each,
       x_label = plain_label(d.x), y_label = plain_label(d.y) }
-    local _, highest = core.part "lacuna.figure_data".range(s.values)
+    local _, highest = figure_data.range(s.values)
     for to, from in pairs { y = "values", low = "low68", high = "high68", low95 = "low95", high95 = "high95" } do
       given[to] = not_too_deep(s[from], d.y.log and highest and highest / DEEPEST)
     end

@@ -49,7 +49,7 @@ function fits_table.of(study, facts)
   local about = { extname = "STUDY", date = facts.date_fixed and facts.date or nil }
   if study.title then about[1] = ascii(study.title) end
   about[#about + 1] = ("Made by Lacuna %s, %d draws, seed %d."):format(facts.version, facts.draws, facts.seed)
-  about[#about + 1] = "It estimates geometric feasibility; the observatory's own documents and staff decide."
+  about[#about + 1] = "It estimates geometric feasibility. " .. core.part "lacuna.english".WHO_DECIDES
   local columns, taken = {}, {}
   for i, field in ipairs(table_files.fields(study)) do columns[i] = column_of(field, taken) end
   return core.fits_table(about, columns, #columns[1])

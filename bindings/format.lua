@@ -5,13 +5,14 @@
 --   number(value, digits)               "0.346", "1500", "2.4e-11"; 4 significant digits where none are asked for
 --   with_error(value, upper, lower)     "0.46 ± 0.03", "0.46 +0.05 -0.02", "(2.4 ± 0.2)e-11"
 --   rounded(value, upper, lower)        "0.46", "0.05", "0.02": the same digits as separate fields, for files of numbers
+--   shortened(text)                     long decimal fractions in it to four digits: 1.0289939699622 is 1.029
 --   percent(fraction)                   "83 %", "0.4 %", "> 99.9 %"; 100 % is said of all, 0 % of none
 --   number_tex, with_error_tex, percent_tex   the same in TeX
 --   with_unit(text, unit)               "0.46 ± 0.03 au"
 --   with_unit_tex(tex, unit)            "$0.46 \pm 0.03\,\mathrm{au}$"
+--   wrapped(text, columns, gap)         its lines, broken at spaces; longer words stand alone; between words a space, or what gap says
 --   width(text)                         columns on a terminal
 --   pad_left(text, columns), pad_right(text, columns)
---   wrapped(text, columns)              its lines of at most so many columns
 
 local format = {}
 
@@ -220,6 +221,7 @@ end
 -- Bytes that are no UTF-8 count as one column each.
 function format.width(text)
   if not text:find "[^ -~]" then return #text end
+  if not text:find "[%c\xCC-\xFF]" and not text:find "\xC2[\x80-\x9F]" and utf8.len(text) then return utf8.len(text) end -- all of one column
   local columns, at = 0, 1
   while at <= #text do
     local _, bad = utf8.len(text, at)
@@ -235,14 +237,21 @@ function format.pad_left(text, columns) return (" "):rep(columns - format.width(
 
 function format.pad_right(text, columns) return text .. (" "):rep(columns - format.width(text)) end
 
--- Breaks a text at its spaces, but not before a per cent sign, into lines of at most so many columns (longer words stand alone).
-function format.wrapped(text, columns)
-  if format.width(text) <= columns and not text:find "%s%s" then return { text } end
-  local lines, line, length = {}, nil, 0
+function format.shortened(text)
+  return (text:gsub("%d+%.%d%d%d%d+", function(digits) return format.number(tonumber(digits), 4) end))
+end
+
+-- A per cent sign stays with its number.
+function format.wrapped(text, columns, gap)
+  gap = gap or " "
+  local lines, line, width = {}, nil, 0
   for word in text:gsub(" %%", "\u{a0}%%"):gmatch "%S+" do
     local more = format.width(word)
-    if line and length + 1 + more > columns then lines[#lines + 1], line = line, nil end
-    line, length = line and line .. " " .. word or word, line and length + 1 + more or more
+    if line and width + #gap + more <= columns then line, width = line .. gap .. word, width + #gap + more
+    else
+      lines[#lines + 1] = line
+      line, width = word, more
+    end
   end
   lines[#lines + 1] = line
   for i = 1, #lines do lines[i] = lines[i]:gsub("\u{a0}%%", " %%") end

@@ -2,26 +2,15 @@
 -- The tables as plain Lua data, for documents and programs of one's own: names with their recipes and equations, words, sources.
 local core = ...
 local equation = core.part "lacuna.equation"
+local relations = core.part "lacuna.relations"
 local text = core.part "lacuna.text"
 local case = core.part "lacuna.case"
 
 local glossary = {}
 
--- The symbol in TeX; that of an angle is theta of the length, as in plain text.
-local function symbol_tex(name)
-  local length = name:match "^(.+)_angle$"
-  if length and core.find(length) == length and core.entry(length).on_sky then return "\\theta(" .. core.entry(length).symbol .. ")" end
-  return core.entry(name).symbol
-end
-
-local function unit_plain(entry)
-  local _, _, plain = core.unit_facts(entry.unit)
-  return entry.unit == "1" and "" or plain
-end
-
 local function bound(range)
   local entry = core.entry(range.name)
-  return { name = range.name, low = range.low / entry.factor, high = range.high / entry.factor, unit = entry.unit, unit_plain = unit_plain(entry) }
+  return { name = range.name, low = range.low / entry.factor, high = range.high / entry.factor, unit = entry.unit, unit_plain = text.unit_of(range.name) }
 end
 
 local function recipe(row)
@@ -29,11 +18,11 @@ local function recipe(row)
   for i, range in ipairs(row.holds) do holds[i] = bound(range) end
   local with_equation = row.equation and row.equation ~= ""
   return {
-    gives = row.gives, by = row.by, kind = row.kind, from = row.from, source = row.source, source_text = row.source == "definition" and "definition" or text.source(row),
+    gives = row.gives, by = row.by, kind = row.kind, from = row.from, source = row.source, source_text = row.source == "definition" and "definition" or relations.source(row),
     from_memory = row.from_memory, supposes = row.supposes, unchecked = row.unchecked, inverse_of = row.inverse_of, assumes = row.assumes, holds = holds,
-    equation = with_equation and equation.plain(row.equation, text.symbol) or nil,
-    equation_tex = with_equation and equation.tex(row.equation, symbol_tex) or nil,
-    equation_mathml = with_equation and equation.mathml(row.equation, symbol_tex) or nil,
+    equation = with_equation and equation.plain(row.equation, relations.symbol) or nil,
+    equation_tex = with_equation and equation.tex(row.equation, relations.symbol_tex) or nil,
+    equation_mathml = with_equation and equation.mathml(row.equation, relations.symbol_tex) or nil,
   }
 end
 
@@ -45,8 +34,8 @@ local function facts(name)
   for word in (entry.synonyms or ""):gmatch "%S+" do synonyms[#synonyms + 1] = word end
   local _, _, _, si = core.unit_facts(entry.unit)
   return {
-    name = name, kind = entry.kind, subject = entry.subject, meaning = entry.meaning, unit = entry.unit, unit_plain = unit_plain(entry), unit_si = si, range = entry.range,
-    symbol = text.symbol(name), symbol_tex = symbol_tex(name), symbol_mathml = equation.mathml(symbol_tex(name), function(other) return other end),
+    name = name, kind = entry.kind, subject = entry.subject, meaning = entry.meaning, unit = entry.unit, unit_plain = text.unit_of(name), unit_si = si, range = entry.range,
+    symbol = relations.symbol(name), symbol_tex = relations.symbol_tex(name), symbol_mathml = equation.mathml(relations.symbol_tex(name), function(other) return other end),
     synonyms = synonyms, on_sky = entry.on_sky, hint = entry.hint, recipes = recipes,
   }
 end

@@ -25,7 +25,9 @@ local PIXELS = 300 / 25.4 -- a mm of a PNG
 
 -- Their letters of 8 points are 8/72 of an inch high in print: gnuplot takes points for 1/96 inch in PDF and PNG.
 local terminals = {
-  pdf = function(width, height) return ("pdfcairo enhanced color size %.2fcm,%.2fcm font '%s,%d' fontscale 0.75 linewidth 1 rounded"):format(width / 10, height / 10, FONT, LETTERS) end,
+  pdf = function(width, height)
+    return ("pdfcairo enhanced color size %.2fcm,%.2fcm font '%s,%d' fontscale 0.75 linewidth 1 rounded"):format(width / 10, height / 10, FONT, LETTERS)
+  end,
   svg = function(width, height)
     return ("svg enhanced size %.1f,%.1f fixed font '%s,%d' background '#ffffff' linewidth 0.5 dashlength 1.2 rounded"):format(width / POINT, height / POINT, FONT, LETTERS)
   end,

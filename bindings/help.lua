@@ -1,6 +1,7 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- help(): a map by subject. help "gap_width": one name. help "word": one word of the language, a unit, or a search. All from the tables.
 local core = ...
+local relations = core.part "lacuna.relations"
 local text = core.part "lacuna.text"
 local format = core.part "lacuna.format"
 local words = core.part "lacuna.words"
@@ -13,21 +14,14 @@ local help = {}
 local page = { __name = "help", __tostring = core.part "lacuna.show".page }
 local function new_page(...) return setmetatable({ ... }, page) end
 
-local function wrap(list, indent, width)
-  local lines, line = {}, ""
-  for _, word in ipairs(list) do
-    if #line + #word + 2 > width and line ~= "" then
-      lines[#lines + 1] = line
-      line = ""
-    end
-    line = line .. (line == "" and (" "):rep(indent) or "  ") .. word
-  end
-  lines[#lines + 1] = line
-  return lines
+-- Names in as many lines as they take.
+local function add_names(lines, names, width)
+  for _, line in ipairs(format.wrapped(table.concat(names, " "), width - 2, "  ")) do lines[#lines + 1] = "  " .. line end
 end
 
 local subjects = {
-  { "star", "the star" }, { "photometry", "photometry" }, { "radiation", "radiation" }, { "disc", "the disc, at radius (also as planet_..., ring_...)" }, { "dust", "dust" }, { "rim", "rim and cavity" },
+  { "star", "the star" }, { "photometry", "photometry" }, { "radiation", "radiation" }, { "disc", "the disc, at radius (also as planet_..., ring_...)" },
+  { "dust", "dust" }, { "rim", "rim and cavity" },
   { "orbit", "orbits, planets, companions" }, { "gap", "gaps and rings" }, { "instrument", "instruments" },
   { "structure", "structures: rim, cavity, gap, ring" }, { "visibility", "visibilities" }, { "emission", "the disc's own light" }, { "yours", "your own" },
 }
@@ -63,7 +57,7 @@ local function map()
     "Lengths on the sky have <name>_angle besides. help \"case:why\" is of a method.", "")
   for _, subject in ipairs(words.by_subject()) do
     lines[#lines + 1] = "words: " .. subject.title
-    for _, line in ipairs(wrap(names_of_words(subject.records), 2, width)) do lines[#lines + 1] = line end
+    add_names(lines, names_of_words(subject.records), width)
   end
   for _, subject in ipairs(help.by_subject()) do
     local names = {}
@@ -71,19 +65,19 @@ local function map()
       if not search.is_derived(name) then names[#names + 1] = name end
     end
     lines[#lines + 1] = subject.title
-    for _, line in ipairs(wrap(names, 2, width)) do lines[#lines + 1] = line end
+    add_names(lines, names, width)
   end
   return lines
 end
 
 local function unit_text(entry)
-  local _, _, written = core.unit_facts(entry.unit)
-  return entry.unit == "1" and "a plain number" or "in " .. written
+  local unit = text.unit_of(entry.name)
+  return unit == "" and "a plain number" or "in " .. unit
 end
 
 local function about_name(name)
   local entry = core.entry(name)
-  local lines = new_page(("%s  %s"):format(name, text.symbol(name)), "  " .. entry.meaning)
+  local lines = new_page(("%s  %s"):format(name, relations.symbol(name)), "  " .. entry.meaning)
   if entry.kind == "verdict" then lines[#lines + 1] = "  a verdict: yes, no, or in so many per cent of the draws"
   elseif entry.kind == "object" then lines[#lines + 1] = "  an object"
   else lines[#lines + 1] = ("  %s%s"):format(unit_text(entry), entry.range ~= "any" and ", " .. entry.range or "") end

@@ -5,6 +5,26 @@ local core = ...
 local text = core.part "lacuna.text"
 local case = core.part "lacuna.case"
 
+-- Rows of the tables don't change once they are there; a name's entry does with each row that gives it. Both are asked for often.
+do
+  local row, entry, rows, entries = core.row, core.entry, {}, {}
+  function core.row(number)
+    rows[number] = rows[number] or row(number)
+    return rows[number]
+  end
+  function core.entry(name)
+    entries[name] = entries[name] or entry(name)
+    return entries[name]
+  end
+  for _, word in ipairs { "add_name", "add_relation" } do
+    local add = core[word]
+    core[word] = function(...)
+      entries = {}
+      return add(...)
+    end
+  end
+end
+
 local settings_shown = { __tostring = function(s)
   return ("seed %d, %d draws, %d threads, %.0f MiB of memory"):format(s.seed, s.draws, s.threads, s.memory)
 end }
@@ -94,7 +114,7 @@ function lacuna.relation(row)
   copy.call, copy[1] = row[1] or row.call, nil
   if type(row.equation) == "string" and row.equation ~= "" then
     for name in row.equation:gmatch "%[([%w_]+)%]" do case.name_of(name, "relation: its equation has the ") end
-    local ok, defect = pcall(core.part "lacuna.equation".plain, row.equation, text.symbol)
+    local ok, defect = pcall(core.part "lacuna.equation".plain, row.equation, core.part "lacuna.relations".symbol)
     if not ok then core.raise("relation: " .. tostring(defect)) end
   end
   return core.add_relation(copy)

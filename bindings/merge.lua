@@ -38,7 +38,10 @@ local function prepare(folders)
     local there, texts = read_part(folder)
     there = without_shard(there)
     local difference = head and file.difference(head, there)
-    if difference then error(("merge: %s and %s don't belong together: %s"):format(folders[1], folder, (difference:gsub(" there, is ", " in the first, is "):gsub(" here$", " in the other"))), 0) end
+    if difference then
+      local between = difference:gsub(" there, is ", " in the first, is "):gsub(" here$", " in the other")
+      error(("merge: %s and %s don't belong together: %s"):format(folders[1], folder, between), 0)
+    end
     head = head or there
     add_records(texts, folder, from)
   end

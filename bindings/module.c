@@ -14,12 +14,6 @@ static const lac_embedded *find_part(const char *name) {
   return part->name != NULL ? part : NULL;
 }
 
-/* has_part(name): whether there is an embedded source of that name. */
-static int has_part(lua_State *L) {
-  lua_pushboolean(L, find_part(luaL_checkstring(L, 1)) != NULL);
-  return 1;
-}
-
 /* load_part(name): what the embedded source of that name returns, run once for each Lua state with the private table as its argument. */
 static int load_part(lua_State *L) {
   const char *name = luaL_checkstring(L, 1);
@@ -63,8 +57,6 @@ int luaopen_lacuna(lua_State *L) {
   lac_open_digest(L);
   lac_open_fits(L);
   lac_open_run_program(L);
-  lua_pushcfunction(L, has_part);
-  lua_setfield(L, -2, "has_part");
   lua_pushvalue(L, -1);
   lua_pushcclosure(L, load_part, 1);
   lua_pushvalue(L, -1);

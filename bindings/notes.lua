@@ -3,34 +3,16 @@
 -- with their sources, what is assumed and supposed, and how far the answer goes. Each note is { heading, lines }. All comes from the
 -- targets' records: no case is needed.
 local core = ...
+local changes = core.part "lacuna.changes"
+local conditions = core.part "lacuna.conditions"
+local english = core.part "lacuna.english"
 local equation = core.part "lacuna.equation"
 local format = core.part "lacuna.format"
-local records = core.part "lacuna.record"
-local text = core.part "lacuna.text"
+local ordered = core.part "lacuna.ordered"
+local relations = core.part "lacuna.relations"
 
 local notes = {}
-
--- Lists that keep the order in which their keys came ---------------------------------------------------------------------------------
-
-local function ordered() return { keys = {}, values = {} } end
-
-local function yes() return true end
-
-local function at(list, key, make)
-  if list.values[key] == nil then
-    list.keys[#list.keys + 1] = key
-    list.values[key] = make and make() or ordered()
-  end
-  return list.values[key]
-end
-
-local function each(list)
-  local i = 0
-  return function()
-    i = i + 1
-    return list.keys[i], list.values[list.keys[i]]
-  end
-end
+local at, each, note = ordered.at, ordered.each, ordered.note
 
 -- "Marrow 3, Quillon A"; "all targets"; "all targets but Marrow 3".
 local function named(names, study)
@@ -44,16 +26,16 @@ end
 
 -- "1 au, 5 au: gap_size_angle, gap_resolved_by_array" of the columns that share something.
 local function labelled(columns)
-  local by_names = ordered()
-  local names_of = ordered()
+  local by_names = ordered.new()
+  local names_of = ordered.new()
   for _, column in ipairs(columns) do
     local group = column.group or ""
     local names = at(names_of, group)
-    at(names, column.name, yes)
+    note(names, column.name)
   end
   for group, names in each(names_of) do
     local groups = at(by_names, table.concat(names.keys, ", "))
-    at(groups, group, yes)
+    note(groups, group)
   end
   local said = {}
   for names, groups in each(by_names) do
@@ -96,17 +78,17 @@ function notes.relations_used(study)
   local used, texts = {}, {}
   for_cells(study, function(_, row, cell)
     for _, step in ipairs(steps_of(texts, cell.steps)) do
-      local recipes = used[step.name] or ordered()
+      local recipes = used[step.name] or ordered.new()
       used[step.name] = recipes
       local entry = recipes.values[step.by]
       if not entry then
         entry = at(recipes, step.by)
         entry.relation = step.by ~= "given" and relation_by(step.name, step.by) or nil
       end
-      if not entry.values[row.name] then at(entry, row.name, yes) end
+      if not entry.values[row.name] then note(entry, row.name) end
     end
   end)
-  local in_order = ordered()
+  local in_order = ordered.new()
   for _, name in ipairs(core.names()) do
     if used[name] then in_order.keys[#in_order.keys + 1], in_order.values[name] = name, used[name] end
   end
@@ -116,7 +98,7 @@ end
 -- The notes ---------------------------------------------------------------------------------------------------------------------------
 
 local function not_derived(study)
-  local reasons = ordered()
+  local reasons = ordered.new()
   for i, column in ipairs(study.columns) do
     for _, row in ipairs(study.rows) do
       local cell = row.cells[i]
@@ -128,7 +110,7 @@ local function not_derived(study)
       end
     end
   end
-  local lines = ordered() -- the same reason of the same columns for several targets: once
+  local lines = ordered.new() -- the same reason of the same columns for several targets: once
   for _, entry in each(reasons) do
     local line = at(lines, entry.reason .. ": " .. labelled(entry))
     line[#line + 1] = entry.name
@@ -158,7 +140,7 @@ local function failed_targets(study)
 end
 
 local function why_not(study)
-  local columns = ordered()
+  local columns = ordered.new()
   for_cells(study, function(column, row, cell)
     for _, c in ipairs(cell.failing or {}) do
       local reason = at(at(columns, column.label), c.words)
@@ -188,46 +170,25 @@ local function unlike_recipes(study, used)
   return said
 end
 
-local function is_magnitude(column) return column.unit == "mag" end
-
 local function change_words(column, change, study)
   if column.verdict then
     if #change.names == 0 then return nil end
     return ("%s changes for %d of %d (%s)"):format(column.label, #change.names, change.asked, named(change.names, study))
   end
-  if change.high < change.low then return nil end
-  local low, high = format.number(change.low, 2), format.number(change.high, 2)
-  if is_magnitude(column) then
-    low, high = ("%+.2f"):format(change.low), ("%+.2f"):format(change.high)
-    if low:find "^.0.00$" and high:find "^.0.00$" then return nil end
-    return ("%s %s mag"):format(column.label, low == high and low or low .. " to " .. high)
-  end
-  if low == "1" and high == "1" then return nil end
-  return ("%s × %s"):format(column.label, low == high and low or low .. " to " .. high)
-end
-
--- One cell's change among those of its column.
-local function add_change(change, row, one)
-  if one.flips ~= nil then
-    change.asked = change.asked + 1
-    if one.flips then change.names[#change.names + 1] = row.name end
-  elseif one.low then change.low, change.high = math.min(change.low, one.low), math.max(change.high, one.high) end
+  local span = changes.span(column, change)
+  return span and ("%s %s%s"):format(column.label, column.unit == "mag" and "" or "× ", span)
 end
 
 local function over_recipes(study)
-  local others = ordered()
-  for _, row in ipairs(study.rows) do
-    for i, column in ipairs(study.columns) do
-      for _, one in ipairs(row.cells[i].others or {}) do
-        local change = at(at(others, one.recipe), column, function() return { asked = 0, names = {}, low = math.huge, high = -math.huge } end)
-        add_change(change, row, one)
-      end
+  local others = ordered.new()
+  for i, column in ipairs(study.columns) do
+    for _, change in ipairs(changes.of(study, i)) do
+      local words = at(others, change.words)
+      words[#words + 1] = change_words(column, change, study)
     end
   end
   local said, nothing = {}, {}
-  for recipe, changes in each(others) do
-    local words = {}
-    for column, change in each(changes) do words[#words + 1] = change_words(column, change, study) end
+  for recipe, words in each(others) do
     if #words == 0 then nothing[#nothing + 1] = recipe else said[#said + 1] = recipe .. ": " .. table.concat(words, "; ") end
   end
   if #nothing > 0 then said[#said + 1] = table.concat(nothing, "; ") .. ": no change" end
@@ -236,13 +197,13 @@ end
 
 -- Recipes with their sources; those that templates make for several names stand once.
 local function recipes(used)
-  local by_source = ordered()
+  local by_source = ordered.new()
   for name, by in each(used) do
     for _, entry in each(by) do
       local row = entry.relation
       if row and row.kind ~= "definition" and row.kind ~= "assumed" and row.source ~= "definition" then
-        local names = at(by_source, text.recipe(row) .. (row.supposes and "; supposes " .. row.supposes or ""))
-        at(names, name, yes)
+        local names = at(by_source, relations.recipe(row) .. (row.supposes and "; supposes " .. row.supposes or ""))
+        note(names, name)
       end
     end
   end
@@ -257,7 +218,7 @@ local function assumed(study, used)
     for _, entry in each(by) do
       local row = entry.relation
       if row and row.kind == "assumed" then
-        said[#said + 1] = ("%s = %s (%s)%s"):format(name, row.assumes, text.source(row), row.supposes and ": " .. row.supposes or "")
+        said[#said + 1] = ("%s = %s (%s)%s"):format(name, row.assumes, relations.source(row), row.supposes and ": " .. row.supposes or "")
       end
     end
   end
@@ -272,28 +233,25 @@ end
 
 local function add_criteria(said, used)
   for _, name in ipairs { "array_resolution", "mirror_resolution" } do
-    for by, entry in each(used.values[name] or ordered()) do
+    for by, entry in each(used.values[name] or ordered.new()) do
       if entry.relation then
-        local words = equation.plain(entry.relation.equation, function(word) return equation.plain_symbol(core.entry(word).symbol) end)
-        at(said, ("%s: %s (%s)"):format(name, words:gsub("%d+%.%d%d%d%d+", function(digits) return format.number(tonumber(digits), 4) end), by))
+        local words = equation.plain(entry.relation.equation, relations.symbol)
+        note(said, ("%s: %s (%s)"):format(name, format.shortened(words), by))
       end
     end
   end
 end
 
 local function meaning_of_verdicts(study, used)
-  local said = ordered()
+  local said = ordered.new()
   for _, column in ipairs(study.columns) do
     if column.verdict and used.values[column.name] then
       for _, entry in each(used.values[column.name]) do
         local words = {}
-        for i, condition in ipairs(entry.relation and entry.relation.conditions or {}) do
-          local c = text.parse_condition(condition)
-          words[i] = records.condition_words(c, c.sign)
-        end
+        for i, c in ipairs(conditions.of_row(entry.relation)) do words[i] = conditions.words(c, c.sign) end
         local line = generic(column.name .. ": " .. table.concat(words, ", and "), column.name)
         if entry.relation and entry.relation.unchecked then line = line .. "; not checked: " .. generic(entry.relation.unchecked, column.name) end
-        if #words > 0 then at(said, line) end
+        if #words > 0 then note(said, line) end
       end
     end
   end
@@ -302,9 +260,9 @@ local function meaning_of_verdicts(study, used)
 end
 
 local function outside_validity(study)
-  local found = ordered()
+  local found = ordered.new()
   for_cells(study, function(_, row, cell)
-    for _, words in ipairs(cell.outside or {}) do at(at(found, words), row.name, yes) end
+    for _, words in ipairs(cell.outside or {}) do note(at(found, words), row.name) end
   end)
   local said = {}
   for words, names in each(found) do said[#said + 1] = words .. "; outside for " .. named(names.keys, study) end
@@ -312,7 +270,7 @@ local function outside_validity(study)
 end
 
 local function undefined_draws(study)
-  local found, asked = ordered(), {}
+  local found, asked = ordered.new(), {}
   for_cells(study, function(column, row, cell)
     asked[row] = (asked[row] or 0) + 1
     if cell.undefined > 0 then
@@ -361,7 +319,7 @@ end
 local function where_verdicts_turn(study)
   local sweep = study.sweeps and #study.sweeps == 1 and study.sweeps[1]
   if not sweep then return {} end
-  local columns = ordered()
+  local columns = ordered.new()
   for_cells(study, function(column, row, cell)
     if not cell.shares then return end
     local value, up = turns_at(cell, sweep)
@@ -404,7 +362,7 @@ local function how_far(study)
   local settings = core.settings()
   return {
     ("%d draws, seed %d; shares are of all draws; an error bar is the central 68 %% of them."):format(settings.draws, settings.seed),
-    "This estimates geometric feasibility; whether a structure is detected is not assessed. The observatory's own documents and staff decide.",
+    "This estimates geometric feasibility; whether a structure is detected is not assessed. " .. english.WHO_DECIDES,
   }
 end
 

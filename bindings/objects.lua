@@ -20,7 +20,7 @@ end
 local sources = {}
 function sources.band(band)
   local _, id = core.band_facts(band)
-  if id then return "zero point: " .. core.part "lacuna.text".source { source = id }, id end
+  if id then return "zero point: " .. core.part "lacuna.relations".source { source = id }, id end
 end
 
 function objects.source(object)

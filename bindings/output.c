@@ -25,18 +25,25 @@ static bool write_all(int file, const char *text, size_t length) {
   return true;
 }
 
-/* The rights a new file would have: mkstemp is stricter. */
-static mode_t usual_rights(void) {
-  const mode_t mask = umask(0);
-  umask(mask);
-  return 0666 & ~mask;
+enum { SUFFIX = 40 };
+
+/* A new file beside the one that is to be; its suffix goes to `suffix`. It gets the rights of any new file, by the process's mask. */
+static int create_beside(const char *name, char *suffix) {
+  int file = -1;
+  errno = EEXIST;
+  for (int i = 0; file < 0 && errno == EEXIST && i < 1000; i++) {
+    snprintf(suffix, SUFFIX, ".%ld-%d", (long)getpid(), i);
+    file = open(name, O_WRONLY | O_CREAT | O_EXCL | O_CLOEXEC, 0666);
+  }
+  return file;
 }
 
-/* Writes under the name in `temporary` (ending in XXXXXX), then gives the file its own. No call in here can raise. */
-static bool write_and_rename(const char *path, char *temporary, const char *text, size_t length) {
-  const int file = mkstemp(temporary);
+/* Writes under the name in `temporary`, which has room for a suffix, then gives the file its own, and the rights of the one that was there
+   (0: there was none). No call in here can raise. */
+static bool write_and_rename(const char *path, char *temporary, mode_t rights, const char *text, size_t length) {
+  const int file = create_beside(temporary, temporary + strlen(temporary));
   if (file < 0) return false;
-  bool good = write_all(file, text, length) && fchmod(file, usual_rights()) == 0;
+  bool good = (rights == 0 || fchmod(file, rights) == 0) && write_all(file, text, length);
   int trouble = good ? 0 : errno;
   if (close(file) != 0 && good) good = false, trouble = errno;
   if (good && rename(temporary, path) != 0) good = false, trouble = errno;
@@ -58,16 +65,16 @@ static bool write_in_place(const char *path, const char *text, size_t length) {
 static int write_file(lua_State *L) {
   size_t length;
   const char *path = luaL_checkstring(L, 1), *text = luaL_checklstring(L, 2, &length);
-  struct stat present;
+  struct stat present = {0};
   bool good;
+  lac_check_decimal_point(L, path);
   if (stat(path, &present) == 0 && !S_ISREG(present.st_mode)) {
     good = write_in_place(path, text, length);
   } else {
     char real[PATH_MAX];
     const char *final = realpath(path, real) ? real : path;
-    char *temporary = lua_newuserdatauv(L, strlen(final) + sizeof ".XXXXXX", 0);
-    strcpy(stpcpy(temporary, final), ".XXXXXX");
-    good = write_and_rename(final, temporary, text, length);
+    char *temporary = strcpy(lua_newuserdatauv(L, strlen(final) + SUFFIX, 0), final);
+    good = write_and_rename(final, temporary, present.st_mode & 0777, text, length);
   }
   return good ? 0 : lac_error(L, "cannot write %s: %s", path, strerror(errno));
 }

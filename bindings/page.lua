@@ -5,16 +5,18 @@
 --   of(study, parts)   parts = { facts, row, chains, composed, figures, missing } as report.lua has them
 local core = ...
 local derivation = core.part "lacuna.derivation"
+local english = core.part "lacuna.english"
 local feasibility = core.part "lacuna.feasibility"
 local format = core.part "lacuna.format"
 local notes = core.part "lacuna.notes"
 local style = core.part "lacuna.page_style"
 local tables = core.part "lacuna.table"
+local relations = core.part "lacuna.relations"
 local text = core.part "lacuna.text"
 local verdicts = core.part "lacuna.verdicts"
 
 local page = {}
-local words_of = verdicts.words_of
+local words_of = english.words_of
 local LONGEST_SHOWN = 200000 -- bytes of an input that is shown in the page itself
 
 -- HTML -------------------------------------------------------------------------------------------------------------------------------
@@ -83,7 +85,7 @@ end
 -- "Is the rim resolved by the array?"
 local function question(words)
   local subject, rest = words:match "^(.-) is (.*)$"
-  return subject and ("Is %s %s?"):format(subject, rest) or words:gsub("^%l", string.upper) .. "?"
+  return subject and ("Is %s %s?"):format(subject, rest) or english.capital(words) .. "?"
 end
 
 local function answer(one, draws, all)
@@ -99,7 +101,7 @@ local function answer(one, draws, all)
   add("missing", "Not derived", names_with_shares(one.missing, true))
   local changed = {}
   for _, recipe in ipairs(one.recipes) do
-    if #recipe.names > 0 then changed[#changed + 1] = html(("%s changes it for %s"):format(verdicts.recipe_words(recipe.words), verdicts.list(recipe.names))) end
+    if #recipe.names > 0 then changed[#changed + 1] = html(("%s changes it for %s"):format(verdicts.recipe_words(recipe.words), english.list(recipe.names))) end
   end
   local recipes = #one.yes + #one.between + #one.no == 0 and "" or #changed > 0 and "Another recipe: " .. table.concat(changed, "; ") .. "."
     or #one.recipes > 0 and "No other recipe changes it." or "No other recipe can be had from what is given."
@@ -118,7 +120,7 @@ local function answers(study)
     parts[#parts + 1] = '<div class="answers">\n' .. table.concat(cards, "\n") .. "\n</div>"
   end
   parts[#parts + 1] = '<p class="small">Resolved means geometrically resolved; whether a structure is detected is not assessed. ' ..
-    "The observatory’s own documents and staff decide.</p>"
+    html(english.WHO_DECIDES) .. "</p>"
   return table.concat(parts, "\n")
 end
 
@@ -165,21 +167,21 @@ end
 
 -- Derivations ------------------------------------------------------------------------------------------------------------------------
 
-local function source_of(row) return row.source == "definition" and "by definition" or html(words_of(row.by)) .. ": " .. html(text.source(row)) end
+local function source_of(row) return row.source == "definition" and "by definition" or html(words_of(row.by)) .. ": " .. html(relations.source(row)) end
 
 local function step_html(step)
   local lines = { ("<p><strong>%s</strong> = %s"):format(html(words_of(step.name)), html(step.value)) }
   local function add(form, ...) lines[#lines + 1] = form:format(...) end
   if step.kind == "given" then add(", given%s</p>", step.source and " (" .. html(step.source) .. ")" or "")
   elseif step.kind == "assumed" then
-    add(", assumed (%s)%s</p>", html(text.source(step.row)), step.row.supposes and ": " .. html(step.row.supposes) or "")
+    add(", assumed (%s)%s</p>", html(relations.source(step.row)), step.row.supposes and ": " .. html(step.row.supposes) or "")
   else
     add("</p>")
     if step.equation then add('<div class="equation">%s</div>', derivation.equation_mathml(step)) end
     local numbers = derivation.numbers_mathml(step)
     if numbers then add('<div class="equation">%s</div>', (numbers:gsub("^(<math[^>]*>)", "%1<mo>=</mo>"))) end
     add('<p class="small">%s%s</p>', source_of(step.row), step.row.supposes and "; supposes " .. html(step.row.supposes) or "")
-    for _, warning in ipairs(step.warnings) do add('<p class="small"><strong>Beware:</strong> %s</p>', html(verdicts.in_words(warning))) end
+    for _, warning in ipairs(step.warnings) do add('<p class="small"><strong>Beware:</strong> %s</p>', html(english.in_words(warning))) end
   end
   return table.concat(lines)
 end
@@ -193,14 +195,14 @@ end
 local function chain_html(one)
   local chain, parts = one.chain, {}
   local function add(part) parts[#parts + 1] = part end
-  add(("<p>%s%s.</p>"):format(html(chain.meaning:gsub("^%l", string.upper)), chain.numbers and "; " .. html(chain.numbers) or ""))
+  add(("<p>%s%s.</p>"):format(html(english.capital(chain.meaning)), chain.numbers and "; " .. html(chain.numbers) or ""))
   local steps = {}
   for i, step in ipairs(chain.steps) do steps[i] = element("li", step_html(step)) end
   add("<ol class=\"steps\">\n" .. table.concat(steps, "\n") .. "\n</ol>")
   if #chain.conditions > 0 then
     local conditions = {}
-    for i, condition in ipairs(chain.conditions) do conditions[i] = html(verdicts.in_words(condition)) end
-    if chain.unchecked then conditions[#conditions + 1] = "not checked: " .. html(verdicts.in_words(chain.unchecked)) end
+    for i, condition in ipairs(chain.conditions) do conditions[i] = html(english.in_words(condition)) end
+    if chain.unchecked then conditions[#conditions + 1] = "not checked: " .. html(english.in_words(chain.unchecked)) end
     add("<p>Its conditions:</p>\n" .. item_list(conditions))
   end
   if #chain.others > 0 then
@@ -288,20 +290,20 @@ end
 
 local function assumptions(study)
   local rows = relation_rows(study, function(row) return row.kind == "assumed" end,
-    function(name, row) return { html(words_of(name)), html(row.assumes), html(text.source(row)), html(row.supposes or "") } end)
+    function(name, row) return { html(words_of(name)), html(row.assumes), html(relations.source(row)), html(row.supposes or "") } end)
   if #rows == 0 then return "<p>Nothing is assumed.</p>" end
   return plain_table("Assumptions", { "Quantity", "Assumed", "Source", "Which supposes" }, rows)
 end
 
 local function recipes(study, parts)
   local rows = relation_rows(study, function(row) return row.kind ~= "assumed" and row.kind ~= "definition" and row.source ~= "definition" end,
-    function(name, row) return { html(words_of(name)), element("code", html(row.by)), html(text.source(row)), html(row.supposes or "") } end)
+    function(name, row) return { html(words_of(name)), element("code", html(row.by)), html(relations.source(row)), html(row.supposes or "") } end)
   local lines = { #rows > 0 and plain_table("Recipes", { "Quantity", "Recipe", "Source", "Supposes" }, rows) or "<p>All follows by definition.</p>" }
   local others = {}
   for i, found in ipairs(derivation.others(parts.chains)) do
     others[i] = { html((found.column.group and found.column.group .. ": " or "") .. words_of(found.chain.name)), html(found.chain.value:match "^[^:]*"),
       html(with_other(found.other)), html(found.other.value),
-      html(text.source(found.other.row)) }
+      html(relations.source(found.other.row)) }
   end
   if #others > 0 then
     lines[#lines + 1] = element("h3", "What other recipes would have given for " .. html(parts.row.name))
@@ -318,11 +320,11 @@ local function notes_html(study)
     if not shown_elsewhere[note.heading] then
       local items = {}
       for i, line in ipairs(note.lines) do
-        if type(line) == "string" then items[i] = html(verdicts.in_words(line))
+        if type(line) == "string" then items[i] = html(english.in_words(line))
         else
           local inner = {}
-          for j = 2, #line do inner[j - 1] = html(verdicts.in_words(line[j])) end
-          items[i] = html(verdicts.in_words(line[1])) .. item_list(inner)
+          for j = 2, #line do inner[j - 1] = html(english.in_words(line[j])) end
+          items[i] = html(english.in_words(line[1])) .. item_list(inner)
         end
       end
       parts[#parts + 1] = element("h3", html(note.heading)) .. "\n" .. item_list(items)

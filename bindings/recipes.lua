@@ -2,6 +2,7 @@
 -- recipes "gap_width": all recipes of a name, with equations, sources and ranges of validity. recipes("gap_width", c): what each gives in a
 -- case, side by side, and whether the case lies in its range or what it would need.
 local core = ...
+local relations = core.part "lacuna.relations"
 local text = core.part "lacuna.text"
 local case = core.part "lacuna.case"
 local equation = core.part "lacuna.equation"
@@ -11,27 +12,22 @@ local recipes = {}
 
 local page = { __name = "recipes", __tostring = core.part "lacuna.show".page }
 
-local function in_unit(entry, low, high)
-  local _, _, unit = core.unit_facts(entry.unit)
-  return ("from %s to %s%s"):format(format.number(low / entry.factor), format.number(high / entry.factor), entry.unit == "1" and "" or " " .. unit)
-end
-
 -- What a row of the tables says: its equation, its source, what it supposes, where it holds. Lines set in by six.
 function recipes.describe(lines, row)
   local function add(line) lines[#lines + 1] = "      " .. line end
   if row.kind ~= "assumed" then
-    if row.equation and row.equation ~= "" then add(equation.plain(row.equation, text.symbol)) end
-    add(row.source == "definition" and "definition" or text.source(row))
+    if row.equation and row.equation ~= "" then add(equation.plain(row.equation, relations.symbol)) end
+    add(row.source == "definition" and "definition" or relations.source(row))
   end
   if row.supposes then add("supposes " .. row.supposes) end
   if row.unchecked then add("not checked: " .. row.unchecked) end
-  for _, bound in ipairs(row.holds) do add(("holds for %s %s"):format(bound.name, in_unit(core.entry(bound.name), bound.low, bound.high))) end
+  for _, bound in ipairs(row.holds) do add(("holds for %s %s"):format(bound.name, text.range(bound.name, bound.low, bound.high))) end
   if row.inverse_of then add("the inverse of " .. row.inverse_of:gsub("/", " by ")) end
 end
 
 -- A row with its heading.
 function recipes.add_row(lines, row)
-  if row.kind == "assumed" then lines[#lines + 1] = ("  assumed %s: %s"):format(row.assumes, text.source(row))
+  if row.kind == "assumed" then lines[#lines + 1] = ("  assumed %s: %s"):format(row.assumes, relations.source(row))
   else lines[#lines + 1] = ("  %s, from %s"):format(row.by, table.concat(row.from, ", ")) end
   recipes.describe(lines, row)
 end
@@ -77,11 +73,11 @@ end
 -- Whether a case lies in the range for which a recipe holds, in words.
 local function in_range(self, row)
   local outside = {}
-  for _, found in ipairs(text.outside(self, row)) do
+  for _, found in ipairs(relations.outside(self, row)) do
     local entry = core.entry(found.name)
     for _, bound in ipairs(row.holds) do
       if bound.name == found.name then
-        outside[#outside + 1] = ("%s %s, holds %s%s"):format(found.name, text.brief(found.value), in_unit(entry, bound.low, bound.high),
+        outside[#outside + 1] = ("%s %s, holds %s%s"):format(found.name, text.brief(found.value), text.range(bound.name, bound.low, bound.high),
           found.single and "" or " (outside in " .. format.percent(found.share) .. ")")
       end
     end
@@ -96,7 +92,7 @@ local function compared(self, name, row)
   local other = case.by_recipe(self, name, row.by)
   local value = other and core.raw(other, name)
   if not value then return { row.by, "-", what_is_missing(self, row) } end
-  if is_undefined(value) then return { row.by, "undefined", text.undefined(other, name) } end
+  if is_undefined(value) then return { row.by, "undefined", core.part "lacuna.why".undefined(other, name) } end
   if row.kind == "assumed" then return { row.by, text.brief(value), mark .. "assumed" } end
   return { row.by, text.brief(value), mark .. in_range(other, row) }
 end
@@ -134,7 +130,7 @@ function recipes.recipes(word, self)
   local entry, rows = core.entry(name), {}
   for i, number in ipairs(entry.rows) do rows[i] = core.row(number) end
   if #rows == 0 then return setmetatable({ name .. " has no recipe: it must be given" }, page) end
-  local lines = setmetatable({ ("%s  %s: %s"):format(name, text.symbol(name), entry.meaning) }, page)
+  local lines = setmetatable({ ("%s  %s: %s"):format(name, relations.symbol(name), entry.meaning) }, page)
   if self then side_by_side(lines, self, name, rows) end
   for _, row in ipairs(rows) do recipes.add_row(lines, row) end
   return lines

@@ -12,7 +12,9 @@
 -- others = { { recipe, low, high } or { recipe, flips, share } } (what another recipe would change).
 local core = ...
 local case = core.part "lacuna.case"
+local conditions = core.part "lacuna.conditions"
 local format = core.part "lacuna.format"
+local relations = core.part "lacuna.relations"
 local text = core.part "lacuna.text"
 
 local records = {}
@@ -73,33 +75,12 @@ local function make_cases(plan, target)
   return cases
 end
 
-local function contains(names, others)
-  local has = {}
-  for _, name in ipairs(names) do has[name] = true end
-  for _, name in ipairs(others) do if not has[name] then return false end end
-  return true
-end
-
--- "for want of stellar_mass, or of planet_star_mass_ratio"
-local function what_is_missing(self, name)
-  local sets = core.missing_sets(self, name)
-  if #sets == 0 then return "must be given: no relation gives it" end
-  local ways = {}
-  for i, set in ipairs(sets) do
-    local more = false
-    for j = 1, i - 1 do more = more or contains(set.names, sets[j].names) end
-    if not more and #ways < 3 then ways[#ways + 1] = table.concat(set.names, " and ") end
-  end
-  return "for want of " .. table.concat(ways, ", or of ")
-end
-
 -- Values --------------------------------------------------------------------------------------------------------------------------
 
-local function axes_besides_draws(quantity)
-  local names, draws = {}, false
-  for _, axis in ipairs(core.axes(quantity)) do
-    if axis.name == "draw" then draws = true else names[#names + 1] = axis.name end
-  end
+-- The names of the axes besides the draws, and how many draws.
+local function axes_of(quantity)
+  local names, draws = text.axes(quantity)
+  for i, axis in ipairs(names) do names[i] = axis.name end
   return names, draws
 end
 
@@ -158,13 +139,13 @@ end
 
 -- What a case says of a name, as a cell.
 local function cell_of(self, name, verdict)
-  if core.row_of(self, name) == nil then return { missing = true, reason = what_is_missing(self, name) } end
+  if core.row_of(self, name) == nil then return { missing = true, reason = core.part "lacuna.missing".in_short(self, name) } end
   local quantity = keep(core.raw(self, name))
-  local names, draws = axes_besides_draws(quantity)
+  local names, draws = axes_of(quantity)
   local _, _, factor, _, size = core.facts(quantity)
   local undefined = undefined_of(quantity, names, draws)
   if undefined == size then
-    return { missing = true, reason = size == 1 and text.undefined(self, name) or draws and "undefined in all draws" or "undefined at all points" }
+    return { missing = true, reason = size == 1 and core.part "lacuna.why".undefined(self, name) or draws and "undefined in all draws" or "undefined at all points" }
   end
   local cell = { undefined = undefined / size }
   if verdict then add_shares(cell, quantity, names, draws) else add_values(cell, quantity, factor, names, draws) end
@@ -193,28 +174,26 @@ local function steps_of(plan, self, number, name, of_case)
   return steps
 end
 
--- A condition in words: "gap_elements_by_array below elements_required", or as it should be.
-function records.condition_words(c, sign)
-  return ("%s%s %s %s"):format(c.factor == 1 and "" or c.factor .. " × ", c.left, sign, c.right)
-end
-
-local function representative(quantity)
-  local _, factor, unit = text.display_unit(quantity)
-  return format.number(core.elements(core.median(quantity))[1] / factor, 2), unit
+-- The median of a condition's side in its display unit, to two digits, and the unit. `medians` has those that a case's cells know already, by name.
+local function rounded(name, quantity, factor, medians)
+  local _, in_unit, unit = text.display_unit(quantity)
+  local median = medians[name] or core.elements(core.median(quantity))[1]
+  medians[name] = median
+  return format.number(factor * median / in_unit, 2), unit
 end
 
 -- Of a verdict that mostly is no: the conditions that fail in half of the draws or more, or else the one that fails most often.
-local function failing(self, name)
-  local conditions, found, worst = text.conditions(self, name), {}, nil
-  for _, c in ipairs(conditions) do
+local function failing(self, name, medians)
+  local found, worst = {}, nil
+  for _, c in ipairs((conditions.of(self, name))) do
     if c.failed >= 0.5 then found[#found + 1] = c end
     if not worst or c.failed > worst.failed then worst = c end
   end
   if #found == 0 then found[1] = worst end
   for i, c in ipairs(found) do
-    local right, unit = representative(c.right_value)
-    local words = records.condition_words(c, c.greater and "<" or ">") .. " " .. format.with_unit(right, unit)
-    found[i] = { words = words, left = representative(c.factor == 1 and c.left_value or c.left_value * c.factor) }
+    local right, unit = rounded(c.right, c.right_value, 1, medians)
+    local words = conditions.words(c, c.greater and "<" or ">") .. " " .. format.with_unit(right, unit)
+    found[i] = { words = words, left = rounded(c.left, c.left_value, c.factor, medians) }
   end
   return found
 end
@@ -223,7 +202,7 @@ local function outside_validity(self, steps, made)
   local found
   for _, step in ipairs(steps) do
     if step.relation and #step.relation.holds > 0 then
-      made[step.row] = made[step.row] or text.outside(self, step.relation)
+      made[step.row] = made[step.row] or relations.outside(self, step.relation)
       for _, outside in ipairs(made[step.row]) do
         found = found or {}
         found[#found + 1] = outside.words
@@ -235,16 +214,6 @@ end
 
 -- Other recipes ---------------------------------------------------------------------------------------------------------------------
 
--- Whether a recipe merely leaves out what is known: its inputs are some of the other's.
-local function leaves_out(row, taken)
-  if #row.from >= #taken.from then return false end
-  local has = {}
-  for _, name in ipairs(taken.from) do has[name] = true end
-  for _, name in ipairs(row.from) do if not has[name] then return false end end
-  return true
-end
-records.leaves_out = leaves_out
-
 -- Recipes that stand beside those taken on the way to a name.
 local function alternatives(self, steps)
   if not steps.alternatives then
@@ -252,7 +221,7 @@ local function alternatives(self, steps)
     for _, step in ipairs(steps) do
       if step.relation and core.entry(step.name).kind ~= "verdict" then
         for i, row in ipairs(case.live_rows(self, step.name)) do
-          if i > 1 and row.kind ~= "definition" and row.kind ~= "assumed" and not leaves_out(row, step.relation) then
+          if i > 1 and row.kind ~= "definition" and row.kind ~= "assumed" and not case.leaves_out(row, step.relation) then
             steps.alternatives.inputs[step.relation] = true
             table.insert(steps.alternatives, { name = step.name, by = row.by, words = ("%s by %s instead of %s"):format(step.name, row.by, step.relation.by) })
           end
@@ -278,7 +247,7 @@ local function by_recipe(self, other, made)
 end
 
 local function share_of(quantity)
-  local names, draws = axes_besides_draws(quantity)
+  local names, draws = axes_of(quantity)
   local cell = {}
   add_shares(cell, quantity, names, draws)
   return cell.share
@@ -319,9 +288,7 @@ end
 
 -- The sides of a verdict's conditions are read by the verdict, by its reasons and by what other recipes make of it: kept first.
 local function keep_sides(self, name)
-  local number = core.row_of(self, name)
-  for _, condition in ipairs(number and core.row(number).conditions or {}) do
-    local c = text.parse_condition(condition)
+  for _, c in ipairs(conditions.of_row(core.row(core.row_of(self, name)))) do
     keep(core.raw(self, c.left))
     keep(core.raw(self, c.right))
   end
@@ -332,7 +299,7 @@ local function fill(plan, column, cases, made)
   local number = column.group_number
   local self = cases[number]
   if column.hidden or core.row_of(self, column.name) == nil then return cell_of(self, column.name, column.verdict) end
-  made[number] = made[number] or { outside = {}, cases = {} }
+  made[number] = made[number] or { outside = {}, cases = {}, medians = {} }
   local steps = steps_of(plan, self, number, column.name, made[number])
   local others = alternatives(self, steps)
   keep_inputs(self, others.inputs)
@@ -340,7 +307,8 @@ local function fill(plan, column, cases, made)
   local cell = cell_of(self, column.name, column.verdict)
   if cell.missing then return cell end
   cell.steps = steps.words
-  if column.verdict and not cell.axes and cell.share < 0.5 then cell.failing = failing(self, column.name) end
+  if column.verdict and not cell.axes and cell.share < 0.5 then cell.failing = failing(self, column.name, made[number].medians) end
+  if cell.value and cell.upper then made[number].medians[column.name] = cell.value * column.entry.factor end
   cell.outside = outside_validity(self, steps, made[number].outside)
   cell.others = over_recipes(column, self, others, cell, made[number].cases)
   return cell
@@ -371,10 +339,10 @@ function records.columns(groups, field)
   for number, group in ipairs(groups) do
     for _, name in ipairs(group[field]) do
       local entry = core.entry(name)
-      local _, tex, plain = core.unit_facts(entry.unit)
+      local _, tex = core.unit_facts(entry.unit)
       columns[#columns + 1] = {
         name = name, entry = entry, verdict = entry.kind == "verdict", group = group.name, group_number = number, unit = entry.unit,
-        unit_text = entry.unit == "1" and "" or plain, unit_tex = tex, label = (group.name and group.name .. ": " or "") .. name,
+        unit_text = text.unit_of(name), unit_tex = tex, label = (group.name and group.name .. ": " or "") .. name,
         hidden = field == "also" or nil,
       }
     end

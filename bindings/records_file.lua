@@ -1,9 +1,10 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- Records in a file: a head that says what was asked, then one record for each target, appended as it is done. Each stands behind its
--- length, so that a last one cut in the middle is seen and left out; numbers are written exactly.
+-- length and the start of its SHA-256, so that one that was cut in the middle or damaged is seen, and left out with what follows it; numbers
+-- are written exactly.
 --
 --   lacuna records 1
---   LENGTH
+--   LENGTH SHA-256
 --   { s6:script ...     a table: keys and values in turn, keys in order; texts behind their length, numbers as C's %a
 local core = ...
 local case = core.part "lacuna.case"
@@ -70,7 +71,16 @@ function file.decode(text) return (read_value(text, 1)) end
 
 -- Files -----------------------------------------------------------------------------------------------------------------------------
 
-local function framed(text) return #text .. "\n" .. text .. "\n" end
+local function sum_of(text) return core.sha256(text):sub(1, 16) end
+
+local function framed(text) return ("%d %s\n%s\n"):format(#text, sum_of(text), text) end
+
+-- The text of the frame that starts at a place of the content, and where the next one starts; nil if it isn't whole.
+local function unframed(content, at)
+  local length, sum, start = content:match("^(%d+) (%x+)\n()", at)
+  local text = length and tonumber(length) <= #content and content:sub(start, start + length - 1)
+  if text and sum_of(text) == sum and content:byte(start + length) == 10 then return text, start + length + 1 end
+end
 
 -- A file's text: its head and the records' texts.
 function file.whole(head, texts)
@@ -86,14 +96,11 @@ function file.read(path)
   local content = handle:read "a" or ""
   handle:close()
   if content:sub(1, #FIRST_LINE) ~= FIRST_LINE then return nil, path .. ": not a file of records of this version" end
-  local at, texts = #FIRST_LINE + 1, {}
-  while true do
-    local length, start = content:match("^(%d+)\n()", at)
-    if not length or content:byte(start + length) ~= 10 then break end
-    texts[#texts + 1], at = content:sub(start, start + length - 1), start + length + 1
-  end
-  if #texts == 0 then return nil, path .. ": it is cut before its first record" end
-  return file.decode(table.remove(texts, 1)), texts
+  local head, at = unframed(content, #FIRST_LINE + 1)
+  if not head then return nil, path .. ": it is cut or damaged before its first record" end
+  local texts = {}
+  while at do texts[#texts + 1], at = unframed(content, at) end
+  return file.decode(head), texts
 end
 
 -- How two heads differ, in words; nil if they are the same.

@@ -156,6 +156,7 @@ static int run_program(lua_State *L) {
   lua_settop(L, 3);
   char **arguments = push_texts(L, 1, "arguments"), **environment = push_texts(L, 3, "environment");
   if (arguments[0] == NULL) return lac_error(L, "run_program wants a program");
+  lac_check_decimal_point(L, arguments[0]);
   running *r = push_running(L);
   const lac_state *state = lac_state_begin(L);
   const int trouble = start(r, arguments, environment);

@@ -5,7 +5,7 @@
 -- rare it is (inverse document frequency: Spärck Jones 1972, Journal of Documentation 28, 11); an entry by its words together, by how many
 -- of them it has, and by how much of its name they make up.
 local core = ...
-local text = core.part "lacuna.text"
+local relations = core.part "lacuna.relations"
 local words = core.part "lacuna.words"
 
 local search = {}
@@ -19,7 +19,8 @@ end
 
 -- Other spellings, Greek letters, and adjectives whose nouns have another stem.
 local spellings = {
-  disk = "disc", gray = "grey", deep = "depth", high = "height", long = "length", ["α"] = "alpha", ["β"] = "beta", ["γ"] = "gamma", ["ε"] = "epsilon", ["θ"] = "theta", ["κ"] = "kappa", ["λ"] = "lambda", ["μ"] = "mu",
+  disk = "disc", gray = "grey", deep = "depth", high = "height", long = "length",
+  ["α"] = "alpha", ["β"] = "beta", ["γ"] = "gamma", ["ε"] = "epsilon", ["θ"] = "theta", ["κ"] = "kappa", ["λ"] = "lambda", ["μ"] = "mu",
   ["ν"] = "nu", ["ρ"] = "rho", ["σ"] = "sigma", ["Σ"] = "sigma", ["ω"] = "omega", ["Ω"] = "omega", ["Δ"] = "delta",
 }
 
@@ -79,12 +80,12 @@ local function add_recipes(entry, rows)
     local row = core.row(number)
     add(entry, "recipes", row.by:gsub("_", " "))
     local source = core.source(row.source)
-    if row.source ~= "definition" then add(entry, "recipes", text.source(row) .. " " .. (source and source.title or "")) end
+    if row.source ~= "definition" then add(entry, "recipes", relations.source(row) .. " " .. (source and source.title or "")) end
     add(entry, "supposes", row.supposes)
     for _, input in ipairs(row.from) do
       add(entry, "inputs", input:gsub("_", " "))
       add(entry, "inputs", core.entry(input).synonyms)
-      add(entry, "inputs", text.symbol(input))
+      add(entry, "inputs", relations.symbol(input))
     end
   end
 end
@@ -95,7 +96,7 @@ local function entry_of_name(name)
   if search.is_derived(name) then entry.share = 0.8 end
   add(entry, "name", spaced)
   add(entry, "synonyms", row.synonyms and row.synonyms:gsub("_", " "))
-  add(entry, "synonyms", text.symbol(name))
+  add(entry, "synonyms", relations.symbol(name))
   add(entry, "meaning", row.meaning)
   add(entry, "supposes", row.hint)
   add(entry, "supposes", row.subject)

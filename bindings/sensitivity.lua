@@ -16,11 +16,13 @@ local FACTOR = 10                   -- to either side of a value: how far a turn
 
 -- The median case: every given at its median -----------------------------------------------------------------------------------------
 
+local function has_draws(quantity) return select(2, text.axes(quantity)) ~= nil end
+
 -- Of a spread the median that was given, not that of its draws.
 local function median_of(quantity)
   local distribution = case.distribution(quantity)
   if distribution then return core.like(quantity, distribution.median) end
-  return text.has_draws(core.axes(quantity)) and core.median(quantity) or quantity
+  return has_draws(quantity) and core.median(quantity) or quantity
 end
 
 local function number_of(quantity) return quantity and core.elements(quantity)[1] end
@@ -51,14 +53,15 @@ local function standard(quantity)
   if d.kind == "uniform" then return (quantity - like(d.a)) / like(d.b - d.a), "uniform" end
   if d.kind == "log_uniform" then return core.log(ratio "a") / math.log(d.b / d.a), "uniform" end
   if d.kind == "log_normal" then return core.log(ratio "a") / d.b, "normal" end
-  local deviation = quantity - like(d.a) -- lopsided
+  if d.b == 0 or d.c == 0 then return quantity, "any" end -- lopsided, with half the draws at its median
+  local deviation = quantity - like(d.a)
   local is_above = core.above(deviation, like(0))
   return deviation / like(d.b) * is_above + deviation / like(d.c) * (1 - is_above), "normal"
 end
 
 -- Whether a given has an error bar above zero.
 local function varies(quantity)
-  return text.has_draws(core.axes(quantity)) and number_of(core.lowest(quantity)) < number_of(core.highest(quantity))
+  return has_draws(quantity) and number_of(core.lowest(quantity)) < number_of(core.highest(quantity))
 end
 
 -- Fills in share and error of the entries whose givens have an error bar; returns what is left for interactions and the defined draws.
@@ -104,7 +107,7 @@ local function search(given, value, x)
   local low, high = core.bounds(given)
   if low < 0 or x <= 0 then return solve.bounds(given, core.like(value, x)) end
   local least, most = x / FACTOR, x * FACTOR
-  if text.has_draws(core.axes(value)) then least, most = math.min(least, number_of(core.lowest(value))), math.max(most, number_of(core.highest(value))) end
+  if has_draws(value) then least, most = math.min(least, number_of(core.lowest(value))), math.max(most, number_of(core.highest(value))) end
   return math.max(low, least), math.min(high, most), true
 end
 
@@ -280,17 +283,16 @@ end
 
 local metatable = { __name = "sensitivity" }
 function metatable.__tostring(s)
-  local columns = core.terminal_width() or tables.WIDTH
   local pages = { show.page(answer_lines(s)) }
   local shares, lines = shares_table(s)
-  if #shares.rows > 0 then pages[#pages + 1] = tables.text(shares, columns) end
+  if #shares.rows > 0 then pages[#pages + 1] = tables.text(shares) end
   if #lines > 0 then pages[#pages + 1] = show.page(lines) end
   if s.turns then
     local yes = s.yes and "yes" or "no"
     local whole = turns_table(s)
     whole.title = ("With every given at its median it is %s."):format(yes)
     if #s.turns > 0 then whole.title = whole.title .. (" What alone would make it %s, the nearest first:"):format(s.yes and "no" or "yes") end
-    pages[#pages + 1] = tables.text(whole, columns)
+    pages[#pages + 1] = tables.text(whole)
   end
   return table.concat(pages, "\n\n")
 end
@@ -298,11 +300,8 @@ end
 -- c:sensitivity(name) ----------------------------------------------------------------------------------------------------------------
 
 local function check_axes(name, answer)
-  for _, axis in ipairs(core.axes(answer)) do
-    if axis.name ~= "draw" then
-      core.raise(("sensitivity wants one case; %s runs along %s here: give one value, like c:with{%s = ...}"):format(name, axis.name, axis.name))
-    end
-  end
+  local axis = text.axes(answer)[1]
+  if axis then core.raise(("sensitivity wants one case; %s runs along %s here: give one value, like c:with{%s = ...}"):format(name, axis.name, axis.name)) end
 end
 
 -- The givens along the chain of a name, each with its value. (Assumed values join them where they have a slope.)
@@ -318,20 +317,20 @@ end
 function core.case_methods.sensitivity(self, word)
   local name = case.name_of(word, "sensitivity: ")
   local taken = core.row_of(self, name)
-  if taken == nil then core.raise(text.not_had(self:missing(name))) end
+  if taken == nil then core.raise(core.part "lacuna.missing".not_had(self, name)) end
   if core.entry(name).kind == "object" then core.raise(("sensitivity: %s is an object; ask for a quantity"):format(name)) end
   if taken == false then core.raise(("sensitivity: %s is given; ask for a name that follows from the givens"):format(name)) end
   local answer = core.raw(self, name)
   check_axes(name, answer)
   local _, _, _, _, size = core.facts(answer)
   if number_of(core.undefined(answer)) == size then
-    core.raise(size == 1 and text.undefined(self, name) or ("sensitivity: %s is undefined in all draws"):format(name))
+    core.raise(size == 1 and core.part "lacuna.why".undefined(self, name) or ("sensitivity: %s is undefined in all draws"):format(name))
   end
   local s = { name = name, case = self, answer = answer, givens = entries_of(self, name) }
   local median = median_case(self)
   local y = number_of(core.raw(median, name))
   local verdict = core.entry(name).kind == "verdict"
-  if text.has_draws(core.axes(answer)) then
+  if has_draws(answer) then
     if number_of(core.lowest(answer)) == number_of(core.highest(answer)) then s.constant = true
     else s.interactions, s.defined = share_out(answer, s.givens) end
   end

@@ -49,12 +49,14 @@ local function fold(line, columns)
   return table.concat(folded, "\n")
 end
 
+-- How wide answers may be, where no terminal says otherwise too.
+function show.columns() return math.max(core.terminal_width() or 80, 40) end
+
 -- The text of a page's lines: folded on a terminal, as they are in a file. A tab (two spaces when written) says under what to go on.
 function show.page(lines)
-  local columns = core.terminal_width()
   local text = table.concat(lines, "\n")
-  if not columns then return (text:gsub("\t", "  ")) end
-  return (text:gsub("[^\n]+", function(line) return fold(line, math.max(columns, 40)) end))
+  if not core.terminal_width() then return (text:gsub("\t", "  ")) end
+  return (text:gsub("[^\n]+", function(line) return fold(line, show.columns()) end))
 end
 
 -- Answers -------------------------------------------------------------------------------------------------------------------------

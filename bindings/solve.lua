@@ -184,7 +184,7 @@ local function solve(self, word, goals, options)
   self = with_assumed(self, given)
   local info = core.info(self)
   if not info.givens[given] then core.raise(("solve: %s is not given in this case; only what is given or assumed can be solved for"):format(given)) end
-  if core.row_of(self, goal_name) == nil then core.raise(text.not_had(self:missing(goal_name))) end
+  if core.row_of(self, goal_name) == nil then core.raise(core.part "lacuna.missing".not_had(self, goal_name)) end
   local depends = false
   for _, step in ipairs(core.steps(self, goal_name)) do depends = depends or step.name == given end
   if not depends then core.raise(("solve: %s doesn't depend on %s in this case"):format(goal_name, given)) end
@@ -204,7 +204,9 @@ local function solve(self, word, goals, options)
   if defined == 0 then return nil, nothing_found(given, goal_name, text.quantity(goal), low, high, least, most) end
   if core.entry(goal_name).kind == "verdict" then return found, way_of_verdict(self, given, goal_name, found, brackets, low, high) end
   local _, _, _, _, size = core.facts(found)
-  if defined < size then return found, ("where undefined, no %s between %s and %s gives %s = %s"):format(given, write(given, low), write(given, high), goal_name, text.brief(goal)) end
+  if defined < size then
+    return found, ("where undefined, no %s between %s and %s gives %s = %s"):format(given, write(given, low), write(given, high), goal_name, text.brief(goal))
+  end
   if brackets > 1 then return found, ("the nearest of %d solutions between %s and %s"):format(brackets, write(given, low), write(given, high)) end
   return found
 end

@@ -198,9 +198,10 @@ static int unbound_facts(lua_State *L) {
 static int unbound_hold(lua_State *L) {
   const lac_quantity *quantity = lac_to_quantity(L, 1);
   if (quantity == NULL || quantity->unbound == NULL) return 0;
-  lac_push_empty(L, quantity->dimension, quantity->unit, quantity->name)->unbound = quantity->unbound;
-  quantity->unbound->further++;
-  return 1;
+  lac_quantity *held = lac_push_empty(L, quantity->dimension, quantity->unit, quantity->name);
+  held->unbound = quantity->unbound; /* read anew: a finaliser may have used the quantity as room was made */
+  if (held->unbound != NULL) held->unbound->further++;
+  return held->unbound != NULL;
 }
 
 static int unbound_restore(lua_State *L) {

@@ -4,6 +4,7 @@
    host has set a hook since the call began (as hosts do on Ctrl-C), leaves the computation, and lets that hook raise. */
 #include <gsl/gsl_errno.h>
 #include <limits.h>
+#include <locale.h>
 #include <pthread.h>
 #include <stdarg.h>
 #include <string.h>
@@ -68,6 +69,12 @@ static int raise_message(lua_State *L) { return lac_error(L, "%s", luaL_checkstr
 static int show_value(lua_State *L) {
   lac_shown(L, 1);
   return 1;
+}
+
+void lac_check_decimal_point(lua_State *L, const char *what) {
+  const char *point = localeconv()->decimal_point;
+  if (strcmp(point, ".") != 0)
+    lac_error(L, "%s: the locale that is set would write numbers with \"%s\" for the decimal point; os.setlocale(\"C\", \"numeric\") sets the point", what, point);
 }
 
 /* On Ctrl-C a host arms the thread that it knows: mostly the main one, even while a coroutine runs. */

@@ -5,13 +5,13 @@
 local core = ...
 local case = core.part "lacuna.case"
 local command = core.part "lacuna.command"
+local english = core.part "lacuna.english"
 local records = core.part "lacuna.record"
 local run = core.part "lacuna.run"
 local selection = core.part "lacuna.selection"
 local tables = core.part "lacuna.table"
 local targets = core.part "lacuna.targets"
 local text = core.part "lacuna.text"
-
 
 -- What is asked --------------------------------------------------------------------------------------------------------------------
 
@@ -51,9 +51,8 @@ local function read_givens(given, what)
       local as_written = text.as_written(name, given[word])
       local ok, value = pcall(core.given, name, given[word])
       if not ok then error(what .. ": " .. records.bare(value), 0) end
-      for _, axis in ipairs(core.axes(value)) do
-        if axis.name ~= "draw" then error(("%s: %s wants one value or an error bar in a study, not one along %s; make it variants"):format(what, name, axis.name), 0) end
-      end
+      local axis = text.axes(value)[1]
+      if axis then error(("%s: %s wants one value or an error bar in a study, not one along %s; make it variants"):format(what, name, axis.name), 0) end
       givens[name], written[name] = value, as_written or text.quantity(value)
     end
   end
@@ -207,10 +206,13 @@ end
 
 local methods = {}
 local study_metatable = { __name = "study", __index = methods }
-function study_metatable.__tostring(study) return ("study of %d target%s, %d column%s; help \"study\" tells what it can be asked"):format(#study.rows, #study.rows == 1 and "" or "s", #study.columns, #study.columns == 1 and "" or "s") end
+function study_metatable.__tostring(study)
+  return ("study of %d %s, %d %s; help \"study\" tells what it can be asked"):format(#study.rows, english.plural(#study.rows, "target"), #study.columns,
+    english.plural(#study.columns, "column"))
+end
 
 -- s:table(columns): the table and its notes as text, at most so many columns wide.
-function methods.table(study, columns) return tables.text(study, columns or core.terminal_width() or tables.WIDTH) end
+function methods.table(study, columns) return tables.text(study, columns) end
 function methods.csv(study) return core.part "lacuna.table_files".csv(study) end
 function methods.latex(study) return core.part "lacuna.table_tex".latex(study) end
 
@@ -281,10 +283,9 @@ local function on_one_thread(f, fields)
   local long = settings.draws > records.LONGEST_KEPT
   command.threads = long and 1 or settings.threads -- processes; many draws keep all cores busy by themselves
   if long then return pcall(f, fields) end
+  local back <close> = setmetatable({}, { __close = function() core.settings { threads = settings.threads } end }) -- Ctrl-C passes pcall
   core.settings { threads = 1 }
-  local ok, study, result = pcall(f, fields)
-  core.settings { threads = settings.threads }
-  return ok, study, result
+  return pcall(f, fields)
 end
 
 -- study{title =, targets =, given =, ask =, also =, variants =, using =, sort =, where =, csv =, latex =, derive =}: prints the table; returns an

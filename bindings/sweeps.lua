@@ -15,8 +15,6 @@ local WIDEST = 100 -- a wider plot isn't easier to read
 local FEW = 5 -- from so many points on there is a plot
 local ALL, LINE, MAP = 20000, 2001, 60 -- an axis is read whole up to so many points; so many of a longer one, alone and in a map
 
-local function columns() return math.max(core.terminal_width() or 80, 40) end
-
 -- So high that a plot and what stands with it fit on the screen.
 local function height() return math.max(8, math.min(14, (core.terminal().rows or 24) - 6)) end
 
@@ -39,7 +37,7 @@ local function axis_facts(axis, points)
   local values, name = {}, core.find(axis.name)
   local entry = axis.values and name and core.entry(name)
   for i, point in ipairs(points) do values[i] = entry and axis.values[point] / entry.factor or point end
-  local unit = entry and entry.unit ~= "1" and select(3, core.unit_facts(entry.unit)) or ""
+  local unit = entry and text.unit_of(name) or ""
   local drawn = #points < axis.length and (", %d of them drawn"):format(#points) or ""
   return { values = values, points = points, length = axis.length, known = entry and true, name = axis.name, unit = unit,
     label = ("%s%s, %d points%s"):format(axis.name, unit ~= "" and " (" .. unit .. ")" or "", axis.length, drawn) }
@@ -72,7 +70,7 @@ local function reduced(quantity, verdict, factor, axes)
     for i, value in ipairs(list) do list[i] = verdict and 100 * value or value / factor end
     return list
   end
-  if not text.has_draws(core.axes(quantity)) then return { middle = plain(quantity) } end
+  if not select(2, text.axes(quantity)) then return { middle = plain(quantity) } end
   if verdict then return { middle = plain(core.chance(quantity)), share = true } end
   local low, median, high = core.spread_of(quantity)
   return { low = plain(low), middle = plain(median), high = plain(high) }
@@ -127,7 +125,7 @@ local function number_lines(axis, y, name, unit, verdict)
       above[k], below[k] = pad(above[k], wide), pad(below[k], wide)
     end
     local lines = { table.concat(above, "  "), table.concat(below, "  ") }
-    if format.width(lines[1]) <= columns() or shown <= 2 then return trimmed(lines) end
+    if format.width(lines[1]) <= show.columns() or shown <= 2 then return trimmed(lines) end
   end
 end
 
@@ -154,7 +152,7 @@ local function curve_lines(quantity, verdict, along, drawn, unit)
   return trimmed(textplot.curve {
     x = along.values, y = drawn.middle, low = drawn.low, high = drawn.high, x_log = is_logarithmic(along.values),
     y_log = not verdict and spans_decades((extremes(drawn.low or drawn.middle)), select(2, extremes(drawn.middle))),
-    width = math.min(columns(), WIDEST), height = height(), x_label = along.label,
+    width = math.min(show.columns(), WIDEST), height = height(), x_label = along.label,
     y_label = label .. (draws and text.undefined_note(quantity) or ""), -- without draws the plot counts its holes
   })
 end
@@ -210,7 +208,7 @@ function sweeps.two(quantity, verdict, over)
   return trimmed(textplot.map {
     x = x.values, y = y.values, z = z, x_log = is_logarithmic(x.values), y_log = is_logarithmic(y.values),
     z_log = not verdict and spans_decades(low, high), contour = drawn.share and low < 50 and high >= 50 and 50 or nil,
-    width = math.min(columns(), WIDEST), height = height() + 2, x_label = x.label, z_label = label, legend = not yes_or_no,
+    width = math.min(show.columns(), WIDEST), height = height() + 2, x_label = x.label, z_label = label, legend = not yes_or_no,
     y_label = y.label .. ((drawn.low or drawn.share) and text.undefined_note(quantity) or ""),
   })
 end

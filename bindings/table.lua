@@ -4,16 +4,21 @@
 --   { title = text or nil, texts = { headers of the texts carried along }, columns = {...}, rows = {...}, notes = {...} }
 --
 -- with columns { name (or heading = a text as it stands), entry = row of the glossary, verdict, group = heading over it or nil, unit (VOUnits), unit_text, unit_tex,
--- left = true for texts that begin below each other },
--- rows { name, texts, cells, rule = true for a rule above it }, cells { share } of a verdict or { value, upper, lower } in the column's unit (no errors: a single
--- number) or { missing = true } or { text }, or along sweeps as in record.lua (then the table has sweeps = { { name, unit, values } }), word = true where a text has no place below
--- the numbers, tail = a word behind a number, mark = "*" where one is to stand behind all, and notes { heading, lines (texts, or lists whose first text heads the others) }. A column belongs to the group of its left neighbour where the name is the same.
+-- left = true for texts that begin below each other }. A column belongs to the group of its left neighbour where the name is the same.
+--
+-- Rows { name, texts, cells, rule = true for a rule above it }; cells { share } of a verdict or { value, upper, lower } in the column's unit (no
+-- errors: a single number) or { missing = true } or { text }, or along sweeps as in record.lua (then the table has sweeps = { { name, unit,
+-- values } }); besides, word = true where a text has no place below the numbers, tail = a word behind a number, mark = "*" where one is to stand
+-- behind all. Notes { heading, lines (texts, or lists whose first text heads the others) }.
 local core = ...
+local english = core.part "lacuna.english"
 local format = core.part "lacuna.format"
 
 local tables = { WIDTH = 100 } -- of a table where no terminal says otherwise
 local GAP, MISSING = "  ", "—"
 local NO_BREAK = "\u{a0}"
+
+-- Lines of text -------------------------------------------------------------------------------------------------------------------
 
 -- A name or text from a file may have line breaks.
 local function on_one_line(text) return (text:gsub("%s*[\n\r\t\v\f]%s*", " ")) end
@@ -77,7 +82,7 @@ end
 -- A column laid out: its heading's lines, its cells' texts, its width.
 local function laid_out(column, cells)
   local texts, width = aligned(cells, column.left)
-  local name = column.heading or column.name:gsub("_", " "):gsub(" by ", " by" .. NO_BREAK)
+  local name = column.heading or english.words_of(column.name):gsub(" by ", " by" .. NO_BREAK)
   for word in name:gmatch "%S+" do width = math.max(width, format.width(word)) end
   width = math.max(width, format.width(column.unit_text or ""))
   local heading = format.wrapped(name, width)
@@ -193,8 +198,9 @@ local function add_notes(lines, notes, columns)
   end
 end
 
--- The table as text, no wider than so many columns where that can be.
+-- The table as text, no wider than so many columns where that can be; as wide as the terminal where nothing is said.
 function tables.text(whole, columns)
+  columns = columns or core.terminal_width() or tables.WIDTH
   local names_width, lines = 0, {}
   for _, row in ipairs(whole.rows) do names_width = math.max(names_width, format.width(on_one_line(row.name))) end
   if whole.title then lines = format.wrapped(whole.title, columns) end
@@ -205,20 +211,5 @@ function tables.text(whole, columns)
   add_notes(lines, whole.notes, columns)
   return table.concat(lines, "\n")
 end
-
--- CSV -----------------------------------------------------------------------------------------------------------------------------
-
-local function quoted(field)
-  if field:find '[",\r\n]' or field:find "^%s" or field:find "%s$" then return '"' .. field:gsub('"', '""') .. '"' end
-  return field
-end
-
-local function csv_line(fields)
-  for i, field in ipairs(fields) do fields[i] = quoted(field) end
-  return table.concat(fields, ",")
-end
-
-local function digits(value) return value and value == value and ("%.7g"):format(value) or "" end
-tables.csv_line, tables.digits = csv_line, digits
 
 return tables

@@ -1,11 +1,13 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- Tables of results as files: CSV, and Markdown; and their columns as fields, from which CSV and FITS are written. table.lua says what a table is.
 local core = ...
+local csv = core.part "lacuna.csv"
+local english = core.part "lacuna.english"
 local format = core.part "lacuna.format"
 local tables = core.part "lacuna.table"
 
 local files = {}
-local cell_text, csv_line, digits, on_one_line = tables.cell_text, tables.csv_line, tables.digits, tables.on_one_line
+local cell_text, digits, on_one_line = tables.cell_text, csv.digits, tables.on_one_line
 
 -- Fields ----------------------------------------------------------------------------------------------------------------------------
 
@@ -92,17 +94,15 @@ end
 
 -- One line a target and point: its texts, then a value, an upper and a lower error a column, or the words and the share of a verdict.
 function files.csv(whole)
-  local fields, lines, header = files.fields(whole), {}, {}
+  local fields, header, lines = files.fields(whole), {}, {}
   for i, field in ipairs(fields) do
     header[i] = (field.group and field.group .. " " or "") .. field.name .. (field.part and " " .. field.part or "") .. (field.unit and " [" .. field.unit .. "]" or "")
+    for line, text in ipairs(field) do
+      lines[line] = lines[line] or {}
+      lines[line][i] = text
+    end
   end
-  lines[1] = csv_line(header)
-  for line = 1, #fields[1] do
-    local cells = {}
-    for i, field in ipairs(fields) do cells[i] = field[line] end
-    lines[line + 1] = csv_line(cells)
-  end
-  return table.concat(lines, "\n") .. "\n"
+  return csv.of(header, lines)
 end
 
 -- Markdown --------------------------------------------------------------------------------------------------------------------------
@@ -115,7 +115,7 @@ function files.markdown(whole)
   local headings, rules, lines = { "Star" }, { "---" }, {}
   for _, text in ipairs(whole.texts) do headings[#headings + 1], rules[#rules + 1] = markdown_cell(text), "---" end
   for _, column in ipairs(whole.columns) do
-    local words = (column.group and column.group .. ": " or "") .. column.name:gsub("_", " ") .. (column.unit_text ~= "" and " (" .. column.unit_text .. ")" or "")
+    local words = (column.group and column.group .. ": " or "") .. english.words_of(column.name) .. (column.unit_text ~= "" and " (" .. column.unit_text .. ")" or "")
     headings[#headings + 1], rules[#rules + 1] = markdown_cell(words), "---:"
   end
   if whole.title then lines[1] = "**" .. markdown_cell(whole.title) .. "**\n" end

@@ -2,6 +2,7 @@
 -- Tables of results as LaTeX, for documents that load booktabs and nothing else; and texts with their special characters as TeX has them.
 -- table.lua says what a table is.
 local core = ...
+local english = core.part "lacuna.english"
 local format = core.part "lacuna.format"
 local tables = core.part "lacuna.table"
 
@@ -58,7 +59,7 @@ end
 
 local function heading_tex(column)
   if not column.verdict then return "$" .. column.entry.symbol .. "$" end
-  return "\\shortstack{" .. escaped((column.name:gsub("_", " "):gsub(" by ", "\0by "))):gsub("\0", "\\\\") .. "}"
+  return "\\shortstack{" .. escaped((english.words_of(column.name):gsub(" by ", "\0by "))):gsub("\0", "\\\\") .. "}"
 end
 
 -- A table environment takes so many rows, and columns up to a width that text of \small has on a page.

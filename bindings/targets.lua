@@ -120,7 +120,10 @@ local function in_unit(cell, column) return core.reading(column.unit and column.
 local function read_value(cell, column, where)
   if is_number(cell) then return at(where, in_unit, cell, column), false end
   local ok, own = pcall(core.reading, cell, column.name)
-  if not ok then complain('%s: can\'t read "%s"; write a number%s', where, cell, column.unit and ", or one with its error and unit, like \"156 ± 3 " .. column.unit .. '"' or " with its unit") end
+  if not ok then
+    complain('%s: can\'t read "%s"; write a number%s', where, cell,
+      column.unit and (', or one with its error and unit, like "156 ± 3 %s"'):format(column.unit) or " with its unit")
+  end
   local _, unit, _, _, _, has_error = core.facts(own)
   if not unit and column.unit then own = at(where, in_unit, cell, column) end
   return own, has_error

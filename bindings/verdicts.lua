@@ -4,33 +4,20 @@
 --
 --   of(study)           a list of { column, words = "the rim is resolved by the array", whole = without draws, yes, between, no, missing = lists of
 --                       { name, cell }, recipes = { { words, asked, names = of targets whose verdict changes, low, high = shares } }, reasons }
---   words_of(name)      "gap_width" as "gap width"
---   in_words(sentence)  the same of all names in it
---   list(names, most)   "A", "A and B", "A, B and C", "A, B and 9 others"
 --   count(some, all)    "Marrow 3", "both targets", "all 12 targets", "3 of the 12 targets (A, B and C)"
 --   recipe_name(name, by)   "Kanagawa et al. 2016" of a recipe that is called after its paper, else "half fringe"
 --   recipe_words(words) "gap_width by kanagawa_2016 instead of ..." as it is said in a sentence
 --   reason_words(words) "rim_elements_by_array < elements_required 1" likewise
 local core = ...
 local bibliography = core.part "lacuna.bibliography"
+local changes = core.part "lacuna.changes"
+local english = core.part "lacuna.english"
+local ordered = core.part "lacuna.ordered"
+
 local verdicts = {}
 
 local MOSTLY, HARDLY = 0.9, 0.1 -- shares of draws from which, and up to which, one word will do
 verdicts.MOSTLY, verdicts.HARDLY = MOSTLY, HARDLY
-
-function verdicts.words_of(name) return (name:gsub("semi_major", "semi-major"):gsub("_", " ")) end
-
--- A sentence with names in it, without their underscores; symbols like M_p keep theirs.
-function verdicts.in_words(sentence)
-  return (sentence:gsub("%f[%w]%a%a%w*_[%w_]+", verdicts.words_of):gsub("…_", "… "):gsub("%f[%w]%l%l%w*_[%w_]+", verdicts.words_of))
-end
-
-function verdicts.list(names, most)
-  if #names == 1 then return names[1] end
-  most = most or 8
-  if #names > most + 1 then return table.concat(names, ", ", 1, most) .. " and " .. #names - most .. " others" end
-  return table.concat(names, ", ", 1, #names - 1) .. " and " .. names[#names]
-end
 
 local function names_of(rows)
   local names = {}
@@ -43,7 +30,7 @@ function verdicts.count(some, all)
   if #some == 0 then return all == 1 and "no target" or "none of the " .. all .. " targets" end
   if #some == 1 then return some[1].name end
   if #some == all then return all == 2 and "both targets" or "all " .. all .. " targets" end
-  return ("%d of the %d targets (%s)"):format(#some, all, verdicts.list(names_of(some)))
+  return ("%d of the %d targets (%s)"):format(#some, all, english.list(names_of(some)))
 end
 
 function verdicts.recipe_name(name, by)
@@ -53,13 +40,13 @@ function verdicts.recipe_name(name, by)
       if row.by == by and bibliography.short(row) then return bibliography.short(row) end
     end
   end
-  return verdicts.words_of(by)
+  return english.words_of(by)
 end
 
 function verdicts.recipe_words(words)
   local name, by, instead = words:match "^([%w_]+) by ([%w_]+) instead of ([%w_]+)$"
-  if not name then return verdicts.words_of(words) end
-  return ("the %s by %s instead of %s"):format(verdicts.words_of(name), verdicts.recipe_name(name, by), verdicts.recipe_name(name, instead))
+  if not name then return english.words_of(words) end
+  return ("the %s by %s instead of %s"):format(english.words_of(name), verdicts.recipe_name(name, by), verdicts.recipe_name(name, instead))
 end
 
 -- The conditions of being resolved, by what a structure is compared with.
@@ -73,51 +60,30 @@ local reasons_by_limit = {
 function verdicts.reason_words(words)
   local structure, limit, value = words:match "(%l+)_[%l_]+ [<>] ([%l_]+) (.*)$"
   if structure and reasons_by_limit[limit] then return reasons_by_limit[limit](structure, value) end
-  return verdicts.words_of(words)
+  return english.words_of(words)
 end
 
 -- "the rim is resolved by the array"
 local function sentence_of(column)
   local structure, instrument = column.name:match "^(%l+)_resolved_by_(%l+)$"
   if structure then return ("the %s is resolved by the %s"):format(structure, instrument) end
-  return verdicts.words_of(column.name) .. " holds"
+  return english.words_of(column.name) .. " holds"
 end
 verdicts.sentence_of = sentence_of
 
--- What other recipes make of a column: one entry a recipe, in the order in which they came.
-function verdicts.recipes(study, number)
-  local found = {}
-  for _, row in ipairs(study.rows) do
-    for _, other in ipairs(row.cells[number].others or {}) do
-      local entry = found[other.recipe]
-      if not entry then
-        entry = { words = other.recipe, asked = 0, names = {}, low = math.huge, high = -math.huge }
-        found[#found + 1], found[other.recipe] = entry, entry
-      end
-      entry.asked = entry.asked + 1
-      if other.flips then entry.names[#entry.names + 1] = row.name end
-      local low, high = other.share or other.low, other.share or other.high
-      if low then entry.low, entry.high = math.min(entry.low, low), math.max(entry.high, high) end
-    end
-  end
-  return found
-end
-
 -- The conditions that fail where a verdict mostly is no, the one that fails for most targets first: { words, count }.
 local function reasons(study, number)
-  local found = {}
+  local found = ordered.new()
   for _, row in ipairs(study.rows) do
     for _, failing in ipairs(row.cells[number].failing or {}) do
-      local entry = found[failing.words]
-      if not entry then
-        entry = { words = failing.words, count = 0, order = #found }
-        found[#found + 1], found[failing.words] = entry, entry
-      end
-      entry.count = entry.count + 1
+      local reason = ordered.at(found, failing.words, function() return { words = failing.words, count = 0, order = #found.keys } end)
+      reason.count = reason.count + 1
     end
   end
-  table.sort(found, function(a, b) return a.count > b.count or a.count == b.count and a.order < b.order end)
-  return found
+  local list = {}
+  for i, words in ipairs(found.keys) do list[i] = found.values[words] end
+  table.sort(list, function(a, b) return a.count > b.count or a.count == b.count and a.order < b.order end)
+  return list
 end
 
 -- Whether a study has draws at all: an error bar, or a share that is neither none nor all.
@@ -135,7 +101,7 @@ function verdicts.of(study)
   for number, column in ipairs(study.columns) do
     if column.verdict then
       local one = { column = column, words = sentence_of(column), yes = {}, between = {}, no = {}, missing = {},
-        recipes = verdicts.recipes(study, number), reasons = reasons(study, number) }
+        recipes = changes.of(study, number), reasons = reasons(study, number) }
       for _, row in ipairs(study.rows) do
         local cell = row.cells[number]
         local kind = cell.missing and "missing" or cell.share >= MOSTLY and "yes" or cell.share <= HARDLY and "no" or "between"

@@ -9,8 +9,8 @@
 --   forms     how it is written, a text for each way
 --   does      what it does; the first sentence is its meaning in one line
 --   arguments list of { what, meaning with unit }; result; errors: texts
---   examples  lines as typed at the prompt, or lists of such lines; each stands alone (an empty list where one would want the prompt itself)
---   answers   what the prompt prints for each example
+--   examples  lines as typed at the prompt, or lists of such lines; each stands alone, its stars are invented (an empty list where one would want the prompt itself)
+--   answers   what the prompt prints for the (last) line of each example; REWRITE=1 in tests/lua/test_words.lua puts them in
 --   built_in  of kinds with built-in objects: a function that returns lines about the one of a name (nil where there is none), or about all
 --   see       names of other words
 local core = ...
@@ -22,7 +22,7 @@ local subjects = {
 }
 
 local parts = {
-  "words_quantities", "words_cases", "words_what_if", "words_studies", "words_report", "words_figures", "words_objects", "words_session",
+  "words_quantities", "words_cases", "words_what_if", "words_studies", "words_figures", "words_objects", "words_session",
   "words_notebook", "words_answers",
 }
 
@@ -45,7 +45,7 @@ local function load_all()
   for _, subject in ipairs(subjects) do of_subject[subject[1]] = {} end
   for _, part in ipairs(parts) do
     local name = "lacuna." .. part
-    for _, record in ipairs(core.has_part(name) and core.part(name) or {}) do
+    for _, record in ipairs(core.part(name)) do
       table.insert(of_subject[record.subject] or error(("%s: %s is of no known subject"):format(part, record.name)), record)
     end
   end

@@ -10,7 +10,14 @@ return {
     result = "a case; c.name is a quantity",
     errors = "an unknown name, a wrong dimension, a value out of range, givens that contradict a definition; on asking, what is missing",
     examples = { 'case{distance = "140 pc", rim_radius = "0.3 au"}.rim_radius_angle', { star, "c" } },
-    answers = { "2.143 mas", "case\n  given\n    distance            140 ± 5 pc\n    stellar_luminosity  18 Lsun\n    wavelength          1.65 µm\n    projected_baseline  92 m\n  derived so far: nothing yet; any name of the glossary can be asked" },
+    answers = { "2.143 mas", [[
+case
+  given
+    distance            140 ± 5 pc
+    stellar_luminosity  18 Lsun
+    wavelength          1.65 µm
+    projected_baseline  92 m
+  derived so far: nothing yet; any name of the glossary can be asked]] },
     see = { "study", "missing", "why" },
   },
   {
@@ -29,7 +36,9 @@ return {
     result = "another case",
     errors = "an unknown name or recipe, a recipe that can't be had from what is given",
     examples = { { star, 'c:using{array_resolution = "fringe"}.array_resolution' } },
-    answers = { "3.699 mas\n  array_resolution now by fringe, before by half_fringe" },
+    answers = { [[
+3.699 mas
+  array_resolution now by fringe, before by half_fringe]] },
     see = { "recipes" },
   },
   {
@@ -40,7 +49,19 @@ return {
     result = "a derivation, which prints itself; where the name can't be had, what is missing",
     errors = "an unknown name",
     examples = { { star, 'c:why "array_resolution"' } },
-    answers = { "array_resolution = 1.85 mas\n  smallest angle that the array tells apart, by the named criterion\n\n  wavelength = 1.65 µm   given\n  projected_baseline = 92 m   given\n  array_resolution = 1.85 mas\n      θ_arr = λ / (2 B)\n      = 1.65 µm / (2 · 92 m)\n      half_fringe: common practice, no source\n      supposes the criterion of half a fringe spacing\n  with other recipes\n      array_resolution by fringe: 3.699 mas (instead of half_fringe)" },
+    answers = { [[
+array_resolution = 1.85 mas
+  smallest angle that the array tells apart, by the named criterion
+
+  wavelength = 1.65 µm   given
+  projected_baseline = 92 m   given
+  array_resolution = 1.85 mas
+      θ_arr = λ / (2 B)
+      = 1.65 µm / (2 · 92 m)
+      half_fringe: common practice, no source
+      supposes the criterion of half a fringe spacing
+  with other recipes
+      array_resolution by fringe: 3.699 mas (instead of half_fringe)]] },
     see = { "missing", "recipes" },
   },
   {
@@ -50,7 +71,14 @@ return {
     result = "a list that prints itself",
     errors = "an unknown name",
     examples = { { star, 'c:missing "gap_width"' } },
-    answers = { "gap_width can't be derived from what is given; give stellar_mass, planet_mass, planet_semi_major_axis, viscosity_alpha (by kanagawa_2016)\n\n  stellar_mass [Msun]: mass of the star\n  planet_mass [Mjup]: mass of the planet\n  planet_semi_major_axis [au]: semi-major axis of the planet's orbit\n  viscosity_alpha: Shakura and Sunyaev's viscosity parameter of the gas, the strength of its turbulence\n    published values run from 1e-4 to 1e-2: give a number, or viscosity_alpha = spread.log_uniform(1e-4, 1e-2)" },
+    answers = { [[
+gap_width can't be derived from what is given; give stellar_mass, planet_mass, planet_semi_major_axis, viscosity_alpha (by kanagawa_2016)
+
+  stellar_mass [Msun]: mass of the star
+  planet_mass [Mjup]: mass of the planet
+  planet_semi_major_axis [au]: semi-major axis of the planet's orbit
+  viscosity_alpha: Shakura and Sunyaev's viscosity parameter of the gas, the strength of its turbulence
+    published values run from 1e-4 to 1e-2: give a number, or viscosity_alpha = spread.log_uniform(1e-4, 1e-2)]] },
   },
   {
     name = "check", of = "case", subject = "cases", forms = { "c:check()" },
@@ -71,7 +99,9 @@ return {
     result = "a quantity; of several solutions the nearest, and a second result that says so; nil and the reason where there is none",
     errors = "a name that isn't given, a goal that doesn't depend on it, an unknown name",
     examples = { { star, 'c:solve("projected_baseline", {array_resolution = "1 mas"})' }, { star, 'c:solve("projected_baseline", {rim_resolved_by_array = 0.9})' } },
-    answers = { "170.2 m", "85.21 m\nrim_resolved_by_array in at least 90 % of draws from there up" },
+    answers = { "170.2 m", [[
+85.21 m
+rim_resolved_by_array in at least 90 % of draws from there up]] },
   },
   {
     name = "recipes", of = "case", subject = "cases", forms = { 'c:recipes "name"' },
@@ -80,7 +110,47 @@ return {
     result = "a page that prints itself",
     errors = "an unknown name",
     examples = { { star, 'c:with{cooling_efficiency = 0.4}:recipes "sublimation_radius"' } },
-    answers = { "sublimation_radius  R_sub: distance from the star at which dust sublimates\n\n  recipe             value\n  from_angle         -          missing: sublimation_radius_angle (here it follows from sublimation_radius)\n  kama_2009          -          missing: backwarming_factor\n  isella_natta_2005  -          missing: backwarming_term\n  dullemond_2001     -          missing: rim_height_ratio\n  monnier_2002       0.231 au   taken here, in its range\n  grey_grains        0.1461 au  in its range\n\n  from_angle, from sublimation_radius_angle, distance\n      R_sub = θ(R_sub) d\n      definition\n      the inverse of sublimation_radius_angle by definition\n  kama_2009, from heating_luminosity, sublimation_temperature, cooling_efficiency, backwarming_factor\n      R_sub = √((C_bw/ε) · (L / (16 π σ_SB T_sub⁴)))\n      Kama, M., Min, M., Dominik, C. 2009, A&A 506, 1199, analytic rim radius, written with the luminosity (formula from memory)\n      supposes grains of one size, optically thin gas inside the rim\n      holds for heating_luminosity from 1 to 1000 Lsun\n  isella_natta_2005, from heating_luminosity, sublimation_temperature, cooling_efficiency, backwarming_term\n      R_sub = √((B_w + 1/ε) · (L / (16 π σ_SB T_sub⁴)))\n      Isella, A., Natta, A. 2005, A&A 438, 899, rim radius, written with the luminosity\n      supposes grains of one size, optically thin gas inside the rim\n      holds for heating_luminosity from 1 to 1000 Lsun\n  dullemond_2001, from heating_luminosity, sublimation_temperature, rim_height_ratio\n      R_sub = √(4 (1 + f_rim) · (L / (16 π σ_SB T_sub⁴)))\n      Dullemond, C. P., Dominik, C., Natta, A. 2001, ApJ 560, 957, Sect. 2, written with the luminosity (formula from memory)\n      supposes a black, vertical dust wall that lights itself, optically thin gas inside the rim\n      holds for heating_luminosity from 1 to 1000 Lsun\n      holds for rim_height_ratio from 0 to 0.2\n  monnier_2002, from heating_luminosity, sublimation_temperature, absorption_efficiency_ratio\n      R_sub = √(Q_R · (L / (16 π σ_SB T_sub⁴)))\n      Monnier, J. D., Millan-Gabet, R. 2002, ApJ 579, 694, Eq. 1, written with the luminosity\n      supposes grains of one size, optically thin gas inside the rim, no back-warming\n      holds for heating_luminosity from 1 to 1000 Lsun\n  grey_grains, from heating_luminosity, sublimation_temperature\n      R_sub = √(L / (16 π σ_SB T_sub⁴))\n      Monnier, J. D., Millan-Gabet, R. 2002, ApJ 579, 694, Eq. 1 with an absorption efficiency ratio of 1\n      supposes large grey grains, optically thin gas inside the rim, no back-warming\n      holds for heating_luminosity from 1 to 1000 Lsun" },
+    answers = { [[
+sublimation_radius  R_sub: distance from the star at which dust sublimates
+
+  recipe             value
+  from_angle         -          missing: sublimation_radius_angle (here it follows from sublimation_radius)
+  kama_2009          -          missing: backwarming_factor
+  isella_natta_2005  -          missing: backwarming_term
+  dullemond_2001     -          missing: rim_height_ratio
+  monnier_2002       0.231 au   taken here, in its range
+  grey_grains        0.1461 au  in its range
+
+  from_angle, from sublimation_radius_angle, distance
+      R_sub = θ(R_sub) d
+      definition
+      the inverse of sublimation_radius_angle by definition
+  kama_2009, from heating_luminosity, sublimation_temperature, cooling_efficiency, backwarming_factor
+      R_sub = √((C_bw/ε) · (L / (16 π σ_SB T_sub⁴)))
+      Kama, M., Min, M., Dominik, C. 2009, A&A 506, 1199, analytic rim radius, written with the luminosity (formula from memory)
+      supposes grains of one size, optically thin gas inside the rim
+      holds for heating_luminosity from 1 to 1000 Lsun
+  isella_natta_2005, from heating_luminosity, sublimation_temperature, cooling_efficiency, backwarming_term
+      R_sub = √((B_w + 1/ε) · (L / (16 π σ_SB T_sub⁴)))
+      Isella, A., Natta, A. 2005, A&A 438, 899, rim radius, written with the luminosity
+      supposes grains of one size, optically thin gas inside the rim
+      holds for heating_luminosity from 1 to 1000 Lsun
+  dullemond_2001, from heating_luminosity, sublimation_temperature, rim_height_ratio
+      R_sub = √(4 (1 + f_rim) · (L / (16 π σ_SB T_sub⁴)))
+      Dullemond, C. P., Dominik, C., Natta, A. 2001, ApJ 560, 957, Sect. 2, written with the luminosity (formula from memory)
+      supposes a black, vertical dust wall that lights itself, optically thin gas inside the rim
+      holds for heating_luminosity from 1 to 1000 Lsun
+      holds for rim_height_ratio from 0 to 0.2
+  monnier_2002, from heating_luminosity, sublimation_temperature, absorption_efficiency_ratio
+      R_sub = √(Q_R · (L / (16 π σ_SB T_sub⁴)))
+      Monnier, J. D., Millan-Gabet, R. 2002, ApJ 579, 694, Eq. 1, written with the luminosity
+      supposes grains of one size, optically thin gas inside the rim, no back-warming
+      holds for heating_luminosity from 1 to 1000 Lsun
+  grey_grains, from heating_luminosity, sublimation_temperature
+      R_sub = √(L / (16 π σ_SB T_sub⁴))
+      Monnier, J. D., Millan-Gabet, R. 2002, ApJ 579, 694, Eq. 1 with an absorption efficiency ratio of 1
+      supposes large grey grains, optically thin gas inside the rim, no back-warming
+      holds for heating_luminosity from 1 to 1000 Lsun]] },
     see = { "using", "recipes" },
   },
   {

@@ -12,7 +12,7 @@ local function each(at)
   end, nil, 0
 end
 
-local function zero_points_from(source) return "zero points: " .. core.part "lacuna.text".source { source = source } end
+local function zero_points_from(source) return "zero points: " .. core.part "lacuna.relations".source { source = source } end
 
 local function band_line(band)
   return ("  %-18s %-9s %9s %9s %9s"):format(band.name, (core.band_facts(band)) or "", shown(band.wavelength, "um"), shown(band.width, "um"), shown(band.zero_point, "Jy"))

@@ -71,7 +71,9 @@ return {
     does = "The axes of a quantity: those of its sweeps, and draw where it has an error bar.",
     result = "a list of {name = ..., length = ..., values = numbers in SI, or nil}",
     examples = { { three_baselines, "b:axes()[1].name, b:axes()[1].length" } },
-    answers = { "\"projected_baseline\"\n3" },
+    answers = { [[
+"projected_baseline"
+3]] },
   },
   {
     name = "at", of = "quantity", subject = "quantities", forms = { "q:at{axis = point, ...}" },
@@ -88,7 +90,9 @@ return {
     result = "the quantity",
     errors = "more memory than settings{memory = ...} allows",
     examples = { { uncertain_radius, "r:stored()" } },
-    answers = { "1.92 ± 0.13 mas\n  1.59 ▁▁▁▁▂▂▃▃▅▅▇▇██▇█▇▇▆▆▅▄▃▂▂▁▁▁▁▁ 2.28 mas   99 % of the draws" },
+    answers = { [[
+1.92 ± 0.13 mas
+  1.59 ▁▁▁▁▂▂▃▃▅▅▇▇██▇█▇▇▆▆▅▄▃▂▂▁▁▁▁▁ 2.28 mas   99 % of the draws]] },
   },
   {
     name = "normal", of = "spread", field = true, subject = "quantities", forms = { "spread.normal(median, deviation)" },
@@ -120,7 +124,11 @@ return {
     arguments = { { "low, high", "the bounds, of one dimension, > 0" } },
     result = "a spread", errors = "bounds of different dimensions, in the wrong order, or not > 0",
     examples = { "case{viscosity_alpha = spread.log_uniform(1e-4, 1e-2)}" },
-    answers = { "case\n  given\n    viscosity_alpha  from 0.0001 to 0.01, log-uniform\n  derived so far: nothing yet; any name of the glossary can be asked" },
+    answers = { [[
+case
+  given
+    viscosity_alpha  from 0.0001 to 0.01, log-uniform
+  derived so far: nothing yet; any name of the glossary can be asked]] },
   },
   {
     name = "log_normal", of = "spread", field = true, subject = "quantities", forms = { "spread.log_normal(median, width)" },
@@ -147,7 +155,9 @@ return {
     result = "a spread: given in a case it becomes an ensemble, bound to the case's target and the given's name",
     errors = "arguments of different dimensions or out of range",
     examples = { 'case{distance = "140 pc", rim_radius = spread.uniform(0.2*au, 0.4*au)}.rim_radius_angle' },
-    answers = { "2.14 ± 0.49 mas\n  1.43 ▇▇▇▇▇▇▇▇▇▇▇▇▇▇▇█▇▇▇▇█▆▆▇▇█▆█▇▆ 2.85 mas   99 % of the draws" },
+    answers = { [[
+2.14 ± 0.49 mas
+  1.43 ▇▇▇▇▇▇▇▇▇▇▇▇▇▇▇█▇▇▇▇█▆▆▇▇█▆█▇▆ 2.85 mas   99 % of the draws]] },
     see = { "settings", "chance", "interval" },
   },
   {
@@ -158,7 +168,11 @@ return {
     errors = "ends of different dimensions, a count below 2, an empty list",
     examples = { 'case{wavelength = "1.65 um", projected_baseline = sweep("20 m", "330 m", 4)}.array_resolution',
       'case{wavelength = sweep{"1.65 um", "2.2 um"}, projected_baseline = "100 m"}.array_resolution' },
-    answers = { "projected_baseline     20  123.3   226.7     330  m\narray_resolution    8.508   1.38  0.7507  0.5157  mas", "wavelength         1.65    2.2  µm\narray_resolution  1.702  2.269  mas" },
+    answers = { [[
+projected_baseline     20  123.3   226.7     330  m
+array_resolution    8.508   1.38  0.7507  0.5157  mas]], [[
+wavelength         1.65    2.2  µm
+array_resolution  1.702  2.269  mas]] },
     see = { "along", "at" },
   },
   {
@@ -167,7 +181,9 @@ return {
     arguments = { { "from, to", "the ends, with units, > 0" }, { "count", "how many points, 2 or more" } },
     result = "a sweep", errors = "ends of different dimensions or not > 0, a count below 2",
     examples = { 'case{wavelength = "1.65 um", projected_baseline = sweep.log("10 m", "1000 m", 3)}.array_resolution' },
-    answers = { "projected_baseline     10    100    1000  m\narray_resolution    17.02  1.702  0.1702  mas" },
+    answers = { [[
+projected_baseline     10    100    1000  m
+array_resolution    17.02  1.702  0.1702  mas]] },
   },
   {
     name = "along", subject = "quantities", forms = { "along(axis, {a, b, ...})" },
@@ -176,7 +192,9 @@ return {
     result = "a quantity with that axis",
     errors = "an empty list, values of different dimensions; two lists along one axis that differ in length, when they meet",
     examples = { 'case{distance = along("star", {"140 pc", "160 pc"}), rim_radius = along("star", {"0.2 au", "0.4 au"})}.rim_radius_angle' },
-    answers = { "1.429  2.5 mas\n  along star, 2 points" },
+    answers = { [[
+1.429  2.5 mas
+  along star, 2 points]] },
   },
   summary { name = "mean", forms = { "mean(q)", "q:mean()", "mean(q, axis)" }, does = "The mean over the draws.",
     arguments = { { "q", "a quantity" }, along_axis }, examples = { { uncertain_radius, "mean(r)" } },
@@ -190,7 +208,9 @@ return {
   summary { name = "interval", forms = { "interval(q)", "q:interval()", "interval(q, share, axis)" }, does = "The ends of the central 68 % of the draws, or of another share.",
     arguments = { { "q", "a quantity" }, { "share", "between 0 and 1; as of one standard deviation of a normal distribution if left out" }, along_axis },
     result = "two quantities, the lower and the upper end", errors = "a share that isn't between 0 and 1", examples = { { uncertain_radius, "r:interval(0.95)" } },
-    answers = { "1.66 mas\n2.191 mas" } },
+    answers = { [[
+1.66 mas
+2.191 mas]] } },
   summary { name = "quantile", forms = { "quantile(q, p)", "q:quantile(p)", "quantile(q, p, axis)" }, does = "The value below which a share of the draws lies.",
     arguments = { { "q", "a quantity" }, { "p", "the share, from 0 to 1" }, along_axis }, errors = "a share outside 0 to 1", examples = { { uncertain_radius, "r:quantile(0.9)" } },
     answers = { "2.094 mas" } },

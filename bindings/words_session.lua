@@ -39,7 +39,19 @@ return {
     result = "a page that prints itself",
     errors = "what is neither a text nor a quantity with a name",
     examples = { 'help "parallax"' },
-    answers = { "parallax  ϖ\n  annual parallax of the star\n  in mas, > 0\n  also called plx\n\n  distance, from distance\n      ϖ = 1 arcsec (1 pc / d)\n      definition\n\n  example\n    > case{distance = \"140 pc\"}.parallax\n    7.143 mas" },
+    answers = { [[
+parallax  ϖ
+  annual parallax of the star
+  in mas, > 0
+  also called plx
+
+  distance, from distance
+      ϖ = 1 arcsec (1 pc / d)
+      definition
+
+  example
+    > case{distance = "140 pc"}.parallax
+    7.143 mas]] },
   },
   {
     name = "recipes", subject = "help", forms = { 'recipes "name"', 'recipes("name", c)' },
@@ -48,7 +60,21 @@ return {
     result = "a page that prints itself",
     errors = "an unknown name, a second argument that is no case",
     examples = { 'recipes("array_resolution", case{wavelength = "1.65 um", projected_baseline = "92 m"})' },
-    answers = { "array_resolution  θ_arr: smallest angle that the array tells apart, by the named criterion\n\n  recipe       value\n  half_fringe  1.85 mas   taken here, no range stated\n  fringe       3.699 mas  no range stated\n\n  half_fringe, from wavelength, projected_baseline\n      θ_arr = λ / (2 B)\n      common practice, no source\n      supposes the criterion of half a fringe spacing\n  fringe, from wavelength, projected_baseline\n      θ_arr = λ/B\n      common practice, no source\n      supposes the criterion of one fringe spacing" },
+    answers = { [[
+array_resolution  θ_arr: smallest angle that the array tells apart, by the named criterion
+
+  recipe       value
+  half_fringe  1.85 mas   taken here, no range stated
+  fringe       3.699 mas  no range stated
+
+  half_fringe, from wavelength, projected_baseline
+      θ_arr = λ / (2 B)
+      common practice, no source
+      supposes the criterion of half a fringe spacing
+  fringe, from wavelength, projected_baseline
+      θ_arr = λ/B
+      common practice, no source
+      supposes the criterion of one fringe spacing]] },
     see = { "using", "why" },
   },
   {

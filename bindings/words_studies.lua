@@ -1,5 +1,5 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
--- The words for studies. words.lua says what the fields are.
+-- The words for studies and their reports. words.lua says what the fields are.
 local two_stars = 'stars = study{targets = {{name = "Alder", distance = "140 pc"}, {name = "Birch", distance = "160 ± 4 pc"}}, given = {rim_radius = "0.3 au"}, ask = {"rim_radius_angle"}}'
 
 return {
@@ -23,14 +23,31 @@ return {
     result = "a study: stars.rows, stars:table(), stars:csv(), stars:latex(), stars:values(name), stars:report(folder)",
     errors = "an unknown field or name, a target without a name or with one that exists, a cell that can't be read (with file and line), sweeps, nothing that can be derived",
     examples = { two_stars },
-    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide." },
+    answers = { [[
+          rim radius
+               angle
+                 mas
+────────────────────
+Alder  2.143
+Birch  1.875 ± 0.047
+
+Given for all targets
+  rim_radius = 0.3 au
+
+How far this goes
+  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.
+  This estimates geometric feasibility; whether a structure is detected is not assessed. The
+    observatory's own documents and staff decide.]] },
   },
   {
     name = "rows", of = "study", field = true, subject = "studies", forms = { "stars.rows" },
     does = "The rows of a study, one a target, for more questions. A row has row.name, row.case, row.variants[name] and row.texts.",
     result = "a list of tables",
     examples = { { two_stars, "stars.rows[2].name, stars.rows[2].case.rim_radius_angle" } },
-    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\n\"Birch\"\n1.875 ± 0.047 mas\n  1.77 ▁▁▁▂▂▃▄▅▅▆▇████▇█▇▆▅▅▄▃▃▂▁▁▁▁▁ 2 mas   99 % of the draws" },
+    answers = { [[
+"Birch"
+1.875 ± 0.047 mas
+  1.77 ▁▁▁▂▂▃▄▅▅▆▇████▇█▇▆▅▅▄▃▃▂▁▁▁▁▁ 2 mas   99 % of the draws]] },
   },
   {
     name = "table", of = "study", subject = "studies", forms = { "stars:table()", "stars:table(columns)" },
@@ -39,21 +56,25 @@ return {
     result = "a text",
     errors = "what is no number of columns",
     examples = { { two_stars, '#stars:table(60) > 0' } },
-    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\ntrue" },
+    answers = { "true" },
   },
   {
     name = "csv", of = "study", subject = "studies", forms = { "stars:csv()" },
     does = "The table as CSV, with units in the headers and errors in columns of their own.",
     result = "a text",
     examples = { { two_stars, "stars:csv()" } },
-    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\nname,rim_radius_angle [mas],rim_radius_angle upper error [mas],rim_radius_angle lower error [mas]\nAlder,2.142857,,\nBirch,1.875,0.047,0.047\n" },
+    answers = { [[
+name,rim_radius_angle [mas],rim_radius_angle upper error [mas],rim_radius_angle lower error [mas]
+Alder,2.142857,,
+Birch,1.875,0.047,0.047
+]] },
   },
   {
     name = "latex", of = "study", subject = "studies", forms = { "stars:latex()" },
     does = "The table as LaTeX, with its notes.",
     result = "a text",
     examples = { { two_stars, 'stars:latex():match "begin{(%w+)}"' } },
-    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\n\"tabular\"" },
+    answers = { "\"tabular\"" },
   },
   {
     name = "values", of = "study", subject = "studies", forms = { "stars:values(name)", "stars:values(name, variant)" },
@@ -62,6 +83,16 @@ return {
     result = "a list with a table for each row: {value =, upper =, lower =} in the glossary's unit, {share =} of a verdict, or {missing = true, reason =}",
     errors = "an unknown name or variant",
     examples = { { two_stars, 'stars:values("rim_radius_angle")[2].value' } },
-    answers = { "          rim radius\n               angle\n                 mas\n────────────────────\nAlder  2.143\nBirch  1.875 ± 0.047\n\nGiven for all targets\n  rim_radius = 0.3 au\n\nHow far this goes\n  10000 draws, seed 0; shares are of all draws; an error bar is the central 68 % of them.\n  This estimates geometric feasibility; whether a structure is detected is not assessed. The\n    observatory's own documents and staff decide.\n1.8751422069989" },
+    answers = { "1.8751422069989" },
+  },
+  {
+    name = "report", of = "study", subject = "report",
+    forms = { 'stars:report "DIR"', 'stars:report("DIR", {force = true})' },
+    does = "Writes a study's report into a folder. It holds index.html (one page that needs neither network nor script), the table as CSV, Markdown, LaTeX and FITS, the figures, the derivations for one target in LaTeX with a bibliography, a draft of the text on technical feasibility, the study's own file and its inputs, and a manifest with the SHA-256 of each file. The command line does the same with --out DIR. The same study gives the same bytes; SOURCE_DATE_EPOCH sets the date. Derivations are shown for the study's field derive = \"NAME\", or else for the first target of which most is known.",
+    arguments = { { "DIR", "the folder's name; it is made where it isn't there" }, { "force", "true: also into a folder that has files already" } },
+    result = "a table { folder, files = { names }, missing = { what could not be written, and why } }, which prints itself",
+    errors = "a folder that has files already, without force; a folder or file that can't be written: one line, and no manifest",
+    examples = { { two_stars, 'stars:report "proposal"' } },
+    answers = { "report in proposal: 11 files; open proposal/index.html" },
   },
 }

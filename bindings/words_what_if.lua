@@ -31,7 +31,7 @@ return {
     subject = "what-if",
     forms = { "c:sensitivity \"name\"" },
     does = "Which givens carry an answer's error bar, how it follows each, what would turn a verdict. "
-      .. "Share of variance: Var(E[answer | given]) / Var(answer) (Sobol' 1993), estimated from the case's draws, with its standard error; what is left is what givens do only together. "
+      .. "Share of variance: Var(E[answer | given]) / Var(answer) (Sobol' 1993, Mathematical Modelling and Computational Experiment 1, 407), estimated from the case's draws, with its standard error; what is left is what givens do only together. "
       .. "Slope: d ln answer / d ln given with every given at its median, and beside it what 10 % more of the given makes of the answer. "
       .. "Of a verdict, with every given at its median: the value at which each given or assumed value alone turns it, the nearest first, looked for "
       .. "up to a factor of ten to either side and as far as its error bar goes; and which other recipes turn it.",

@@ -25,6 +25,7 @@
 #include "program.h"
 
 enum { MOST_WORKERS = 256, TICK_MS = 100 };
+#define EARLY "a worker process ended early"
 
 /* In front of each text in a pipe. */
 typedef struct {
@@ -41,7 +42,7 @@ typedef struct {
 
 typedef struct {
   atomic_int *next; /* shared with the children: the last task taken */
-  int count;
+  int count, done;  /* done: tasks whose texts have come */
   long peak; /* KiB, of the children that have ended */
   worker workers[MOST_WORKERS];
 } crew;
@@ -66,9 +67,11 @@ static int crew_finalise(lua_State *L) { return end_crew(lua_touserdata(L, 1)), 
 static crew *push_crew(lua_State *L) {
   crew *all = lua_newuserdatauv(L, sizeof *all, 0);
   memset(all, 0, sizeof *all);
-  lua_createtable(L, 0, 1);
+  lua_createtable(L, 0, 2);
   lua_pushcfunction(L, crew_finalise), lua_setfield(L, -2, "__gc");
+  lua_pushcfunction(L, crew_finalise), lua_setfield(L, -2, "__close");
   lua_setmetatable(L, -2);
+  lua_toclose(L, -1); /* whatever is raised, no child goes on */
   void *shared = mmap(NULL, sizeof *all->next, PROT_READ | PROT_WRITE, MAP_SHARED | MAP_ANONYMOUS, -1, 0);
   if (shared == MAP_FAILED) lac_error(L, "cannot start workers: %s", strerror(errno));
   all->next = shared;
@@ -97,9 +100,11 @@ static bool send_text(lua_State *L, int pipe, int task) {
 }
 
 /* Works until no task is left; the function is at place `work`. Never returns. */
-static void be_worker(lua_State *L, crew *all, int tasks, int work, int pipe) {
+static void be_worker(lua_State *L, crew *all, pid_t parent, int tasks, int work, int pipe) {
   signal(SIGINT, SIG_DFL); /* Ctrl-C reaches it too, and has nothing to tell the script here */
+  all->count = 0;          /* the others aren't this one's to end, should the script leave here */
   prctl(PR_SET_PDEATHSIG, SIGKILL);
+  if (getppid() != parent) _exit(1); /* it was gone before that was said */
   for (int task; (task = atomic_fetch_add(all->next, 1) + 1) <= tasks; lua_pop(L, 1)) {
     lua_pushvalue(L, work);
     lua_pushinteger(L, task);
@@ -111,12 +116,13 @@ static void be_worker(lua_State *L, crew *all, int tasks, int work, int pipe) {
 }
 
 static void start(lua_State *L, crew *all, int count, int tasks, int work) {
+  const pid_t parent = getpid();
   fflush(NULL); /* else the children have a copy of what waits to be written */
   for (int i = 0; i < count; i++) {
     int ends[2];
     if (pipe2(ends, O_CLOEXEC) != 0) lac_error(L, "cannot start workers: %s", strerror(errno));
     const pid_t pid = fork();
-    if (pid == 0) be_worker(L, all, tasks, work, ends[1]);
+    if (pid == 0) be_worker(L, all, parent, tasks, work, ends[1]);
     const int trouble = errno;
     close(ends[1]);
     all->workers[all->count++] = (worker){.pid = pid > 0 ? pid : 0, .pipe = ends[0]};
@@ -138,7 +144,7 @@ static bool make_room(worker *one) {
 
 /* Hands the whole frames in a worker's buffer to the function at place `take`. Returned: whether all went well; else an error is on the
  * stack. */
-static bool take_frames(lua_State *L, worker *one, int take) {
+static bool take_frames(lua_State *L, crew *all, worker *one, int take) {
   size_t at = 0;
   frame head;
   while (one->have - at >= sizeof head) {
@@ -149,6 +155,7 @@ static bool take_frames(lua_State *L, worker *one, int take) {
     lua_pushlstring(L, one->text + at + sizeof head, (size_t)head.length);
     if (head.task == 0) return false;
     if (lua_pcall(L, 2, 0, 0) != LUA_OK) return false;
+    all->done++;
     at += sizeof head + (size_t)head.length;
   }
   if (at > 0) memmove(one->text, one->text + at, one->have - at);
@@ -168,7 +175,7 @@ static bool reap(lua_State *L, crew *all, worker *one) {
   if (status == 0 && one->have == 0) return true;
   if (WIFSIGNALED(status))
     lua_pushfstring(L, "a worker process was stopped by signal %d (%s)", WTERMSIG(status), strsignal(WTERMSIG(status)));
-  else lua_pushliteral(L, "a worker process ended early");
+  else lua_pushliteral(L, EARLY);
   return false;
 }
 
@@ -179,7 +186,7 @@ static bool read_worker(lua_State *L, crew *all, worker *one, int take) {
   if (got < 0) return errno == EINTR || (lua_pushfstring(L, "cannot read from a worker: %s", strerror(errno)), false);
   if (got == 0) return reap(L, all, one);
   one->have += (size_t)got;
-  return take_frames(L, one, take);
+  return take_frames(L, all, one, take);
 }
 
 /* One round: waits for news for a tenth of a second at most. Returned: how many still work; -1 with an error on the stack. */
@@ -213,7 +220,7 @@ static int run_workers(lua_State *L) {
   start(L, all, count, tasks, WORK);
   for (int open; (open = attend(L, all, TAKE, TICK)) != 0;)
     if (open < 0) return end_crew(all), lua_error(L);
-  end_crew(all);
+  if (all->done < tasks) return lua_pushliteral(L, EARLY), lua_error(L); /* a script can leave with 0 */
   lua_pushnumber(L, (lua_Number)all->peak / 1024);
   return 1;
 }

@@ -36,6 +36,7 @@ typedef struct {
   double *means;  /* of the terms over the draws */
   double *basis;  /* 1, the terms and y at one draw */
   double mean;    /* of y, taken off before anything else */
+  double scale;   /* a power of two, so that squares of what is left neither overflow nor vanish */
 } problem;
 
 /* Polynomials 1 .. degree, orthonormal: of Hermite over the standard normal distribution, of Legendre over that from 0 to 1. */
@@ -79,7 +80,7 @@ static void evaluate_basis(const problem *p, size_t draw, double *out) {
   double *product = out + p->first[p->inputs];
   for (size_t i = 1; i < p->inputs && product <= out + p->terms; i++)
     for (size_t j = 0; j < i; j++) *product++ = (out[p->first[i]] - p->centre[i]) * (out[p->first[j]] - p->centre[j]);
-  out[p->terms + 1] = p->y[p->index[draw]] - p->mean;
+  out[p->terms + 1] = (p->y[p->index[draw]] - p->mean) * p->scale;
 }
 
 static bool stopped(const problem *p, size_t draw) {
@@ -194,8 +195,7 @@ typedef struct {
 } variances;
 
 static size_t bin_of(const problem *p, size_t input, size_t draw) {
-  const size_t bin = (size_t)fmax(0, place(p, input, draw) * (double)p->bins);
-  return bin < p->bins ? bin : p->bins - 1;
+  return (size_t)fmin(fmax(0, place(p, input, draw) * (double)p->bins), (double)(p->bins - 1));
 }
 
 static lac_status sum_variances(problem *p, variances *v) {
@@ -256,7 +256,8 @@ static lac_status shares_with(problem *p, variances *v, lac_share *shares) {
   if (status == LAC_OK) status = sum_products(p);
   if (status != LAC_OK) return status;
   const double whole = p->gram[(p->terms + 2) * (p->terms + 2) - 1];
-  if (!(whole > 1e-24 * p->mean * p->mean)) {
+  const double mean = p->mean * p->scale;
+  if (!(whole > 1e-24 * mean * mean)) {
     for (size_t i = 0; i < p->inputs; i++) shares[i] = (lac_share){(double)NAN, (double)NAN};
     return LAC_OK;
   }
@@ -269,6 +270,14 @@ static bool is_defined(const double *y, size_t inputs, const lac_share_input *x,
   bool defined = isfinite(y[t]);
   for (size_t i = 0; i < inputs; i++) defined = defined && isfinite(x[i].draws[t]);
   return defined;
+}
+
+static double find_scale(const problem *p) {
+  double largest = 0;
+  int exponent;
+  for (size_t t = 0; t < p->n; t++) largest = fmax(largest, fabs(p->y[p->index[t]] - p->mean));
+  frexp(largest, &exponent);
+  return ldexp(1, exponent < -1000 ? 1000 : -exponent);
 }
 
 /* Fewer terms where there are few draws or many inputs. */
@@ -303,6 +312,7 @@ lac_status lac_first_order_shares(lac_work *work, size_t n, const double *y, siz
   *defined = p.n;
   p.first = p.index + n;
   p.whole = p.n == n;
+  p.scale = find_scale(&p);
   if (p.n < DRAWS_A_TERM * inputs || inputs == 0) return free(p.index), LAC_TOO_MANY;
   choose_terms(&p);
   const size_t width = p.terms + 2, bins = inputs * p.bins;

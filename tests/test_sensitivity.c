@@ -1,6 +1,7 @@
 /* SPDX-License-Identifier: GPL-3.0-or-later */
 /* First-order variance shares: of sums and products against closed forms, by distribution and by rank; draws that are missing, few or all
-   the same; interruption. For a sum of independent terms the share of each is its variance over the sum's (Sobol' 1993, from memory). */
+   the same; interruption. For a sum of independent terms the share of each is its variance over the sum's (Sobol' 1993,
+   Mathematical Modelling and Computational Experiment 1, 407, from memory). */
 #include <math.h>
 #include <stdlib.h>
 
@@ -105,6 +106,21 @@ static void undefined_draws_are_left_out(void **state) {
   assert_true(fabs(shares[1].share - 0.75) < 0.02);
 }
 
+/* Shares have no unit: they don't hang on y's, not even in their last bit where the factor is a power of two. */
+static void any_unit_will_do(void **state) {
+  (void)state;
+  static const int exponents[] = {0, 1, -600, 600, -900, 900};
+  lac_share shares[sizeof exponents / sizeof *exponents][2];
+  for (size_t k = 0; k < sizeof exponents / sizeof *exponents; k++) {
+    size_t defined;
+    draw(8);
+    for (size_t i = 0; i < N; i++) y[i] = ldexp(a[i] * a[i] + b[i] + a[i] * b[i], exponents[k]);
+    assert_int_equal(shares_of(N, LAC_STANDARD_NORMAL, LAC_STANDARD_UNIFORM, shares[k], &defined), LAC_OK);
+    assert_true(!isnan(shares[k][0].share));
+    assert_memory_equal(shares[k], shares[0], sizeof shares[0]);
+  }
+}
+
 static void few_draws_ties_and_constants(void **state) {
   (void)state;
   draw(6);
@@ -142,6 +158,7 @@ int main(void) {
       cmocka_unit_test(a_product),
       cmocka_unit_test(a_step),
       cmocka_unit_test(undefined_draws_are_left_out),
+      cmocka_unit_test(any_unit_will_do),
       cmocka_unit_test(few_draws_ties_and_constants),
       cmocka_unit_test(it_can_be_stopped),
   };

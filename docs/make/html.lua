@@ -1,7 +1,9 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- Pages of the documents: each a file that stands alone, readable on a phone, light and dark.
 
-local html = {}
+local html = {
+  WHO_DECIDES = "It estimates what is feasible; the observatory's own documents and staff decide.",
+}
 
 local escapes = { ["&"] = "&amp;", ["<"] = "&lt;", [">"] = "&gt;", ['"'] = "&quot;" }
 function html.escape(text) return (text:gsub('[&<>"]', escapes)) end

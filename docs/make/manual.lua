@@ -94,7 +94,8 @@ function manual.html()
   local words, names = subjects()
   local out = {
     "<h1>Reference manual</h1>",
-    "<p>All words of the language, and all names with their recipes, in the order in which a case tries them. It estimates what is feasible; the observatory's own documents and staff decide.</p>",
+    "<p>All words of the language, and all names with their recipes, in the order in which a case tries them. " .. html.WHO_DECIDES ..
+      " Stars and instruments in the examples are invented.</p>",
     '<h2 id="contents">Contents</h2>',
   }
   add_contents(out, words, word_id, title_of)

@@ -16,7 +16,7 @@ function markdown.html(path)
 end
 
 function markdown.index(guide, links)
-  local out = { "<h1>Lacuna</h1>", "<p>What can be resolved around young stars. It estimates what is feasible; the observatory's own documents and staff decide.</p>", "<h2>Guide</h2>", "<ol>" }
+  local out = { "<h1>Lacuna</h1>", "<p>What can be resolved around young stars. " .. html.WHO_DECIDES .. "</p>", "<h2>Guide</h2>", "<ol>" }
   for _, page in ipairs(guide) do out[#out + 1] = ('<li><a href="%s">%s</a></li>'):format(page[1], html.escape(page[2])) end
   out[#out + 1] = "</ol>\n<h2>Reference</h2>\n<ul>"
   for i = #guide + 1, #links do out[#out + 1] = ('<li><a href="%s">%s</a></li>'):format(links[i][1], html.escape(links[i][2])) end

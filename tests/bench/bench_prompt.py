@@ -1,7 +1,7 @@
 # SPDX-License-Identifier: GPL-3.0-or-later
 """How soon the prompt answers: from a key to its echo, from Tab to what it adds or lists, from Ctrl-C to the prompt. Through a
 pseudo-terminal, as a person has it: the time from the write of the key to the read of the answer. Each row prints what is required and
-what was measured; of many keys, the time within which 95 % were answered. Exit status 1 where a row falls short."""
+what was measured; of many keys, the time within which 95 % were answered. Exit status 1 where a row falls short. Stars and instruments are invented."""
 import os
 import re
 import sys

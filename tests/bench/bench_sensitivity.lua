@@ -1,5 +1,6 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- c:sensitivity with ten givens and ten thousand draws, of a number and of a verdict, its page included: required beside measured.
+-- Stars and instruments are invented.
 local lac = require "lacuna"
 
 local REQUIRED, TIMES = 0.3, 3 -- seconds of processor time; the best of so many

@@ -1,5 +1,6 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- Bad input: each is answered by one line with the position of the user's own line, that says what, which value, what would be right.
+-- Stars and instruments are invented.
 local t = require "harness"
 local lac = require "lacuna"
 

@@ -25,6 +25,23 @@ t.test("asking", function()
   t.close(lac.case { parallax = "10 mas" }.distance:value "pc", 100, 4 * eps)
 end)
 
+t.test("a closed case", function()
+  local kept
+  do
+    local c <close> = lac.case(single)
+    kept = c
+  end
+  t.raises(function() return kept.rim_radius_angle end, "this case is closed")
+  t.raises(function() return kept:with { distance = "90 pc" } end, "this case is closed")
+  local seen
+  do -- a finaliser sees the case that was finalised before it
+    local holder = setmetatable({}, { __gc = function(holder) seen = select(2, pcall(function() return holder.case.distance end)) end })
+    holder.case = lac.case(single)
+  end
+  collectgarbage()
+  t.equal(seen:find "this case is closed" ~= nil, true)
+end)
+
 t.test("an ensemble's errors", function()
   local c = lac.case(star)
   t.equal(tostring(c.distance):match "^156", "156")

@@ -1,6 +1,7 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- The renderers of equations: what each must print is read off the TeX (common practice, no source); that TeX output means the
 -- same is checked by parsing it again; that plain text means the same, by evaluating it with random numbers as Lua would.
+-- Stars and instruments are invented.
 package.path = "tests/lua/?.lua;bindings/?.lua;" .. package.path
 local t = require "harness"
 local equation = require "equation"

@@ -1,6 +1,6 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- help(): the map, pages of names, words, methods, units and built-in objects, and what is told of words that aren't known. The examples
--- on the pages are run by test_words.lua and test_examples.lua, the search by test_search.lua.
+-- on the pages are run by test_words.lua and test_examples.lua, the search by test_search.lua. Stars and instruments are invented.
 package.path = "tests/lua/?.lua;" .. package.path
 local t = require "harness"
 local lac = require "lacuna"

@@ -1,5 +1,6 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- recipes: all rows of a name, and what each gives in a case, side by side. Expected values come from asking the case for one recipe at a time.
+-- Stars and instruments are invented.
 package.path = "tests/lua/?.lua;" .. package.path
 local t = require "harness"
 local lac = require "lacuna"

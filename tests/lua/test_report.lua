@@ -3,29 +3,12 @@
 -- vectors, files of numbers with what the study itself says.
 package.path = "tests/lua/?.lua"
 local t = require "harness"
+local scratch = require "scratch"
 local lacuna = require "lacuna"
 lacuna.settings { seed = 7, draws = 2000 }
 
-local folder = os.tmpname()
-os.remove(folder)
-assert(os.execute("mkdir " .. folder))
-
-local function read(name)
-  local file = io.open(folder .. "/" .. name, "rb")
-  if not file then return nil end
-  local content = file:read "a"
-  file:close()
-  return content
-end
-
-local function quietly(fields)
-  local print_before = print
-  print = function() end
-  local ok, result = pcall(lacuna.study, fields)
-  print = print_before
-  if not ok then error(result, 0) end
-  return result
-end
+local folder, read = scratch.folder, scratch.read
+local function quietly(fields) return (scratch.quietly(lacuna.study, fields)) end
 
 local stars = {
   { name = "Marrow 3", distance = "156 ± 3 pc", bolometric_flux = "2.4e-11 ± 0.2e-11 W.m**-2", stellar_mass = "1.9 ± 0.1 Msun" },
@@ -202,5 +185,5 @@ t.test("many targets, in the draft and in tables that fit on pages", function()
   t.equal(select(2, read(name .. "/table.tex"):gsub("\\begin{table%*}", "")), 3)
 end)
 
-os.execute("rm -r " .. folder)
+scratch.remove()
 t.finish()

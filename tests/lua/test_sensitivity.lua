@@ -88,6 +88,13 @@ t.test("a product of log-uniform, uniform and lopsided factors", function()
   end, "product_of_factors", product_shares { factor_first = log_uniform, factor_second = uniform, factor_third = lopsided })
 end)
 
+t.test("an error bar to one side alone", function()
+  local half = math.sqrt(2 / math.pi) -- median 3 m, half the draws there, the others half-normal: variance 1/2 - (half/2)²
+  local one_sided = 0.5 - (half / 2) ^ 2
+  shares_are(function() return lac.case { term_first = "3 +1 -0 m", term_second = "2 ± 1 m", term_third = "1 m" } end, "sum_of_terms",
+    { term_first = one_sided / (one_sided + 4), term_second = 4 / (one_sided + 4) })
+end)
+
 t.test("Ishigami's function", function()
   -- Ishigami & Homma 1990, Proc. ISUMA '90, 398; with a = 7, b = 0.1 the indices are 0.3139, 0.4424, 0 (Saltelli et al. 2008, Global
   -- Sensitivity Analysis: The Primer; both from memory), by V = a²/8 + b π⁴/5 + b² π⁸/18 + 1/2, V1 = (1 + b π⁴/5)²/2, V2 = a²/8

@@ -3,37 +3,18 @@
 -- derived is compared with the same asked of a case, or with what follows from the definitions by hand.
 package.path = "tests/lua/?.lua"
 local t = require "harness"
+local scratch = require "scratch"
 local lacuna = require "lacuna"
 lacuna.settings { seed = 7, draws = 2000 }
 
-local folder = os.tmpname()
-os.remove(folder)
-assert(os.execute("mkdir " .. folder))
-
-local function path(name) return folder .. "/" .. name end
-local function write(name, content)
-  local file = assert(io.open(path(name), "wb"))
-  file:write(content)
-  file:close()
-  return path(name)
-end
-local function read(name)
-  local file = io.open(path(name), "rb")
-  if not file then return nil end
-  local content = file:read "a"
-  file:close()
-  return content
-end
+local folder, path, write, read = scratch.folder, scratch.path, scratch.write, scratch.read
 
 -- A study without its printing.
 local printed
 local function quietly(fields)
-  local print_before = print
-  print = function(line) printed = tostring(line) end
-  local ok, result = pcall(lacuna.study, fields)
-  print = print_before
-  if not ok then error(result, 0) end
-  return result
+  local study
+  study, printed = scratch.quietly(lacuna.study, fields)
+  return study
 end
 
 local function of_file(content, more)
@@ -152,7 +133,7 @@ end)
 -- What a study with these fields raises, with the script's line before it.
 local function complains(fields, message)
   local text = t.raises(function() quietly(fields) end, "study")
-  t.equal(text:match "^[^:]*test_study.lua:%d+: (.*)", message)
+  t.equal(text:match "^[^:]*scratch.lua:%d+: (.*)", message)
 end
 
 t.test("a study that is not one", function()
@@ -354,5 +335,5 @@ t.test("files are whole or absent", function()
   pipe:close()
 end)
 
-os.execute("rm -r " .. folder)
+scratch.remove()
 t.finish()

@@ -1,6 +1,7 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
 -- The records of the language's words: every word and every method has one, none is without its word, and every example prints what the
 -- record says. With REWRITE=1 in the environment the answers are put into bindings/words_*.lua, to be read before they are kept.
+-- Stars and instruments are invented.
 package.path = "tests/lua/?.lua;" .. package.path
 local t = require "harness"
 local session = require "session"
@@ -10,42 +11,50 @@ local words = core.part "lacuna.words"
 
 local function lines_of(example) return type(example) == "table" and example or { example } end
 
--- What is printed for an example: the answers of its lines, those that are empty left out.
+-- What is printed for an example: the answer to its last line; the lines before prepare it.
 local function answer_of(example)
-  local shown = {}
-  for _, answer in ipairs(session.fresh(lines_of(example))) do
-    if answer ~= "" then shown[#shown + 1] = answer end
-  end
-  return table.concat(shown, "\n")
+  local answers = session.fresh(lines_of(example))
+  return answers[#answers]
 end
 
 -- Rewriting -----------------------------------------------------------------------------------------------------------------------
 
-local function written(record)
-  if #record.examples == 0 then return "{}" end
-  local texts = {}
-  for i, example in ipairs(record.examples) do texts[i] = ("%q"):format(answer_of(example)):gsub("\\\n", "\\n") end
-  return "{ " .. table.concat(texts, ", ") .. " }"
+-- A text as it is written in a record: what has several lines in long brackets, so that it can be read there.
+local function as_source(text)
+  if not text:find "\n" then return ("%q"):format(text) end
+  local level = ""
+  while text:find("]" .. level .. "]", 1, true) or text:find("]" .. level .. "$") do level = level .. "=" end
+  return ("[%s[\n%s]%s]"):format(level, text, level)
 end
 
--- The n-th line of a file that sets answers, and nothing after them, belongs to the n-th of its records that has examples.
+local function written(record)
+  local texts = {}
+  for i, example in ipairs(record.examples) do texts[i] = as_source(answer_of(example)) end
+  return #texts == 0 and "{}" or "{ " .. table.concat(texts, ", ") .. " }"
+end
+
+-- Where a table that begins there ends: at the first brace with which it is one in Lua.
+local function end_of_table(source, start)
+  for at in source:gmatch "()}" do
+    if at > start and load("return " .. source:sub(start, at)) then return at end
+  end
+end
+
+-- The n-th place in a file that sets answers belongs to the n-th of its records that has examples.
 local function rewrite(file)
-  local with_examples, lines, count = {}, {}, 0
+  local handle = assert(io.open(file))
+  local source, pieces, from = handle:read "a", {}, 1
+  handle:close()
   for _, record in ipairs(core.part("lacuna." .. file:match "([%w_]+)%.lua$")) do
-    if record.examples then with_examples[#with_examples + 1] = record end
-  end
-  for line in io.lines(file) do
-    local before, after = line:match "^(%s*answers = ){.*}( },)$"
-    if not before then before, after = line:match "^(%s*answers = ){.*}(,)$" end
-    if before then
-      count = count + 1
-      line = before .. written(with_examples[count]) .. after
+    if record.examples then
+      local _, start = source:find("%f[%w_]answers = {", from)
+      pieces[#pieces + 1] = source:sub(from, start - 1)
+      pieces[#pieces + 1] = written(record)
+      from = end_of_table(source, start) + 1
     end
-    lines[#lines + 1] = line
   end
-  if count ~= #with_examples then return print(("# %s: left alone: %d lines set answers, of %d records with examples"):format(file, count, #with_examples)) end
   local out = assert(io.open(file .. ".new", "w"))
-  out:write(table.concat(lines, "\n"), "\n")
+  out:write(table.concat(pieces), source:sub(from))
   out:close()
   assert(os.rename(file .. ".new", file))
 end

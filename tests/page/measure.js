@@ -30,9 +30,10 @@ function behind(view, element, canvas) {
   return layers.reverse().reduce((below, layer) => over(layer, below), canvas);
 }
 
-// In a drawing, also the rectangles drawn before it on which it stands whole.
+// In a drawing, also the rectangles drawn before it on which it stands whole, as far as it isn't cut off at the drawing's edge.
 function behindInDrawing(view, element, canvas) {
-  const drawing = element.closest("svg"), box = element.getBoundingClientRect();
+  const drawing = element.closest("svg"), own = element.getBoundingClientRect(), frame = drawing.getBoundingClientRect();
+  const box = { left: Math.max(own.left, frame.left), right: Math.min(own.right, frame.right), top: Math.max(own.top, frame.top), bottom: Math.min(own.bottom, frame.bottom) };
   let below = behind(view, drawing, canvas);
   for (const shape of drawing.querySelectorAll("rect")) {
     if (!(shape.compareDocumentPosition(element) & Node.DOCUMENT_POSITION_FOLLOWING)) break;

@@ -1,6 +1,6 @@
 # SPDX-License-Identifier: GPL-3.0-or-later
 """The demo's report as its readers see it: the page passes every check, and the LaTeX compiles with Debian's texlive-latex-base and
-texlive-latex-recommended, without errors, undefined citations or lines that run out of the page."""
+texlive-latex-recommended, without errors, undefined citations or lines that run out of the page. Stars and instruments are invented."""
 import os
 import re
 import subprocess

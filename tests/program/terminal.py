@@ -11,24 +11,13 @@ import struct
 import termios
 import time
 
+from tap import check
+
 LACUNA = os.environ["LACUNA"]
 PATIENCE = 30  # seconds for an answer; sanitised builds are slow
 CONTROL_C, CONTROL_D, CONTROL_Z, UP, LEFT, TAB, META_ENTER = "\x03", "\x04", "\x1a", "\x1b[A", "\x1b[D", "\t", "\x1b\r"
 PASTE_BEGINS, PASTE_ENDS = "\x1b[200~", "\x1b[201~"
 PROMPT = re.compile(r"(^|\n)> $")
-results = 0
-
-
-def check(good, name, seen=""):
-    global results
-    results += 1
-    print(f"{'ok' if good else 'not ok'} {results} - {name}", flush=True)
-    if not good:
-        print("# saw " + repr(seen), flush=True)
-
-
-def plan():
-    print(f"1..{results}")
 
 
 class Session:

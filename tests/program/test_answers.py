@@ -8,7 +8,8 @@ import subprocess
 import tempfile
 
 import terminal
-from terminal import LACUNA, PROMPT, check, plan
+from tap import check, plan
+from terminal import LACUNA, PROMPT
 
 CASE = 'c = case { distance = "156 ± 3 pc", bolometric_flux = "2.4e-11 ± 0.2e-11 W.m**-2", wavelength = "1.65 um", projected_baseline = "92 m" }'
 STUDY = 'stars = study { targets = { { name = "invented", distance = "140 pc", rim_radius = "0.3 au" } }, given = { wavelength = "1.65 um", projected_baseline = "100 m" }, ask = { "rim_resolved_by_array" } }'

@@ -1,5 +1,5 @@
 # SPDX-License-Identifier: GPL-3.0-or-later
-# What the command line asks of a study: --set, --only, --out, and what is said where that can't be.
+# What the command line asks of a study: --set, --only, --out, and what is said where that can't be. Stars and instruments are invented.
 . tests/program/tap.sh
 lacuna=${LACUNA:?}
 scripts=$PWD/scripts

@@ -1,7 +1,11 @@
 #!/bin/sh
 # SPDX-License-Identifier: GPL-3.0-or-later
 # Figures as files: what gnuplot draws is valid, the same bytes come again, nothing in a name is run, and without gnuplot the data is still there.
+# Stars and instruments are invented.
 . tests/program/tap.sh
+for program in gnuplot pdfinfo; do
+  command -v $program >/dev/null || { echo "1..0 # SKIP there is no $program"; exit; }
+done
 lacuna=${LACUNA:?}
 scripts=$PWD/scripts
 cd "$scratch" || exit 1

@@ -6,18 +6,11 @@ import re
 import subprocess
 import tempfile
 
+from tap import check, plan, skip
+
 BUILD = os.environ["LACUNA_BUILD"]
 BLOCKS = re.compile(r"```(c|lua)\n(.*?)```\n+```output\n(.*?)```", re.S)
 SANITIZED = not os.path.exists(f"{BUILD}/lacuna.so")  # the sanitised build has the program alone
-results = 0
-
-
-def check(good, name, seen=""):
-    global results
-    results += 1
-    print(f"{'ok' if good else 'not ok'} {results} - {name}", flush=True)
-    if not good:
-        print("# saw " + repr(seen), flush=True)
 
 
 def run_c(source, folder):
@@ -42,9 +35,8 @@ with tempfile.TemporaryDirectory() as scratch:
     for number, (path, language, source, wanted) in enumerate(programs, 1):
         name = f"{path}, program {number} in {language}"
         if SANITIZED:
-            results += 1
-            print(f"ok {results} - {name} # SKIP the sanitised build has no library to link without sanitizers")
+            skip(name, "the sanitised build has no library to link without sanitizers")
             continue
         seen = run_c(source, scratch) if language == "c" else run_lua(source)
         check(seen == wanted, name, seen)
-print(f"1..{results}")
+plan()

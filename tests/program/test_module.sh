@@ -47,6 +47,20 @@ lac.quantity { name = "slow", unit = "au", meaning = "invented" }
 lac.relation { gives = "slow", by = "loop", from = { "rim_radius" }, function(r) local x for i = 1, 3e6 do x = i end return r end }
 return lac.mean(lac.case { rim_radius = "1 ± 0.1 au" }.slow)'
 
+# A host may have set a locale in which a half is written 0,5: texts are read all the same, and no file gets a comma.
+printf 'local lac = require "lacuna"\nassert(os.setlocale "de_DE.UTF-8")\nprint(4 * lac.quantity "0.5 au" == lac.quantity "2 au")
+lac.study{targets = {{name = "a", distance = "156.5 pc"}}, ask = {"parallax"}, csv = "comma.csv"}' >comma.lua
+if localedef -i de_DE -f UTF-8 "$scratch/de_DE.UTF-8" >/dev/null 2>&1 && LOCPATH=$scratch "$host" -e 'assert(os.setlocale "de_DE.UTF-8")' 2>/dev/null; then
+  try env LOCPATH="$scratch" "$host" comma.lua
+  want "a locale with a decimal comma" 1 "true" '*comma.lua:4: comma.csv: the locale that is set would write numbers with "," for the decimal point; os.setlocale("C", "numeric") sets the point*'
+  test ! -e comma.csv
+  result $? "no file with decimal commas"
+  try env LOCPATH="$scratch" LC_ALL=de_DE.UTF-8 "$build/lacuna" -e '0.5 * quantity "3.5 au"'
+  want "the program takes no decimal comma from its environment" 0 "1.75 au" ""
+else
+  for what in "a locale with a decimal comma" "no file with decimal commas" "the program with one"; do result 0 "$what # SKIP there is none"; done
+fi
+
 if test -e "$build/lacuna.so"; then
   try "$host" -e 'local before = {} for k in pairs(_G) do before[k] = true end require "lacuna" for k in pairs(_G) do if not before[k] then print(k) end end'
   want "require writes no global" 0 "" ""

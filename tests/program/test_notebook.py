@@ -8,7 +8,8 @@ import tempfile
 import time
 
 import terminal
-from terminal import CONTROL_C, LACUNA, PROMPT, check, plan
+from tap import check, plan
+from terminal import CONTROL_C, LACUNA, PROMPT
 
 
 class Session(terminal.Session):

@@ -3,11 +3,14 @@
 import os
 import re
 import shutil
+import signal
 import stat
 import subprocess
 import tempfile
+import termios
 
-from terminal import CONTROL_C, CONTROL_Z, LACUNA, LEFT, META_ENTER, PASTE_BEGINS, PASTE_ENDS, PROMPT, TAB, UP, Session, check, plan
+from tap import check, plan
+from terminal import CONTROL_C, CONTROL_Z, LACUNA, LEFT, META_ENTER, PASTE_BEGINS, PASTE_ENDS, PROMPT, TAB, UP, Session
 
 MANY_DRAWS = "--draws=10000000000"  # a minute of work
 INVENTED_STAR = 'c = case{distance = "150 pc", bolometric_flux = "2e-11 W.m**-2"}'
@@ -186,6 +189,43 @@ def stop_and_go_on(folder):
     session.leave()
 
 
+def interrupt_study(folder):
+    """A study whose relation never ends, in several processes."""
+    session = Session(folder, "--threads", "3")
+    session.wait(PROMPT)
+    session.ask('quantity{name = "patience", unit = "pc", meaning = "invented"}'
+                ' relation{gives = "patience", by = "waiting", from = {"distance"}, source = "definition", function(d) while true do end end}'
+                ' targets = {} for i = 1, 8 do targets[i] = {name = "star " .. i, distance = 100 + i .. " pc"} end print "ready"', "ready", "eight targets")
+    children = f"/proc/{session.pid}/task/{session.pid}/children"
+    for time in ("once", "twice"):
+        session.type('study{targets = targets, ask = {"patience"}}\r')
+        for _ in range(100):
+            if len(open(children).read().split()) == 3:
+                break
+            session.read(0.1)
+        else:
+            check(False, f"the study takes three processes, {time}", open(children).read())
+        session.type(CONTROL_C)
+        check(session.wait(PROMPT) and "\ninterrupted\n" in session.screen, f"Ctrl-C ends the study, {time}", session.screen)
+        check(open(children).read() == "", "and its processes", open(children).read())
+    session.ask("print(settings().threads)", "3", "settings are as they were")
+    session.leave()
+
+
+def end_by_signal(folder):
+    """A signal that ends the program finds the terminal as it was before."""
+    for number in (signal.SIGTERM, signal.SIGHUP, signal.SIGQUIT):
+        session = Session(folder)
+        session.wait(PROMPT)
+        before = termios.tcgetattr(session.terminal)[3]
+        os.kill(session.pid, number)
+        _, status = os.waitpid(session.pid, 0)
+        after = termios.tcgetattr(session.terminal)[3]
+        check(os.waitstatus_to_exitcode(status) == -number, number.name + " ends it", status)
+        check(not before & termios.ECHO and after & termios.ECHO and after & termios.ICANON, "and the terminal echoes lines again", (before, after))
+        os.close(session.terminal)
+
+
 def remember(folder):
     history = os.path.join(folder, "lacuna", "history")
     check(stat.S_IMODE(os.stat(history).st_mode) == 0o600, "the history is the user's alone")
@@ -270,6 +310,8 @@ try:
     check(session.leave() == 0, "Ctrl-D leaves")
     remember(folder)
     stop_and_go_on(folder)
+    interrupt_study(folder)
+    end_by_signal(folder)
     without_terminal(folder)
     plain_terminals(folder)
 finally:

@@ -102,4 +102,14 @@ done
 test -c /dev/full && test -L link.csv && grep -q '^a,10' small/out.csv
 result $? "devices and links stay what they are"
 
+# What was for one's own eyes stays so; a new file has the rights that the shell's mask leaves, and nothing is left beside it.
+chmod 640 small/out.csv && printf 'study { targets = {{ name = "a", distance = "100 pc" }}, ask = { "parallax" }, csv = arg[1] }\n' >written.lua
+for name in small/out.csv small/new.csv; do try sh -c 'umask 027; "$0" written.lua "$1"; umask 077; "$0" written.lua "$1".own' "$lacuna" "$name"; done
+test "$(stat -c '%a %n' small/* | tr '\n' ' ')" = "640 small/new.csv 600 small/new.csv.own 640 small/out.csv 600 small/out.csv.own "
+result $? "rights of a file that was there, and of a new one"
+chmod 600 small/new.csv
+try sh -c 'umask 022; "$0" written.lua small/new.csv' "$lacuna"
+test "$(stat -c %a small/new.csv)" = 600
+result $? "a private file stays private"
+
 finish
