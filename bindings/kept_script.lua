@@ -57,7 +57,7 @@ local own_printer = "local print_shown = (function(print, show) return function(
 local function printing(input, list, first, before, shown)
   local last = list[#list].text == ";" and #list - 1 or #list
   local expression, after = input.text:sub(list[first].first, list[last].last), input.text:sub(list[#list].last + 1)
-  if input.results > 0 then return before .. shown:format(expression) .. after end
+  if input.results > 0 then return before .. (input.as_text and "print(%s)" or shown):format(expression) .. after end
   if compiles(expression) then return before .. (list[first].text == "(" and ";" or "") .. expression .. after end
   return before .. "do local _ = " .. expression .. " end" .. after
 end

@@ -47,9 +47,10 @@ local function follows_from(self, name, other)
   return false
 end
 
--- What would have to be given for a recipe, in words: of inputs that can't be had, and of those that are had from the name itself.
+-- What would have to be given for a recipe, in words: of inputs that can't be had, and of those that are had from the name itself. Of an
+-- inverse recipe it is the name that it goes back from: whatever would lead to that leads through the name asked.
 local function what_is_missing(self, row)
-  local missing, seen = {}, {}
+  local missing, seen, inverted = {}, {}, row.inverse_of and row.inverse_of:match "^[%w_]+"
   local function add(name)
     if not seen[name] then missing[#missing + 1] = name end
     seen[name] = true
@@ -57,7 +58,7 @@ local function what_is_missing(self, row)
   for _, input in ipairs(row.from) do
     local is_object = core.info(self).objects[input] ~= nil
     if core.row_of(self, input) == nil and not is_object then
-      local sets = core.missing_sets(self, input)
+      local sets = input ~= inverted and core.missing_sets(self, input) or {}
       for _, name in ipairs(sets[1] and sets[1].names or { input }) do add(name) end
     elseif not is_object and follows_from(self, input, row.gives) then add(input .. " (here it follows from " .. row.gives .. ")") end
   end

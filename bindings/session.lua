@@ -13,7 +13,7 @@ local variables, latest = {}, {} -- by name; and {name = value} after the last i
 
 local session = {
   environment = { latest, globals }, -- where names can be looked up, raw
-  inputs = {},                       -- for the notebook: {text =, expression =, results =, from = file} or
+  inputs = {},                       -- for the notebook: {text =, expression =, results =, as_text = of a figure, which show would draw, from = file} or
                                      -- {text =, failed = names, skips = n, settings = the changed ones}
 }
 
@@ -171,7 +171,7 @@ function session.ran(text, ok, results, from)
   for name in pairs(latest) do latest[name] = nil end
   for name, variable in pairs(variables) do latest[name] = variable.read() end
   if not input or input.apart then return end
-  if ok then table.insert(session.inputs, { text = text, expression = input.expression, results = results, from = from })
+  if ok then table.insert(session.inputs, { text = text, expression = input.expression, results = results, as_text = input.as_text, from = from })
   else note_failure(input) end
 end
 

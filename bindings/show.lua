@@ -110,6 +110,8 @@ function show.print(text)
 end
 
 function show.answer(conversation, ...)
+  local first, input = ..., core.part "lacuna.session".current()
+  if input and type(first) == "table" and (getmetatable(first) or {}).__name == "figure" then input.as_text = true end
   if not printed then waiting = nil end
   printed = false
   local text = written(...)

@@ -55,6 +55,7 @@ end)
 t.test("what can't be had says what is missing", function()
   t.equal({ compared(star:recipes "sublimation_radius", "kama_2009") }, { "-", "missing: backwarming_factor" })
   t.equal({ compared(star:recipes "sublimation_radius", "from_angle") }, { "-", "missing: sublimation_radius_angle (here it follows from sublimation_radius)" })
+  t.equal({ compared(star:recipes "gap_width", "from_angle") }, { "-", "missing: gap_width_angle" }, "an inverse recipe is not told to be had by what gives the name itself")
   t.equal({ compared(star:recipes "rim_resolved_by_array", "field_unlimited") }, { "-", "missing: shortest_baseline" })
   t.equal({ compared(lac.case { distance = "150 pc" }:recipes "gap_width", "kanagawa_2016") },
     { "-", "missing: planet_semi_major_axis, stellar_mass, planet_mass, bolometric_flux, viscosity_alpha" })

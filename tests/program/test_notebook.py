@@ -85,6 +85,7 @@ def keep_what_went_well(folder):
     session.go("return bits.one")
     session.go("(print)('said')")
     session.go("'text', nil, 5")
+    session.go("figure { of = c, show = 'rim_radius_angle', along = { rim_radius = sweep('0.1 au', '1 au', 5) } }")
     session.type("while true do end\r")
     session.wait(r"\n")
     time.sleep(0.3)
@@ -94,7 +95,7 @@ def keep_what_went_well(folder):
     session.answer("help()")
     session.answer("more()")
     shown = session.answer('keep "kept.lua"')
-    check(shown == "kept 21 inputs in kept.lua\n", "keep says what it wrote", shown)
+    check(shown == "kept 22 inputs in kept.lua\n", "keep says what it wrote", shown)
     text = read(folder, "kept.lua")
     check(re.match(r"-- A session of Lacuna [0-9.]+, kept on \d{4}-\d\d-\d\d\nsettings \{ seed = 5, draws = 500 \}\n\nlocal c = case", text),
           "the script begins with version, date, seed and draws", text)
@@ -108,13 +109,13 @@ def keep_what_went_well(folder):
 def keep_again(session):
     folder = session.folder
     session.go("spread.normal(0, 1) * 1")
-    check(session.answer('keep "kept.lua"') == "kept 22 inputs in kept.lua\n", "the session's own file is replaced", session.screen)
+    check(session.answer('keep "kept.lua"') == "kept 23 inputs in kept.lua\n", "the session's own file is replaced", session.screen)
     runs_the_same(session, "kept.lua", "and has what came since")
     write(folder, "mine.lua", "-- mine\n")
     refusal = 'keep: mine.lua exists, and not as this session has written it; keep("mine.lua", true) replaces it'
     session.fail('keep "mine.lua"', refusal)
     check(read(folder, "mine.lua") == "-- mine\n", "and is left as it was")
-    check(session.answer('keep("mine.lua", true)') == "kept 22 inputs in mine.lua\n", "unless that is asked for", session.screen)
+    check(session.answer('keep("mine.lua", true)') == "kept 23 inputs in mine.lua\n", "unless that is asked for", session.screen)
     session.fail("keep()", 'keep wants a file\'s name, like keep "file.lua"; got nothing')
     session.fail('keep "none/x.lua"', "cannot write none/x.lua: No such file or directory")
     session.fail('do keep "x.lua" end', 'keep is an input of its own: type keep "file.lua" alone')
