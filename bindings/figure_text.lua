@@ -191,9 +191,9 @@ function words.alternative(figure) return alternative[figure.kind](figure.data) 
 
 -- Captions ------------------------------------------------------------------------------------------------------------------------
 
-local function symbol_of(axis) return axis.name and not axis.verdict and core.find(axis.name) == axis.name and text.symbol(axis.name) or nil end
-local function named(axis)
-  local symbol = symbol_of(axis)
+local function symbol_of(axis, write) return axis.name and not axis.verdict and core.find(axis.name) == axis.name and (write or text.symbol)(axis.name) or nil end
+local function named(axis, write)
+  local symbol = symbol_of(axis, write)
   return (axis.verdict == "share" and "share of draws: " or "") .. axis.words .. (symbol and " " .. symbol or "")
 end
 
@@ -210,7 +210,8 @@ local function given_in_words(figure)
     for _, step in ipairs(core.steps(figure.case, shown)) do
       if not step.row and not skip[step.name] then
         skip[step.name] = true
-        parts[#parts + 1] = ("%s = %s"):format(step.name:gsub("_", " "), figure.written[step.name] or text.given(figure.case, step.name))
+        local written = figure.written[step.name] or text.given(figure.case, step.name)
+        parts[#parts + 1] = step.name:gsub("_", " ") .. (written:find "^from " and " " or " = ") .. written
       end
     end
   end
@@ -223,11 +224,11 @@ end
 
 local caption = {}
 
-function caption.curve(figure, add)
+function caption.curve(figure, add, write)
   local d = figure.data
   local bars = false
   for _, s in ipairs(d.series) do bars = bars or s.low68 end
-  add(("%s along %s"):format(named(d.y), named(d.x)))
+  add(("%s along %s"):format(named(d.y, write), named(d.x, write)))
   if bars then add(("Lines: medians; bands: the central 68 and 95 %% of %s"):format(draws_in_words(figure)))
   elseif d.draws then add("Of " .. draws_in_words(figure)) end
   for _, level in ipairs(d.levels) do
@@ -237,9 +238,9 @@ function caption.curve(figure, add)
   if #d.marks > 0 then add "Grey: spectral bands" end
 end
 
-function caption.map(figure, add)
+function caption.map(figure, add, write)
   local d = figure.data
-  add(("%s over %s and %s"):format(named(d.z), named(d.x), named(d.y)))
+  add(("%s over %s and %s"):format(named(d.z, write), named(d.x, write), named(d.y, write)))
   if d.draws then add((d.z.verdict and "Shares of " or "Medians of ") .. draws_in_words(figure)) end
   say_undefined(add, not d.z.verdict and d.undefined, d.z.words, d.draws)
   local turn = d.contours[1]
@@ -247,9 +248,9 @@ function caption.map(figure, add)
   elseif turn then add(("Line: %s turns"):format(d.verdict:gsub("_", " "))) end
 end
 
-function caption.plane(figure, add)
+function caption.plane(figure, add, write)
   local d = figure.data
-  add(("%s against %s of %d target%s"):format(named(d.y), named(d.x), #d.points, #d.points == 1 and "" or "s"))
+  add(("%s against %s of %d target%s"):format(named(d.y, write), named(d.x, write), #d.points, #d.points == 1 and "" or "s"))
   add("Medians and central 68 % of " .. draws_in_words(figure))
   if d.verdict then add(("Filled: %s in half of the draws or more"):format(d.verdict:gsub("_", " "))) end
   local lines = lines_in_words(d)
@@ -257,10 +258,10 @@ function caption.plane(figure, add)
   if #d.left_out > 0 then add("Not shown, as not both can be derived: " .. listed(d.left_out)) end
 end
 
--- f:caption(): what is shown, of how many draws, and what is given.
-function words.caption(figure)
+-- f:caption(): what is shown, of how many draws, and what is given; symbols as `write` has them, or as plain text.
+function words.caption(figure, write)
   local sentences = {}
-  caption[figure.kind](figure, function(sentence) sentences[#sentences + 1] = sentence:gsub("^%l", string.upper) .. "." end)
+  caption[figure.kind](figure, function(sentence) sentences[#sentences + 1] = sentence:gsub("^%l", string.upper) .. "." end, write)
   if figure.target then sentences[1] = sentences[1]:gsub("%.$", "") .. (", %s%s."):format(figure.target, figure.variant and " (" .. figure.variant .. ")" or "") end
   if figure.case then sentences[#sentences + 1] = given_in_words(figure) end
   return table.concat(sentences, " ")

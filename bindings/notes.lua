@@ -91,10 +91,11 @@ local function steps_of(texts, text)
   return texts[text]
 end
 
--- The relations used: name -> recipe ("given" without one) -> { relation, targets }, in the order of the glossary.
-function notes.relations_used(study)
+-- The relations used: name -> recipe ("given" without one) -> { relation, targets }, in the order of the glossary; in one group alone, if that is said.
+function notes.relations_used(study, group)
   local used, texts = {}, {}
-  for_cells(study, function(_, row, cell)
+  for_cells(study, function(column, row, cell)
+    if group and column.group ~= group.name then return end
     for _, step in ipairs(steps_of(texts, cell.steps)) do
       local recipes = used[step.name] or ordered()
       used[step.name] = recipes
@@ -174,16 +175,24 @@ local function why_not(study)
   return said
 end
 
-local function unlike_recipes(study, used)
-  local said = {}
-  for name, recipes in each(used) do
-    if #recipes.keys > 1 then
-      local parts = {}
-      for by, targets in each(recipes) do
-        parts[#parts + 1] = (by == "given" and "given for " or by:gsub("_", " ") .. " for ") .. named(targets.keys, study)
+-- Where targets differ within a group; what its `using` or its givens change for all of them is no such difference.
+local function unlike_recipes(study)
+  local mixed = ordered()
+  for _, group in ipairs(study.groups) do
+    for name, recipes in each(notes.relations_used(study, group)) do
+      for by, targets in each(#recipes.keys > 1 and recipes or ordered()) do
+        local all = at(at(mixed, name), by)
+        for _, target in ipairs(targets.keys) do at(all, target, yes) end
       end
-      said[#said + 1] = name .. ": " .. table.concat(parts, "; ")
     end
+  end
+  local said = {}
+  for name, recipes in each(mixed) do
+    local parts = {}
+    for by, targets in each(recipes) do
+      parts[#parts + 1] = (by == "given" and "given for " or by:gsub("_", " ") .. " for ") .. named(targets.keys, study)
+    end
+    said[#said + 1] = name .. ": " .. table.concat(parts, "; ")
   end
   return said
 end
@@ -395,7 +404,9 @@ local function givens_for_all(study)
       if not (group.name and study.groups[1].objects[name]) then objects[name] = object end
     end
     local words = givens_in_words(group.own, group.written, objects, study.set)
-    if words ~= "" then said[#said + 1] = (group.name and group.name .. ": " or "") .. words end
+    local parts = words ~= "" and { words } or {}
+    for _, name in ipairs(core.names()) do if group.chosen[name] then parts[#parts + 1] = name .. " by " .. group.chosen[name] end end
+    if #parts > 0 then said[#said + 1] = (group.name and group.name .. ": " or "") .. table.concat(parts, ", ") end
   end
   return said
 end
@@ -408,6 +419,9 @@ local function how_far(study)
   }
 end
 
+-- What a verdict's yes means in a study.
+function notes.criteria(study) return meaning_of_verdicts(study, notes.relations_used(study)) end
+
 -- The notes of a study, empty ones left out.
 function notes.of(study)
   local used = notes.relations_used(study)
@@ -418,7 +432,7 @@ function notes.of(study)
     { heading = "Along a sweep", lines = along_sweeps(study) },
     { heading = "Yes in half of the draws and more", lines = where_verdicts_turn(study) },
     { heading = "With another recipe", lines = over_recipes(study) },
-    { heading = "Not all targets use the same recipes", lines = unlike_recipes(study, used) },
+    { heading = "Not all targets use the same recipes", lines = unlike_recipes(study) },
     { heading = "Outside a recipe's range of validity", lines = outside_validity(study) },
     { heading = "Undefined draws", lines = undefined_draws(study) },
     { heading = "Resolved means", lines = meaning_of_verdicts(study, used) },

@@ -65,8 +65,8 @@ static int write_file(lua_State *L) {
   } else {
     char real[PATH_MAX];
     const char *final = realpath(path, real) ? real : path;
-    char *temporary = lua_newuserdatauv(L, strlen(final) + sizeof ".XXXXXX", 0);
-    strcpy(stpcpy(temporary, final), ".XXXXXX");
+    char *temporary = lua_newuserdatauv(L, strlen(final) + sizeof ".unfinished-XXXXXX", 0); /* leftovers.lua knows the name */
+    strcpy(stpcpy(temporary, final), ".unfinished-XXXXXX");
     good = write_and_rename(final, temporary, text, length);
   }
   return good ? 0 : lac_error(L, "cannot write %s: %s", path, strerror(errno));

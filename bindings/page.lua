@@ -67,7 +67,7 @@ local MOST_NAMES = 40 -- of one answer; the table has all
 
 local function names_with_shares(rows, plain)
   local parts = {}
-  for i = 1, math.min(#rows, MOST_NAMES) do parts[i] = html(rows[i].name) .. (plain and "" or " (" .. format.percent(rows[i].cell.share) .. ")") end
+  for i = 1, math.min(#rows, MOST_NAMES) do parts[i] = html(rows[i].name) .. (plain and "" or " (" .. verdicts.percent(rows[i].cell.share) .. ")") end
   return table.concat(parts, ", ") .. (#rows > MOST_NAMES and (" and %d others: see the table"):format(#rows - MOST_NAMES) or "")
 end
 

@@ -7,16 +7,33 @@
 --   words_of(name)      "gap_width" as "gap width"
 --   in_words(sentence)  the same of all names in it
 --   list(names, most)   "A", "A and B", "A, B and C", "A, B and 9 others"
---   count(some, all)    "Marrow 3", "both targets", "all 12 targets", "3 of the 12 targets (A, B and C)"
+--   count(some, all)    "Marrow 3", "both targets", "all 12 targets", "3 of the 12 targets (A, B and C)", "11 of the 12 targets"
+--   percent(share)      "89.6 %" of what is less than 90 %
 --   recipe_name(name, by)   "Kanagawa et al. 2016" of a recipe that is called after its paper, else "half fringe"
 --   recipe_words(words) "gap_width by kanagawa_2016 instead of ..." as it is said in a sentence
 --   reason_words(words) "rim_elements_by_array < elements_required 1" likewise
 local core = ...
 local bibliography = core.part "lacuna.bibliography"
+local format = core.part "lacuna.format"
 local verdicts = {}
 
 local MOSTLY, HARDLY = 0.9, 0.1 -- shares of draws from which, and up to which, one word will do
 verdicts.MOSTLY, verdicts.HARDLY = MOSTLY, HARDLY
+local MOST_NAMES = 9 -- of targets that are told one by one; beyond, the table will do
+
+-- A share in per cent; between the two with as many digits as it takes to tell it from them.
+function verdicts.percent(share)
+  local text, places = format.percent(share), 0
+  local function is_an_end()
+    local number = tonumber(text:match "[%d.]+")
+    return number == 100 * HARDLY or number == 100 * MOSTLY
+  end
+  while share > HARDLY and share < MOSTLY and is_an_end() and places < 9 do
+    places = places + 1
+    text = ("%%.%df %%%%"):format(places):format(100 * share)
+  end
+  return text
+end
 
 function verdicts.words_of(name) return (name:gsub("semi_major", "semi-major"):gsub("_", " ")) end
 
@@ -43,7 +60,8 @@ function verdicts.count(some, all)
   if #some == 0 then return all == 1 and "no target" or "none of the " .. all .. " targets" end
   if #some == 1 then return some[1].name end
   if #some == all then return all == 2 and "both targets" or "all " .. all .. " targets" end
-  return ("%d of the %d targets (%s)"):format(#some, all, verdicts.list(names_of(some)))
+  local share = ("%d of the %d targets"):format(#some, all)
+  return #some <= MOST_NAMES and ("%s (%s)"):format(share, verdicts.list(names_of(some))) or share
 end
 
 function verdicts.recipe_name(name, by)
