@@ -7,6 +7,7 @@ local equation = core.part "lacuna.equation"
 local format = core.part "lacuna.format"
 local records = core.part "lacuna.record"
 local text = core.part "lacuna.text"
+local verdicts = core.part "lacuna.verdicts"
 
 local notes = {}
 
@@ -337,6 +338,20 @@ local function undefined_draws(study)
   return said
 end
 
+-- Texts that may have been meant as givens.
+local function doubtful_texts(study)
+  local said = {}
+  for _, header in ipairs(study.texts) do
+    local cell = study.doubtful and study.doubtful[header]
+    if cell then
+      local near = core.nearest((header:lower():gsub("[%s-]+", "_")))
+      said[#said + 1] = ('%s: "%s" reads like a quantity, but no name of the glossary is called so%s'):format(header, cell,
+        #near > 0 and "; near it are " .. table.concat(near, ", ") or "")
+    end
+  end
+  return said
+end
+
 -- "distance = 120 pc, band = H"; what is set on the command line stands in a note of its own.
 local function givens_in_words(givens, written, objects, set)
   local parts = {}
@@ -356,16 +371,6 @@ local function set_on_command_line(study)
   return words ~= "" and { words .. "; before what the study says" } or {}
 end
 
--- Between which points of its one sweep a verdict's share crosses one half: the value there, on the line between them; in the sweep's unit.
-local function turns_at(cell, sweep)
-  for i = 2, #cell.shares do
-    local before, after = cell.shares[i - 1] - 0.5, cell.shares[i] - 0.5
-    if (before < 0) ~= (after < 0) then
-      return sweep.values[i - 1] + (sweep.values[i] - sweep.values[i - 1]) * before / (before - after), after >= 0
-    end
-  end
-end
-
 -- "rim_resolved_by_array: from 95 m up for Marrow 3, ..." for a study along one sweep.
 local function where_verdicts_turn(study)
   local sweep = study.sweeps and #study.sweeps == 1 and study.sweeps[1]
@@ -373,7 +378,7 @@ local function where_verdicts_turn(study)
   local columns = ordered()
   for_cells(study, function(column, row, cell)
     if not cell.shares then return end
-    local value, up = turns_at(cell, sweep)
+    local value, up = verdicts.turns_at(cell, sweep)
     local words = value and ("%s %s"):format(up and "from" or "up to", format.with_unit(format.number(value, 3), sweep.unit_text))
       or cell.shares[1] >= 0.5 and "all along" or "nowhere"
     table.insert(at(at(columns, column.label), words), row.name)
@@ -427,6 +432,7 @@ function notes.of(study)
   local used = notes.relations_used(study)
   local list = {
     { heading = "Failed", lines = failed_targets(study) },
+    { heading = "Carried along as texts, not used", lines = doubtful_texts(study) },
     { heading = "Not derived (—)", lines = not_derived(study) },
     { heading = "Why not (yes in less than half of the draws; medians)", lines = why_not(study) },
     { heading = "Along a sweep", lines = along_sweeps(study) },

@@ -276,7 +276,7 @@ local function make(fields)
   for i, record in ipairs(result.records) do rows[i] = new_row(plan, result.targets[i], record) end
   if not command.shard then refuse_emptiness(plan.columns, rows) end
   local study = setmetatable({
-    title = plan.title, texts = list.texts, groups = plan.groups, columns = plan.columns, hidden = plan.hidden, set = plan.set, sweeps = plan.set.sweeps,
+    title = plan.title, texts = list.texts, doubtful = list.doubtful, groups = plan.groups, columns = plan.columns, hidden = plan.hidden, set = plan.set, sweeps = plan.set.sweeps,
     rows = command.shard and rows or selection.apply(plan, rows), plan = plan, result = result, derive = fields.derive,
     figures = fields.figures,
   }, study_metatable)

@@ -2,8 +2,8 @@
 -- What a study answers, in plain words: for each verdict which targets are resolved in most of the draws, in some, in hardly any; and what
 -- another recipe would make of it. The page and the text of a report are made from it.
 --
---   of(study)           a list of { column, words = "the rim is resolved by the array", whole = without draws, yes, between, no, missing = lists of
---                       { name, cell }, recipes = { { words, asked, names = of targets whose verdict changes, low, high = shares } }, reasons }
+--   of(study)           a list of { column, number = its place, words = "the rim is resolved by the array", yes, between, no, missing = lists of { name, cell },
+--                       of_points = whether it goes along a sweep, recipes = { { words, asked, names = of targets whose verdict changes, low, high = shares } }, reasons }
 --   words_of(name)      "gap_width" as "gap width"
 --   in_words(sentence)  the same of all names in it
 --   list(names, most)   "A", "A and B", "A, B and C", "A, B and 9 others"
@@ -148,16 +148,44 @@ function verdicts.has_draws(study)
   return false
 end
 
+-- Between which points of its one sweep a verdict's share crosses one half: the value there, on the line between them, in the sweep's unit; and
+-- whether it holds from there on.
+function verdicts.turns_at(cell, sweep)
+  for i = 2, #cell.shares do
+    local before, after = cell.shares[i - 1] - 0.5, cell.shares[i] - 0.5
+    if (before < 0) ~= (after < 0) then
+      return sweep.values[i - 1] + (sweep.values[i] - sweep.values[i - 1]) * before / (before - after), after >= 0
+    end
+  end
+end
+
+-- Where along the study's one sweep a verdict holds in half of the draws or more: { sweep, from, up_to, everywhere, nowhere = lists of { name, cell,
+-- value, at = in words } }; nil where it doesn't go along one.
+function verdicts.along(study, one)
+  local sweep = study.sweeps and #study.sweeps == 1 and study.sweeps[1]
+  if not sweep or not one.of_points then return nil end
+  local along = { sweep = sweep, from = {}, up_to = {}, everywhere = {}, nowhere = {} }
+  for _, row in ipairs(study.rows) do
+    local cell = row.cells[one.number]
+    local value, up
+    if cell.shares then value, up = verdicts.turns_at(cell, sweep) end
+    local list = value and (up and along.from or along.up_to) or not cell.missing and ((cell.shares and cell.shares[1] or cell.share) >= 0.5 and along.everywhere or along.nowhere)
+    if list then list[#list + 1] = { name = row.name, cell = cell, value = value, at = value and format.with_unit(format.number(value, 3), sweep.unit_text) } end
+  end
+  return along
+end
+
 function verdicts.of(study)
   local found = {}
   for number, column in ipairs(study.columns) do
     if column.verdict then
-      local one = { column = column, words = sentence_of(column), yes = {}, between = {}, no = {}, missing = {},
+      local one = { column = column, number = number, words = sentence_of(column), yes = {}, between = {}, no = {}, missing = {},
         recipes = verdicts.recipes(study, number), reasons = reasons(study, number) }
       for _, row in ipairs(study.rows) do
         local cell = row.cells[number]
         local kind = cell.missing and "missing" or cell.share >= MOSTLY and "yes" or cell.share <= HARDLY and "no" or "between"
         table.insert(one[kind], { name = row.name, cell = cell })
+        one.of_points = one.of_points or cell.shares ~= nil
       end
       found[#found + 1] = one
     end

@@ -342,6 +342,18 @@ t.test("cases are made anew when they are asked for, and let go", function()
   t.equal(study.rows[1].variants.short, nil)
 end)
 
+t.test("a text that reads like a quantity is noted", function()
+  local function note_of(fields)
+    for _, note in ipairs(quietly { targets = { fields }, given = { distance = "100 pc" }, ask = { "distance" } }.notes) do
+      if note.heading == "Carried along as texts, not used" then return note.lines end
+    end
+  end
+  local lines = note_of { name = "A", star_temperature_of_mine = "9000 K", catalogue = "HQ 12", declination = "-14 07 55", remarks = "5 nights" }
+  t.equal(#lines, 1)
+  t.equal(lines[1]:find '^star_temperature_of_mine: "9000 K" reads like a quantity, but no name of the glossary is called so' ~= nil, true, lines[1])
+  t.equal(note_of { name = "A", remarks = "bright" }, nil)
+end)
+
 t.test("files are whole or absent", function()
   write("kept.csv", "before")
   t.raises(function() quietly { targets = {}, ask = asked, csv = path "kept.csv" } end, "empty")
