@@ -45,9 +45,9 @@ local function plural(count, one, many) return count == 1 and one or many or one
 -- Targets and instruments ------------------------------------------------------------------------------------------------------------
 
 local function targets_sentence(study)
-  local names = verdicts.names_of(study.rows)
-  if #names == 1 then return ("The target is %s."):format(names[1]) end
-  return ("The sample has %d targets: %s."):format(#names, verdicts.list(names, 12))
+  local names, selected = verdicts.names_of(study.rows), study.selected
+  local words = #names == 1 and "The target is " .. names[1] or ("The sample has %d targets: %s"):format(#names, verdicts.list(names, 12))
+  return words .. (selected and (", chosen out of %d by %s"):format(selected.of, verdicts.in_words(selected.words)) or "") .. "."
 end
 
 -- "20 m:330 m:6" of the command line in words.

@@ -431,6 +431,7 @@ function notes.criteria(study) return meaning_of_verdicts(study, notes.relations
 function notes.of(study)
   local used = notes.relations_used(study)
   local list = {
+    { heading = "Shown", lines = study.selected and { ("%d of %d targets: %s"):format(#study.rows, study.selected.of, study.selected.words) } or {} },
     { heading = "Failed", lines = failed_targets(study) },
     { heading = "Carried along as texts, not used", lines = doubtful_texts(study) },
     { heading = "Not derived (—)", lines = not_derived(study) },

@@ -98,7 +98,7 @@ end
 -- Tables ------------------------------------------------------------------------------------------------------------------------------
 
 -- Notes that belong below the table in print; the others stand with the derivations.
-local below_table = { ["Not derived (—)"] = true, ["Failed"] = true, ["Undefined draws"] = true, ["How far this goes"] = true }
+local below_table = { ["Not derived (—)"] = true, ["Shown"] = true, ["Failed"] = true, ["Undefined draws"] = true, ["How far this goes"] = true }
 
 local function with_notes(study, wanted)
   local notes = {}

@@ -275,9 +275,11 @@ local function make(fields)
   local rows = {}
   for i, record in ipairs(result.records) do rows[i] = new_row(plan, result.targets[i], record) end
   if not command.shard then refuse_emptiness(plan.columns, rows) end
+  local shown, selected = rows, nil
+  if not command.shard then shown, selected = selection.apply(plan, rows) end
   local study = setmetatable({
     title = plan.title, texts = list.texts, doubtful = list.doubtful, groups = plan.groups, columns = plan.columns, hidden = plan.hidden, set = plan.set, sweeps = plan.set.sweeps,
-    rows = command.shard and rows or selection.apply(plan, rows), plan = plan, result = result, derive = fields.derive,
+    rows = shown, selected = selected, plan = plan, result = result, derive = fields.derive,
     figures = fields.figures,
   }, study_metatable)
   study.notes = core.part "lacuna.notes".of(study)

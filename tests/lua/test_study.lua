@@ -147,6 +147,8 @@ t.test("a target that fails is told in its row, and the others stand", function(
   t.equal(study.rows[2].cells[1].missing, true)
   t.equal(printed:find("Failed\n  Marrow 3: " .. path "stars.csv" .. ":3:", 1, true) ~= nil, true, printed)
   t.raises(function() return study.rows[2].case end, "contradictory givens")
+  local filtered = of_file("name,distance [pc],parallax [mas]\nTarn,100,10\nMarrow 3,100,11\nTarn 2,40,25\n", { ask = { "distance" }, where = { "distance", above = "50 pc" } })
+  t.equal({ filtered.rows[1].name, filtered.rows[2].name, #filtered.rows }, { "Tarn", "Marrow 3", 2 }, "shown whatever the filter says")
 end)
 
 -- What a study with these fields raises, with the script's line before it.
@@ -307,6 +309,9 @@ t.test("filtered as the study says", function()
   t.equal(names_of(study_of_stars { where = { "rim_resolved_by_array", below = 0.5 } }), { "Tarn, 12" })
   local variants = { { name = "short", given = { shortest_baseline = "15 m" }, ask = { "recoverable_scale" } } }
   t.equal(#study_of_stars { variants = variants, where = { "recoverable_scale", variant = "short", above = "1 mas" } }.rows, 3)
+  local few = study_of_stars { where = { "rim_size_angle", above = "1 mas" } }
+  t.equal(few.notes[1], { heading = "Shown", lines = { "1 of 3 targets: rim_size_angle above 1 mas" } })
+  t.equal(study_of_stars { where = { "distance", above = "1 pc" } }.notes[1].heading ~= "Shown", true, "all are shown: nothing to say")
   complains({ targets = stars, ask = asked, given = instrument, where = { "rim_size_angle", above = "1 arcsec" } }, "study: no target passes the filter, rim_size_angle above 1 arcsec; 3 were worked out")
   complains({ targets = stars, ask = asked, where = { "rim_size_angle", over = "1 mas" } }, "study: where: there is no 'over' here; there are above, below, variant")
   complains({ targets = stars, ask = asked, where = { "rim_size_angle" } }, "study: where: rim_size_angle wants above = ... or below = ...")
