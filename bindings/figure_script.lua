@@ -207,7 +207,7 @@ end
 local COLOURS = 9 -- the width of the bar of colours
 function script:lay_out(d, width, height)
   local rows = rows_of(self.legend, width - 8)
-  local top, bottom = #rows > 0 and 4 + #rows * LINE or 8, 28
+  local top, bottom = #rows > 0 and 4 + #rows * LINE or 8, 29
   local tall = height - top - bottom
   local y_ticks, y_labels = ticks_of(d.y, self.ranges.y, tall, false)
   local y_label = axis_label(d.y, tall)
@@ -226,7 +226,7 @@ function script:lay_out(d, width, height)
   self:axis("x", d.x, self.ranges.x, (ticks_of(d.x, self.ranges.x, wide, true)))
   self:axis("y", d.y, self.ranges.y, y_ticks)
   local middle, half_way = (left + wide / 2) / width, (bottom + tall / 2) / height
-  self:label(table.concat(axis_label(d.x, wide), " "), "screen %.4f, screen %.4f center", middle, 7 / height)
+  self:label(table.concat(axis_label(d.x, wide), " "), "screen %.4f, screen %.4f center", middle, 8 / height) -- a subscript reaches 7 points below
   for i, line in ipairs(y_label) do self:label(line, "screen %.4f, screen %.4f center rotate by 90", (11 * i - 4) / width, half_way) end
   if self.ranges.cb then
     self:axis("cb", d.z, self.ranges.cb, cb_ticks)

@@ -243,8 +243,10 @@ function caption.map(figure, add, write)
   add(("%s over %s and %s"):format(named(d.z, write), named(d.x, write), named(d.y, write)))
   if d.draws then add((d.z.verdict and "Shares of " or "Medians of ") .. draws_in_words(figure)) end
   say_undefined(add, not d.z.verdict and d.undefined, d.z.words, d.draws)
-  local turn = d.contours[1]
-  if turn and turn.share then add(("Solid line: %s in half of the draws; dashed: in 16 and 84 %%"):format(d.verdict:gsub("_", " ")))
+  local turn, drawn = d.contours[1], 0
+  for _, one in ipairs(d.contours) do drawn = drawn + #one.lines end
+  if turn and drawn == 0 then add(("%s turns nowhere on it"):format(d.verdict:gsub("_", " ")))
+  elseif turn and turn.share then add(("Solid line: %s in half of the draws; dashed: in 16 and 84 %%"):format(d.verdict:gsub("_", " ")))
   elseif turn then add(("Line: %s turns"):format(d.verdict:gsub("_", " "))) end
 end
 
