@@ -33,13 +33,16 @@ local function each(list)
   end
 end
 
--- "Marrow 3, Quillon A"; "all targets"; "all targets but Marrow 3".
+local MOST_NAMES = 20 -- beyond, the table says which
+
+-- "Marrow 3, Quillon A"; "all targets"; "all targets but Marrow 3"; "44 of the 60 targets".
 local function named(names, study)
   local missing, has = {}, {}
   for _, name in ipairs(names) do has[name] = true end
   for _, row in ipairs(study.rows) do if not has[row.name] then missing[#missing + 1] = row.name end end
   if #study.rows > 1 and #missing == 0 then return "all targets" end
   if #study.rows > 4 and #missing <= 2 then return "all targets but " .. table.concat(missing, " and ") end
+  if #names > MOST_NAMES then return ("%d of the %d targets"):format(#names, #study.rows) end
   return table.concat(names, ", ")
 end
 

@@ -2,8 +2,8 @@
 -- The report: a folder with all that a proposal takes from a study. Every file is whole or absent; the page and the manifest are written last,
 -- so a folder with a manifest is a whole report. The same study gives the same bytes: no times, no machine and no paths stand in it.
 --
---   write(study, folder, facts)   facts = { study_file = path, inputs = { paths }, texts = { [path] = what was read }, command = { set, only =
---                                 lists of texts }, settings = { seed, draws }, version }: all may be left out
+--   write(study, folder, facts)   facts = { study_file = path, inputs = { paths }, texts = { [path] = what was read }, command = { set, only,
+--                                 arguments = lists of texts }, settings = { seed, draws }, version }: all may be left out
 --   ask(study, folder, options, facts)   the same, where a script asks for it: a folder with files is refused but with { force = true }
 --
 -- Both return { folder, files = { names }, missing = { what could not be written, and why } }, which prints itself.

@@ -225,7 +225,7 @@ function run.facts(result)
   local study_file = script.path or script.text and script.name
   local facts = {
     study_file = study_file, inputs = {}, texts = { [study_file or ""] = script.text },
-    command = { set = set_texts(), only = command.only }, settings = { seed = settings.seed, draws = settings.draws },
+    command = { set = set_texts(), only = command.only, arguments = command.arguments }, settings = { seed = settings.seed, draws = settings.draws },
     version = command.version, elapsed = result.bar.elapsed, peak_memory = result.bar.peak,
   }
   if input then facts.inputs[1], facts.texts[input.path] = input.path, input.text end

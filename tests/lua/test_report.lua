@@ -267,6 +267,11 @@ t.test("many targets, in the draft and in tables that fit on pages", function()
   local name = report_of { targets = many, ask = { "rim_resolved_by_array" } }
   has(read(name .. "/feasibility.txt"), "and 108 others")
   t.equal(select(2, read(name .. "/table.tex"):gsub("\\begin{table%*}", "")), 3)
+  has(read(name .. "/table.tex"), "of them. This estimates geometric feasibility") -- sentences stay sentences
+  local rims = {} -- 0.2 au are half a fringe spacing, 1.65 um / (2 92 m), at 108 pc: seven are nearer
+  for i = 1, 60 do rims[i] = { name = "Star " .. i, distance = 50 + 8 * i .. " pc", rim_radius = "0.1 au" } end
+  local _, _, study = report_of { targets = rims, ask = { "rim_resolved_by_array" } }
+  t.equal(study.notes[1].lines[1][2]:find "^rim_elements_by_array < elements_required 1: 0%.%d+ to 0%.%d+ for 53 of the 60 targets$" ~= nil, true, study.notes[1].lines[1][2])
 end)
 
 os.execute("rm -r " .. folder)

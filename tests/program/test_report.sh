@@ -31,6 +31,12 @@ rm -r again
 command=$(sed -n 's/^# to make it again, in this folder: lacuna //p' demo/manifest.txt)
 (cd demo && eval "'$lacuna' $command" >../said 2>&1) && diff -r demo again >differs
 result $? "the manifest's command makes it again"
+echo 'study { targets = { { name = "A", distance = arg[1] } }, ask = { "parallax" } }' >arguments.lua
+"$lacuna" arguments.lua --out with '50 ± 2 pc' >/dev/null 2>&1
+command=$(sed -n 's/^# to make it again, in this folder: lacuna //p' with/manifest.txt)
+rm -r again
+(cd with && eval "'$lacuna' $command" >../said 2>&1) && diff -r with again >differs
+result $? "with the script's own arguments"
 for part in 1 2 3; do "$lacuna" "$scripts/demo_study.lua" --shard $part/3 --out part$part >/dev/null 2>&1; done
 "$lacuna" merge part1 part2 part3 --out merged >/dev/null 2>&1
 diff -r demo merged >differs
