@@ -153,7 +153,11 @@ local function remove_former(out)
   file:close()
   os.remove(out:path "manifest.txt")
   for name in text:gmatch "\n%x+  ([^\n]+)" do
-    if name ~= "records" and not name:find "^/" and not name:find("..", 1, true) then os.remove(out:path(name)) end
+    if name ~= "records" and not name:find "^/" and not name:find("..", 1, true) then
+      os.remove(out:path(name))
+      local folder = name:match "^(.*)/"
+      if folder then os.remove(out:path(folder)) end -- once it is empty
+    end
   end
 end
 

@@ -236,6 +236,15 @@ t.test("a figure that can't be made is left out, and the line says why", functio
   end
 end)
 
+t.test("no figure of a former report is left", function()
+  local name = report_of { figures = { { show = "rim_size_angle", against = "distance", name = "former" } } }
+  t.equal(read(name .. "/figures/former.csv") ~= nil, true)
+  local study = quietly { targets = stars, given = array, ask = { "rim_size_angle" } }
+  study:report(folder .. "/" .. name, { force = true })
+  t.equal(read(name .. "/figures/former.csv"), nil)
+  t.equal(os.rename(folder .. "/" .. name .. "/figures", folder .. "/there"), nil, "nor their folder")
+end)
+
 t.test("slips in figures are found before anything is worked out", function()
   local shown = { show = "rim_size_angle", against = "distance" }
   for field, wrong in pairs { target = "Elm", variant = "at noon" } do
