@@ -83,17 +83,24 @@ local function names_bibtex(words)
   return table.concat(names, " and ")
 end
 
--- An article has a volume or a page in its journal; a book its publisher in the journal's place; else it is something of a title alone.
+-- An article has a title and a volume or a page in its journal; a book its publisher in the journal's place. What has no title here is told by its
+-- place alone, as papers in astronomy cite: BibTeX wants titles of articles, and none is made up.
 local function kind_of(source)
-  if source.volume or source.page then return "article", "journal" end
+  if source.title and (source.volume or source.page) then return "article", "journal" end
   if source.title and source.journal then return "book", "publisher" end
   return "misc", "howpublished"
+end
+
+-- "ApJ 579, 694"
+local function place_of(source)
+  local place = source.journal and source.volume and source.journal .. " " .. source.volume or source.journal or source.volume
+  return place and source.page and place .. ", " .. source.page or place or source.page
 end
 
 local function entry_bibtex(key, entry)
   local lines = {}
   local function field(name, text)
-    if text then lines[#lines + 1] = ("  %-9s = {%s},"):format(name, table_tex.escaped(text)) end
+    if text then lines[#lines + 1] = ("  %-12s = {%s},"):format(name, table_tex.escaped(text)) end
   end
   if entry.words then
     field("key", key)
@@ -104,10 +111,12 @@ local function entry_bibtex(key, entry)
   local kind, journal = kind_of(source)
   field("author", names_bibtex(source.authors))
   field("title", source.title)
-  field(journal, source.journal)
+  field(journal, kind == "misc" and place_of(source) or source.journal)
   field("year", source.year)
-  field("volume", source.volume)
-  field("pages", source.page)
+  if kind ~= "misc" then
+    field("volume", source.volume)
+    field("pages", source.page)
+  end
   return "@" .. kind .. "{" .. key .. ",\n" .. table.concat(lines, "\n") .. "\n}\n"
 end
 

@@ -147,6 +147,14 @@ function document.derivations(study, row, chains, cited)
   return table.concat(lines, "\n") .. "\n"
 end
 
+-- A figure's caption, its symbols as in equations.
+function document.caption(figure)
+  local caption = figure:caption(function(name) return "\1" .. name .. "\2" end)
+  return (caption:gsub("([^\1]*)\1?([^\2]*)\2?", function(words, name)
+    return escaped(words) .. (name ~= "" and "$" .. core.entry(name).symbol .. "$" or "")
+  end))
+end
+
 -- The document that takes the parts in.
 function document.whole(title, figures, date, has_sources)
   local lines = {
@@ -160,7 +168,7 @@ function document.whole(title, figures, date, has_sources)
   add("\\date{" .. date .. "}")
   add "\\begin{document}\n\\maketitle\n\\section*{Technical feasibility}\n\\input{feasibility}\n\\input{table}"
   for _, figure in ipairs(figures) do
-    add("\\begin{figure}\n\\centering\\includegraphics{" .. figure.file .. "}\n\\caption{" .. escaped(figure.caption) .. "}\n\\end{figure}")
+    add("\\begin{figure}\n\\centering\\includegraphics{" .. figure.file .. "}\n\\caption{" .. figure.caption_tex .. "}\n\\end{figure}")
   end
   add "\\input{derivations}"
   if has_sources then add "\\bibliographystyle{unsrt}\n\\bibliography{references}" end

@@ -43,9 +43,9 @@ end
 -- Targets and instruments ------------------------------------------------------------------------------------------------------------
 
 local function targets_sentence(study)
-  local names = verdicts.names_of(study.rows)
-  if #names == 1 then return ("The target is %s."):format(names[1]) end
-  return ("The sample has %d targets: %s."):format(#names, english.list(names, 12))
+  local names, selected = verdicts.names_of(study.rows), study.selected
+  local words = #names == 1 and "The target is " .. names[1] or ("The sample has %d targets: %s"):format(#names, english.list(names, 12))
+  return words .. (selected and (", chosen out of %d by %s"):format(selected.of, english.in_words(selected.words)) or "") .. "."
 end
 
 -- "20 m:330 m:6" of the command line in words.
@@ -61,6 +61,7 @@ local function givens_of(group, study)
     if object and (group == first or first.objects[name] ~= object) then written = tostring(object) end
     if own then written = group == first and swept(set.written[name] or tostring(own)) end
     if written then parts[#parts + 1] = words_of(name) .. " " .. written end
+    if group.chosen[name] then parts[#parts + 1] = words_of(name) .. " by " .. verdicts.recipe_name(name, group.chosen[name]) end
   end
   return parts
 end
@@ -104,34 +105,31 @@ local function ends_of(study, number)
   return low, high, count
 end
 
--- By how much other recipes would change a quantity: "(over the recipes, ... )".
-local function recipes_of_quantity(study, number, column)
-  local parts = {}
-  for _, change in ipairs(changes.of(study, number)) do
-    local span = changes.span(column, change)
-    if span then
-      parts[#parts + 1] = ("with %s it would be %s %s"):format(verdicts.recipe_words(change.words), span, column.unit == "mag" and "different" or "times that")
-    end
-  end
-  return #parts > 0 and "; " .. table.concat(parts, ", ") or ""
-end
-
 local function quantity_sentence(study, number, column, known)
   local low, high, count = ends_of(study, number)
   if count == 0 then return nil end
   local name = words_of(column.name)
   local said = known and "" or (" (%s)"):format(english.in_words(column.entry.meaning))
-  local others = recipes_of_quantity(study, number, column)
   if count == 1 or low == high then
-    return ("The %s%s%s is %s%s."):format(name, said, #study.rows > 1 and " of " .. low.name or "", value_text(low.cells[number], column), others)
+    return ("The %s%s%s is %s."):format(name, said, #study.rows > 1 and " of " .. low.name or "", value_text(low.cells[number], column))
   end
-  return ("The %s%s runs from %s (%s) to %s (%s)%s."):format(name, said, value_text(low.cells[number], column), low.name,
-    value_text(high.cells[number], column), high.name, others)
+  return ("The %s%s runs from %s (%s) to %s (%s)."):format(name, said, value_text(low.cells[number], column), low.name, value_text(high.cells[number], column), high.name)
 end
 
 -- Verdicts ---------------------------------------------------------------------------------------------------------------------------
 
-local function what_shares_are_of(study) return #(study.sweeps or {}) > 0 and " of the draws and points" or " of the draws" end
+local function what_shares_are_of(one) return one.of_points and " of the draws and points" or " of the draws" end
+
+local function percent_words(share) return (format.percent(share):gsub("^> ", "more than "):gsub("^< ", "less than ")) end
+
+local MOST_SHARES = 5 -- told one by one
+
+-- "12 to 87 %"
+local function span_of(rows)
+  local low, high = math.huge, -math.huge
+  for _, row in ipairs(rows) do low, high = math.min(low, row.cell.share), math.max(high, row.cell.share) end
+  return (verdicts.percent(low):gsub(" %%$", "")) .. " to " .. verdicts.percent(high)
+end
 
 -- "in at least 90 % of the draws for 3 of the 12 targets (A, B and C), in 45 % for Lumbric 2 and in at most 10 % for the others"
 local function by_share(one, all, draws)
@@ -141,8 +139,11 @@ local function by_share(one, all, draws)
     draws = ""
   end
   if #one.yes > 0 then add("in at least " .. format.percent(verdicts.MOSTLY), verdicts.count(one.yes, all)) end
-  for i, row in ipairs(one.between) do open[i] = ("%s%s for %s"):format(format.percent(row.cell.share), #parts == 0 and i == 1 and draws or "", row.name) end
-  if #open > 0 then parts[#parts + 1], draws = "in " .. english.list(open), "" end
+  if #one.between > MOST_SHARES then add("in " .. span_of(one.between), verdicts.count(one.between, all))
+  else
+    for i, row in ipairs(one.between) do open[i] = ("%s%s for %s"):format(verdicts.percent(row.cell.share), #parts == 0 and i == 1 and draws or "", row.name) end
+    if #open > 0 then parts[#parts + 1], draws = "in " .. english.list(open), "" end
+  end
   if #one.no > 0 then add("in at most " .. format.percent(verdicts.HARDLY), verdicts.count(one.no, all)) end
   return table.concat(parts, "; ")
 end
@@ -155,9 +156,9 @@ local function without_draws(one, all)
   return ("%s is %s for %s, and not for %s"):format(subject, verb, verdicts.count(one.yes, all), verdicts.count(one.no, all))
 end
 
-local function single_share(row, study)
+local function single_share(row, one)
   local share = row.cell.share
-  return (share == 0 and "in none" or share == 1 and "in all" or "in " .. format.percent(share)) .. what_shares_are_of(study)
+  return (share == 0 and "in none" or share == 1 and "in all" or "in " .. percent_words(share)) .. what_shares_are_of(one)
 end
 
 local function reason_sentence(one)
@@ -170,94 +171,180 @@ local function reason_sentence(one)
   return ("Where it is not resolved, %s."):format(english.list(parts))
 end
 
+-- "from 43 m (Quillon A) to 290 m (Marrow 8) for 9 of the 12 targets"; few are told one by one.
+local function turning_words(list, word, all)
+  if #list == 0 then return nil end
+  if #list > MOST_SHARES then
+    table.sort(list, function(a, b) return a.value < b.value end)
+    return ("%s %s (%s) to %s (%s) for %s"):format(word, list[1].at, list[1].name, list[#list].at, list[#list].name, verdicts.count(list, all))
+  end
+  local parts = {}
+  for i, one in ipairs(list) do parts[i] = one.at .. " for " .. one.name end
+  return word .. " " .. english.list(parts)
+end
+
+-- Where along a sweep a verdict says yes; nil where it isn't along one.
+local function along_sweep(study, one)
+  local along, all = verdicts.along(study, one), #study.rows
+  if not along then return nil end
+  local parts = present(turning_words(along.from, "from", all), turning_words(along.up_to, "up to", all),
+    #along.everywhere > 0 and "at all values for " .. verdicts.count(along.everywhere, all), #along.nowhere > 0 and "at no value for " .. verdicts.count(along.nowhere, all))
+  return ("Along the %s, %s in half of the draws or more %s."):format(words_of(along.sweep.name), one.words, table.concat(parts, "; "))
+end
+
 local function verdict_sentences(study, one, draws)
   local known, all = #one.yes + #one.between + #one.no, #study.rows
   if known == 0 then return {} end
+  local along = along_sweep(study, one)
+  if along then return present(along, reason_sentence(one)) end
   local answer
   if not draws then answer = without_draws(one, all)
-  elseif all == 1 then answer = ("%s %s"):format(one.words, single_share(one.yes[1] or one.between[1] or one.no[1], study))
-  else answer = one.words .. " " .. by_share(one, all, what_shares_are_of(study)) end
+  elseif all == 1 then answer = ("%s %s"):format(one.words, single_share(one.yes[1] or one.between[1] or one.no[1], one))
+  else answer = one.words .. " " .. by_share(one, all, what_shares_are_of(one)) end
   return present(capital(answer) .. ".", reason_sentence(one))
 end
 
-local function share_words(share) return share == 1 and "yes" or share == 0 and "no" or format.percent(share) .. " of the draws" end
+local function share_words(share) return share == 1 and "yes" or share == 0 and "no" or percent_words(share) .. " of the draws" end
 
--- What other recipes would make of the verdicts of a group: no verdict is said without it.
-local function recipes_sentence(group_verdicts, draws)
-  local changed, order, moved = {}, {}, {}
-  for _, one in ipairs(group_verdicts) do
+local MOST_NAMES = 9 -- of targets that a recipe changes; beyond, their number will do
+local function share_words(share) return share == 1 and "yes" or share == 0 and "no" or percent_words(share) .. " of the draws" end
+
+-- The range over recipes --------------------------------------------------------------------------------------------------------------
+
+-- What each other recipe does in the whole study: { words, quantities = list of { name, low, high, magnitude }, changes = texts, of_verdict }.
+local function other_recipes(study, of_verdicts)
+  local found = {}
+  local function entry_of(words)
+    if not found[words] then
+      found[words] = { words = words, quantities = {}, changes = {} }
+      found[#found + 1] = found[words]
+    end
+    return found[words]
+  end
+  for number, column in ipairs(study.columns) do
+    for _, recipe in ipairs(column.verdict and {} or changes.of(study, number)) do
+      local quantities = entry_of(recipe.words).quantities
+      local range = quantities[column.name]
+      if not range then
+        range = { name = column.name, low = math.huge, high = -math.huge, magnitude = column.unit == "mag" }
+        quantities[column.name], quantities[#quantities + 1] = range, range
+      end
+      range.low, range.high = math.min(range.low, recipe.low), math.max(range.high, recipe.high)
+    end
+  end
+  for _, one in ipairs(of_verdicts) do
     for _, recipe in ipairs(one.recipes) do
-      if not moved[recipe.words] then order[#order + 1] = recipe.words end
-      moved[recipe.words] = moved[recipe.words] or "no"
+      local entry = entry_of(recipe.words)
+      entry.of_verdict = true
       if #recipe.names > 0 then
-        moved[recipe.words] = "yes"
-        changed[#changed + 1] = ("with %s, whether %s changes for %s"):format(verdicts.recipe_words(recipe.words), one.words,
-          recipe.asked == 1 and recipe.names[1] .. ", to " .. share_words(recipe.low)
-            or ("%d of %d targets (%s)"):format(#recipe.names, recipe.asked, english.list(recipe.names)))
+        local who = recipe.asked == 1 and recipe.names[1] .. ", to " .. share_words(recipe.low)
+          or #recipe.names > MOST_NAMES and ("%d of %d targets"):format(#recipe.names, recipe.asked)
+          or ("%d of %d targets (%s)"):format(#recipe.names, recipe.asked, english.list(recipe.names))
+        table.insert(entry.changes, ("whether %s%s changes for %s"):format(one.words, one.column.group and " (" .. one.column.group .. ")" or "", who))
       end
     end
   end
-  if #order == 0 then return "What is given allows no other published recipe on the way to this." end
-  local unchanged = {}
-  for _, words in ipairs(order) do if moved[words] == "no" then unchanged[#unchanged + 1] = verdicts.recipe_words(words) end end
-  if #unchanged > 0 then
-    changed[#changed + 1] = ("%s would %s%s"):format(english.list(unchanged), draws and "move no answer across one half of the draws" or "change no answer",
-      #changed > 0 and " here" or "")
-  end
-  return "Over the recipes: " .. table.concat(changed, "; ") .. "."
+  return found
 end
 
--- Which targets are left out, where and why: those of which nothing in the group could be derived once, the others by name.
-local function missing_sentences(study, columns)
-  local sentences, wholly = {}, {}
+-- "the gap size angle would be 0.89 to 1 times as large"; nil where nothing is changed.
+local function range_words(range)
+  if range.low > range.high then return nil end
+  local low, high = format.number(range.low, 2), format.number(range.high, 2)
+  if range.magnitude then low, high = ("%+.2f"):format(range.low), ("%+.2f"):format(range.high) end
+  if low == high and (low == "1" or range.magnitude and low:find "^.0.00$") then return nil end
+  return ("the %s would be %s %s"):format(words_of(range.name), low == high and low or low .. " to " .. high, range.magnitude and "mag different" or "times as large")
+end
+
+-- No verdict is said without this.
+local function recipes_sentence(study, of_verdicts, draws)
+  local parts, unchanged = {}, {}
+  for _, entry in ipairs(other_recipes(study, of_verdicts)) do
+    local does = {}
+    for _, range in ipairs(entry.quantities) do does[#does + 1] = range_words(range) end
+    if #does > 0 and entry.of_verdict and #entry.changes == 0 then does[#does + 1] = draws and "no answer would move across one half of the draws" or "no answer would change" end
+    table.move(entry.changes, 1, #entry.changes, #does + 1, does)
+    if #does > 0 then parts[#parts + 1] = ("with %s, %s"):format(verdicts.recipe_words(entry.words), english.list(does, #does))
+    else unchanged[#unchanged + 1] = verdicts.recipe_words(entry.words) end
+  end
+  if #unchanged > 0 then
+    parts[#parts + 1] = ("%s would %s"):format(english.list(unchanged, #unchanged), #of_verdicts == 0 and "change nothing" or draws and "move no answer across one half of the draws" or "change no answer")
+  end
+  if #parts == 0 then return "What is given allows no other published recipe on the way to these answers." end
+  return "Over the recipes: " .. table.concat(parts, "; ") .. "."
+end
+
+-- What could not be derived ----------------------------------------------------------------------------------------------------------
+
+-- In how many groups a name is asked.
+local function times_asked(study, name)
+  local count = 0
+  for _, column in ipairs(study.columns) do if column.name == name then count = count + 1 end end
+  return count
+end
+
+-- "the gap size angle", "whether the gap is resolved by the array (planet at 1 au)"
+local function column_words(column, groups, study)
+  local words = column.verdict and "whether " .. verdicts.sentence_of(column) or "the " .. words_of(column.name)
+  return #groups < times_asked(study, column.name) and ("%s (%s)"):format(words, english.list(groups)) or words
+end
+
+-- What a target lacks for one reason, in words.
+local function lacking_words(columns, study)
+  if #columns == #study.columns then return "nothing" end
+  local groups, order = {}, {}
+  for _, column in ipairs(columns) do
+    if not groups[column.name] then groups[column.name], order[#order + 1] = {}, column end
+    table.insert(groups[column.name], column.group or "without a variant")
+  end
+  for i, column in ipairs(order) do order[i] = column_words(column, groups[column.name], study) end
+  return english.list(order)
+end
+
+-- Which targets lack what and why: those that lack the same for the same reason at once.
+local function missing_sentences(study)
+  local sentences, by_key = {}, {}
   for _, row in ipairs(study.rows) do
-    local missing, reason = {}, nil
-    for _, number in ipairs(columns) do
+    local reasons, order = {}, {}
+    for number, column in ipairs(study.columns) do
       local cell = row.cells[number]
-      if cell.missing then missing[#missing + 1], reason = words_of(study.columns[number].name), cell.reason end
-    end
-    if #missing > 0 then
-      local key = (#missing == #columns and "" or english.list(missing)) .. "\0" .. reason
-      if not wholly[key] then
-        wholly[key] = { names = {}, what = #missing < #columns and english.list(missing), reason = reason }
-        sentences[#sentences + 1] = wholly[key]
+      if cell.missing then
+        if not reasons[cell.reason] then reasons[cell.reason], order[#order + 1] = {}, cell.reason end
+        table.insert(reasons[cell.reason], column)
       end
-      table.insert(wholly[key].names, row.name)
+    end
+    for _, reason in ipairs(order) do
+      local words = lacking_words(reasons[reason], study)
+      local key = words .. "\0" .. reason
+      if not by_key[key] then
+        by_key[key] = { names = {}, words = words, reason = reason }
+        sentences[#sentences + 1] = by_key[key]
+      end
+      table.insert(by_key[key].names, row.name)
     end
   end
   for i, one in ipairs(sentences) do
-    sentences[i] = ("For %s %s could not be derived (%s)."):format(english.list(one.names), one.what or "this", english.in_words(one.reason))
+    sentences[i] = ("For %s %s could%s be derived (%s)."):format(english.list(one.names), one.words, one.words == "nothing" and "" or " not", english.in_words(one.reason))
   end
   return sentences
 end
 
 -- Everything asked of one group of columns, quantities before verdicts.
 local function group_paragraph(study, group, of_verdicts, draws, said)
-  local sentences, columns, own = {}, {}, {}
+  local sentences = {}
   local function add(sentence) if sentence then sentences[#sentences + 1] = sentence end end
-  if group.name then
-    local parts = givens_of(group, study)
-    add(("%s%s:"):format(capital(group.name), #parts > 0 and " (" .. english.list(parts, #parts) .. ")" or ""))
-  end
   for number, column in ipairs(study.columns) do
-    if column.group == group.name then
-      columns[#columns + 1] = number
-      if not column.verdict then
-        add(quantity_sentence(study, number, column, said[column.name]))
-        said[column.name] = true
-      end
+    if column.group == group.name and not column.verdict then
+      add(quantity_sentence(study, number, column, said[column.name]))
+      said[column.name] = true
     end
   end
   for _, one in ipairs(of_verdicts) do
-    if one.column.group == group.name then
-      local answered = verdict_sentences(study, one, draws)
-      if #answered > 0 then own[#own + 1] = one end
-      for _, sentence in ipairs(answered) do add(sentence) end
-    end
+    for _, sentence in ipairs(one.column.group == group.name and verdict_sentences(study, one, draws) or {}) do add(sentence) end
   end
-  for _, sentence in ipairs(missing_sentences(study, columns)) do add(sentence) end
-  if #own > 0 then add(recipes_sentence(own, draws)) end
-  return #columns > 0 and sentences or {}
+  local parts = group.name and #sentences > 0 and givens_of(group, study)
+  if parts then table.insert(sentences, 1, ("%s%s:"):format(capital(group.name), #parts > 0 and " (" .. english.list(parts, #parts) .. ")" or "")) end
+  return sentences
 end
 
 -- What it rests on -------------------------------------------------------------------------------------------------------------------
@@ -348,16 +435,24 @@ local function basis_paragraph(study, cite)
     validity_sentence(study), undefined_sentence(study), unchecked_sentence(study, used))
 end
 
+-- What a yes means; what is not checked has a sentence of its own.
+local function criteria_sentence(study)
+  local parts = {}
+  for i, line in ipairs(notes.criteria(study)) do
+    parts[i] = english.in_words(line):gsub("; not checked: .*", ""):gsub("…%s*", ""):gsub("^resolved by (%a+): ", "by the %1 where "):gsub(", and ", " and "):gsub(": %S+ = ", " "):gsub("^%a+ resolution ", "the %0")
+  end
+  return #parts > 0 and ("Resolved means geometrically resolved, %s."):format(table.concat(parts, "; ")) or "Resolved means geometrically resolved."
+end
+
 local function detection_paragraph(study, has_verdicts)
   local asked
   for number, column in ipairs(study.columns) do
     if column.name == "rim_drop_significance" and select(3, ends_of(study, number)) > 0 then asked = true end
   end
-  return {
+  return present(has_verdicts and criteria_sentence(study),
     asked and "Detection is assessed for the rim alone, by the drop of its squared visibility in standard errors; whether any other structure is detected is not assessed."
-      or (has_verdicts and "Resolved means geometrically resolved. " or "") .. "Whether a structure is also detected is not assessed here.",
-    "These are estimates of feasibility. " .. english.WHO_DECIDES,
-  }
+      or ("Whether a structure is %sdetected is not assessed here."):format(has_verdicts and "also " or ""),
+    "These are estimates of feasibility; the observatory's own documents and staff decide.")
 end
 
 function feasibility.of(study, facts)
@@ -369,7 +464,9 @@ function feasibility.of(study, facts)
     local sentences = group_paragraph(study, group, of_verdicts, draws, said)
     if #sentences > 0 then paragraphs[#paragraphs + 1] = sentences end
   end
-  if #of_verdicts == 0 then paragraphs[#paragraphs][#paragraphs[#paragraphs] + 1] = "No verdict was asked: whether anything is resolved is left open." end
+  local range = present(recipes_sentence(study, of_verdicts, draws), table.unpack(missing_sentences(study)))
+  if #of_verdicts == 0 then range[#range + 1] = "No verdict was asked: whether anything is resolved is left open." end
+  paragraphs[#paragraphs + 1] = range
   paragraphs[#paragraphs + 1] = basis_paragraph(study, cite)
   paragraphs[#paragraphs + 1] = detection_paragraph(study, #of_verdicts > 0)
   return { paragraphs = paragraphs, cited = cited, by = facts.version }

@@ -78,14 +78,14 @@ local function check_lines(lines)
   end
 end
 
-local function read_fields(wanted)
+local function read_fields(wanted, study_to_come)
   if type(wanted) ~= "table" then core.raise("figure wants a table like {of = case, show = name}; got " .. core.shown(wanted)) end
   check_fields(wanted, fields, "figure")
   check_choice("kind", wanted.kind, kinds)
   check_choice("width", wanted.width, widths)
   if wanted.name and (wanted.name == "" or wanted.name:find "[/%c]") then complain("name wants a file's name without folder and ending; got %s", core.shown(wanted.name)) end
   if wanted.log and wanted.log:find "[^xy]" then complain('log wants "x", "y", "xy" or ""; got "%s"', wanted.log) end
-  if not is_study(wanted.of) and not core.is_case(wanted.of) then complain("of wants a case or a study; got %s", core.shown(wanted.of)) end
+  if not study_to_come and not is_study(wanted.of) and not core.is_case(wanted.of) then complain("of wants a case or a study; got %s", core.shown(wanted.of)) end
   check_each(wanted.each)
   check_lines(wanted.lines)
   local f = setmetatable({}, { __index = wanted })
@@ -165,9 +165,11 @@ local function usual_title(f, d)
   return ("%s %s %s%s"):format(what, f.kind_drawn == "plane" and "against" or "along", d.x.words, of)
 end
 
+local LONGEST_NAME = 80 -- of a file, made of a title
+
 local function as_file_name(title)
   local name = title:gsub("[^%w]+", "_"):gsub("^_+", ""):gsub("_+$", ""):lower()
-  return name ~= "" and name or "figure"
+  return name ~= "" and name:sub(1, LONGEST_NAME) or "figure"
 end
 
 -- figure{...}: the object. figure(study): the list of those that the study asks for.
@@ -182,21 +184,42 @@ function figures.figure(wanted)
   return setmetatable(made, metatable)
 end
 
--- The figures that a study asks for, with names that differ.
-function figures.of_study(study)
+local function check_wanted(wanted, number)
+  if type(wanted) ~= "table" then core.raise(("study: figure %d wants a table like {show = name, along = {...}}; got %s"):format(number, core.shown(wanted))) end
+end
+
+-- What can be said against a study's figures before it is run: has_target and has_variant tell whether it knows a name.
+function figures.check(list, has_target, has_variant)
+  for i, wanted in ipairs(list) do
+    check_wanted(wanted, i)
+    read_fields(wanted, true)
+    if wanted.target and not has_target(wanted.target) then complain('no target "%s" in the study', tostring(wanted.target)) end
+    if wanted.variant and not has_variant(wanted.variant) then complain('no variant "%s" in the study', tostring(wanted.variant)) end
+  end
+end
+
+-- The figures that a study asks for, with names that differ. One that can't be made is an error, or stands in left_out: a list of why.
+function figures.of_study(study, left_out)
   local list, taken = {}, {}
   for i, wanted in ipairs(study.figures or {}) do
-    if type(wanted) ~= "table" then core.raise(("study: figure %d wants a table like {show = name, along = {...}}; got %s"):format(i, core.shown(wanted))) end
+    check_wanted(wanted, i)
     local spec = { of = study }
     for word, value in pairs(wanted) do spec[word] = value end
-    local made = figures.figure(spec)
-    local name, number = made.name, 1
-    while taken[made.name] do
-      number = number + 1
-      made.name = name .. "_" .. number
+    local ok, made = pcall(figures.figure, spec)
+    if not ok then
+      local why = core.part "lacuna.record".bare(made)
+      if not left_out or why:find "interrupted!?$" then error(made, 0) end
+      left_out[#left_out + 1] = ("figure %d%s: %s"):format(i, wanted.title and (' "%s"'):format(wanted.title) or "", (why:gsub("^figure: ", "")))
+    else
+      local name, number = made.name, 1
+      while taken[made.name:lower()] do
+        number = number + 1
+        made.name = name .. "_" .. number
+      end
+      taken[made.name:lower()] = true
+      made.number = i
+      list[#list + 1] = made
     end
-    taken[made.name] = true
-    list[i] = made
   end
   return list
 end
@@ -206,7 +229,7 @@ end
 local function part(name) return core.part("lacuna." .. name) end
 
 function methods.csv(figure) return part "figure_text".csv(figure) end
-function methods.caption(figure) return part "figure_text".caption(figure) end
+function methods.caption(figure, write) return part "figure_text".caption(figure, write) end
 function methods.alternative(figure) return part "figure_text".alternative(figure) end
 function methods.script(figure, name) return part "gnuplot".script(figure, name or figure.name) end
 

@@ -20,7 +20,8 @@ local function complain(form, ...) core.raise("figure: " .. form:format(...)) en
 
 -- Axes ----------------------------------------------------------------------------------------------------------------------------
 
-local words_of = core.part "lacuna.english".words_of
+local english = core.part "lacuna.english"
+local words_of = english.words_of
 
 function data.axis(name)
   if core.find(name) ~= name then return { name = name, words = words_of(name), unit = "1", unit_text = "", factor = 1 } end -- a sweep that no given has named
@@ -352,7 +353,7 @@ function data.case_of_target(study, target, variant)
   end
   local names = {}
   for i, row in ipairs(study.rows) do names[i] = row.name end
-  complain('no target "%s" in the study; there %s %s', tostring(target), #names == 1 and "is" or "are", table.concat(names, ", "))
+  complain('no target "%s" in the study; there %s %s', tostring(target), #names == 1 and "is" or "are", english.list(names))
 end
 
 -- Common givens as they were written: "2 ± 0.5 Mjup".

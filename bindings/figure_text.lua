@@ -191,9 +191,9 @@ function words.alternative(figure) return alternative[figure.kind](figure.data) 
 
 -- Captions ------------------------------------------------------------------------------------------------------------------------
 
-local function symbol_of(axis) return axis.name and not axis.verdict and core.find(axis.name) == axis.name and relations.symbol(axis.name) or nil end
-local function named(axis)
-  local symbol = symbol_of(axis)
+local function symbol_of(axis, write) return axis.name and not axis.verdict and core.find(axis.name) == axis.name and (write or relations.symbol)(axis.name) or nil end
+local function named(axis, write)
+  local symbol = symbol_of(axis, write)
   return (axis.verdict == "share" and "share of draws: " or "") .. axis.words .. (symbol and " " .. symbol or "")
 end
 
@@ -210,7 +210,8 @@ local function given_in_words(figure)
     for _, step in ipairs(core.steps(figure.case, shown)) do
       if not step.row and not skip[step.name] then
         skip[step.name] = true
-        parts[#parts + 1] = ("%s = %s"):format(words_of(step.name), figure.written[step.name] or text.given(figure.case, step.name))
+        local written = figure.written[step.name] or text.given(figure.case, step.name)
+        parts[#parts + 1] = words_of(step.name) .. (written:find "^from " and " " or " = ") .. written
       end
     end
   end
@@ -223,11 +224,11 @@ end
 
 local caption = {}
 
-function caption.curve(figure, add)
+function caption.curve(figure, add, write)
   local d = figure.data
   local bars = false
   for _, s in ipairs(d.series) do bars = bars or s.low68 end
-  add(("%s along %s"):format(named(d.y), named(d.x)))
+  add(("%s along %s"):format(named(d.y, write), named(d.x, write)))
   if bars then add(("Lines: medians; bands: the central 68 and 95 %% of %s"):format(draws_in_words(figure)))
   elseif d.draws then add("Of " .. draws_in_words(figure)) end
   for _, level in ipairs(d.levels) do
@@ -237,19 +238,21 @@ function caption.curve(figure, add)
   if #d.marks > 0 then add "Grey: spectral bands" end
 end
 
-function caption.map(figure, add)
+function caption.map(figure, add, write)
   local d = figure.data
-  add(("%s over %s and %s"):format(named(d.z), named(d.x), named(d.y)))
+  add(("%s over %s and %s"):format(named(d.z, write), named(d.x, write), named(d.y, write)))
   if d.draws then add((d.z.verdict and "Shares of " or "Medians of ") .. draws_in_words(figure)) end
   say_undefined(add, not d.z.verdict and d.undefined, d.z.words, d.draws)
-  local turn = d.contours[1]
-  if turn and turn.share then add(("Solid line: %s in half of the draws; dashed: in 16 and 84 %%"):format(words_of(d.verdict)))
+  local turn, drawn = d.contours[1], 0
+  for _, one in ipairs(d.contours) do drawn = drawn + #one.lines end
+  if turn and drawn == 0 then add(("%s turns nowhere on it"):format(words_of(d.verdict)))
+  elseif turn and turn.share then add(("Solid line: %s in half of the draws; dashed: in 16 and 84 %%"):format(words_of(d.verdict)))
   elseif turn then add(("Line: %s turns"):format(words_of(d.verdict))) end
 end
 
-function caption.plane(figure, add)
+function caption.plane(figure, add, write)
   local d = figure.data
-  add(("%s against %s of %d %s"):format(named(d.y), named(d.x), #d.points, english.plural(#d.points, "target")))
+  add(("%s against %s of %d %s"):format(named(d.y, write), named(d.x, write), #d.points, english.plural(#d.points, "target")))
   add("Medians and central 68 % of " .. draws_in_words(figure))
   if d.verdict then add(("Filled: %s in half of the draws or more"):format(words_of(d.verdict))) end
   local lines = lines_in_words(d)
@@ -257,10 +260,10 @@ function caption.plane(figure, add)
   if #d.left_out > 0 then add("Not shown, as not both can be derived: " .. english.list(d.left_out, #d.left_out)) end
 end
 
--- f:caption(): what is shown, of how many draws, and what is given.
-function words.caption(figure)
+-- f:caption(): what is shown, of how many draws, and what is given; symbols as `write` has them, or as plain text.
+function words.caption(figure, write)
   local sentences = {}
-  caption[figure.kind](figure, function(sentence) sentences[#sentences + 1] = english.capital(sentence) .. "." end)
+  caption[figure.kind](figure, function(sentence) sentences[#sentences + 1] = english.capital(sentence) .. "." end, write)
   if figure.target then sentences[1] = sentences[1]:gsub("%.$", "") .. (", %s%s."):format(figure.target, figure.variant and " (" .. figure.variant .. ")" or "") end
   if figure.case then sentences[#sentences + 1] = given_in_words(figure) end
   return table.concat(sentences, " ")

@@ -25,6 +25,7 @@ function manifest.command(given, script, settings)
     for _, value in ipairs(given[option] or {}) do words[#words + 1] = "--" .. option .. " " .. quoted(value) end
   end
   words[#words + 1] = "--out ../again"
+  for i, argument in ipairs(given.arguments or {}) do words[#words + 1] = (i == 1 and "-- " or "") .. quoted(argument) end
   return table.concat(words, " ")
 end
 

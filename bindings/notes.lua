@@ -10,17 +10,21 @@ local equation = core.part "lacuna.equation"
 local format = core.part "lacuna.format"
 local ordered = core.part "lacuna.ordered"
 local relations = core.part "lacuna.relations"
+local verdicts = core.part "lacuna.verdicts"
 
 local notes = {}
 local at, each, note = ordered.at, ordered.each, ordered.note
 
--- "Marrow 3, Quillon A"; "all targets"; "all targets but Marrow 3".
+local MOST_NAMES = 20 -- beyond, the table says which
+
+-- "Marrow 3, Quillon A"; "all targets"; "all targets but Marrow 3"; "44 of the 60 targets".
 local function named(names, study)
   local missing, has = {}, {}
   for _, name in ipairs(names) do has[name] = true end
   for _, row in ipairs(study.rows) do if not has[row.name] then missing[#missing + 1] = row.name end end
   if #study.rows > 1 and #missing == 0 then return "all targets" end
   if #study.rows > 4 and #missing <= 2 then return "all targets but " .. table.concat(missing, " and ") end
+  if #names > MOST_NAMES then return ("%d of the %d targets"):format(#names, #study.rows) end
   return table.concat(names, ", ")
 end
 
@@ -73,10 +77,11 @@ local function steps_of(texts, text)
   return texts[text]
 end
 
--- The relations used: name -> recipe ("given" without one) -> { relation, targets }, in the order of the glossary.
-function notes.relations_used(study)
+-- The relations used: name -> recipe ("given" without one) -> { relation, targets }, in the order of the glossary; in one group alone, if that is said.
+function notes.relations_used(study, group)
   local used, texts = {}, {}
-  for_cells(study, function(_, row, cell)
+  for_cells(study, function(column, row, cell)
+    if group and column.group ~= group.name then return end
     for _, step in ipairs(steps_of(texts, cell.steps)) do
       local recipes = used[step.name] or ordered.new()
       used[step.name] = recipes
@@ -156,16 +161,24 @@ local function why_not(study)
   return said
 end
 
-local function unlike_recipes(study, used)
-  local said = {}
-  for name, recipes in each(used) do
-    if #recipes.keys > 1 then
-      local parts = {}
-      for by, targets in each(recipes) do
-        parts[#parts + 1] = (by == "given" and "given for " or by:gsub("_", " ") .. " for ") .. named(targets.keys, study)
+-- Where targets differ within a group; what its `using` or its givens change for all of them is no such difference.
+local function unlike_recipes(study)
+  local mixed = ordered.new()
+  for _, group in ipairs(study.groups) do
+    for name, recipes in each(notes.relations_used(study, group)) do
+      for by, targets in each(#recipes.keys > 1 and recipes or ordered.new()) do
+        local all = at(at(mixed, name), by)
+        for _, target in ipairs(targets.keys) do note(all, target) end
       end
-      said[#said + 1] = name .. ": " .. table.concat(parts, "; ")
     end
+  end
+  local said = {}
+  for name, recipes in each(mixed) do
+    local parts = {}
+    for by, targets in each(recipes) do
+      parts[#parts + 1] = (by == "given" and "given for " or by:gsub("_", " ") .. " for ") .. named(targets.keys, study)
+    end
+    said[#said + 1] = name .. ": " .. table.concat(parts, "; ")
   end
   return said
 end
@@ -286,6 +299,20 @@ local function undefined_draws(study)
   return said
 end
 
+-- Texts that may have been meant as givens.
+local function doubtful_texts(study)
+  local said = {}
+  for _, header in ipairs(study.texts) do
+    local cell = study.doubtful and study.doubtful[header]
+    if cell then
+      local near = core.nearest((header:lower():gsub("[%s-]+", "_")))
+      said[#said + 1] = ('%s: "%s" reads like a quantity, but no name of the glossary is called so%s'):format(header, cell,
+        #near > 0 and "; near it are " .. table.concat(near, ", ") or "")
+    end
+  end
+  return said
+end
+
 -- "distance = 120 pc, band = H"; what is set on the command line stands in a note of its own.
 local function givens_in_words(givens, written, objects, set)
   local parts = {}
@@ -305,16 +332,6 @@ local function set_on_command_line(study)
   return words ~= "" and { words .. "; before what the study says" } or {}
 end
 
--- Between which points of its one sweep a verdict's share crosses one half: the value there, on the line between them; in the sweep's unit.
-local function turns_at(cell, sweep)
-  for i = 2, #cell.shares do
-    local before, after = cell.shares[i - 1] - 0.5, cell.shares[i] - 0.5
-    if (before < 0) ~= (after < 0) then
-      return sweep.values[i - 1] + (sweep.values[i] - sweep.values[i - 1]) * before / (before - after), after >= 0
-    end
-  end
-end
-
 -- "rim_resolved_by_array: from 95 m up for Marrow 3, ..." for a study along one sweep.
 local function where_verdicts_turn(study)
   local sweep = study.sweeps and #study.sweeps == 1 and study.sweeps[1]
@@ -322,7 +339,7 @@ local function where_verdicts_turn(study)
   local columns = ordered.new()
   for_cells(study, function(column, row, cell)
     if not cell.shares then return end
-    local value, up = turns_at(cell, sweep)
+    local value, up = verdicts.turns_at(cell, sweep)
     local words = value and ("%s %s"):format(up and "from" or "up to", format.with_unit(format.number(value, 3), sweep.unit_text))
       or cell.shares[1] >= 0.5 and "all along" or "nowhere"
     table.insert(at(at(columns, column.label), words), row.name)
@@ -353,7 +370,9 @@ local function givens_for_all(study)
       if not (group.name and study.groups[1].objects[name]) then objects[name] = object end
     end
     local words = givens_in_words(group.own, group.written, objects, study.set)
-    if words ~= "" then said[#said + 1] = (group.name and group.name .. ": " or "") .. words end
+    local parts = words ~= "" and { words } or {}
+    for _, name in ipairs(core.names()) do if group.chosen[name] then parts[#parts + 1] = name .. " by " .. group.chosen[name] end end
+    if #parts > 0 then said[#said + 1] = (group.name and group.name .. ": " or "") .. table.concat(parts, ", ") end
   end
   return said
 end
@@ -366,17 +385,22 @@ local function how_far(study)
   }
 end
 
+-- What a verdict's yes means in a study.
+function notes.criteria(study) return meaning_of_verdicts(study, notes.relations_used(study)) end
+
 -- The notes of a study, empty ones left out.
 function notes.of(study)
   local used = notes.relations_used(study)
   local list = {
+    { heading = "Shown", lines = study.selected and { ("%d of %d targets: %s"):format(#study.rows, study.selected.of, study.selected.words) } or {} },
     { heading = "Failed", lines = failed_targets(study) },
+    { heading = "Carried along as texts, not used", lines = doubtful_texts(study) },
     { heading = "Not derived (—)", lines = not_derived(study) },
     { heading = "Why not (yes in less than half of the draws; medians)", lines = why_not(study) },
     { heading = "Along a sweep", lines = along_sweeps(study) },
     { heading = "Yes in half of the draws and more", lines = where_verdicts_turn(study) },
     { heading = "With another recipe", lines = over_recipes(study) },
-    { heading = "Not all targets use the same recipes", lines = unlike_recipes(study, used) },
+    { heading = "Not all targets use the same recipes", lines = unlike_recipes(study) },
     { heading = "Outside a recipe's range of validity", lines = outside_validity(study) },
     { heading = "Undefined draws", lines = undefined_draws(study) },
     { heading = "Resolved means", lines = meaning_of_verdicts(study, used) },

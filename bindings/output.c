@@ -25,14 +25,14 @@ static bool write_all(int file, const char *text, size_t length) {
   return true;
 }
 
-enum { SUFFIX = 40 };
+enum { SUFFIX = 48 };
 
 /* A new file beside the one that is to be; its suffix goes to `suffix`. It gets the rights of any new file, by the process's mask. */
 static int create_beside(const char *name, char *suffix) {
   int file = -1;
   errno = EEXIST;
   for (int i = 0; file < 0 && errno == EEXIST && i < 1000; i++) {
-    snprintf(suffix, SUFFIX, ".%ld-%d", (long)getpid(), i);
+    snprintf(suffix, SUFFIX, ".unfinished-%ld-%d", (long)getpid(), i);
     file = open(name, O_WRONLY | O_CREAT | O_EXCL | O_CLOEXEC, 0666);
   }
   return file;

@@ -69,8 +69,19 @@ local MOST_NAMES = 40 -- of one answer; the table has all
 
 local function names_with_shares(rows, plain)
   local parts = {}
-  for i = 1, math.min(#rows, MOST_NAMES) do parts[i] = html(rows[i].name) .. (plain and "" or " (" .. format.percent(rows[i].cell.share) .. ")") end
+  for i = 1, math.min(#rows, MOST_NAMES) do parts[i] = html(rows[i].name) .. (plain and "" or " (" .. verdicts.percent(rows[i].cell.share) .. ")") end
   return table.concat(parts, ", ") .. (#rows > MOST_NAMES and (" and %d others: see the table"):format(#rows - MOST_NAMES) or "")
+end
+
+-- "Quillon A (from 49 m)"
+local function names_with_turns(along)
+  local parts, all = {}, {}
+  for word, list in pairs { from = along.from, ["up to"] = along.up_to } do
+    for _, one in ipairs(list) do all[#all + 1] = { value = one.value, words = ("%s (%s %s)"):format(html(one.name), word, html(one.at)) } end
+  end
+  table.sort(all, function(a, b) return a.value < b.value or a.value == b.value and a.words < b.words end)
+  for i = 1, math.min(#all, MOST_NAMES) do parts[i] = all[i].words end
+  return table.concat(parts, ", ") .. (#all > MOST_NAMES and (" and %d others: see the table"):format(#all - MOST_NAMES) or ""), all
 end
 
 -- A bar of the targets by their answer; what it shows stands in words below it.
@@ -88,17 +99,31 @@ local function question(words)
   return subject and ("Is %s %s?"):format(subject, rest) or english.capital(words) .. "?"
 end
 
-local function answer(one, draws, all)
-  local lines = {}
-  local function add(kind, words, names)
-    if #one[kind] == 0 then return end
-    lines[#lines + 1] = ('<dt><span class="key %s" aria-hidden="true"></span>%s: %d of %d</dt><dd>%s</dd>'):format(kind, words, #one[kind], all, names)
+-- The targets by their answer: lists for the bar, and what each is called.
+local function by_answer(one, draws, study)
+  local along = verdicts.along(study, one)
+  if along then
+    local turning, between = names_with_turns(along)
+    local half, values = draws and ", in half of draws or more" or "", " of the " .. words_of(along.sweep.name)
+    return { yes = along.everywhere, between = between, no = along.nowhere, missing = one.missing },
+      { yes = "Yes" .. half .. ", at all values" .. values, between = "Yes" .. half .. ", from or up to a value" .. values, no = "No, at no value" .. values }, turning
   end
+  local of = (draws and " of draws" or "") .. (one.of_points and (draws and " and points" or " of points") or "")
   local high, low = format.percent(verdicts.MOSTLY), format.percent(verdicts.HARDLY)
-  add("yes", draws and "Yes, in at least " .. high .. " of draws" or "Yes", names_with_shares(one.yes, true))
-  add("between", "Open", names_with_shares(one.between))
-  add("no", draws and "No, in at most " .. low .. " of draws" or "No", names_with_shares(one.no, true))
-  add("missing", "Not derived", names_with_shares(one.missing, true))
+  return one, { yes = of ~= "" and "Yes, in at least " .. high .. of or "Yes", between = "Open", no = of ~= "" and "No, in at most " .. low .. of or "No" }, names_with_shares(one.between)
+end
+
+local function answer(one, draws, study)
+  local lists, called, open = by_answer(one, draws, study)
+  local lines, all = {}, #study.rows
+  local function add(kind, words, names)
+    if #lists[kind] == 0 then return end
+    lines[#lines + 1] = ('<dt><span class="key %s" aria-hidden="true"></span>%s: %d of %d</dt><dd>%s</dd>'):format(kind, html(words), #lists[kind], all, names)
+  end
+  add("yes", called.yes, names_with_shares(lists.yes, true))
+  add("between", called.between, open)
+  add("no", called.no, names_with_shares(lists.no, true))
+  add("missing", "Not derived", names_with_shares(lists.missing, true))
   local changed = {}
   for _, recipe in ipairs(one.recipes) do
     if #recipe.names > 0 then changed[#changed + 1] = html(("%s changes it for %s"):format(verdicts.recipe_words(recipe.words), english.list(recipe.names))) end
@@ -106,7 +131,7 @@ local function answer(one, draws, all)
   local recipes = #one.yes + #one.between + #one.no == 0 and "" or #changed > 0 and "Another recipe: " .. table.concat(changed, "; ") .. "."
     or #one.recipes > 0 and "No other recipe changes it." or "No other recipe can be had from what is given."
   return ('<div class="answer">\n<p class="question">%s</p>\n%s\n<dl>%s</dl>\n<p class="small">%s</p>\n</div>')
-    :format(html(question(one.words)), bar(one, all), table.concat(lines), recipes)
+    :format(html(question(one.words)), bar(lists, all), table.concat(lines), recipes)
 end
 
 local function answers(study)
@@ -116,7 +141,7 @@ local function answers(study)
   for _, group in ipairs(by_group(of_verdicts, function(one) return one.column.group end)) do
     if group.name then parts[#parts + 1] = element("h3", html(group.name)) end
     local cards = {}
-    for i, one in ipairs(group) do cards[i] = answer(one, draws, #study.rows) end
+    for i, one in ipairs(group) do cards[i] = answer(one, draws, study) end
     parts[#parts + 1] = '<div class="answers">\n' .. table.concat(cards, "\n") .. "\n</div>"
   end
   parts[#parts + 1] = '<p class="small">Resolved means geometrically resolved; whether a structure is detected is not assessed. ' ..
@@ -142,7 +167,10 @@ end
 
 local function result_cell(column, cell)
   local shade = ""
-  if column.verdict and not cell.missing then shade = cell.share >= verdicts.MOSTLY and " yes" or cell.share <= verdicts.HARDLY and " no" or " between" end
+  if column.verdict and not cell.missing then
+    local low, high = tables.lowest_and_highest(cell.shares or { cell.share })
+    shade = low >= verdicts.MOSTLY and " yes" or high <= verdicts.HARDLY and " no" or " between"
+  end
   return ('<td class="number%s">%s</td>'):format(shade, html(tables.cell_text(cell)))
 end
 

@@ -109,7 +109,10 @@ function file.difference(there, here)
     local a, b = there[key], here[key]
     if file.encode { a } ~= file.encode { b } then
       if key == "script" or key == "inputs" then return key == "script" and "the study file isn't the same" or "its input files aren't the same" end
-      local function shown(value) return type(value) == "table" and "'" .. table.concat(value, "', '") .. "'" or tostring(value == nil and "none" or value) end
+      local function shown(value)
+        if value == nil or type(value) == "table" and #value == 0 then return "none" end
+        return type(value) == "table" and "'" .. table.concat(value, "', '") .. "'" or tostring(value)
+      end
       return ("%s was %s there, is %s here"):format(key, shown(a), shown(b))
     end
   end

@@ -2,8 +2,8 @@
 -- The report: a folder with all that a proposal takes from a study. Every file is whole or absent; the page and the manifest are written last,
 -- so a folder with a manifest is a whole report. The same study gives the same bytes: no times, no machine and no paths stand in it.
 --
---   write(study, folder, facts)   facts = { study_file = path, inputs = { paths }, texts = { [path] = what was read }, command = { set, only =
---                                 lists of texts }, settings = { seed, draws }, version }: all may be left out
+--   write(study, folder, facts)   facts = { study_file = path, inputs = { paths }, texts = { [path] = what was read }, command = { set, only,
+--                                 arguments = lists of texts }, settings = { seed, draws }, version }: all may be left out
 --   ask(study, folder, options, facts)   the same, where a script asks for it: a folder with files is refused but with { force = true }
 --
 -- Both return { folder, files = { names }, missing = { what could not be written, and why } }, which prints itself.
@@ -98,7 +98,7 @@ end
 -- Tables ------------------------------------------------------------------------------------------------------------------------------
 
 -- Notes that belong below the table in print; the others stand with the derivations.
-local below_table = { ["Not derived (—)"] = true, ["Failed"] = true, ["Undefined draws"] = true, ["How far this goes"] = true }
+local below_table = { ["Not derived (—)"] = true, ["Shown"] = true, ["Failed"] = true, ["Undefined draws"] = true, ["How far this goes"] = true }
 
 local function with_notes(study, wanted)
   local notes = {}
@@ -117,17 +117,17 @@ end
 
 -- Figures -----------------------------------------------------------------------------------------------------------------------------
 
--- The figures as objects: a study may have them described only.
-local function figures_of(study)
+-- The figures as objects: a study may have them described only. Those that can't be made are left out.
+local function figures_of(study, missing)
   local list = study.figures or {}
   if #list == 0 or (getmetatable(list[1]) or {}).__name == "figure" then return list end
-  return core.part "lacuna.figure".of_study(study)
+  return core.part "lacuna.figure".of_study(study, missing)
 end
 
 -- The figures' files, and for the page and the document what each is: { svg, caption, alternative, file }. Where they can't be drawn, the report
 -- goes on with their data alone.
 local function write_figures(out, study)
-  local list, wanted, drawn = figures_of(study), {}, {}
+  local list, wanted, drawn = figures_of(study, out.missing), {}, {}
   if #list == 0 then return drawn end
   core.make_folder(out:path "figures")
   for i, figure in ipairs(list) do wanted[i] = { figure, out:path("figures/" .. figure.name) } end
@@ -136,7 +136,7 @@ local function write_figures(out, study)
   if why then out.missing[#out.missing + 1] = "figures: " .. why end
   for _, figure in ipairs(list) do
     if not why then
-      drawn[#drawn + 1] = { svg = figure:svg(), caption = figure:caption(), alternative = figure:alternative(), file = "figures/" .. figure.name }
+      drawn[#drawn + 1] = { svg = figure:svg(), caption = figure:caption(), caption_tex = document.caption(figure), alternative = figure:alternative(), file = "figures/" .. figure.name }
     end
   end
   return drawn
@@ -153,7 +153,21 @@ local function remove_former(out)
   file:close()
   os.remove(out:path "manifest.txt")
   for name in text:gmatch "\n%x+  ([^\n]+)" do
-    if name ~= "records" and not name:find "^/" and not name:find("..", 1, true) then os.remove(out:path(name)) end
+    if name ~= "records" and not name:find "^/" and not name:find("..", 1, true) then
+      os.remove(out:path(name))
+      local folder = name:match "^(.*)/"
+      if folder then os.remove(out:path(folder)) end -- once it is empty
+    end
+  end
+end
+
+-- In each folder that has files of the report.
+local function remove_leftovers(out)
+  local seen = {}
+  for _, file in ipairs(out.files) do
+    local folder = out:path(file.name):match "^(.*)/"
+    if not seen[folder] then core.part "lacuna.leftovers".remove(folder) end
+    seen[folder] = true
   end
 end
 
@@ -182,6 +196,7 @@ local function write_all(out, study, facts)
   local page = core.part "lacuna.page".of(study, { facts = facts, row = row, chains = chains, composed = composed, figures = drawn, missing = out.missing })
   out:add_present "records"
   out:write("index.html", page)
+  remove_leftovers(out)
   core.write_file(out:path "manifest.txt", manifest.text(facts, out.files))
 end
 

@@ -103,6 +103,7 @@ local function open_folder(list)
   if #entries > 0 and not (command.resume or command.force) then
     error(("%s exists and is not empty; --resume goes on with a run that was stopped, --force starts anew"):format(command.out), 0)
   end
+  core.part "lacuna.leftovers".remove(command.out)
   local texts = command.resume and left_there(path, head, entries) or {}
   local ok, why = pcall(core.write_file, path, file.whole(head, texts))
   if not ok then error(records.bare(why), 0) end
@@ -112,12 +113,20 @@ local function open_folder(list)
   return { head = head, path = path, texts = texts, handle = handle }
 end
 
+-- Of parts that are put together each target must have its record: that is looked at before a folder is begun.
+local function check_parts(targets, list)
+  refuse_difference(command.parts, command.parts_head, head_of(list))
+  local missing = {}
+  for _, target in ipairs(targets) do if not command.records[target.name] then missing[#missing + 1] = target.name end end
+  if #missing > 0 then
+    error(('%s: there is no record of "%s"%s; run the part that is to hold it again, with --resume'):format(command.parts, missing[1],
+      #missing > 1 and (" and %d more"):format(#missing - 1) or ""), 0)
+  end
+end
+
 -- The records that are there: of a run that goes on, or of parts that are put together.
 local function known_records(folder)
-  if command.records then
-    refuse_difference(command.parts, command.parts_head, folder.head)
-    return command.records
-  end
+  if command.records then return command.records end
   local known = {}
   for _, text in ipairs(folder and folder.texts or {}) do
     local record = file.decode(text)
@@ -176,15 +185,12 @@ end
 -- All chosen targets of a study's list with their records, in the list's order.
 function run.all(plan, list)
   local targets = chosen(list)
+  if command.records then check_parts(targets, list) end
   local folder = command.out and open_folder(list) or nil
   local known, made, todo = known_records(folder), {}, {}
   for i, target in ipairs(targets) do
     made[i] = known[target.name]
     if not made[i] then todo[#todo + 1] = i end
-  end
-  if command.records and #todo > 0 then
-    error(('%s: there is no record of "%s"%s; run the part that is to hold it again, with --resume'):format(command.parts, targets[todo[1]].name,
-      #todo > 1 and (" and %d more"):format(#todo - 1) or ""), 0)
   end
   local bar = progress.new(#targets, #targets - #todo)
   local children = work_out(plan, targets, todo, function(place, record, text)
@@ -197,12 +203,20 @@ end
 
 -- Closing -----------------------------------------------------------------------------------------------------------------------------
 
+-- Calls f; what goes wrong when all targets are done leaves their records, and the message says so.
+local function keeping_records(f, ...)
+  local ok, result = pcall(f, ...)
+  if ok then return result end
+  local why = records.bare(result)
+  error(why:find "interrupted!?$" and why or why .. "; what is done is kept there, and --resume goes on", 0)
+end
+
 -- The records in the targets' order, so that every complete run leaves the same file.
 local function put_in_order(result)
   local texts = {}
   for i, record in ipairs(result.records) do texts[i] = file.encode(record) end
   result.folder.handle:close()
-  core.write_file(result.folder.path, file.whole(result.folder.head, texts))
+  keeping_records(core.write_file, result.folder.path, file.whole(result.folder.head, texts))
 end
 
 -- What the report tells of the run. Where a host made the study, or a line of code, there is no file of it.
@@ -211,7 +225,7 @@ function run.facts(result)
   local study_file = script.path or script.text and script.name
   local facts = {
     study_file = study_file, inputs = {}, texts = { [study_file or ""] = script.text },
-    command = { set = set_texts(), only = command.only }, settings = { seed = settings.seed, draws = settings.draws },
+    command = { set = set_texts(), only = command.only, arguments = command.arguments }, settings = { seed = settings.seed, draws = settings.draws },
     version = command.version, elapsed = result.bar.elapsed, peak_memory = result.bar.peak,
   }
   if input then facts.inputs[1], facts.texts[input.path] = input.path, input.text end
@@ -236,7 +250,7 @@ function run.close(study, result)
   result.bar:close(summary(result), result.children)
   if result.folder then put_in_order(result) end
   if command.shard then return end
-  local report = result.folder and core.part "lacuna.report".write(study, command.out, run.facts(result))
+  local report = result.folder and keeping_records(core.part "lacuna.report".write, study, command.out, run.facts(result))
   core.part "lacuna.show".print(study:table())
   if report then io.stderr:write(tostring(report), "\n") end
 end

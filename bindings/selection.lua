@@ -2,7 +2,8 @@
 -- Which rows of a study are shown, and in which order:
 --   sort = "name" | "rim_size_angle" | { "gap_resolved_by_array", variant = "planet at 5 au", descending = true }
 --   where = { "rim_size_angle", above = "1 mas" } | a list of such, all of which must hold; of a verdict: the share of draws.
--- A name that isn't asked is worked out besides. A row whose value is missing passes no condition, and comes last in any order.
+-- A name that isn't asked is worked out besides. A row whose value is missing passes no condition, and comes last in any order; a target that
+-- failed is shown all the same, since its row says why.
 local core = ...
 local case = core.part "lacuna.case"
 
@@ -68,8 +69,10 @@ local function read_where(plan, where)
     if one.above == nil and one.below == nil then complain("where: %s wants above = ... or below = ...", name) end
     conditions[i] = { name = name, group = group, above = read_bound(name, one.above), below = read_bound(name, one.below), words = {} }
     for _, side in ipairs { "above", "below" } do
-      if one[side] ~= nil then table.insert(conditions[i].words, ("%s %s %s"):format(name, side, tostring(one[side]))) end
+      if one[side] ~= nil then table.insert(conditions[i].words, ("%s %s"):format(side, tostring(one[side]))) end
     end
+    conditions[i].words = ("%s%s %s%s"):format(name, group and " (" .. group .. ")" or "", table.concat(conditions[i].words, " and "),
+      core.entry(name).kind == "verdict" and " of the draws" or "")
   end
   if #conditions == 0 then complain 'where wants conditions like {"rim_size_angle", above = "1 mas"}; it is empty' end
   return conditions
@@ -103,20 +106,26 @@ local function passes(plan, row)
   return true
 end
 
--- The rows that pass, in order; equal ones as they came. None at all is an error: there would be no table.
+-- The conditions in words, all together; nil without any.
+local function in_words(plan)
+  local words = {}
+  for i, condition in ipairs(plan.where) do words[i] = condition.words end
+  return #words > 0 and table.concat(words, " and ") or nil
+end
+
+-- The rows that pass, in order, equal ones as they came; and { of = how many there were, words = the conditions } where any are left out. None that
+-- passes is an error: there would be no table.
 function selection.apply(plan, rows)
-  local kept, places, keys = {}, {}, {}
+  local kept, places, keys, passed = {}, {}, {}, 0
   for i, row in ipairs(rows) do
-    if passes(plan, row) then
+    local passing = passes(plan, row)
+    passed = passed + (passing and 1 or 0)
+    if passing or row.failed then
       kept[#kept + 1], places[row] = row, i
       if plan.sort then keys[row] = plan.sort.by_name and row.name or number_of(plan, row, plan.sort.name, plan.sort.group) end
     end
   end
-  if #kept == 0 and #rows > 0 then
-    local words = {}
-    for i, condition in ipairs(plan.where) do words[i] = table.concat(condition.words, " and ") end
-    complain("no target passes the filter, %s; %d %s worked out", table.concat(words, " and "), #rows, #rows == 1 and "was" or "were")
-  end
+  if passed == 0 and #rows > 0 then complain("no target passes the filter, %s; %d %s worked out", in_words(plan), #rows, #rows == 1 and "was" or "were") end
   if plan.sort then
     table.sort(kept, function(a, b)
       local one, other = keys[a], keys[b]
@@ -125,7 +134,7 @@ function selection.apply(plan, rows)
       return one < other
     end)
   end
-  return kept
+  return kept, #kept < #rows and { of = #rows, words = in_words(plan) } or nil
 end
 
 return selection

@@ -91,11 +91,12 @@ end
 -- One group: what is given in it besides the targets' own, and what is asked. The first has no name; the others are the variants.
 local function read_group(fields, common, what)
   local givens, objects, written = read_givens(fields.given, what)
+  local chosen = read_using(fields.using, what)
   if common then refuse_twice(givens, setmetatable({ called = "in the study's given" }, { __index = common.givens }), what) end
   return {
     name = common and fields.name or nil,
     givens = both(common and common.givens or {}, givens), own = givens, written = written, objects = both(common and common.objects or {}, objects),
-    using = both(common and common.using or {}, read_using(fields.using, what)),
+    using = both(common and common.using or {}, chosen), chosen = chosen,
     ask = read_ask(fields.ask, what, "ask"), also = read_ask(fields.also, what, "also"),
   }
 end
@@ -140,6 +141,13 @@ local function refuse_unknown_target(name, list)
   if name == nil then return end
   for _, target in ipairs(list) do if target.name == name then return end end
   error(('study: derive: there is no target "%s"'):format(name), 0)
+end
+
+-- Before the targets are worked out: a slip in a figure is not to be found only after hours.
+local function check_figures(figures, list, plan)
+  local names = {}
+  for _, target in ipairs(list) do names[target.name] = true end
+  core.part "lacuna.figure".check(figures or {}, function(name) return names[name] end, function(name) return plan.numbers[name] end)
 end
 
 -- Files and the study itself ------------------------------------------------------------------------------------------------------
@@ -260,6 +268,8 @@ local function make(fields)
   local plan = new_plan(fields)
   local list = targets.read(fields.targets, find_file)
   refuse_givens_of_targets(list, plan.groups)
+  refuse_unknown_target(fields.derive, list)
+  check_figures(fields.figures, list, plan)
   for _, givens in ipairs { plan.groups[1].own, plan.set.givens } do
     for _, quantity in pairs(givens) do records.keep(quantity) end
   end
@@ -267,10 +277,11 @@ local function make(fields)
   local rows = {}
   for i, record in ipairs(result.records) do rows[i] = new_row(plan, result.targets[i], record) end
   if not command.shard then refuse_emptiness(plan.columns, rows) end
-  refuse_unknown_target(fields.derive, list)
+  local shown, selected = rows, nil
+  if not command.shard then shown, selected = selection.apply(plan, rows) end
   local study = setmetatable({
-    title = plan.title, texts = list.texts, groups = plan.groups, columns = plan.columns, hidden = plan.hidden, set = plan.set, sweeps = plan.set.sweeps,
-    rows = command.shard and rows or selection.apply(plan, rows), plan = plan, result = result, derive = fields.derive,
+    title = plan.title, texts = list.texts, doubtful = list.doubtful, groups = plan.groups, columns = plan.columns, hidden = plan.hidden, set = plan.set, sweeps = plan.set.sweeps,
+    rows = shown, selected = selected, plan = plan, result = result, derive = fields.derive,
     figures = fields.figures,
   }, study_metatable)
   study.notes = core.part "lacuna.notes".of(study)

@@ -15,7 +15,7 @@ end
 
 -- The picture as gnuplot drew it, size in mm, made ready for a page.
 function svg.settled(drawn, figure, size)
-  local own = figure.name:gsub("[^%w_-]", "_"):gsub("^[^%a]", "f%0")
+  local own = ("figure%s-"):format(figure.number or "") .. figure.name:gsub("[^%w_-]", "_")
   local view, inside = drawn:match 'viewBox="([^"]*)".-</desc>%s*(.*)$'
   local head = ([[<svg xmlns="http://www.w3.org/2000/svg" xmlns:xlink="http://www.w3.org/1999/xlink" role="img" aria-labelledby="%s-title %s-desc" width="%gmm" height="%gmm" viewBox="%s" style="max-width: 100%%; height: auto">
 <title id="%s-title">%s</title>

@@ -41,6 +41,8 @@ local function range_of(cell, write, between)
 end
 tables.range_of = range_of
 
+tables.lowest_and_highest = lowest_and_highest
+
 local cell_text
 function cell_text(cell)
   if cell.text then return cell.text end

@@ -125,9 +125,10 @@ local function notes_tex(notes)
   for _, note in ipairs(notes) do
     local sentences = {}
     for i, line in ipairs(note.lines) do
-      sentences[i] = escaped(type(line) == "string" and line or line[1] .. ": " .. table.concat(line, "; ", 2)):gsub("%.$", "")
+      local words = escaped(type(line) == "string" and line or line[1] .. ": " .. table.concat(line, "; ", 2))
+      sentences[i] = words:find "%.$" and words or words .. (i < #note.lines and ";" or ".")
     end
-    lines[#lines + 1] = ("\\par\\textit{%s:} %s."):format(escaped(note.heading), table.concat(sentences, "; "))
+    lines[#lines + 1] = ("\\par\\textit{%s:} %s"):format(escaped(note.heading), table.concat(sentences, " "))
   end
   return lines
 end

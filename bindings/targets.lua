@@ -4,7 +4,8 @@
 --
 -- A column's header names a quantity of the glossary with its unit, `distance [pc]`; `distance error [pc]`, or `distance upper error [pc]`
 -- and `distance lower error [pc]`, make an error bar of it. A cell may carry its own unit and error bar instead, "156 ± 3 pc"; blank means
--- not given. A column without a unit whose header is far from every name of the glossary is a text, carried along.
+-- not given. A column without a unit whose header is far from every name of the glossary is a text, carried along; where it holds a
+-- number with a unit, list.doubtful[header] keeps it: it may be a name written otherwise.
 local core = ...
 local case = core.part "lacuna.case"
 local text = core.part "lacuna.text"
@@ -20,6 +21,13 @@ local function at(where, f, ...)
   local ok, result = pcall(f, ...)
   if not ok then complain("%s: %s", where, bare(tostring(result))) end
   return result
+end
+
+-- Notes a text that reads like a quantity, the first under each header.
+local function note_doubt(list, header, cell)
+  if list.doubtful[header] or not cell:find "^[%d.].*%a" then return end
+  local ok, quantity = pcall(core.reading, cell, header)
+  if ok and select(2, core.facts(quantity)) then list.doubtful[header] = cell end
 end
 
 -- Headers -------------------------------------------------------------------------------------------------------------------------
@@ -157,13 +165,15 @@ local function read_quantity(cells, place)
 end
 
 -- The cells of a row that are not blank: quantities by name and kind; objects and texts go to the target.
-local function sort_cells(row, columns, target, place)
+local function sort_cells(row, columns, target, place, list)
   local quantities, order = {}, {}
   for i, column in ipairs(columns) do
     local cell = row[i]
     if not utf8.len(cell) or cell:find "\0" then complain("%s: the cell is not UTF-8 text", place(column)) end
     if column.kind == "name" then target.name = cell
-    elseif column.kind == "text" then target.texts[column.header] = cell
+    elseif column.kind == "text" then
+      target.texts[column.header] = cell
+      note_doubt(list, column.header, cell)
     elseif column.kind == "object" then target.objects[column.name] = cell ~= "" and core.part "lacuna.objects".take(column.name, cell) or nil
     elseif cell ~= "" then
       if not quantities[column.name] then order[#order + 1] = column.name end
@@ -174,10 +184,10 @@ local function sort_cells(row, columns, target, place)
   return quantities, order
 end
 
-local function read_row(row, columns, file)
+local function read_row(row, columns, file, list)
   local target = { where = ("%s:%d"):format(file, row.line), givens = {}, written = {}, objects = {}, texts = {} }
   local function place(column) return column_place(file, row.line, column.header) end
-  local quantities, order = sort_cells(row, columns, target, place)
+  local quantities, order = sort_cells(row, columns, target, place, list)
   if target.name == "" then complain('%s:%d: column "name": a target wants a name', file, row.line) end
   for _, name in ipairs(order) do
     local cells = quantities[name]
@@ -211,7 +221,7 @@ local function from_file(file, path, text)
   local ok, rows = pcall(core.read_csv, path, file, text)
   if not ok then complain("%s", bare(rows)) end
   if #rows == 0 then complain("%s: the file is empty; its first line names the columns", file) end
-  local list, names = { texts = {}, places = {} }, {}
+  local list, names = { texts = {}, places = {}, doubtful = {} }, {}
   local columns = read_headers(rows[1], file)
   for _, column in ipairs(columns) do
     if column.kind == "text" then list.texts[#list.texts + 1] = column.header end
@@ -220,7 +230,7 @@ local function from_file(file, path, text)
   for i = 2, #rows do
     if not is_blank(rows[i]) then
       check_fields(rows[i], columns, file)
-      local target = read_row(rows[i], columns, file)
+      local target = read_row(rows[i], columns, file, list)
       if names[target.name] then complain('%s:%d: column "name": there is a target "%s" already, in line %d', file, rows[i].line, target.name, names[target.name]) end
       names[target.name] = rows[i].line
       list[#list + 1] = target
@@ -248,13 +258,14 @@ local function take_field(target, word, value, list)
       list.texts[#list.texts + 1] = word
     end
     target.texts[word] = value
+    note_doubt(list, word, value)
   else
     complain("%s: %s", target.where, case.unknown_name(word, ""))
   end
 end
 
 local function from_list(given)
-  local list, names = { texts = {}, places = {}, has_text = {} }, {}
+  local list, names = { texts = {}, places = {}, has_text = {}, doubtful = {} }, {}
   for i, fields in ipairs(given) do
     if type(fields) ~= "table" then error(("study: target %d wants a table {name = ..., distance = ...}; got %s"):format(i, type(fields)), 0) end
     local name = fields.name

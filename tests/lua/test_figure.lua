@@ -334,7 +334,7 @@ bad("a name with a folder", { name = "a/b", of = star, show = "rim_radius", alon
 bad("each without values", { of = star, show = "rim_radius", along = along, each = { wavelength = "2 um" } }, 'figure: each: wavelength wants a list of values; got "2 um"')
 bad("bands along a baseline", { of = star, show = "rim_radius", along = along, bands = { "H" } }, "figure: bands are marked along wavelength; this goes along projected_baseline")
 bad("a target of a case", { of = star, target = "Alder", show = "rim_radius", along = along }, "figure: target and variant are of a study's; this is a case")
-bad("no target of that name", { of = stars, target = "Elm", show = "rim_radius", along = along }, 'figure: no target "Elm" in the study; there are Alder, Birch\'s "B", Cedar')
+bad("no target of that name", { of = stars, target = "Elm", show = "rim_radius", along = along }, 'figure: no target "Elm" in the study; there are Alder, Birch\'s "B" and Cedar')
 bad("no variant of that name", { of = stars, variant = "long", show = "rim_radius", along = along }, 'figure: no variant "long" in the study')
 bad("against of a case", { of = star, show = "rim_radius", against = "distance" }, "figure: against is for the targets of a study; of is a case here")
 bad("a plane along something", { of = stars, show = "rim_radius", against = "distance", along = along }, "figure: targets on a plane go along nothing")

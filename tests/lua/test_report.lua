@@ -20,7 +20,7 @@ local array = { wavelength = "1.65 um", projected_baseline = "92 m" }
 local reports = 0
 local function report_of(fields, options)
   local study = quietly { title = fields.title or "Rims & gaps", targets = fields.targets or stars, given = fields.given or array, ask = fields.ask or { "rim_size_angle", "rim_resolved_by_array" },
-    variants = fields.variants, derive = fields.derive }
+    variants = fields.variants, figures = fields.figures, using = fields.using, derive = fields.derive }
   reports = reports + 1
   local name = "report_" .. reports
   return name, study:report(folder .. "/" .. name, options), study
@@ -125,7 +125,8 @@ t.test("BibTeX has exactly what is cited, each author apart", function()
   end
   t.equal(next(cited), nil)
   t.equal(listed > 0, true)
-  has(bib, "@article{monnier_millan_gabet_2002,\n  author    = {Monnier, J. D. and Millan-Gabet, R.},\n  journal   = {ApJ},\n  year      = {2002},\n  volume    = {579},\n  pages     = {694},\n}")
+  has(bib, "@misc{monnier_millan_gabet_2002,\n  author       = {Monnier, J. D. and Millan-Gabet, R.},\n  howpublished = {ApJ 579, 694},\n  year         = {2002},\n}")
+  for entry in bib:gmatch "(@article{.-\n})" do has(entry, "  title  ") end -- BibTeX warns of articles without one
 end)
 
 t.test("the draft: one target, several, all, none; verdicts with recipes and assumptions, and none without", function()
@@ -139,11 +140,42 @@ t.test("the draft: one target, several, all, none; verdicts with recipes and ass
   has(one, "detected is not assessed")
   local several = read(report_of {} .. "/feasibility.txt"):gsub("\n", " ")
   has(several, "The sample has 3 targets: Marrow 3, Tarn <12> & co and Drumlin 30.")
-  has(several, "For Drumlin 30 this could not be derived (for want of")
+  has(several, "For Drumlin 30 nothing could be derived (for want of")
   local none = read(report_of { ask = { "parallax" } } .. "/feasibility.txt"):gsub("\n", " ")
   has(none, "No verdict was asked")
   has(none, "All of these numbers follow by definition from what is given.")
   lacks(none, "is resolved by")
+end)
+
+t.test("the draft: the recipes that a variant chooses, and the range over recipes once", function()
+  local given = { wavelength = "1.65 um", projected_baseline = "92 m", planet_mass = "2 Mjup", viscosity_alpha = 1e-3 }
+  local variants = {}
+  for i, place in ipairs { "5 au", "10 au" } do variants[i] = { name = "at " .. place, given = { planet_semi_major_axis = place }, ask = { "gap_size_angle", "gap_resolved_by_array" } } end
+  local hot = { name = "Hot", effective_temperature = "9000 K" }
+  for word, value in pairs(stars[1]) do hot[word] = hot[word] or value end
+  variants[3] = { name = "cautious", given = { planet_semi_major_axis = "5 au" }, using = { array_resolution = "fringe" }, ask = { "gap_resolved_by_array" } }
+  local name, _, study = report_of { targets = { hot, stars[3] }, given = given, ask = { "rim_size_angle" }, variants = variants }
+  local words = read(name .. "/feasibility.txt"):gsub("\n", " ")
+  has(words, "Cautious (planet semi-major axis 5 au and array resolution by fringe): The gap is resolved by the array")
+  t.equal(select(2, words:gsub("Over the recipes: ", "")), 1)
+  t.equal(words:find "with the planet midplane temperature by Chiang & Goldreich 1997 instead of Dullemond et al%. 2018, the gap size angle would be 0%.%d+ to 0%.%d+ times as large" ~= nil, true, words)
+  has(words, "Resolved means geometrically resolved, by the array where elements by array ≥ elements required; the array resolution λ / (2 B) (half fringe)")
+  for _, note in ipairs(study.notes) do t.equal(note.heading ~= "Not all targets use the same recipes", true) end
+end)
+
+t.test("the draft: a target that lacks some of what is asked", function()
+  local name = report_of { ask = { "distance", "rim_size_angle", "rim_resolved_by_array" } }
+  has(read(name .. "/feasibility.txt"):gsub("\n", " "), "For Drumlin 30 the rim size angle and whether the rim is resolved by the array could not be derived (for want of bolometric flux).")
+end)
+
+t.test("a share is told from the bounds beside which it stands", function()
+  local percent = require "parts" "lacuna.verdicts".percent
+  t.equal(percent(0.896), "89.6 %")
+  t.equal(percent(0.89996), "89.996 %")
+  t.equal(percent(0.1004), "10.04 %")
+  t.equal(percent(0.45), "45 %")
+  t.equal(percent(0.9), "90 %")
+  t.equal(percent(1), "100 %")
 end)
 
 t.test("the draft without error bars doesn't speak of draws", function()
@@ -169,6 +201,50 @@ t.test("detection: assessed for the rim alone where its significance is asked", 
   has(words, "Detection is assessed for the rim alone")
 end)
 
+t.test("a figure that can't be made is left out, and the line says why", function()
+  local name, written = report_of { title = "Odd figures", figures = {
+    { show = "rim_size_angle", against = "distance", title = "shown" },
+    { show = "rim_size_angle", against = "distance", title = "off", lines = { { show = "planet_mass" } } },
+    { show = "rim_size_angle", against = "distance", name = "s hown" }, { show = "rim_size_angle", against = "distance", name = "s_hown" },
+    { show = "rim_size_angle", against = "distance", title = ("long "):rep(100) },
+  } }
+  has(tostring(written), '\n  left out: figure 2 "off": planet_mass must be given')
+  t.equal(read(name .. "/figures/shown.csv") ~= nil, true)
+  t.equal(read(name .. "/figures/off.csv"), nil)
+  t.equal(read(name .. "/figures/" .. ("long_"):rep(16) .. ".csv") ~= nil, true)
+  local page, seen = read(name .. "/index.html"), {}
+  for id in page:gmatch '%sid="([^"]*)"' do
+    t.equal(seen[id], nil, id)
+    seen[id] = true
+  end
+end)
+
+t.test("no figure of a former report is left", function()
+  local name = report_of { figures = { { show = "rim_size_angle", against = "distance", name = "former" } } }
+  t.equal(read(name .. "/figures/former.csv") ~= nil, true)
+  local study = quietly { targets = stars, given = array, ask = { "rim_size_angle" } }
+  study:report(folder .. "/" .. name, { force = true })
+  t.equal(read(name .. "/figures/former.csv"), nil)
+  t.equal(os.rename(folder .. "/" .. name .. "/figures", folder .. "/there"), nil, "nor their folder")
+end)
+
+t.test("slips in figures are found before anything is worked out", function()
+  local shown = { show = "rim_size_angle", against = "distance" }
+  for field, wrong in pairs { target = "Elm", variant = "at noon" } do
+    t.raises(function() report_of { figures = { shown, { show = "rim_size_angle", along = { projected_baseline = lacuna.sweep("20 m", "90 m", 3) }, [field] = wrong } } } end, "no " .. field .. ' "' .. wrong .. '" in the study')
+  end
+  t.raises(function() report_of { figures = { { shw = "rim_size_angle" } } } end, "figure: there is no 'shw' here")
+  t.raises(function() report_of { figures = { "rim_size_angle" } } end, "study: figure 1 wants a table")
+end)
+
+t.test("what a killed run left half written goes, and nothing else", function()
+  local name, _, study = report_of {}
+  for _, extra in ipairs { "table.csv.unfinished-4711-0", "table.csv.backup" } do assert(io.open(folder .. "/" .. name .. "/" .. extra, "w")):close() end
+  study:report(folder .. "/" .. name, { force = true })
+  t.equal(read(name .. "/table.csv.unfinished-4711-0"), nil)
+  t.equal(read(name .. "/table.csv.backup"), "")
+end)
+
 t.test("a user's own recipe is cited in its own words", function()
   lacuna.relation { gives = "rim_height_ratio", by = "thumb", from = { "stellar_mass" }, function(mass) return 0.1 * mass / lacuna.Msun end, source = "A & B, private note (2031)",
     equation = "[rim_height_ratio] = 0.1 [stellar_mass]", supposes = "a rule of thumb" }
@@ -183,6 +259,11 @@ t.test("many targets, in the draft and in tables that fit on pages", function()
   local name = report_of { targets = many, ask = { "rim_resolved_by_array" } }
   has(read(name .. "/feasibility.txt"), "and 108 others")
   t.equal(select(2, read(name .. "/table.tex"):gsub("\\begin{table%*}", "")), 3)
+  has(read(name .. "/table.tex"), "of them. This estimates geometric feasibility") -- sentences stay sentences
+  local rims = {} -- 0.2 au are half a fringe spacing, 1.65 um / (2 92 m), at 108 pc: seven are nearer
+  for i = 1, 60 do rims[i] = { name = "Star " .. i, distance = 50 + 8 * i .. " pc", rim_radius = "0.1 au" } end
+  local _, _, study = report_of { targets = rims, ask = { "rim_resolved_by_array" } }
+  t.equal(study.notes[1].lines[1][2]:find "^rim_elements_by_array < elements_required 1: 0%.%d+ to 0%.%d+ for 53 of the 60 targets$" ~= nil, true, study.notes[1].lines[1][2])
 end)
 
 scratch.remove()

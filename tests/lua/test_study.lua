@@ -128,6 +128,8 @@ t.test("a target that fails is told in its row, and the others stand", function(
   t.equal(study.rows[2].cells[1].missing, true)
   t.equal(printed:find("Failed\n  Marrow 3: " .. path "stars.csv" .. ":3:", 1, true) ~= nil, true, printed)
   t.raises(function() return study.rows[2].case end, "contradictory givens")
+  local filtered = of_file("name,distance [pc],parallax [mas]\nTarn,100,10\nMarrow 3,100,11\nTarn 2,40,25\n", { ask = { "distance" }, where = { "distance", above = "50 pc" } })
+  t.equal({ filtered.rows[1].name, filtered.rows[2].name, #filtered.rows }, { "Tarn", "Marrow 3", 2 }, "shown whatever the filter says")
 end)
 
 -- What a study with these fields raises, with the script's line before it.
@@ -288,6 +290,9 @@ t.test("filtered as the study says", function()
   t.equal(names_of(study_of_stars { where = { "rim_resolved_by_array", below = 0.5 } }), { "Tarn, 12" })
   local variants = { { name = "short", given = { shortest_baseline = "15 m" }, ask = { "recoverable_scale" } } }
   t.equal(#study_of_stars { variants = variants, where = { "recoverable_scale", variant = "short", above = "1 mas" } }.rows, 3)
+  local few = study_of_stars { where = { "rim_size_angle", above = "1 mas" } }
+  t.equal(few.notes[1], { heading = "Shown", lines = { "1 of 3 targets: rim_size_angle above 1 mas" } })
+  t.equal(study_of_stars { where = { "distance", above = "1 pc" } }.notes[1].heading ~= "Shown", true, "all are shown: nothing to say")
   complains({ targets = stars, ask = asked, given = instrument, where = { "rim_size_angle", above = "1 arcsec" } }, "study: no target passes the filter, rim_size_angle above 1 arcsec; 3 were worked out")
   complains({ targets = stars, ask = asked, where = { "rim_size_angle", over = "1 mas" } }, "study: where: there is no 'over' here; there are above, below, variant")
   complains({ targets = stars, ask = asked, where = { "rim_size_angle" } }, "study: where: rim_size_angle wants above = ... or below = ...")
@@ -321,6 +326,18 @@ t.test("cases are made anew when they are asked for, and let go", function()
   for name, c in pairs(study.rows[1].variants) do names[name] = c.shortest_baseline:value "m" end
   t.equal(names, { long = 15 })
   t.equal(study.rows[1].variants.short, nil)
+end)
+
+t.test("a text that reads like a quantity is noted", function()
+  local function note_of(fields)
+    for _, note in ipairs(quietly { targets = { fields }, given = { distance = "100 pc" }, ask = { "distance" } }.notes) do
+      if note.heading == "Carried along as texts, not used" then return note.lines end
+    end
+  end
+  local lines = note_of { name = "A", star_temperature_of_mine = "9000 K", catalogue = "HQ 12", declination = "-14 07 55", remarks = "5 nights" }
+  t.equal(#lines, 1)
+  t.equal(lines[1]:find '^star_temperature_of_mine: "9000 K" reads like a quantity, but no name of the glossary is called so' ~= nil, true, lines[1])
+  t.equal(note_of { name = "A", remarks = "bright" }, nil)
 end)
 
 t.test("files are whole or absent", function()

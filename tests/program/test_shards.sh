@@ -29,6 +29,8 @@ if command -v parallel >/dev/null; then
   same "merged" whole merged whole.txt merged.txt
   try "$lacuna" merge part4 part1 part2 --out lacking
   want "a part is missing" 1 "" 'lacuna: part4: there is no record of "Quillon A" and 2 more; run the part that is to hold it again, with --resume'
+  test ! -e lacking
+  result $? "and no folder is begun"
   try "$lacuna" merge part1 part2 part1 --out twice
   want "a part twice" 1 "" 'lacuna: merge: both part1 and part1 hold "Marrow 3"'
   "$lacuna" --seed 2 "$scripts/demo_study.lua" --out other --shard 1/4 2>/dev/null
@@ -101,7 +103,7 @@ cp once/records stopped/records
 try "$lacuna" slow.lua --draws 200 --out stopped --resume
 want "resumed with other settings" 1 "" "lacuna: stopped was made otherwise: draws was 100 there, is 200 here"
 try "$lacuna" slow.lua --draws 100 --set 'stellar_mass=2 Msun' --out stopped --resume
-want "resumed with other givens" 1 "" "lacuna: stopped was made otherwise: set was '' there, is 'stellar_mass=2 Msun' here"
+want "resumed with other givens" 1 "" "lacuna: stopped was made otherwise: set was none there, is 'stellar_mass=2 Msun' here"
 echo '-- changed' >>slow.lua
 try "$lacuna" slow.lua --draws 100 --out stopped --resume
 want "resumed with another study" 1 "" "lacuna: stopped was made otherwise: the study file isn't the same"
