@@ -92,7 +92,7 @@ Birch,1.875,0.047,0.047
     arguments = { { "DIR", "the folder's name; it is made where it isn't there" }, { "force", "true: also into a folder that has files already" } },
     result = "a table { folder, files = { names }, missing = { what could not be written, and why } }, which prints itself",
     errors = "a folder that has files already, without force; a folder or file that can't be written: one line, and no manifest",
-    examples = { { two_stars, 'stars:report "proposal"' } },
-    answers = { "report in proposal: 11 files; open proposal/index.html" },
+    examples = { { two_stars, 'stars:report("proposal").folder' } },
+    answers = { '"proposal"' },
   },
 }
