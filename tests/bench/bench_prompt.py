@@ -69,7 +69,7 @@ def stop_times(session, code):
     for i in range(STOPS):
         session.type(code + "\r")
         session.wait(r"\n")
-        time.sleep(0.05 + 0.04 * i)
+        time.sleep(0.03 + 0.015 * i)
         if PROMPT.search(session.screen):
             sys.exit(f"{code} was over before Ctrl-C")
         times.append(answer_time(session, CONTROL_C, r"interrupted\n> $"))

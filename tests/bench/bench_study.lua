@@ -82,7 +82,7 @@ for _ = 1, ROUNDS do
 end
 os.remove(folder)
 local pipe = io.popen(("%s --out %s %s 500 2>&1 >/dev/null"):format(lacuna, folder, study_file))
-local memory = tonumber(pipe:read("a"):match ", (%d+) MB\n$")
+local memory = tonumber(pipe:read("a"):match ", (%d+) MB\n")
 pipe:close()
 os.execute("rm -r " .. folder)
 os.remove(study_file)
