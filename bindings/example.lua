@@ -90,17 +90,19 @@ local function object_of(name, fields)
   return made[fields]
 end
 
+local function case_of(givens)
+  local values = {}
+  for given, value in pairs(givens) do values[given] = type(value) == "table" and object_of(given, value) or value end
+  return case.new(values)
+end
+
 -- An example that asks for a name: line, as typed at the prompt, and answer(), what the prompt prints.
 local function example_from(name, givens)
   local parts = {}
   for _, given in ipairs(core.names()) do
     if givens[given] then parts[#parts + 1] = typed(given, givens[given]) end
   end
-  local function answer()
-    local values = {}
-    for given, value in pairs(givens) do values[given] = type(value) == "table" and object_of(given, value) or value end
-    return core.part "lacuna.show".show(case.new(values)[name])
-  end
+  local function answer() return core.part "lacuna.show".show(case_of(givens)[name]) end
   return { line = ("case{%s}.%s"):format(table.concat(parts, ", "), name), answer = answer }
 end
 
@@ -129,6 +131,18 @@ function example.of(name)
     if found then return found end
   end
   return value_of(name) and example_with(name)
+end
+
+-- The invented star with all that the recipes of a name start from, as a case; nil where no values lead to any, or they contradict each other.
+function example.case_for(name)
+  local givens = {}
+  for _, row in ipairs(recipes_of(name)) do
+    local more = {}
+    for given, value in pairs(givens) do more[given] = value end
+    if not row.inverse_of and add_givens(more, row, { [name] = true }, core.entry(name).subject) then givens = more end
+  end
+  local good, made = pcall(case_of, givens)
+  return next(givens) and good and made or nil
 end
 
 return example

@@ -1,6 +1,6 @@
 -- SPDX-License-Identifier: GPL-3.0-or-later
--- recipes "gap_width": all recipes of a name, with equations, sources and ranges of validity. recipes("gap_width", c): what each gives in a
--- case, side by side, and whether the case lies in its range or what it would need.
+-- recipes "gap_width": all recipes of a name, with equations, sources and ranges of validity, and what each gives side by side, whether it is in
+-- its range or what it would need: in a case, recipes("gap_width", c), or else for an invented star.
 local core = ...
 local relations = core.part "lacuna.relations"
 local text = core.part "lacuna.text"
@@ -122,6 +122,14 @@ local function side_by_side(lines, self, name, rows)
   lines[#lines + 1] = ""
 end
 
+local function givens_in_words(self)
+  local parts = {}
+  for i, name in ipairs(self:givens()) do parts[i] = name .. " = " .. text.given(self, name) end
+  local objects = core.info(self).objects
+  for _, name in ipairs(case.sorted_keys(objects)) do parts[#parts + 1] = name .. " = " .. tostring(objects[name]) end
+  return table.concat(parts, ", ")
+end
+
 function recipes.recipes(word, self)
   if type(word) ~= "string" then core.raise("recipes wants a name, like recipes \"gap_width\"; got " .. core.shown(word)) end
   if self ~= nil and not core.is_case(self) then core.raise("recipes wants a case after the name; got " .. core.shown(self)) end
@@ -131,7 +139,12 @@ function recipes.recipes(word, self)
   for i, number in ipairs(entry.rows) do rows[i] = core.row(number) end
   if #rows == 0 then return setmetatable({ name .. " has no recipe: it must be given" }, page) end
   local lines = setmetatable({ ("%s  %s: %s"):format(name, relations.symbol(name), entry.meaning) }, page)
-  if self then side_by_side(lines, self, name, rows) end
+  local invented = not self and core.part "lacuna.example".case_for(name)
+  if self or invented then side_by_side(lines, self or invented, name, rows) end
+  if invented then
+    lines[#lines + 1] = ("  for an invented star: %s; recipes(\"%s\", c) takes yours"):format(givens_in_words(invented), name)
+    lines[#lines + 1] = ""
+  end
   for _, row in ipairs(rows) do recipes.add_row(lines, row) end
   return lines
 end

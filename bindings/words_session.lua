@@ -55,7 +55,7 @@ parallax  ϖ
   },
   {
     name = "recipes", subject = "help", forms = { 'recipes "name"', 'recipes("name", c)' },
-    does = "All recipes of a name with equations, sources and ranges of validity. With a case, what each gives in it, side by side.",
+    does = "All recipes of a name side by side, with equations, sources and ranges of validity. What each gives is worked out in the case, or without one for an invented star whose numbers are told.",
     arguments = { { "name", "a name of the glossary" }, { "c", "a case" } },
     result = "a page that prints itself",
     errors = "an unknown name, a second argument that is no case",

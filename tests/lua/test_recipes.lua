@@ -17,6 +17,14 @@ local function compared(page, by)
   error(("no %s in\n%s"):format(by, tostring(page)))
 end
 
+t.test("without a case each recipe is worked out for an invented star", function()
+  local page = tostring(lac.recipes "sublimation_radius")
+  local star = { heating_luminosity = "18 Lsun", cooling_efficiency = 0.4, backwarming_factor = 2 }
+  t.equal(page:find("for an invented star: heating_luminosity = 18 Lsun", 1, true) ~= nil, true, page)
+  t.equal(page:match "\n  grey_grains +(%S+ au)", tostring(lac.case { heating_luminosity = "18 Lsun" }.sublimation_radius))
+  t.equal(page:match "\n  kama_2009 +(%S+ au)", tostring(lac.case(star):using { sublimation_radius = "kama_2009" }.sublimation_radius))
+end)
+
 t.test("without a case: equations, sources, ranges, what is supposed", function()
   local page = tostring(lac.recipes "gap_depth")
   for _, words in ipairs { "yun_2019, from planet_star_mass_ratio, planet_aspect_ratio, viscosity_alpha", "Σ_min/Σ_0 = 1 / (1 + 0.04 (q² / (h_p⁵ α)))",
