@@ -2,6 +2,7 @@
 -- keep "file.lua": what a conversation did, as a script that runs alone and gives the same numbers. again "file.lua": a script's statements
 -- as inputs of the conversation; so are read the personal start-up file and --start FILE.
 local core = ...
+local read_file = core.part "lacuna.read_file"
 local statements = core.part "lacuna.statements"
 local session = core.part "lacuna.session"
 local kept_script = core.part "lacuna.kept_script"
@@ -52,13 +53,8 @@ local function shown_path(path)
 end
 
 local function text_of(path, what)
-  local file, trouble = io.open(path, "rb")
-  local text
-  if file then
-    text, trouble = file:read "a"
-    file:close()
-  end
-  if not text then core.raise(("%s: cannot read %s: %s"):format(what, shown_path(path), (tostring(trouble):gsub("^.*: ", "")))) end
+  local text, trouble = read_file(path)
+  if not text then core.raise(("%s: cannot read %s: %s"):format(what, shown_path(path), (trouble:gsub("^.*: ", "")))) end
   return (text:gsub("\r\n", "\n"):gsub("^#[^\n]*", ""))
 end
 
@@ -100,9 +96,7 @@ local kept = {} -- what was written to each path
 
 -- A file that this session hasn't written, or that was changed since, is not replaced unasked.
 local function check_replaced(path)
-  local file = io.open(path, "rb")
-  local present = file and file:read "a" -- nil also for a folder, which write_file refuses
-  if file then file:close() end
+  local present = read_file(path) -- nil also for a folder, which write_file refuses
   if present and present ~= kept[path] then
     core.raise(('keep: %s exists, and not as this session has written it; keep("%s", true) replaces it'):format(path, path))
   end

@@ -13,6 +13,7 @@ local derivation = core.part "lacuna.derivation"
 local document = core.part "lacuna.document"
 local feasibility = core.part "lacuna.feasibility"
 local manifest = core.part "lacuna.manifest"
+local read_file = core.part "lacuna.read_file"
 local table_files = core.part "lacuna.table_files"
 local table_tex = core.part "lacuna.table_tex"
 
@@ -36,12 +37,8 @@ function writer.write(self, name, content)
 end
 
 local function read(path)
-  local file, trouble = io.open(path, "rb")
-  if not file then core.raise("cannot open " .. trouble) end
-  local content
-  content, trouble = file:read "a"
-  file:close()
-  if not content then core.raise(("cannot read %s: %s"):format(path, trouble)) end
+  local content, trouble = read_file(path)
+  if not content then core.raise(trouble) end
   return content
 end
 
@@ -147,10 +144,8 @@ end
 -- Takes away what a report that stood here before had, as its manifest says; that first, so that the folder doesn't pass for a whole one. The
 -- records are the new run's already.
 local function remove_former(out)
-  local file = io.open(out:path "manifest.txt", "rb")
-  if not file then return end
-  local text = file:read "a"
-  file:close()
+  local text = read_file(out:path "manifest.txt")
+  if not text then return end
   os.remove(out:path "manifest.txt")
   for name in text:gmatch "\n%x+  ([^\n]+)" do
     if name ~= "records" and not name:find "^/" and not name:find("..", 1, true) then

@@ -5,6 +5,7 @@ local core = ...
 local command = core.part "lacuna.command"
 local file = core.part "lacuna.records_file"
 local progress = core.part "lacuna.progress"
+local read_file = core.part "lacuna.read_file"
 local records = core.part "lacuna.record"
 
 local run = {}
@@ -46,10 +47,8 @@ end
 -- The folder --------------------------------------------------------------------------------------------------------------------------
 
 local function text_of(path)
-  local handle, trouble = io.open(path, "rb")
-  if not handle then error("cannot open " .. trouble, 0) end
-  local text = handle:read "a"
-  handle:close()
+  local text, trouble = read_file(path)
+  if not text then error(trouble, 0) end
   return text
 end
 

@@ -39,11 +39,15 @@ static lac_status shares_of(size_t n, lac_distribution of_a, lac_distribution of
 }
 
 /* y = a + 6 b: variances 1 and 36 / 12. */
+static void draw_sum(uint64_t seed) {
+  draw(seed);
+  for (size_t i = 0; i < N; i++) y[i] = a[i] + 6 * b[i];
+}
+
 static void a_sum_of_known_distributions_is_exact(void **state) {
   (void)state;
   for (uint64_t seed = 0; seed < 10; seed++) {
-    draw(seed);
-    for (size_t i = 0; i < N; i++) y[i] = a[i] + 6 * b[i];
+    draw_sum(seed);
     lac_share shares[2];
     size_t defined;
     assert_int_equal(shares_of(N, LAC_STANDARD_NORMAL, LAC_STANDARD_UNIFORM, shares, &defined), LAC_OK);
@@ -57,8 +61,7 @@ static void a_sum_of_known_distributions_is_exact(void **state) {
 static void by_ranks_the_error_covers_what_the_sample_lacks(void **state) {
   (void)state;
   for (uint64_t seed = 0; seed < 10; seed++) {
-    draw(seed);
-    for (size_t i = 0; i < N; i++) y[i] = a[i] + 6 * b[i];
+    draw_sum(seed);
     lac_share shares[2];
     size_t defined;
     assert_int_equal(shares_of(N, LAC_ANY_DISTRIBUTION, LAC_ANY_DISTRIBUTION, shares, &defined), LAC_OK);
